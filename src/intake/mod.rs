@@ -16,3 +16,14 @@ pub enum Unreadable {
     Empty,
     Binary,
 }
+
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Format {
+    Markdown,
+    Plain,
+}
+
+/// Reads a file of any kind. Interim until both readers stand.
+pub fn read(_bytes: &[u8], _name: &str, _hint: Option<Format>) -> Result<(Manuscript, Vec<Notice>), Unreadable> {
+    Err(Unreadable::Empty)
+}
