@@ -5,10 +5,12 @@
 
 pub mod claim;
 mod claim_words;
+pub mod interval;
 pub mod lexicon;
 pub mod p;
 pub mod planning;
 pub mod sentence;
+pub mod statistic;
 pub mod token;
 
 use crate::manuscript::{BlockKind, Manuscript, SectionKind};
@@ -121,6 +123,10 @@ pub struct IntervalReading {
     /// Both limits carry a percent sign, or the interval is of percentages.
     pub percent: bool,
     pub credible: bool,
+    /// Printed with the larger limit first; `lower` and `upper` are in numerical order all the same.
+    pub reversed: bool,
+    /// A figure printed right before the limits: `0.75 (0.60–0.93)`.
+    pub estimate: Option<(Printed, Span)>,
 }
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]

@@ -381,7 +381,30 @@ fn value(view: &SentenceView, at: usize) -> Option<(Printed, usize)> {
             return Some((Printed { exponent: -(e as i16), ..base }, next + 3));
         }
     }
-    Some((base, next - 1))
+    Some(mended(view, base, next - 1))
+}
+
+/// `0 .001`, `0. 001` and `0001`: a space inside the figure, or the decimal mark lost.
+fn mended(view: &SentenceView, base: Printed, last: usize) -> (Printed, usize) {
+    let text = view.word(last);
+    if text == "0" {
+        if view.word(last + 1).starts_with(['.', '·'])
+            && let Some(p) = view.number(last + 1)
+        {
+            return (p, last + 1);
+        }
+        if view.sign(last + 1, '.')
+            && !view.spaced(last + 1)
+            && view.word(last + 2).starts_with('0')
+            && let Some(p) = view.number(last + 2)
+        {
+            return (Printed { places: view.word(last + 2).len() as u8, ..p }, last + 2);
+        }
+    }
+    if text.len() >= 3 && text.starts_with('0') && text.bytes().all(|b| b.is_ascii_digit()) {
+        return (Printed { places: text.len() as u8, digits: base.digits, ..base }, last);
+    }
+    (base, last)
 }
 
 /// A raised exponent.
