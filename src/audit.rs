@@ -5,6 +5,15 @@ use crate::report::Audited;
 use crate::rule::{self, Facts};
 use crate::{context, reading, recompute, result};
 
+/// Endings of the files that are taken from a folder.
+pub const EXTENSIONS: [&str; 4] = [".md", ".markdown", ".txt", ".text"];
+
+/// Whether a file of a folder is taken for a manuscript, by the ending of its name.
+pub fn is_manuscript(name: &str) -> bool {
+    let name = name.to_lowercase();
+    EXTENSIONS.iter().any(|ending| name.ends_with(ending))
+}
+
 /// Audits one manuscript. `name` is the file's name, for recognising its format.
 pub fn audit(bytes: &[u8], name: &str) -> Result<Audited, Unreadable> {
     let (manuscript, notices) = intake::read(bytes, name, None)?;
@@ -22,5 +31,5 @@ pub fn audit(bytes: &[u8], name: &str) -> Result<Audited, Unreadable> {
         checked: &checked,
     };
     let queries = rule::queries(&facts);
-    Ok(Audited { manuscript, notices, readings, results, checked, queries })
+    Ok(Audited { manuscript, notices, scan, readings, results, checked, queries })
 }
