@@ -12,6 +12,8 @@ pub struct Manuscript {
     pub sections: Vec<Section>,
     pub blocks: Vec<Block>,
     pub source: Source,
+    /// Numbers of the blocks that are tables, in order.
+    tables: Vec<u32>,
 }
 
 /// The file's text, kept to resolve places.
@@ -43,7 +45,8 @@ pub struct Block {
     /// Canonical text. For a table: cells in row order, each followed by `\t`, the last of a row by `\n`.
     pub text: String,
     pub pieces: PieceTable,
-    /// Marks in order of their start.
+    /// Marks in order of their start. Those of one kind do not overlap, and none is longer than
+    /// [`Mark::LONGEST`]: a longer stretch is several marks that adjoin.
     pub marks: Vec<Mark>,
 }
 
@@ -63,6 +66,11 @@ pub struct Mark {
     pub start: u32,
     pub end: u32,
     pub kind: MarkKind,
+}
+
+impl Mark {
+    /// The longest mark, in bytes; it bounds how far a look-up has to go back.
+    pub const LONGEST: u32 = 256;
 }
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -125,6 +133,11 @@ pub struct CellPlace {
 }
 
 impl Manuscript {
+    pub fn new(sections: Vec<Section>, blocks: Vec<Block>, source: Source) -> Manuscript {
+        let tables = (0u32..).zip(&blocks).filter(|(_, b)| matches!(b.kind, BlockKind::Table(_))).map(|(i, _)| i);
+        Manuscript { tables: tables.collect(), sections, blocks, source }
+    }
+
     pub fn block(&self, span: Span) -> &Block {
         &self.blocks[span.block as usize]
     }
@@ -157,8 +170,7 @@ impl Manuscript {
 
     /// How many tables stand before this block.
     fn table_number(&self, block: u32) -> u32 {
-        let before = &self.blocks[..block as usize];
-        before.iter().filter(|b| matches!(b.kind, BlockKind::Table(_))).count() as u32
+        self.tables.partition_point(|&t| t < block) as u32
     }
 }
 
@@ -171,8 +183,14 @@ impl Grid {
 }
 
 impl Block {
-    /// The marks of a kind that overlap `start..end`.
+    /// Whether a mark of a kind overlaps `start..end`.
     pub fn marked(&self, kind: MarkKind, start: u32, end: u32) -> bool {
-        self.marks.iter().any(|m| m.kind == kind && m.start < end && start < m.end)
+        self.marks_over(start, end).any(|m| m.kind == kind)
+    }
+
+    /// The marks that overlap `start..end`, in order of their start.
+    pub fn marks_over(&self, start: u32, end: u32) -> impl Iterator<Item = &Mark> {
+        let first = self.marks.partition_point(|m| m.start.saturating_add(Mark::LONGEST) <= start);
+        self.marks[first..].iter().take_while(move |m| m.start < end).filter(move |m| start < m.end)
     }
 }

@@ -5,10 +5,13 @@
 
 pub mod claim;
 mod claim_words;
+pub mod group;
+pub mod interval;
 pub mod lexicon;
 pub mod p;
 pub mod planning;
 pub mod sentence;
+pub mod statistic;
 pub mod token;
 
 use crate::manuscript::{BlockKind, Manuscript, SectionKind};
@@ -121,6 +124,10 @@ pub struct IntervalReading {
     /// Both limits carry a percent sign, or the interval is of percentages.
     pub percent: bool,
     pub credible: bool,
+    /// Printed with the larger limit first; `lower` and `upper` are in numerical order all the same.
+    pub reversed: bool,
+    /// A figure printed right before the limits: `0.75 (0.60–0.93)`.
+    pub estimate: Option<(Printed, Span)>,
 }
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -334,18 +341,30 @@ pub fn read(manuscript: &Manuscript, scan: &Scan) -> Readings {
         if matches!(section.kind, SectionKind::References | SectionKind::Back) {
             continue;
         }
-        for id in scan.of_block(number) {
-            read_sentence(&scan.view(manuscript, id), &mut readings);
+        let sentences = scan.of_block(number);
+        // A paragraph's "values are mean ± SD" may stand behind the figures that it explains.
+        let mut declared = group::Declared::default();
+        for id in sentences.clone() {
+            declared.note(&scan.view(manuscript, id));
+        }
+        let mut setting = group::Setting { section: section.kind, declared };
+        for id in sentences {
+            read_sentence(&scan.view(manuscript, id), &mut setting, &mut readings);
         }
     }
     readings
 }
 
-fn read_sentence(view: &SentenceView, readings: &mut Readings) {
+fn read_sentence(view: &SentenceView, setting: &mut group::Setting, readings: &mut Readings) {
+    let mut taken = vec![false; view.len()];
     let p = p::find(view);
     let mut defines = vec![false; p.len()];
     planning::read(view, &p, &mut defines, &mut readings.planning);
-    for (x, _) in p.iter().zip(&defines).filter(|(_, defines)| !**defines) {
+    for (x, defines) in p.iter().zip(defines) {
+        taken[x.first..=x.last].fill(true);
+        if defines {
+            continue;
+        }
         readings.p.push(PValue {
             span: view.span(x.first, x.last),
             sentence: view.id,
@@ -356,5 +375,8 @@ fn read_sentence(view: &SentenceView, readings: &mut Readings) {
             shared: x.shared,
         });
     }
+    interval::read(view, &mut taken, &mut readings.intervals);
+    statistic::read(view, &mut taken, &mut readings.statistics);
+    group::read(view, setting, &mut taken, &mut readings.groups);
     claim::read(view, &p, &mut readings.claims);
 }

@@ -66,9 +66,17 @@ impl PieceTable {
             };
             found = Some(match found {
                 None => SourceRange { start: from as usize, end: to as usize, exact: p.exact },
-                Some(r) => SourceRange { start: r.start, end: to as usize, exact: false },
+                Some(r) => SourceRange { start: r.start.min(from as usize), end: r.end.max(to as usize), exact: false },
             });
         }
         found
+    }
+
+    /// The runs of canonical text that are byte for byte those of the source, with where they stand there.
+    pub fn exact(&self) -> impl Iterator<Item = (std::ops::Range<usize>, std::ops::Range<usize>)> {
+        self.pieces
+            .iter()
+            .filter(|p| p.exact)
+            .map(|p| (p.start as usize..p.end as usize, p.source_start as usize..p.source_end as usize))
     }
 }
