@@ -33,21 +33,17 @@ impl<'w> Galley<'w> {
 
     /// Wrapped text.
     pub fn text(&mut self, pieces: &[Piece]) -> io::Result<()> {
-        self.hang(0, pieces)
+        self.hang("", pieces)
     }
 
     /// Wrapped text behind a label.
     pub fn labelled(&mut self, label: &str, pieces: &[Piece]) -> io::Result<()> {
-        let label = format!("{label:<LABEL$}");
-        let mut all = vec![(Style::new().dimmed(), label.as_str())];
-        all.extend_from_slice(pieces);
-        self.hang(LABEL, &all)
+        self.hang(&format!("{label:<LABEL$}"), pieces)
     }
 
-    /// A line behind a right-aligned count.
+    /// Wrapped text behind a right-aligned count.
     pub fn counted(&mut self, count: usize, text: &str) -> io::Result<()> {
-        let count = format!("{count:>5} ");
-        self.hang(columns(&count), &[(Style::new(), &count), (Style::new(), text)])
+        self.hang(&format!("{count:>5}  "), &[(Style::new(), text)])
     }
 
     /// A line without text; a note still waiting in the margin stands beside it.
@@ -66,17 +62,20 @@ impl<'w> Galley<'w> {
     /// A line across the whole width, from the edge.
     pub fn across(&mut self, pieces: &[Piece]) -> io::Result<()> {
         self.flush()?;
-        for line in wrap(pieces, self.width, 0) {
+        for line in wrap(pieces, self.width) {
             write_pieces(self.out, &line)?;
             writeln!(self.out)?;
         }
         Ok(())
     }
 
-    fn hang(&mut self, indent: usize, pieces: &[Piece]) -> io::Result<()> {
-        for (i, mut line) in wrap(pieces, self.width - MARGIN, indent).into_iter().enumerate() {
-            if i > 0 && indent > 0 {
-                line.insert(0, (Style::new(), " ".repeat(indent)));
+    /// Lines after the first start below the text, not below the label.
+    fn hang(&mut self, label: &str, pieces: &[Piece]) -> io::Result<()> {
+        let indent = columns(label);
+        for (i, mut line) in wrap(pieces, self.width - MARGIN - indent).into_iter().enumerate() {
+            if indent > 0 {
+                let label = if i == 0 { label.to_owned() } else { " ".repeat(indent) };
+                line.insert(0, (Style::new().dimmed(), label));
             }
             self.line(&line)?;
         }
@@ -108,53 +107,41 @@ fn columns(text: &str) -> usize {
     text.chars().count()
 }
 
-/// Breaks at spaces. Lines after the first are `indent` columns shorter; spaces at the start of the
-/// first line are kept.
-fn wrap(pieces: &[Piece], width: usize, indent: usize) -> Vec<Vec<(Style, String)>> {
-    let mut lines: Vec<Vec<(Style, String)>> = Vec::new();
-    let mut line: Vec<(Style, String)> = Vec::new();
+/// Breaks at spaces; a word that is wider than a line is cut.
+fn wrap(pieces: &[Piece], width: usize) -> Vec<Vec<(Style, String)>> {
+    let mut lines: Vec<Vec<(Style, String)>> = vec![Vec::new()];
     let mut used = 0;
     for word in words(pieces) {
-        let long = word.iter().map(|(_, t)| columns(t)).sum::<usize>();
-        let blank = columns(word.first().map_or("", |(_, t)| t)) == 0;
-        let room = if lines.is_empty() { width } else { width - indent };
-        let space = usize::from(!line.is_empty());
-        if !line.is_empty() && used + space + long > room {
-            lines.push(std::mem::take(&mut line));
+        let long: usize = word.iter().map(|(_, t)| columns(t)).sum();
+        if used > 0 && used + 1 + long > width {
+            lines.push(Vec::new());
             used = 0;
-        }
-        let room = if lines.is_empty() { width } else { width - indent };
-        if !line.is_empty() {
-            let style = match (line.last(), word.first()) {
-                (Some(a), Some(b)) if a.0 == b.0 => a.0,
-                _ => Style::new(),
-            };
-            line.push((style, " ".to_owned()));
+        } else if used > 0 {
+            // A space within a style belongs to it; between two it is plain.
+            let line = lines.last_mut().expect("there is always a line");
+            let style = line.last().map(|l| l.0).filter(|&s| s == word[0].0).unwrap_or_default();
+            add(line, style, ' ');
             used += 1;
-        } else if blank && !lines.is_empty() {
-            continue;
         }
         for (style, text) in word {
             for c in text.chars() {
-                if used == room {
-                    lines.push(std::mem::take(&mut line));
+                if used == width {
+                    lines.push(Vec::new());
                     used = 0;
                 }
-                match line.last_mut() {
-                    Some(last) if last.0 == style => last.1.push(c),
-                    _ => line.push((style, c.to_string())),
-                }
+                add(lines.last_mut().expect("there is always a line"), style, c);
                 used += 1;
-            }
-            if line.is_empty() {
-                line.push((style, String::new()));
             }
         }
     }
-    if line.iter().any(|(_, t)| !t.is_empty()) || lines.is_empty() {
-        lines.push(line);
-    }
     lines
+}
+
+fn add(line: &mut Vec<(Style, String)>, style: Style, c: char) {
+    match line.last_mut() {
+        Some(last) if last.0 == style => last.1.push(c),
+        _ => line.push((style, c.to_string())),
+    }
 }
 
 /// Words, each of one or more pieces: a change of style within a word does not break it.
@@ -170,6 +157,7 @@ fn words<'a>(pieces: &[Piece<'a>]) -> Vec<Vec<(Style, &'a str)>> {
             }
         }
     }
+    words.retain(|word| !word.is_empty());
     words
 }
 
@@ -248,9 +236,8 @@ mod tests {
     fn no_line_is_wider_than_asked() {
         let plain = Style::new();
         let long = "x".repeat(200);
-        let text = set(60, |g| {
-            g.labelled("working", &[(plain, "n = 24 and 25; "), (plain, &long), (plain, " and so on")])
-        });
+        let text =
+            set(60, |g| g.labelled("working", &[(plain, "n = 24 and 25; "), (plain, &long), (plain, " and so on")]));
         assert!(text.lines().all(|l| l.chars().count() <= 60), "{text}");
         assert_eq!(text.matches('x').count(), 200);
     }

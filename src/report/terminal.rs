@@ -132,13 +132,7 @@ fn level_style(level: Level) -> Style {
     }
 }
 
-fn one_query(
-    galley: &mut Galley,
-    number: usize,
-    query: &Query,
-    audited: &Audited,
-    places: &Places,
-) -> io::Result<()> {
+fn one_query(galley: &mut Galley, number: usize, query: &Query, audited: &Audited, places: &Places) -> io::Result<()> {
     galley.note(PENCIL, format!("Query {number}"));
     galley.note(level_style(query.level), query.level.name());
     let context = places.context(&query.location, &query.quote);
