@@ -1,1 +1,94 @@
-//! to come
+//! Readings that belong together: groups, estimate, interval, statistic, p.
+
+mod feature;
+mod sentence;
+
+use crate::context::{Context, Stated, Test};
+use crate::manuscript::Manuscript;
+use crate::reading::{Readings, Scan};
+use crate::text::Span;
+
+/// Why a plain recomputation from group summaries may not be the authors' analysis.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+pub enum Feature {
+    /// Paired or repeated measurements, a comparison with baseline, crossover.
+    Paired,
+    /// The summaries are changes from baseline.
+    Change,
+    /// Adjusted, ANCOVA, regression, mixed model.
+    Adjusted,
+    Clustered,
+    /// A rank test or medians.
+    Ranked,
+    /// Log-transformed, geometric means.
+    Transformed,
+    /// p corrected for multiple comparisons.
+    Corrected,
+    /// Survival: log-rank, Kaplan–Meier percentages.
+    TimeToEvent,
+    /// The p compares more groups, or other ones, than are printed beside it.
+    OtherGroups,
+    Imputed,
+    /// The sentence leaves open which figures the p belongs to.
+    Unclear,
+}
+
+/// Where the test of a result is named.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct StatedTest {
+    pub test: Stated<Test>,
+    /// Named for this very result (its sentence, its row's mark); otherwise the Methods only propose it.
+    pub here: bool,
+}
+
+/// A result: indexes into [`Readings`]. Arithmetic on one group is a result of its own, with that group alone.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct ReportedResult {
+    pub p: Option<usize>,
+    pub interval: Option<usize>,
+    pub statistic: Option<usize>,
+    pub estimate: Option<usize>,
+    /// In printed order; two or more when the result compares them.
+    pub groups: Vec<usize>,
+    /// Candidates in order; those stated `here` first.
+    pub tests: Vec<StatedTest>,
+    /// With the place that says it.
+    pub features: Vec<(Feature, Span)>,
+}
+
+impl ReportedResult {
+    pub fn has(&self, feature: Feature) -> bool {
+        self.features.iter().any(|&(f, _)| f == feature)
+    }
+}
+
+/// Joins the readings of a manuscript to results, in reading order: inside a sentence, never by mere nearness.
+pub fn join(manuscript: &Manuscript, scan: &Scan, readings: &Readings, context: &Context) -> Vec<ReportedResult> {
+    let mut results = Vec::new();
+    let mut from = sentence::Members { p: 0..0, intervals: 0..0, statistics: 0..0, groups: 0..0, estimates: 0..0 };
+    loop {
+        // Readings are in reading order, so each list is walked once.
+        let next = [
+            readings.p.get(from.p.end).map(|x| x.sentence),
+            readings.intervals.get(from.intervals.end).map(|x| x.sentence),
+            readings.statistics.get(from.statistics.end).map(|x| x.sentence),
+            readings.groups.get(from.groups.end).map(|x| x.sentence),
+            readings.estimates.get(from.estimates.end).map(|x| x.sentence),
+        ];
+        let Some(id) = next.into_iter().flatten().min() else { break };
+        from = sentence::Members {
+            p: run(&readings.p, from.p.end, |x| x.sentence == id),
+            intervals: run(&readings.intervals, from.intervals.end, |x| x.sentence == id),
+            statistics: run(&readings.statistics, from.statistics.end, |x| x.sentence == id),
+            groups: run(&readings.groups, from.groups.end, |x| x.sentence == id),
+            estimates: run(&readings.estimates, from.estimates.end, |x| x.sentence == id),
+        };
+        sentence::join(&scan.view(manuscript, id), &from, readings, context, &mut results);
+    }
+    results
+}
+
+/// The run of list members from `start` that a test accepts.
+fn run<T>(list: &[T], start: usize, accept: impl Fn(&T) -> bool) -> std::ops::Range<usize> {
+    start..start + list[start..].iter().take_while(|x| accept(x)).count()
+}

@@ -1,0 +1,411 @@
+//! Counts and percentages: `45/101 (44.6%)`, `45 of 101 (44.6%)`, `12 patients (26.7%)`, `44.6% (45/101)`,
+//! `Sixteen (76%) of the 21`, `Of the 786 students, 22 (3%)`, `26.9%`.
+
+use super::super::lexicon::{self, Classes};
+use super::super::sentence::SentenceView;
+use super::super::token::{Style, TokenKind};
+use super::super::{Figure, Inference, Origin};
+use super::{Draft, Setting, empty, printed};
+use crate::manuscript::SectionKind;
+use crate::printed::Printed;
+
+/// A count or percentage summary starting at token `i`.
+pub(super) fn read(view: &SentenceView, i: usize, setting: &Setting, taken: &[bool]) -> Option<Draft> {
+    fraction(view, i).or_else(|| count_and_percent(view, i, taken)).or_else(|| percent_first(view, i, setting, taken))
+}
+
+/// A count in digits or words: `45`, `Sixteen`, `One hundred and forty nine`; gives the token after it.
+pub(super) fn count_at(view: &SentenceView, i: usize) -> Option<(u64, usize)> {
+    let token = view.get(i)?;
+    if token.style != Style::Plain {
+        return None;
+    }
+    if let Some(p) = token.number() {
+        // A sign, a decimal neighbour or a label (`Table 2`, `day 7`) makes it no count.
+        let glued =
+            i > 0 && !view.spaced(i) && (view.signs(i - 1, &['-', '.', '/', '·', '×']) || view.get(i - 1)?.is_word());
+        let glued = glued && !(view.sign(i - 1, '-') && view.spaced(i - 1));
+        return p.count().filter(|_| !glued && !after_label(view, i)).map(|c| (c, i + 1));
+    }
+    if !token.is(Classes::NUMBER_WORD) {
+        return None;
+    }
+    let (mut total, mut part, mut at, mut any) = (0u64, 0u64, i, false);
+    loop {
+        if let Some(v) =
+            view.get(at).filter(|t| t.is(Classes::NUMBER_WORD)).and_then(|_| lexicon::number_word(view.word(at)))
+        {
+            if v == 100 {
+                part = part.max(1) * 100;
+            } else {
+                part += v;
+            }
+            any = true;
+            at += 1;
+        } else if any
+            && (view.sign(at, '-') || (view.eq(at, "and") && part >= 100))
+            && view.is(at + 1, Classes::NUMBER_WORD)
+        {
+            at += 1;
+        } else if any && view.eq(at, "thousand") {
+            total = part * 1000;
+            part = 0;
+            at += 1;
+        } else {
+            break;
+        }
+    }
+    any.then_some((total + part, at))
+}
+
+/// "Table 2", "day 7", "type 2": the number is part of a name.
+fn after_label(view: &SentenceView, i: usize) -> bool {
+    i > 0 && view.is(i - 1, Classes::LABEL) && !view.any(i - 1, &["no", "number"])
+}
+
+fn whole(view: &SentenceView, value: u64, first: usize, last: usize) -> Figure {
+    printed(view, Printed::whole(value), first, last)
+}
+
+/// A percentage with its sign at `at`; gives the token after the sign.
+fn percent_at(view: &SentenceView, at: usize) -> Option<(Printed, usize)> {
+    let p = view.number(at)?;
+    if view.sign(at + 1, '%') {
+        Some((p, at + 2))
+    } else if view.any(at + 1, &["percent"]) || (view.eq(at + 1, "per") && view.eq(at + 2, "cent")) {
+        Some((p, at + 2 + usize::from(view.eq(at + 1, "per"))))
+    } else {
+        None
+    }
+}
+
+/// A percentage in brackets at or a few plain words after `at`: `(44.6%)`, `; 44.6%`; gives its last token.
+fn percent_in_brackets(view: &SentenceView, at: usize, words: usize) -> Option<(Printed, usize)> {
+    let mut open = at;
+    while open < at + words
+        && view.get(open)?.is_word()
+        && !view.is(open, Classes::VERSUS)
+        && !view.any(open, &["and", "or", "to"])
+    {
+        open += 1;
+        if view.sign(open, '-') && view.get(open + 1).is_some_and(|t| t.is_word()) {
+            open += 1;
+        }
+    }
+    if !view.signs(open, &['(', '[', ',', ';', '=']) || (view.signs(open, &[',', ';', '=']) && open > at) {
+        return None;
+    }
+    let (percent, next) = percent_at(view, open + 1)?;
+    if view.signs(open, &[',', ';', '=']) {
+        return Some((percent, next - 1));
+    }
+    // the bracket closes, or goes on after a comma or semicolon
+    if view.signs(next, &[')', ']']) {
+        Some((percent, next))
+    } else if view.signs(next, &[',', ';', ':']) {
+        Some((percent, next - 1))
+    } else {
+        None
+    }
+}
+
+/// The denominator after "of", "of the", "out of", "/", "among": gives its value, its token and the token after it.
+fn denominator(view: &SentenceView, at: usize) -> Option<(u64, usize, usize)> {
+    let mut k = at;
+    if view.sign(k, '/') {
+        k += 1;
+    } else if view.eq(k, "out") && view.eq(k + 1, "of") {
+        k += 2;
+    } else if view.eq(k, "of") {
+        k += 1;
+    } else {
+        return None;
+    }
+    let by_word = !view.sign(at, '/');
+    if by_word {
+        while view.any(k, &["the", "a", "total", "of", "all", "these", "those", "our", "its", "their"]) {
+            k += 1;
+        }
+    }
+    let (total, next) = if by_word { count_at(view, k)? } else { (view.number(k)?.count()?, k + 1) };
+    // `of 20 mg`, `of 0.5`
+    (!view.sign(next, '%') && !view.is(next, Classes::UNIT)).then_some((total, k, next))
+}
+
+/// `45/101 (44.6%)`, `45 of 101 patients (44.6%)`, `18 of 64`.
+fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
+    let (events, next) = count_at(view, i)?;
+    // `12 patients of 45`, `12 women (…) of` is left to counts.
+    let words = (next..next + 3)
+        .take_while(|&k| view.get(k).is_some_and(|t| t.is_word()) && !view.eq(k, "of") && !view.eq(k, "out"))
+        .count();
+    let by_slash = view.sign(next, '/');
+    if !by_slash && view.sign(next + words, '/') {
+        return None;
+    }
+    let at = if by_slash { next } else { next + words };
+    let (total, k, end) = denominator(view, at)?;
+    let plausible = total > 1 && events <= total && !(by_slash && view.sign(end, '/'));
+    if !plausible {
+        // 30/2 (males/females) and dates are no fractions; `50 of 45` would be a slip only with a percent beside it.
+        let (percent, last) = percent_in_brackets(view, end, 0)?;
+        if events <= total || !by_slash || total <= 1 {
+            return None;
+        }
+        let mut group = empty(view, i, last);
+        (group.events, group.total, group.percent) =
+            (Some(whole(view, events, i, next - 1)), Some(whole(view, total, k, end - 1)), Some(percent));
+        group.n = group.total;
+        group.one_expression = true;
+        return Some(Draft { first: i, last, group });
+    }
+    let allowed = if by_slash { 8 } else { 3 };
+    let found = percent_in_brackets(view, end, 0).or_else(|| percent_in_brackets(view, end, allowed));
+    let (percent, last) = match found {
+        Some((p, last)) => (Some(p), last),
+        None => (None, end - 1),
+    };
+    if percent.is_none() {
+        // Without a percentage a slash may be a unit, a date or a score; "of" may be anything.
+        let bracket = i > 0 && view.signs(i - 1, &['(', '[']) && view.signs(end, &[')', ']', ',', ';']);
+        let members = view.is(end, Classes::GROUP);
+        if by_slash && !(bracket || members)
+            || !by_slash && !(members || words > 0 || view.signs(end, &[')', ',', '.']))
+        {
+            return None;
+        }
+        if by_slash && total < 8 {
+            return None;
+        }
+        if view.any(at, &["out"]) || view.any(at, &["of"]) {
+            let scale =
+                view.any(end, &["points", "items", "days", "weeks", "months", "years", "hours", "mg", "ml", "times"]);
+            if scale {
+                return None;
+            }
+        }
+    }
+    let mut group = empty(view, i, last);
+    group.events = Some(whole(view, events, i, next - 1));
+    group.total = Some(whole(view, total, k, end - 1));
+    group.n = group.total;
+    group.percent = percent;
+    group.one_expression = true;
+    Some(Draft { first: i, last, group })
+}
+
+/// `12 (26.7%)`, `12 patients (26.7%)`, `Sixteen (76%) of the 21`, `n = 12 (26.7%)`.
+fn count_and_percent(view: &SentenceView, i: usize, taken: &[bool]) -> Option<Draft> {
+    let (events, next) = count_at(view, i)?;
+    let (percent, last) = percent_in_brackets(view, next, 0).or_else(|| percent_in_brackets(view, next, 4))?;
+    // `1.2 (26%)` and a percent after a comma are taken only where a count can be meant.
+    if view.signs(next, &[',', ';', '=']) && !(i > 0 && view.sign(i - 1, '=')) {
+        return None;
+    }
+    if taken[next..=last].iter().any(|&t| t) || percent.value() > 100.0 {
+        return None;
+    }
+    let mut group = empty(view, i, last);
+    group.events = Some(whole(view, events, i, next - 1));
+    group.percent = Some(percent);
+    let mut end = last;
+    if let Some((total, k, after)) = denominator(view, last + 1).filter(|&(t, ..)| t >= events) {
+        group.total = Some(whole(view, total, k, after - 1));
+        group.one_expression = true;
+        end = after - 1;
+    } else if let Some((total, span)) = of_the(view, i).filter(|&(t, _)| t >= events) {
+        group.total =
+            Some(Figure { printed: Printed::whole(total), origin: Origin::Inferred(Inference::SameSentence, span) });
+    }
+    group.n = group.total;
+    group.span = view.span(i, end);
+    Some(Draft { first: i, last: end, group })
+}
+
+/// "Of the 786 treated students, …" opening the sentence or clause before token `i`.
+fn of_the(view: &SentenceView, i: usize) -> Option<(u64, crate::text::Span)> {
+    let mut k = i;
+    while k > 0 {
+        k -= 1;
+        let opens = view.any(k, &["of", "among"])
+            && (k == 0 || view.signs(k - 1, &['.', ';', '(']) || (view.sign(k - 1, ',') && k < i));
+        if !opens {
+            continue;
+        }
+        let mut at = k + 1;
+        while view.any(at, &["the", "these", "those", "all", "a", "total", "of", "our"]) {
+            at += 1;
+        }
+        let (total, next) = count_at(view, at)?;
+        let members = (next..i).take(8).any(|m| view.is(m, Classes::GROUP));
+        return (members && next <= i && !view.sign(next, '%')).then(|| (total, view.span(at, next - 1)));
+    }
+    None
+}
+
+/// `44.6% (45/101)`, `44.6% (n = 45)`, `44.6% (45 of 101)`, and percentages alone.
+fn percent_first(view: &SentenceView, i: usize, setting: &Setting, taken: &[bool]) -> Option<Draft> {
+    if view.style(i) != Style::Plain {
+        return None;
+    }
+    let (percent, next) = percent_at(view, i)?;
+    // `60% of the sample (100/163)`
+    let words =
+        (next..next + 5).take_while(|&k| view.get(k).is_some_and(|t| t.is_word()) && !view.is(k, Classes::AND)).count();
+    let open = if view.signs(next, &['(', '[']) { next } else { next + words };
+    if view.signs(open, &['(', '[']) && !taken[open] {
+        let mut at = open + 1;
+        if view.is(at, Classes::N) && view.sign(at + 1, '=') {
+            at += 2;
+        }
+        if let Some((events, after)) = count_at(view, at) {
+            let base = Some(whole(view, events, at, after - 1));
+            if let Some((total, k, end)) = denominator(view, after).filter(|&(t, ..)| events <= t && t > 1)
+                && let Some(close) = (end..(end + 4).min(view.len())).find(|&c| view.signs(c, &[')', ']', ',', ';']))
+            {
+                let last = if view.signs(close, &[')', ']']) { close } else { close - 1 };
+                let mut group = empty(view, i, last);
+                (group.events, group.percent) = (base, Some(percent));
+                group.total = Some(whole(view, total, k, end - 1));
+                group.n = group.total;
+                group.one_expression = true;
+                return Some(Draft { first: i, last, group });
+            }
+            if at > open + 1 && open == next && view.signs(after, &[')', ']', ',', ';']) {
+                // 44.6% (n = 45): events as a rule; the size of a group when the percentage is of it is rarer.
+                let last = if view.signs(after, &[')', ']']) { after } else { after - 1 };
+                let mut group = empty(view, i, last);
+                (group.events, group.percent) = (base, Some(percent));
+                return Some(Draft { first: i, last, group });
+            }
+        }
+    }
+    alone(view, i, percent, next, setting, taken)
+}
+
+/// Words before or after a percentage that show that it is no share of a group.
+const NOT_SHARE_BEFORE: &[&str] = &[
+    "by",
+    "than",
+    "least",
+    "about",
+    "approximately",
+    "around",
+    "nearly",
+    "power",
+    "ci",
+    "level",
+    "of",
+    "additional",
+    "relative",
+    "absolute",
+    "difference",
+    "within",
+    "over",
+    "above",
+    "below",
+    "under",
+    "exceeding",
+    "exceeded",
+    "minus",
+    "plus",
+    "up",
+    "a",
+    "an",
+    "another",
+    "further",
+    "reduction",
+    "increase",
+    "decrease",
+    "attrition",
+    "dose",
+    "solution",
+    "assuming",
+    "confidence",
+];
+const NOT_SHARE_AFTER: &[&str] = &[
+    "ci",
+    "confidence",
+    "power",
+    "significance",
+    "level",
+    "reduction",
+    "increase",
+    "decrease",
+    "improvement",
+    "difference",
+    "lower",
+    "higher",
+    "greater",
+    "less",
+    "more",
+    "larger",
+    "smaller",
+    "reductions",
+    "increases",
+    "chance",
+    "probability",
+    "limits",
+    "credible",
+    "interval",
+    "solution",
+    "chlorhexidine",
+    "alcohol",
+    "ethanol",
+    "formalin",
+    "concentration",
+    "w",
+    "v",
+    "point",
+    "points",
+    "drop",
+    "dropout",
+    "attrition",
+    "relative",
+    "absolute",
+    "change",
+    "decline",
+    "loss",
+    "gain",
+    "cream",
+    "gel",
+    "ointment",
+];
+
+fn alone(
+    view: &SentenceView,
+    i: usize,
+    percent: Printed,
+    next: usize,
+    setting: &Setting,
+    taken: &[bool],
+) -> Option<Draft> {
+    use SectionKind::*;
+    if !matches!(setting.section, Results | Abstract | Discussion | Unknown) || percent.value() > 100.0 {
+        return None;
+    }
+    let before = i.checked_sub(1);
+    if let Some(b) = before {
+        let sign = matches!(
+            view.get(b).map(|t| t.kind),
+            Some(TokenKind::Sign('-' | '+' | '±' | '<' | '>' | '≤' | '≥' | '~' | '/' | '=' | '×'))
+        );
+        if sign
+            || view.any(b, NOT_SHARE_BEFORE) && !(view.any(b, &["of"]) && share_of(view, b))
+            || taken[b] && view.signs(b, &['(', '['])
+        {
+            return None;
+        }
+    }
+    if view.signs(next, &['-', '/', '±']) || view.any(next, NOT_SHARE_AFTER) || view.any(next + 1, NOT_SHARE_AFTER) {
+        return None;
+    }
+    let mut group = empty(view, i, next - 1);
+    group.percent = Some(percent);
+    Some(Draft { first: i, last: next - 1, group })
+}
+
+/// "rate of 12%", "proportion of 45%".
+fn share_of(view: &SentenceView, of: usize) -> bool {
+    of > 0 && view.any(of - 1, &["rate", "rates", "proportion", "prevalence", "incidence", "frequency", "percentage"])
+}

@@ -1,0 +1,63 @@
+//! The name of a group: "in the placebo group", "for vortex therapy", "controls".
+
+use super::super::lexicon::Classes;
+use super::super::sentence::SentenceView;
+use super::super::token::TokenKind;
+use super::Draft;
+
+/// Fills the labels that stand right behind the summaries, or behind a whole list with "respectively".
+pub(super) fn assign(view: &SentenceView, drafts: &mut [Draft]) {
+    for d in 0..drafts.len() {
+        let limit = drafts.get(d + 1).map_or(view.len(), |n| n.first);
+        let last = drafts[d].last;
+        drafts[d].group.label = behind(view, last + 1, limit).unwrap_or_default();
+        drafts[d].group.change = is_change(view, drafts[d].first);
+    }
+}
+
+/// Up to five words after "in", "for", "with", "among" within a few tokens.
+fn behind(view: &SentenceView, from: usize, limit: usize) -> Option<String> {
+    let stop = limit.min(from + 9);
+    let at = (from..stop).find(|&k| view.any(k, &["in", "for", "with", "among"]))?;
+    let mut first = at + 1;
+    while view.any(first, &["the", "a", "those", "patients", "participants", "subjects", "receiving", "treated", "of"])
+    {
+        first += 1;
+    }
+    let mut last = first;
+    while last < limit.min(first + 5) {
+        match view.get(last)?.kind {
+            TokenKind::Word if view.any(last, &["group", "groups", "arm", "arms"]) => break,
+            TokenKind::Word
+                if view.is(last, Classes::AND) || view.is(last, Classes::VERSUS) || view.is(last, Classes::COPULA) =>
+            {
+                break;
+            }
+            TokenKind::Word | TokenKind::Number(_) | TokenKind::Sign('-' | '+') => last += 1,
+            TokenKind::Sign(_) => break,
+        }
+    }
+    (last > first).then(|| view.quote(first, last - 1).to_string())
+}
+
+/// "change", "increase", "reduction" … told before the figure and after the last figure.
+fn is_change(view: &SentenceView, first: usize) -> bool {
+    (first.saturating_sub(16)..first).any(|k| {
+        view.any(
+            k,
+            &[
+                "change",
+                "changes",
+                "increase",
+                "increases",
+                "decrease",
+                "decreases",
+                "reduction",
+                "reductions",
+                "gain",
+                "loss",
+                "improvement",
+            ],
+        )
+    }) && !(first.saturating_sub(3)..first).any(|k| view.any(k, &["from", "to"]))
+}

@@ -1,0 +1,400 @@
+//! Means and medians with their spreads: `5.2 ± 1.1`, `5.2 (SD 1.1)`, `M = 5.2, SD = 1.1`, `mean (SD) 5.2 (1.1)`,
+//! `median 8 [IQR 7–10]`.
+
+use super::super::SpreadKind;
+use super::super::lexicon::Classes;
+use super::super::sentence::SentenceView;
+use super::super::token::{Style, TokenKind};
+use super::{Draft, Setting, empty, with_spread};
+use crate::printed::Printed;
+
+/// What a paragraph says its figures are, from "mean ± SD", "mean (SD)", "median (IQR)" on.
+#[derive(Clone, Copy, Debug, Default)]
+pub struct Declared {
+    /// What stands after ±.
+    pub plus_minus: Option<SpreadKind>,
+    /// What stands in brackets after a mean.
+    pub bracket: Option<SpreadKind>,
+    /// What stands in brackets after a median.
+    pub median: Option<SpreadKind>,
+}
+
+impl Declared {
+    /// Notes the declarations of one sentence; they hold until others follow.
+    pub fn note(&mut self, view: &SentenceView) {
+        for i in 0..view.len() {
+            let mean = view.is(i, Classes::MEAN) && !view.sign(i + 1, '=');
+            let median = view.is(i, Classes::MEDIAN);
+            if !mean && !median {
+                continue;
+            }
+            // mean ± SD, mean (±SD), means (standard deviations), median [interquartile range]
+            let mut at = i + 1;
+            if view.any(at, &["value", "values"]) {
+                at += 1;
+            }
+            let mut sign = None;
+            while let Some(TokenKind::Sign(c @ ('±' | '(' | '[' | ',' | '+' | '-'))) = view.get(at).map(|t| t.kind) {
+                if c == '±' {
+                    sign = Some('±');
+                } else if matches!(c, '(' | '[') && sign.is_none() {
+                    sign = Some('(');
+                }
+                at += 1;
+                if at > i + 5 {
+                    break;
+                }
+            }
+            if view.any(at, &["and", "with", "plus"]) && sign.is_none() {
+                // "means and standard deviations"
+                sign = Some('±');
+                at += 1;
+            }
+            let Some((kind, _)) = spread_word(view, at) else { continue };
+            if median {
+                self.median = Some(kind);
+            } else if sign == Some('±') {
+                self.plus_minus = Some(kind);
+                if view.signs(at.saturating_sub(2), &['(', '[']) {
+                    self.bracket = Some(kind);
+                }
+            } else if sign == Some('(') {
+                self.bracket = Some(kind);
+            }
+        }
+    }
+}
+
+/// A name of a spread at token `at`; gives the token after it.
+pub(super) fn spread_word(view: &SentenceView, mut at: usize) -> Option<(SpreadKind, usize)> {
+    if view.eq(at, "1") {
+        at += 1;
+    }
+    if view.eq(at, "standard") {
+        if view.any(at + 1, &["deviation", "deviations"]) {
+            return Some((SpreadKind::Sd, at + 2));
+        }
+        if view.any(at + 1, &["error", "errors"]) {
+            let of_mean = view.phrase(at + 2, &["of", "the", "mean"]);
+            let of = view.phrase(at + 2, &["of", "mean"]) || view.phrase(at + 2, &["of", "means"]);
+            return Some((
+                SpreadKind::Se,
+                at + if of_mean {
+                    5
+                } else if of {
+                    4
+                } else {
+                    2
+                },
+            ));
+        }
+        return None;
+    }
+    if view.eq(at, "s") && view.sign(at + 1, '.') {
+        let stop = |k: usize| k + usize::from(view.sign(k, '.'));
+        if view.eq(at + 2, "d") {
+            return Some((SpreadKind::Sd, stop(at + 3)));
+        }
+        if view.eq(at + 2, "e") {
+            let mut k = stop(at + 3);
+            if view.eq(k, "m") {
+                k = stop(k + 1);
+            }
+            return Some((SpreadKind::Se, k));
+        }
+    }
+    if view.is(at, Classes::SD) && !view.any(at, &["deviation", "deviations"]) {
+        return Some((SpreadKind::Sd, at + 1));
+    }
+    if view.is(at, Classes::SE) && !view.any(at, &["error"]) {
+        return Some((SpreadKind::Se, at + 1));
+    }
+    if view.is(at, Classes::IQR) {
+        let mut next = at + 1;
+        if view.any(at, &["interquartile"]) && view.any(next, &["range", "ranges", "interval"]) {
+            next += 1;
+            if view.signs(next, &['(', '[']) && view.eq(next + 1, "iqr") && view.signs(next + 2, &[')', ']']) {
+                next += 3;
+            }
+        }
+        return Some((SpreadKind::Iqr, next));
+    }
+    if view.eq(at, "inter") && view.sign(at + 1, '-') && view.eq(at + 2, "quartile") {
+        return Some((SpreadKind::Iqr, at + 3 + usize::from(view.any(at + 3, &["range", "ranges"]))));
+    }
+    if view.any(at, &["range", "ranges", "ranging", "ranged"]) {
+        return Some((SpreadKind::Range, at + 1));
+    }
+    if (view.any(at, &["min", "minimum"])) && (view.signs(at + 1, &['-', ',', '/']) || view.eq(at + 1, "and")) {
+        return Some((SpreadKind::Range, at + 3));
+    }
+    None
+}
+
+/// A mean or median summary starting at token `i`.
+pub(super) fn read(view: &SentenceView, i: usize, setting: &Setting, taken: &[bool]) -> Option<Draft> {
+    m_equals(view, i).or_else(|| {
+        let (centre, next) = centre(view, i)?;
+        plus_minus(view, i, centre, next, setting)
+            .or_else(|| bracketed(view, i, centre, next, setting, taken))
+            .or_else(|| after_comma(view, i, centre, next))
+    })
+}
+
+/// A signed number that may open a summary: a sign only where it stands for itself.
+fn centre(view: &SentenceView, i: usize) -> Option<(Printed, usize)> {
+    let token = view.get(i)?;
+    if token.style != Style::Plain {
+        return None;
+    }
+    match token.kind {
+        TokenKind::Number(p) => Some((p, i + 1)),
+        TokenKind::Sign('-' | '+') if !view.spaced(i + 1) || view.spaced(i) => {
+            // `3-5 ± 1`: a dash between figures is no sign.
+            let follows_figure =
+                i > 0 && !view.spaced(i) && (view.number(i - 1).is_some() || view.get(i - 1)?.is_word());
+            if follows_figure { None } else { view.signed(i) }
+        }
+        _ => None,
+    }
+}
+
+/// The token after a unit (`mmol/L`, `kg`, `%`, `mL/m^2^`, `beats per minute`), at most six tokens on.
+fn after_unit(view: &SentenceView, at: usize, stop: impl Fn(usize) -> bool) -> Option<usize> {
+    (at..(at + 8).min(view.len() + 1)).find(|&k| stop(k)).filter(|&k| {
+        (at..k).all(|j| {
+            view.get(j).is_some_and(|t| match t.kind {
+                TokenKind::Word => {
+                    !view.any(j, &["and", "or", "to", "versus", "vs", "in", "for", "with", "was", "were"])
+                }
+                TokenKind::Number(_) => t.style != Style::Plain || view.any(j, &["2", "3", "100", "10"]),
+                TokenKind::Sign(c) => matches!(c, '/' | '%' | '·' | '-' | '.' | '°' | '^' | 'µ' | '×'),
+            })
+        })
+    })
+}
+
+/// `5.2 ± 1.1`, `5.2 mg ± 1.1 mg`, `45.2 ± SD 3.1`, `± 12.1 (SD)`.
+fn plus_minus(view: &SentenceView, i: usize, centre: Printed, next: usize, setting: &Setting) -> Option<Draft> {
+    let sign = if view.sign(next, '±') {
+        next
+    } else {
+        let at = after_unit(view, next, |k| view.sign(k, '±'))?;
+        if at > next + 3 {
+            return None;
+        }
+        at
+    };
+    let mut at = sign + 1;
+    let mut kind = None;
+    if let Some((k, after)) = spread_word(view, at) {
+        kind = Some(k);
+        at = after;
+    }
+    let spread = view.number(at)?;
+    let mut last = at;
+    // visit windows: `3 (±2 weeks)` never come here; tolerances `100 ± 5 °C` of devices do, and cannot be told apart.
+    if view.sign(last + 1, '%') {
+        last += 1;
+    }
+    // 5.2 ± 1.1 (SD)
+    if kind.is_none() {
+        let open = after_unit(view, last + 1, |k| view.signs(k, &['(', '[']) || k > last + 3);
+        if let Some(o) = open.filter(|&o| view.signs(o, &['(', '[']))
+            && let Some((k, after)) = spread_word(view, o + 1)
+            && view.signs(after, &[')', ']'])
+        {
+            kind = Some(k);
+        } else if let Some((k, after)) = spread_word(view, last + 1)
+            && !view.number(after).is_some_and(|p| p.places > 0)
+            && matches!(k, SpreadKind::Sd | SpreadKind::Se)
+        {
+            kind = Some(k);
+        }
+    }
+    let kind = kind.or(setting.declared.plus_minus).unwrap_or(SpreadKind::Unstated);
+    let mut group = with_spread(empty(view, i, last), kind, &[spread]);
+    group.mean = Some(centre);
+    Some(Draft { first: i, last, group })
+}
+
+/// `5.2 (SD 1.1)`, `5.2 years (±1.1)`, `mean (SD) 5.2 (1.1)`, `median 8 (IQR 7–10)`, `45 (range 20–70)`.
+fn bracketed(
+    view: &SentenceView,
+    i: usize,
+    centre: Printed,
+    next: usize,
+    setting: &Setting,
+    taken: &[bool],
+) -> Option<Draft> {
+    let open = after_unit(view, next, |k| view.signs(k, &['(', '[', '{']))?;
+    if taken.get(open).copied().unwrap_or(false) || open > next + 4 {
+        return None;
+    }
+    let mut at = open + 1;
+    let mut kind = None;
+    if view.sign(at, '±') {
+        at += 1;
+        kind = setting.declared.bracket.or(setting.declared.plus_minus).or(Some(SpreadKind::Unstated));
+        if open == next && centre.places == 0 && !near_mean(view, i) && view.get(at + 1).is_some_and(|t| t.is_word()) {
+            // a visit window: `at 3 (±2 weeks)`
+            return None;
+        }
+    }
+    if let Some((k, after)) = spread_word(view, at) {
+        kind = Some(k);
+        at = after;
+        while view.signs(at, &['=', ':', ',', '±', '~', ')', '(', '['])
+            || view.any(at, &["of", "from", "was", "is", "between"])
+        {
+            at += 1;
+        }
+    }
+    let (a, mut end) = view.signed(at)?;
+    let median_near = near(view, i, Classes::MEDIAN);
+    // a pair: quartiles or a range
+    let pair = pair_after(view, end);
+    if let Some((b, after)) = pair {
+        let declared = kind.or(if median_near { setting.declared.median } else { None });
+        let named_median = median_near && !near_mean_later(view, i);
+        let kind = match declared {
+            Some(k @ (SpreadKind::Iqr | SpreadKind::Range)) => k,
+            Some(_) => return None,
+            None if named_median => SpreadKind::Unstated,
+            None => return None,
+        };
+        let close = after_unit(view, after, |k| view.signs(k, &[')', ']', '}', ';', ',']))?;
+        let last = if view.signs(close, &[')', ']', '}']) { close } else { close - 1 };
+        let mut group = with_spread(empty(view, i, last), kind, &[a, b]);
+        if named_median || (kind == SpreadKind::Iqr) {
+            group.median = Some(centre);
+        } else {
+            group.mean = Some(centre);
+        }
+        return Some(Draft { first: i, last, group });
+    }
+    if view.sign(end, '%') {
+        // 12 (26.7%) is a count unless the spread is named
+        kind?;
+        end += 1;
+    }
+    let close = after_unit(view, end, |k| view.signs(k, &[')', ']', '}', ';', ',']))?;
+    if !view.signs(close, &[')', ']', '}']) && kind.is_none() {
+        return None;
+    }
+    let last = if view.signs(close, &[')', ']', '}']) { close } else { close - 1 };
+    let kind = match kind {
+        Some(k) => k,
+        None => {
+            // No name inside the bracket: the sentence must have said that means are told.
+            if a.negative || close != end || view.sign(end, ',') {
+                return None;
+            }
+            match (setting.declared.bracket, near_mean(view, i)) {
+                (Some(k), _) if setting.declared.bracket.is_some() && (centre.places > 0 || a.places > 0) => k,
+                (Some(k), true) => k,
+                (None, true) if a.places > 0 || centre.places > 0 => SpreadKind::Unstated,
+                _ => return None,
+            }
+        }
+    };
+    let mut group = with_spread(empty(view, i, last), kind, &[a]);
+    if median_near && kind == SpreadKind::Iqr {
+        group.median = Some(centre);
+    } else {
+        group.mean = Some(centre);
+    }
+    Some(Draft { first: i, last, group })
+}
+
+/// `– 10`, `, 10`, `to 10`, `; 10` after a first figure.
+fn pair_after(view: &SentenceView, mut at: usize) -> Option<(Printed, usize)> {
+    if view.sign(at, '%') || (view.get(at).is_some_and(|t| t.is_word()) && view.any(at + 1, &["to", "and"])) {
+        at += 1;
+    }
+    if !(view.signs(at, &['-', ',', ';', ':', '/']) || view.any(at, &["to", "and", "through"])) {
+        return None;
+    }
+    view.signed(at + 1)
+}
+
+/// `mean 5.2, SD 1.1`, `5.2 years, SD = 1.1`, `12.0 months, IQR 8–16`.
+fn after_comma(view: &SentenceView, i: usize, centre: Printed, next: usize) -> Option<Draft> {
+    let comma = after_unit(view, next, |k| view.signs(k, &[',', ';']))?;
+    if comma > next + 3 {
+        return None;
+    }
+    let (kind, mut at) = spread_word(view, comma + 1)?;
+    if !near_mean(view, i) && !near(view, i, Classes::MEDIAN) {
+        return None;
+    }
+    while view.signs(at, &['=', ':', '±', '[', '(']) || view.any(at, &["of", "from"]) {
+        at += 1;
+    }
+    let (a, end) = view.signed(at)?;
+    let pair = pair_after(view, end);
+    let (spread, last) = match (kind, pair) {
+        (SpreadKind::Iqr | SpreadKind::Range, Some((b, after))) => (vec![a, b], after - 1),
+        (SpreadKind::Iqr, None) => (vec![a], end - 1),
+        (SpreadKind::Range, None) => return None,
+        _ => (vec![a], end - 1),
+    };
+    let mut group = with_spread(empty(view, i, last), kind, &spread);
+    if kind == SpreadKind::Iqr || (near(view, i, Classes::MEDIAN) && !near_mean(view, i)) {
+        group.median = Some(centre);
+    } else {
+        group.mean = Some(centre);
+    }
+    Some(Draft { first: i, last, group })
+}
+
+/// `M = 5.2, SD = 1.1`, `(mean = 5.2; SE = 0.3)`, `Mdn = 8`, `mean: 5.2 (SD: 1.1)`.
+fn m_equals(view: &SentenceView, i: usize) -> Option<Draft> {
+    let median = view.is(i, Classes::MEDIAN);
+    if !(view.is(i, Classes::MEAN) || median) || !view.signs(i + 1, &['=', ':']) {
+        return None;
+    }
+    let (centre, next) = view.signed(i + 2)?;
+    let mut at =
+        after_unit(view, next, |k| view.signs(k, &[',', ';', '(', ')', '[']) || k >= view.len()).unwrap_or(next);
+    if view.signs(at, &[',', ';', '(', '[']) || view.eq(at, "and") {
+        at += 1;
+    }
+    let mut group = empty(view, i, next - 1);
+    let mut last = next - 1;
+    if let Some((kind, after)) = spread_word(view, at) {
+        let mut k = after;
+        while view.signs(k, &['=', ':', '±']) || view.any(k, &["of"]) {
+            k += 1;
+        }
+        if let Some((a, end)) = view.signed(k) {
+            let pair = if matches!(kind, SpreadKind::Iqr | SpreadKind::Range) { pair_after(view, end) } else { None };
+            last = pair.map_or(end, |p| p.1) - 1;
+            let spread: Vec<Printed> = std::iter::once(a).chain(pair.map(|p| p.0)).collect();
+            group = with_spread(empty(view, i, last), kind, &spread);
+        }
+    }
+    if median {
+        group.median = Some(centre);
+    } else {
+        group.mean = Some(centre);
+    }
+    Some(Draft { first: i, last, group })
+}
+
+/// Whether a word of a class stands within the dozen tokens before, after the last semicolon.
+fn near(view: &SentenceView, i: usize, class: Classes) -> bool {
+    (i.saturating_sub(14)..i).rev().take_while(|&k| !view.sign(k, ';')).any(|k| view.is(k, class))
+}
+
+fn near_mean(view: &SentenceView, i: usize) -> bool {
+    near(view, i, Classes::MEAN)
+}
+
+/// Whether "mean" stands nearer than "median".
+fn near_mean_later(view: &SentenceView, i: usize) -> bool {
+    (i.saturating_sub(14)..i)
+        .rev()
+        .find(|&k| view.is(k, Classes::MEAN) || view.is(k, Classes::MEDIAN))
+        .is_some_and(|k| view.is(k, Classes::MEAN))
+}

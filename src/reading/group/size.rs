@@ -1,0 +1,78 @@
+//! Group sizes printed in the same sentence: `(n = 24)` before or after a summary.
+
+use super::super::lexicon::Classes;
+use super::super::sentence::SentenceView;
+use super::super::{Figure, Inference, Origin};
+use super::Draft;
+use crate::printed::Printed;
+
+/// Fills `n` where the sentence prints it for the group.
+pub(super) fn assign(view: &SentenceView, drafts: &mut [Draft]) {
+    if drafts.is_empty() {
+        return;
+    }
+    let sizes = sizes(view);
+    if sizes.is_empty() {
+        return;
+    }
+    let open: Vec<usize> = (0..drafts.len()).filter(|&d| drafts[d].group.n.is_none()).collect();
+    if open.is_empty() {
+        return;
+    }
+    // `(n = 20) and … (n = 22) …, 5.2 ± 1.1 and 6.1 ± 1.0`: all sizes first, as many as groups, in the same order.
+    let all_first = sizes.last().is_some_and(|s| s.1 < drafts[open[0]].first);
+    let all_last = sizes.first().is_some_and(|s| s.1 > drafts[open[open.len() - 1]].last);
+    if sizes.len() > 1 && (all_first || all_last) {
+        if open.len().is_multiple_of(sizes.len()) && interleaved(view, drafts, &open) {
+            for (k, &d) in open.iter().enumerate() {
+                let (n, at) = sizes[k % sizes.len()];
+                give(view, &mut drafts[d], n, at);
+            }
+            return;
+        }
+        if all_last {
+            return;
+        }
+    }
+    for &d in &open {
+        let (first, last) = (drafts[d].first, drafts[d].last);
+        // right behind: `5.2 ± 1.1 (n = 24)`, `5.2 ± 1.1, n = 24`
+        let behind = sizes.iter().find(|s| s.1 > last && s.1 <= last + 6 && !crosses(view, last + 1, s.1));
+        let before = sizes.iter().rev().find(|s| s.1 < first);
+        if let Some(&(n, at)) = behind.or(before) {
+            give(view, &mut drafts[d], n, at);
+        }
+    }
+}
+
+fn give(view: &SentenceView, draft: &mut Draft, n: u64, at: usize) {
+    draft.group.n = Some(Figure {
+        printed: Printed::whole(n),
+        origin: Origin::Inferred(Inference::SameSentence, view.span(at, at)),
+    });
+}
+
+/// A comma or another figure between a summary and the size behind it.
+fn crosses(view: &SentenceView, from: usize, to: usize) -> bool {
+    (from..to).any(|k| {
+        view.number(k).is_some() || view.signs(k, &[';']) || view.is(k, Classes::AND) || view.is(k, Classes::VERSUS)
+    })
+}
+
+/// Summaries stand in one list: joined by "and", "versus" or commas only.
+fn interleaved(view: &SentenceView, drafts: &[Draft], open: &[usize]) -> bool {
+    open.windows(2).all(|w| {
+        let (a, b) = (drafts[w[0]].last + 1, drafts[w[1]].first);
+        b.saturating_sub(a) <= 6
+            && (a..b).any(|k| view.is(k, Classes::AND) || view.is(k, Classes::VERSUS) || view.sign(k, ','))
+    })
+}
+
+/// All `n = 24` of a sentence with the token of the figure.
+fn sizes(view: &SentenceView) -> Vec<(u64, usize)> {
+    (0..view.len())
+        .filter(|&i| view.any(i, &["n"]) && view.sign(i + 1, '='))
+        .filter_map(|i| view.number(i + 2).and_then(Printed::count).map(|n| (n, i + 2)))
+        .filter(|&(_, at)| !view.sign(at + 1, '-') && !view.sign(at + 1, '%') && !view.sign(at + 1, '/'))
+        .collect()
+}
