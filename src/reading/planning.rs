@@ -127,7 +127,7 @@ impl Reader<'_, '_> {
     fn legends(&mut self) {
         let v = self.view;
         for (n, x) in self.p.iter().enumerate() {
-            if !matches!(x.relation, Relation::Less | Relation::AtMost) {
+            if !customary(x) {
                 continue;
             }
             let mut i = x.first;
@@ -177,13 +177,15 @@ impl Reader<'_, '_> {
             let last = self.until(x.last, self.p.get(n + 1).map(|next| next.first));
             self.add(PlanningKind::Legend, first, last, x.value, None);
         }
-        // "*Significantly different from controls (p < 0.05)": the mark opens the sentence.
-        let opening = v.signs(0, MARKS) || v.style(0) == Style::Superscript && is_mark_letter(v, 0);
+        // "*Significantly different from controls (p < 0.05)": the mark opens the sentence. The mark may be lost:
+        // "Statistically significant (p < 0.05)." has no subject that could be a result.
+        let bare = v.len() < 12 && (v.is(0, Classes::SIGNIFICANCE) || v.any(0, &["statistical"]));
+        let opening = bare || v.signs(0, MARKS) || v.style(0) == Style::Superscript && is_mark_letter(v, 0);
         if opening
             && self.p.len() == 1
             && !self.defines[0]
-            && matches!(self.p[0].relation, Relation::Less | Relation::AtMost)
-            && (1..6).any(|i| {
+            && customary(&self.p[0])
+            && (0..6).any(|i| {
                 v.is(i, Classes::SIGNIFICANCE.or(Classes::DIFFERENCE))
                     || v.any(i, &["vs", "different", "versus", "compared"])
             })
@@ -1030,6 +1032,12 @@ fn is_mark_letter(v: &SentenceView, i: usize) -> bool {
     let w = v.word(i);
     w.len() == 1 && w.as_bytes()[0].is_ascii_alphabetic() && !w.eq_ignore_ascii_case("p")
         || v.number(i).is_some() && v.style(i) == Style::Superscript
+}
+
+/// `<` and one of the limits that legends use: a mark with another figure tells the p of its own cells.
+fn customary(x: &PExpression) -> bool {
+    const LIMITS: [f64; 9] = [0.1, 0.05, 0.025, 0.02, 0.01, 0.005, 0.002, 0.001, 0.0001];
+    matches!(x.relation, Relation::Less | Relation::AtMost) && x.value.is_some_and(|v| LIMITS.contains(&v.value()))
 }
 
 /// A mark opens a legend at the start of the sentence or after a stop.
