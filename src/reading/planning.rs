@@ -75,6 +75,8 @@ const DECLARES: &[&str] = &[
     "chosen",
     "used",
     "specified",
+    "determined",
+    "by",
     "fixed",
     "interpreted",
     "threshold",
@@ -545,6 +547,8 @@ impl Reader<'_, '_> {
                         "statistical",
                         "overall",
                         "specified",
+                        "determined",
+                        "by",
                         "adjusted",
                         "assuming",
                         "with",
@@ -790,7 +794,7 @@ impl Reader<'_, '_> {
                     last += 1;
                 }
                 let first = if i > 0 && v.any(i - 1, &["a", "the", "total", "required"]) { i - 1 } else { i };
-                let value = v.number(number);
+                let value = self.count(number);
                 self.add(PlanningKind::SampleSize, first, last, value, None);
                 return;
             }
@@ -800,17 +804,23 @@ impl Reader<'_, '_> {
             return;
         }
         for w in 0..v.len() {
-            if !v.any(w, &["required", "needed", "necessary", "sufficient", "require", "recruit", "enroll", "enrol"]) {
+            let needed = v.any(w, NEEDED)
+                || v.any(w, &["randomised", "randomized", "included", "enrolled", "recruited"])
+                    && v.any(w.wrapping_sub(1), &["be"])
+                    && (w.saturating_sub(4)..w)
+                        .any(|j| v.any(j, &["need", "needed", "had", "will", "required", "needs"]));
+            if !needed {
                 continue;
             }
             let behind = (w.saturating_sub(16)..w).rev().find(|&j| self.headcount(j) && self.people_after(j));
             let ahead = (w + 1..(w + 9).min(v.len())).find(|&j| self.headcount(j) && self.people_after(j));
-            let Some(number) = behind.or(ahead) else { continue };
+            let active = v.any(w, &["recruit", "enroll", "enrol", "require", "need", "needs"]);
+            let Some(number) = (if active { ahead.or(behind) } else { behind.or(ahead) }) else { continue };
             let (mut first, mut last) = (number.min(w), number.max(w));
-            if v.any(w, &["recruit", "enroll", "enrol", "require"]) && behind.is_some() {
+            if v.any(w, &["recruit", "enroll", "enrol", "require"]) && ahead.is_none() {
                 continue;
             }
-            if first > 0 && v.any(first - 1, &["approximately", "about", "least", "of"]) {
+            if first > 0 && v.any(first - 1, &["approximately", "about", "least"]) {
                 first -= 1;
             }
             // With its assumption: "to detect a 30 % difference between treatments".
@@ -833,7 +843,7 @@ impl Reader<'_, '_> {
             if let Some(assuming) = (first.saturating_sub(40)..first).find(|&j| v.any(j, &["assuming"])) {
                 first = assuming;
             }
-            self.add(PlanningKind::SampleSize, first, last, v.number(number), None);
+            self.add(PlanningKind::SampleSize, first, last, self.count(number), None);
             return;
         }
     }
@@ -862,7 +872,13 @@ impl Reader<'_, '_> {
                 .then(|| v.any(j.wrapping_sub(2), &["power", "difference", "sd", "alpha"]))
                 .unwrap_or(false)
             && !v.signs(j.wrapping_sub(1), &['[', '±', '/'])
+            && !((1990..2040).contains(&n) && !self.people_after(j))
             && !((1900..2100).contains(&n) && v.any(j.wrapping_sub(1), &["in", "since", "until", "from"]))
+    }
+
+    /// The count in digits or in one word.
+    fn count(&self, j: usize) -> Option<Printed> {
+        self.view.number(j).or_else(|| lexicon::number_word(self.view.word(j)).map(Printed::whole))
     }
 
     fn people_after(&self, j: usize) -> bool {
@@ -985,6 +1001,10 @@ const TEST_WORDS: &[&str] = &[
     "rate",
     "analysis",
 ];
+
+/// Words that say how many it takes.
+const NEEDED: &[&str] =
+    &["required", "needed", "necessary", "sufficient", "require", "recruit", "enroll", "enrol", "need", "needs"];
 
 /// Who or what is counted into a sample.
 const PEOPLE: &[&str] = &[

@@ -150,7 +150,9 @@ impl Scope<'_> {
             flat.is(j, PLAN)
                 && !(flat.any(j, &["predicted"])
                     && flat.any(j.wrapping_sub(1), &["than", "significantly", "not", "and"]))
-                || flat.any(j, &["to"]) && flat.any(j + 1, INQUIRE)
+                || flat.any(j, &["to"])
+                    && flat.any(j + 1, INQUIRE)
+                    && !flat.any(j.wrapping_sub(1), &["failed", "unable", "fail", "fails"])
                 || flat.any(j, &["was", "were", "are", "is"])
                     && (j + 1..j + 4).any(|h| flat.is(h, METHOD))
                     && !(j + 1..j + 4).any(|h| flat.is(h, Classes::SIGNIFICANCE.or(Classes::NEGATION)))
@@ -189,7 +191,8 @@ impl Scope<'_> {
         let from = k.saturating_sub(reach).max(self.clause.first);
         let near = (from..k).rev().find(|&j| {
             flat.is(j, Classes::NEGATION)
-                && !flat.any(j + 1, &["only", "longer", "surprisingly", "just", "least", "more"])
+                && !flat.any(j + 1, NOT_DENYING)
+                && !(flat.any(j + 1, &["more", "less", "later"]) && flat.any(j + 2, &["than"]))
                 && !(flat.any(j, &["no"]) && flat.sign(j + 1, '.'))
                 && !(j + 1..k).any(|h| flat.signs(h, &[';', ':']) || flat.is(h, BREAK))
                 // "without complications, X was significantly higher"
@@ -265,6 +268,10 @@ impl Scope<'_> {
             return None;
         }
         let end = self.clause.end;
+        // "Significantly, the majority …" speaks of importance.
+        if flat.sign(k + 1, ',') && k == self.clause.first {
+            return None;
+        }
         let target = flat.find(
             k + 1..(k + 7).min(end),
             Classes::DIFFERENCE
@@ -330,6 +337,23 @@ impl Scope<'_> {
             || (k + 1..(k + 3).min(end)).any(|j| flat.is(j, Classes::TREND));
         let last = target.unwrap_or(k);
         let negation = self.negation(k, 9);
+        // "significantly influences" without figures is common knowledge.
+        let present = adverb
+            && target == Some(k + 1)
+            && flat.is(k + 1, DIFFER)
+            && flat.word(k + 1).ends_with('s')
+            && !self.facts.figures;
+        let alike =
+            target.is_some_and(|t| flat.is(t, Classes::SIMILAR) && t <= k + 2) && flat.any(k, &["statistically"]);
+        if present && negation.is_none() {
+            return None;
+        }
+        if alike && negation.is_none() {
+            return self.found(ClaimKind::NoDifference, k, last);
+        }
+        if flat.any(last, &["loss"]) && flat.any(last + 1, &["to"]) {
+            return None;
+        }
         let kind = if negation.is_some() || non || self.clause.denied {
             ClaimKind::NotSignificant
         } else if hedged {
@@ -423,9 +447,8 @@ impl Scope<'_> {
                 }
                 continue;
             }
-            if flat.any(k + 1, &["only", "longer", "just", "more", "yet", "because", "due", "later", "less"])
-                || self.planned(k)
-            {
+            let bound = flat.any(k + 1, &["more", "less", "later", "fewer"]) && flat.any(k + 2, &["than"]);
+            if flat.any(k + 1, NOT_DENYING) || bound || self.planned(k) {
                 continue;
             }
             let noun_like = flat.any(k, &["no", "without", "lack", "absence", "none", "neither", "nor"]);
@@ -452,8 +475,8 @@ impl Scope<'_> {
                         || flat.any(
                             j,
                             &[
-                                "with", "in", "was", "were", "had", "who", "that", "at", "on", "during", "other",
-                                "adverse", "side",
+                                "with", "in", "was", "were", "had", "who", "that", "at", "on", "during", "adverse",
+                                "side",
                             ],
                         )
                 });
@@ -804,6 +827,9 @@ fn clause_of_apposition(clause: &Clause, k: usize) -> bool {
 
 /// Verbs that link a subject with "similar".
 const LINKING: &[&str] = &["was", "were", "remained", "is", "are", "appeared", "seemed", "been", "stayed", "be"];
+
+/// After a negation these turn it into something else: "not only", "no longer".
+const NOT_DENYING: &[&str] = &["only", "longer", "surprisingly", "just", "least", "yet", "because", "due"];
 
 /// Verbs of inquiry after "to".
 const INQUIRE: &[&str] = &[
