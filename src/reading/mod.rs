@@ -5,6 +5,7 @@
 
 pub mod claim;
 mod claim_words;
+pub mod estimate;
 pub mod group;
 pub mod interval;
 pub mod lexicon;
@@ -341,21 +342,42 @@ pub fn read(manuscript: &Manuscript, scan: &Scan) -> Readings {
         if matches!(section.kind, SectionKind::References | SectionKind::Back) {
             continue;
         }
-        let sentences = scan.of_block(number);
-        // A paragraph's "values are mean ± SD" may stand behind the figures that it explains.
-        let mut declared = group::Declared::default();
-        for id in sentences.clone() {
-            declared.note(&scan.view(manuscript, id));
-        }
-        let mut setting = group::Setting { section: section.kind, declared };
-        for id in sentences {
-            read_sentence(&scan.view(manuscript, id), &mut setting, &mut readings);
-        }
+        read_paragraph(manuscript, scan, scan.of_block(number), section.kind, &mut readings);
     }
     readings
 }
 
-fn read_sentence(view: &SentenceView, setting: &mut group::Setting, readings: &mut Readings) {
+fn read_paragraph(
+    manuscript: &Manuscript,
+    scan: &Scan,
+    sentences: std::ops::Range<u32>,
+    section: SectionKind,
+    readings: &mut Readings,
+) {
+    // A paragraph's "values are mean ± SD" may stand behind the figures that it explains.
+    let mut declared = group::Declared::default();
+    let mut mentions = Vec::new();
+    for id in sentences.clone() {
+        let view = scan.view(manuscript, id);
+        declared.note(&view);
+        group::total::mentions(&view, &mut mentions);
+    }
+    let mut setting = group::Setting { section, declared };
+    let mut level = None;
+    let (first_p, first_group) = (readings.p.len(), readings.groups.len());
+    for id in sentences {
+        read_sentence(&scan.view(manuscript, id), &mut setting, &mut level, readings);
+    }
+    let tested = |sentence| readings.p[first_p..].iter().any(|p| p.sentence == sentence);
+    group::total::fill(&mut readings.groups[first_group..], &mentions, tested);
+}
+
+fn read_sentence(
+    view: &SentenceView,
+    setting: &mut group::Setting,
+    level: &mut Option<Figure>,
+    readings: &mut Readings,
+) {
     let mut taken = vec![false; view.len()];
     let p = p::find(view);
     let mut defines = vec![false; p.len()];
@@ -375,8 +397,10 @@ fn read_sentence(view: &SentenceView, setting: &mut group::Setting, readings: &m
             shared: x.shared,
         });
     }
-    interval::read(view, &mut taken, &mut readings.intervals);
+    let first_interval = readings.intervals.len();
+    *level = interval::read(view, &mut taken, &mut readings.intervals).or(*level);
     statistic::read(view, &mut taken, &mut readings.statistics);
+    estimate::read(view, *level, &mut taken, &mut readings.intervals, first_interval, &mut readings.estimates);
     group::read(view, setting, &mut taken, &mut readings.groups);
     claim::read(view, &p, &mut readings.claims);
 }

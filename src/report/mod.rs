@@ -5,7 +5,10 @@
 //! `&self`, so that manuscripts of a batch may be rendered side by side and written in order.
 
 mod account;
+mod galley;
 pub mod json;
+mod numbers;
+mod place;
 pub mod terminal;
 mod words;
 

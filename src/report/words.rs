@@ -182,3 +182,16 @@ pub fn ground(ground: Ground) -> &'static str {
         Ground::Reporting => "a matter of reporting; nothing is recomputed",
     }
 }
+
+/// An assumption, as a clause for people.
+pub fn assumption(assumption: Assumption) -> &'static str {
+    match assumption {
+        Assumption::TwoSided => "the test is two-sided, as nothing else is stated",
+        Assumption::Level95 => "the interval is a 95 % interval, as no level is printed",
+        Assumption::Alpha05 => "alpha is 0.05, as nothing else is stated",
+        Assumption::SpreadUnnamed => "the spread, which is not named, is a standard deviation or a standard error",
+        Assumption::Unadjusted => "the groups are independent and the comparison is unadjusted",
+        Assumption::PlausibleDf => "the degrees of freedom are not printed; plausible ones were tried",
+        Assumption::UsualScale => "the limits were computed on the scale that is usual for this measure",
+    }
+}

@@ -4,6 +4,8 @@ mod count;
 mod label;
 mod mean;
 mod size;
+pub mod total;
+mod versus;
 
 pub use mean::Declared;
 
@@ -55,8 +57,6 @@ pub fn read(view: &SentenceView, setting: &mut Setting, taken: &mut [bool], out:
     label::assign(view, &mut drafts);
     out.extend(drafts.into_iter().map(|d| d.group));
 }
-
-mod versus;
 
 fn empty(view: &SentenceView, first: usize, last: usize) -> Group {
     Group {

@@ -1,0 +1,73 @@
+//! Totals and sizes that stand elsewhere in the paragraph.
+//!
+//! The nearest total is not a denominator: a size is taken over from another place only where the printed
+//! percentage itself picks it out, or where the paragraph tells of one group alone.
+
+use super::super::lexicon::Classes;
+use super::super::sentence::SentenceView;
+use super::super::{Figure, Group, Inference, Origin};
+use super::count::count_at;
+use crate::printed::Printed;
+use crate::text::Span;
+
+/// A number of participants mentioned in running text.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct Mention {
+    pub size: u64,
+    pub span: Span,
+    pub sentence: u32,
+}
+
+/// Appends the sizes a sentence mentions: `22 males`, `(n = 24)`, `of the 786 students`, `45/101`.
+pub fn mentions(view: &SentenceView, out: &mut Vec<Mention>) {
+    let mut i = 0;
+    while i < view.len() {
+        let Some((size, next)) = count_at(view, i) else {
+            i += 1;
+            continue;
+        };
+        let after_n = i > 1 && view.sign(i - 1, '=') && view.is(i - 2, Classes::N);
+        let denominator = i > 0 && view.sign(i - 1, '/') && view.number(i.wrapping_sub(2)).is_some();
+        let members = (next..next + 4)
+            .take_while(|&k| view.get(k).is_some_and(|t| t.is_word()) || view.sign(k, '-'))
+            .take_while(|&k| !view.is(k, Classes::UNIT) && !view.is(k, Classes::COPULA) && !view.is(k, Classes::AND))
+            .any(|k| view.is(k, Classes::GROUP) && !view.any(k, &["groups", "group", "arms"]));
+        if size > 1 && (after_n || denominator || members) {
+            out.push(Mention { size, span: view.span(i, next - 1), sentence: view.id });
+        }
+        i = next;
+    }
+}
+
+/// Fills totals and sizes of one paragraph's groups. `tested(sentence)` tells whether a sentence prints a p-value.
+pub fn fill(groups: &mut [Group], mentions: &[Mention], tested: impl Fn(u32) -> bool) {
+    for group in groups {
+        if let (Some(events), Some(percent), None) = (group.events, group.percent, group.total) {
+            let fits = |m: &&Mention| {
+                let share = 100.0 * events.printed.value() / m.size as f64;
+                m.size as f64 >= events.printed.value() && percent.rounded().widened(1e-12).contains(share)
+            };
+            let mut found = mentions.iter().filter(|m| !m.span.overlaps(group.span)).filter(fits);
+            if let Some(first) = found.next()
+                && found.all(|m| m.size == first.size)
+            {
+                let origin = Origin::Inferred(Inference::OtherSentence, first.span);
+                group.total = Some(Figure { printed: Printed::whole(first.size), origin });
+                group.n = group.total;
+            }
+        }
+        if group.n.is_none() && group.events.is_none() && !tested(group.sentence) {
+            // One group alone: the only size named before it.
+            let mut before = mentions
+                .iter()
+                .filter(|m| m.span.start < group.span.start && m.sentence <= group.sentence)
+                .filter(|m| m.span.block == group.span.block);
+            if let Some(first) = before.next()
+                && before.all(|m| m.size == first.size)
+            {
+                let origin = Origin::Inferred(Inference::OtherSentence, first.span);
+                group.n = Some(Figure { printed: Printed::whole(first.size), origin });
+            }
+        }
+    }
+}
