@@ -78,13 +78,9 @@ pub fn order(facts: &Facts, of: Pair) -> Vec<Finding> {
                     r.interval.is_some_and(|k| readings.intervals[k].span == i.span)
                         && r.estimate.is_some_and(|k| readings.estimates[k].scale == Scale::Reciprocal)
                 });
-                if i.lower.value() > i.upper.value() && !reciprocal {
-                    let says = format!(
-                        "Printed {}; the lower limit {} is above the upper limit {}.",
-                        wording::one_line(facts.quote(i.span)),
-                        i.lower,
-                        i.upper
-                    );
+                if (i.reversed || i.lower.value() > i.upper.value()) && !reciprocal {
+                    let quote = wording::one_line(facts.quote(i.span));
+                    let says = format!("Printed {quote}; the larger limit stands first.");
                     findings.push(about(facts, i.span, says));
                 }
             }
@@ -124,10 +120,18 @@ pub fn estimate_outside_interval(facts: &Facts) -> Vec<Finding> {
         let (Some(e), Some(i)) = (result.estimate, result.interval) else { continue };
         let (e, i) = (&readings.estimates[e], &readings.intervals[i]);
         // The pair must be beyond doubt: same sentence, estimate first, no other estimate or interval between.
-        let between = |s: Span| s != e.span && s != i.span && s.block == e.span.block && s.start >= e.span.start && s.end <= i.span.end;
-        let apart = readings.estimates.iter().any(|x| between(x.span)) || readings.intervals.iter().any(|x| between(x.span));
+        let between = |s: Span| {
+            s != e.span && s != i.span && s.block == e.span.block && s.start >= e.span.start && s.end <= i.span.end
+        };
+        let apart =
+            readings.estimates.iter().any(|x| between(x.span)) || readings.intervals.iter().any(|x| between(x.span));
         let alike = e.percent == i.percent || e.measure != Measure::Other;
-        if e.sentence != i.sentence || e.span.start > i.span.start || apart || !alike || i.lower.value() > i.upper.value() {
+        if e.sentence != i.sentence
+            || e.span.start > i.span.start
+            || apart
+            || !alike
+            || i.lower.value() > i.upper.value()
+        {
             continue;
         }
         let held = i.lower.rounded().hull(i.upper.rounded());
