@@ -713,7 +713,23 @@ pub(super) const WORDS: &[Row] = &[
     (&["alpha", "significance", "α"], Classes::ALPHA),
     (&["power", "powered", "beta"], Classes::POWER),
     (&["sided", "tailed", "tail", "side"], Classes::SIDED),
-    (&["sample", "required", "needed", "necessary", "sufficient", "recruit", "enroll", "enrol"], Classes::SAMPLE),
+    (
+        &[
+            "sample",
+            "required",
+            "needed",
+            "necessary",
+            "sufficient",
+            "recruit",
+            "need",
+            "needs",
+            "enrolled",
+            "recruited",
+            "enroll",
+            "enrol",
+        ],
+        Classes::SAMPLE,
+    ),
     (
         &[
             "group",

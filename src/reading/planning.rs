@@ -75,6 +75,8 @@ const DECLARES: &[&str] = &[
     "chosen",
     "used",
     "specified",
+    "determined",
+    "by",
     "fixed",
     "interpreted",
     "threshold",
@@ -127,7 +129,7 @@ impl Reader<'_, '_> {
     fn legends(&mut self) {
         let v = self.view;
         for (n, x) in self.p.iter().enumerate() {
-            if !matches!(x.relation, Relation::Less | Relation::AtMost) {
+            if !customary(x) {
                 continue;
             }
             let mut i = x.first;
@@ -177,13 +179,15 @@ impl Reader<'_, '_> {
             let last = self.until(x.last, self.p.get(n + 1).map(|next| next.first));
             self.add(PlanningKind::Legend, first, last, x.value, None);
         }
-        // "*Significantly different from controls (p < 0.05)": the mark opens the sentence.
-        let opening = v.signs(0, MARKS) || v.style(0) == Style::Superscript && is_mark_letter(v, 0);
+        // "*Significantly different from controls (p < 0.05)": the mark opens the sentence. The mark may be lost:
+        // "Statistically significant (p < 0.05)." has no subject that could be a result.
+        let bare = v.len() < 12 && (v.is(0, Classes::SIGNIFICANCE) || v.any(0, &["statistical"]));
+        let opening = bare || v.signs(0, MARKS) || v.style(0) == Style::Superscript && is_mark_letter(v, 0);
         if opening
             && self.p.len() == 1
             && !self.defines[0]
-            && matches!(self.p[0].relation, Relation::Less | Relation::AtMost)
-            && (1..6).any(|i| {
+            && customary(&self.p[0])
+            && (0..6).any(|i| {
                 v.is(i, Classes::SIGNIFICANCE.or(Classes::DIFFERENCE))
                     || v.any(i, &["vs", "different", "versus", "compared"])
             })
@@ -543,6 +547,8 @@ impl Reader<'_, '_> {
                         "statistical",
                         "overall",
                         "specified",
+                        "determined",
+                        "by",
                         "adjusted",
                         "assuming",
                         "with",
@@ -788,7 +794,7 @@ impl Reader<'_, '_> {
                     last += 1;
                 }
                 let first = if i > 0 && v.any(i - 1, &["a", "the", "total", "required"]) { i - 1 } else { i };
-                let value = v.number(number);
+                let value = self.count(number);
                 self.add(PlanningKind::SampleSize, first, last, value, None);
                 return;
             }
@@ -798,17 +804,23 @@ impl Reader<'_, '_> {
             return;
         }
         for w in 0..v.len() {
-            if !v.any(w, &["required", "needed", "necessary", "sufficient", "require", "recruit", "enroll", "enrol"]) {
+            let needed = v.any(w, NEEDED)
+                || v.any(w, &["randomised", "randomized", "included", "enrolled", "recruited"])
+                    && v.any(w.wrapping_sub(1), &["be"])
+                    && (w.saturating_sub(4)..w)
+                        .any(|j| v.any(j, &["need", "needed", "had", "will", "required", "needs"]));
+            if !needed {
                 continue;
             }
             let behind = (w.saturating_sub(16)..w).rev().find(|&j| self.headcount(j) && self.people_after(j));
             let ahead = (w + 1..(w + 9).min(v.len())).find(|&j| self.headcount(j) && self.people_after(j));
-            let Some(number) = behind.or(ahead) else { continue };
+            let active = v.any(w, &["recruit", "enroll", "enrol", "require", "need", "needs"]);
+            let Some(number) = (if active { ahead.or(behind) } else { behind.or(ahead) }) else { continue };
             let (mut first, mut last) = (number.min(w), number.max(w));
-            if v.any(w, &["recruit", "enroll", "enrol", "require"]) && behind.is_some() {
+            if v.any(w, &["recruit", "enroll", "enrol", "require"]) && ahead.is_none() {
                 continue;
             }
-            if first > 0 && v.any(first - 1, &["approximately", "about", "least", "of"]) {
+            if first > 0 && v.any(first - 1, &["approximately", "about", "least"]) {
                 first -= 1;
             }
             // With its assumption: "to detect a 30 % difference between treatments".
@@ -831,7 +843,7 @@ impl Reader<'_, '_> {
             if let Some(assuming) = (first.saturating_sub(40)..first).find(|&j| v.any(j, &["assuming"])) {
                 first = assuming;
             }
-            self.add(PlanningKind::SampleSize, first, last, v.number(number), None);
+            self.add(PlanningKind::SampleSize, first, last, self.count(number), None);
             return;
         }
     }
@@ -860,7 +872,13 @@ impl Reader<'_, '_> {
                 .then(|| v.any(j.wrapping_sub(2), &["power", "difference", "sd", "alpha"]))
                 .unwrap_or(false)
             && !v.signs(j.wrapping_sub(1), &['[', '±', '/'])
+            && !((1990..2040).contains(&n) && !self.people_after(j))
             && !((1900..2100).contains(&n) && v.any(j.wrapping_sub(1), &["in", "since", "until", "from"]))
+    }
+
+    /// The count in digits or in one word.
+    fn count(&self, j: usize) -> Option<Printed> {
+        self.view.number(j).or_else(|| lexicon::number_word(self.view.word(j)).map(Printed::whole))
     }
 
     fn people_after(&self, j: usize) -> bool {
@@ -984,6 +1002,10 @@ const TEST_WORDS: &[&str] = &[
     "analysis",
 ];
 
+/// Words that say how many it takes.
+const NEEDED: &[&str] =
+    &["required", "needed", "necessary", "sufficient", "require", "recruit", "enroll", "enrol", "need", "needs"];
+
 /// Who or what is counted into a sample.
 const PEOPLE: &[&str] = &[
     "patients",
@@ -1030,6 +1052,12 @@ fn is_mark_letter(v: &SentenceView, i: usize) -> bool {
     let w = v.word(i);
     w.len() == 1 && w.as_bytes()[0].is_ascii_alphabetic() && !w.eq_ignore_ascii_case("p")
         || v.number(i).is_some() && v.style(i) == Style::Superscript
+}
+
+/// `<` and one of the limits that legends use: a mark with another figure tells the p of its own cells.
+fn customary(x: &PExpression) -> bool {
+    const LIMITS: [f64; 9] = [0.1, 0.05, 0.025, 0.02, 0.01, 0.005, 0.002, 0.001, 0.0001];
+    matches!(x.relation, Relation::Less | Relation::AtMost) && x.value.is_some_and(|v| LIMITS.contains(&v.value()))
 }
 
 /// A mark opens a legend at the start of the sentence or after a stop.

@@ -226,6 +226,10 @@ fn cut_at(flat: &Flat, first: usize, k: usize, finite: bool) -> Option<(usize, L
         if flat.any(k + 1, &["there", "no"]) && (k + 1..k + 14).any(|j| flat.finite(j)) {
             return Some((k + 1, Lead::Main));
         }
+        // "a decrease in A and no change in B": the verb is left out.
+        if flat.any(k + 1, &["no"]) && flat.find(k + 2..k + 4, Classes::DIFFERENCE).is_some() {
+            return Some((k + 1, Lead::With));
+        }
         // "was lower in A and did not differ in B": the second verb says something else.
         if flat.finite(k + 1) && flat.find(k + 2..k + 4, Classes::NEGATION).is_some() {
             return Some((k + 1, Lead::Main));

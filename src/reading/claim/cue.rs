@@ -98,6 +98,13 @@ const RESULT_NOUNS: &[&str] = &[
 pub(super) fn find(flat: &Flat, clause: &Clause, facts: &Facts) -> Option<Found> {
     let range = clause.first..clause.end;
     let finite = (range.clone()).find(|&k| flat.finite(k));
+    // Any other past form behind its subject: "delivered their infants at similar weeks".
+    let finite = finite.or_else(|| {
+        range
+            .clone()
+            .skip(1)
+            .find(|&k| flat.word(k).len() > 4 && flat.word(k).ends_with("ed") && !flat.is(k - 1, FUNCTION))
+    });
     // A clause without a verb claims nothing, except after "with" and in apposition.
     if finite.is_none()
         && clause.lead == Lead::Main
@@ -143,7 +150,9 @@ impl Scope<'_> {
             flat.is(j, PLAN)
                 && !(flat.any(j, &["predicted"])
                     && flat.any(j.wrapping_sub(1), &["than", "significantly", "not", "and"]))
-                || flat.any(j, &["to"]) && flat.any(j + 1, INQUIRE)
+                || flat.any(j, &["to"])
+                    && flat.any(j + 1, INQUIRE)
+                    && !flat.any(j.wrapping_sub(1), &["failed", "unable", "fail", "fails"])
                 || flat.any(j, &["was", "were", "are", "is"])
                     && (j + 1..j + 4).any(|h| flat.is(h, METHOD))
                     && !(j + 1..j + 4).any(|h| flat.is(h, Classes::SIGNIFICANCE.or(Classes::NEGATION)))
@@ -182,7 +191,8 @@ impl Scope<'_> {
         let from = k.saturating_sub(reach).max(self.clause.first);
         let near = (from..k).rev().find(|&j| {
             flat.is(j, Classes::NEGATION)
-                && !flat.any(j + 1, &["only", "longer", "surprisingly", "just", "least", "more"])
+                && !flat.any(j + 1, NOT_DENYING)
+                && !(flat.any(j + 1, &["more", "less", "later"]) && flat.any(j + 2, &["than"]))
                 && !(flat.any(j, &["no"]) && flat.sign(j + 1, '.'))
                 && !(j + 1..k).any(|h| flat.signs(h, &[';', ':']) || flat.is(h, BREAK))
                 // "without complications, X was significantly higher"
@@ -258,6 +268,10 @@ impl Scope<'_> {
             return None;
         }
         let end = self.clause.end;
+        // "Significantly, the majority …" speaks of importance.
+        if flat.sign(k + 1, ',') && k == self.clause.first {
+            return None;
+        }
         let target = flat.find(
             k + 1..(k + 7).min(end),
             Classes::DIFFERENCE
@@ -323,6 +337,23 @@ impl Scope<'_> {
             || (k + 1..(k + 3).min(end)).any(|j| flat.is(j, Classes::TREND));
         let last = target.unwrap_or(k);
         let negation = self.negation(k, 9);
+        // "significantly influences" without figures is common knowledge.
+        let present = adverb
+            && target == Some(k + 1)
+            && flat.is(k + 1, DIFFER)
+            && flat.word(k + 1).ends_with('s')
+            && !self.facts.figures;
+        let alike =
+            target.is_some_and(|t| flat.is(t, Classes::SIMILAR) && t <= k + 2) && flat.any(k, &["statistically"]);
+        if present && negation.is_none() {
+            return None;
+        }
+        if alike && negation.is_none() {
+            return self.found(ClaimKind::NoDifference, k, last);
+        }
+        if flat.any(last, &["loss"]) && flat.any(last + 1, &["to"]) {
+            return None;
+        }
         let kind = if negation.is_some() || non || self.clause.denied {
             ClaimKind::NotSignificant
         } else if hedged {
@@ -416,9 +447,8 @@ impl Scope<'_> {
                 }
                 continue;
             }
-            if flat.any(k + 1, &["only", "longer", "just", "more", "yet", "because", "due", "later", "less"])
-                || self.planned(k)
-            {
+            let bound = flat.any(k + 1, &["more", "less", "later", "fewer"]) && flat.any(k + 2, &["than"]);
+            if flat.any(k + 1, NOT_DENYING) || bound || self.planned(k) {
                 continue;
             }
             let noun_like = flat.any(k, &["no", "without", "lack", "absence", "none", "neither", "nor"]);
@@ -430,6 +460,13 @@ impl Scope<'_> {
                 })
                 .unwrap_or((k + reach).min(self.clause.end));
             let Some(t) = flat.find(k + 1..until, targets) else { continue };
+            // "none reported complications associated with it": the participle belongs to a noun.
+            if flat.is(t, Classes::ASSOCIATION)
+                && flat.any(t, &["associated", "related", "linked"])
+                && !self.negated_predicate(k, t)
+            {
+                continue;
+            }
             let between = k + 1..t;
             if noun_like && !flat.any(k, &["neither", "nor", "none"]) {
                 // The noun denied must be the difference itself: "no patients with reduced function" denies patients.
@@ -438,8 +475,8 @@ impl Scope<'_> {
                         || flat.any(
                             j,
                             &[
-                                "with", "in", "was", "were", "had", "who", "that", "at", "on", "during", "other",
-                                "adverse", "side",
+                                "with", "in", "was", "were", "had", "who", "that", "at", "on", "during", "adverse",
+                                "side",
                             ],
                         )
                 });
@@ -471,6 +508,11 @@ impl Scope<'_> {
             return self.found(ClaimKind::NoDifference, k, t);
         }
         None
+    }
+
+    /// A form of "be" on either side of the negation: "was not associated", "none was related".
+    fn negated_predicate(&self, k: usize, t: usize) -> bool {
+        (k.saturating_sub(1)..t).any(|j| self.flat.any(j, &["was", "were", "is", "are", "be", "been"]))
     }
 
     /// "did not differ", "was not higher", "could not find any difference": not "not all patients improved".
@@ -540,23 +582,22 @@ impl Scope<'_> {
             if !flat.is(k, Classes::SIMILAR) || self.planned(k) || self.possible(k) {
                 continue;
             }
-            let copula = (k.saturating_sub(5).max(self.clause.first)..k).any(|j| {
-                flat.any(j, &["was", "were", "remained", "is", "are", "appeared", "seemed", "been", "stayed"])
+            // "were very similar", but not "were given a similar dose".
+            let verb = (k.saturating_sub(5).max(self.clause.first)..k).rev().find(|&j| flat.any(j, LINKING));
+            let predicate = verb.is_some_and(|verb| {
+                !(verb + 1..k)
+                    .any(|j| flat.is(j, FUNCTION) && !flat.any(j, &["also", "both", "more"]) || flat.is(j, METHOD))
             });
-            let predicate = copula
-                && !(k.saturating_sub(4).max(self.clause.first)..k).any(|j| {
-                    flat.any(j, &["the", "with", "by", "in", "using", "of", "a", "an"]) && !flat.any(k - 1, &["the"])
-                });
             let next = (k + 1..k + 6).find(|&j| flat.any(j, OTHER_LIKENESS));
             let claimed = if flat
                 .any(k, &["unchanged", "unaffected", "unaltered", "indistinguishable", "undifferentiated"])
             {
-                copula || flat.any(k.wrapping_sub(1), &["an", "and"])
+                verb.is_some() || flat.any(k.wrapping_sub(1), &["an", "and"])
             } else if flat.any(k, &["stable", "constant"]) {
                 flat.any(k.wrapping_sub(1), &["remained", "stayed", "relatively", "were"])
                     && flat.find(self.range(), METHOD).is_none()
             } else if flat.any(k, &["equally", "evenly", "comparably"]) {
-                copula
+                verb.is_some()
                     && (k + 1..k + 3).any(|j| {
                         flat.any(j, &["distributed", "balanced", "effective", "matched", "well", "common", "good"])
                     })
@@ -571,8 +612,25 @@ impl Scope<'_> {
                         .any(|j| flat.any(j, &["groups", "arms", "both", "two", "treatments", "three", "conditions"]))
                     && next.is_none()
             } else if predicate {
-                next.is_none_or(|j| flat.find(k + 1..j, THAN).is_some()) && !flat.any(k + 1, &["manner", "in", "way"])
-                    || flat.any(k + 1, &["in"]) && next.is_none()
+                // "was similar to that of earlier studies" compares with others, "similar to that of controls" does not.
+                let elsewhere = (k + 2..k + 8).any(|j| {
+                    flat.any(
+                        j,
+                        &[
+                            "previous",
+                            "previously",
+                            "earlier",
+                            "studies",
+                            "literature",
+                            "reported",
+                            "ours",
+                            "published",
+                        ],
+                    )
+                });
+                let manner = flat.any(k + 1, &["manner", "way", "fashion", "looking"])
+                    || flat.any(k + 2, &["appearance", "design", "taste", "shape"]);
+                !elsewhere && !manner
             } else {
                 // Attributive: "similar proportions of subjects reached", "had a similar impact".
                 let noun = (k + 1..k + 4).any(|j| flat.any(j, LIKE_NOUNS) || flat.is(j, Classes::DIFFERENCE));
@@ -600,6 +658,14 @@ impl Scope<'_> {
         None
     }
 
+    /// A form of "be" before `k` with nothing but adverbs between.
+    fn predicate(&self, k: usize) -> bool {
+        let flat = self.flat;
+        let from = k.saturating_sub(4).max(self.clause.first);
+        let be = (from..k).rev().find(|&j| flat.any(j, &["was", "were", "is", "are", "been"]));
+        be.is_some_and(|be| !(be + 1..k).any(|j| flat.is(j, FUNCTION.or(Classes::NEGATION)) && !flat.any(j, &["both"])))
+    }
+
     /// "was associated with", "correlated with", "predicted".
     fn association(&self) -> Option<Found> {
         let flat = self.flat;
@@ -608,7 +674,7 @@ impl Scope<'_> {
                 continue;
             }
             let verbal = flat.any(k, &["associated", "correlated", "related", "linked", "predicted", "predictive"])
-                && (k.saturating_sub(4).max(self.clause.first)..k).any(|j| flat.any(j, &["was", "were", "is", "are"]))
+                && self.predicate(k)
                 && flat.any(k + 1, &["with", "to", "of", "positively", "negatively", "inversely", "both"])
                 || flat.any(k, &["correlated", "predicted"]) && flat.finite(k) && self.facts.figures
                 || flat.any(k, &["predictors", "predictor"])
@@ -758,6 +824,12 @@ impl Scope<'_> {
 fn clause_of_apposition(clause: &Clause, k: usize) -> bool {
     clause.lead == Lead::With && k < clause.first + 6
 }
+
+/// Verbs that link a subject with "similar".
+const LINKING: &[&str] = &["was", "were", "remained", "is", "are", "appeared", "seemed", "been", "stayed", "be"];
+
+/// After a negation these turn it into something else: "not only", "no longer".
+const NOT_DENYING: &[&str] = &["only", "longer", "surprisingly", "just", "least", "yet", "because", "due"];
 
 /// Verbs of inquiry after "to".
 const INQUIRE: &[&str] = &[
