@@ -3,7 +3,7 @@
 use crate::printed::Range;
 use crate::query::Explanation;
 use crate::reading::Assumption;
-use crate::recompute::Quantity;
+use crate::recompute::{Quantity, Slip};
 
 /// What `asks` may hold in braces.
 ///
@@ -148,6 +148,18 @@ pub fn assumption(assumption: Assumption) -> Explanation {
         }
     };
     Explanation { kind: kind.to_owned(), says: says.to_owned() }
+}
+
+/// An innocent slip that restores the printed figure.
+pub fn slip(slip: &Slip) -> Explanation {
+    Explanation { kind: slip.kind.to_owned(), says: sentence(&slip.says) }
+}
+
+fn sentence(clause: &str) -> String {
+    let mut chars = clause.chars();
+    let first: String = chars.next().into_iter().flat_map(char::to_uppercase).collect();
+    let end = if clause.ends_with('.') { "" } else { "." };
+    format!("{first}{}{end}", chars.as_str())
 }
 
 #[cfg(test)]

@@ -54,7 +54,8 @@ fn backed<'a>(facts: &Facts<'a>, claim: &Claim, backing: Backing) -> Option<Foun
         Backing::PAboveAlpha => {
             let all = !p.is_empty() && p.iter().all(|p| is_effect(p) && alpha.below(p));
             let margin = sentence.contains("margin") || facts.context.non_inferiority.is_some();
-            all && !in_sentence().any(|p| elsewhere(&p)) && !(interval.is_some() && margin) && !excepted(&sentence)
+            let judged = interval.is_some() && margin;
+            all && !judged && !in_sentence().any(|p| elsewhere(&p)) && !excepted(&sentence)
         }
         Backing::NoPBelowAlpha => {
             let trend = p.iter().any(|p| matches!(p.role, Role::TrendOrJoint | Role::Interaction));

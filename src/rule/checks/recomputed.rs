@@ -113,7 +113,7 @@ fn finding(facts: &Facts, checked: &Checked, r: &Recomputation, all: &[&Recomput
     f.labels = facts.results[checked.result].groups.iter().map(|&i| facts.readings.groups[i].label.clone()).collect();
     f.fills = vec![("printed", printed), ("computed", computed), ("method", r.method.name.to_owned())];
     if let Some(slip) = all.iter().find_map(|r| r.slip.as_ref()) {
-        f.explanations.push(Explanation { kind: slip.kind.to_owned(), says: sentence(&slip.says) });
+        f.explanations.push(wording::slip(slip));
     }
     f.explanations.extend(r.assumptions.iter().map(|&a| wording::assumption(a)));
     let mut others: Vec<&str> = all.iter().map(|o| o.method.name).filter(|n| *n != r.method.name).collect();
@@ -217,13 +217,6 @@ pub fn with_p(quote: &str, at: std::ops::Range<usize>, p: &str) -> String {
 /// Printed without the letter P, as in a table cell.
 fn is_bare(quote: &str) -> bool {
     !quote.contains(['p', 'P'])
-}
-
-fn sentence(clause: &str) -> String {
-    let mut chars = clause.chars();
-    let first: String = chars.next().into_iter().flat_map(char::to_uppercase).collect();
-    let end = if clause.ends_with('.') { "" } else { "." };
-    format!("{first}{}{end}", chars.as_str())
 }
 
 #[cfg(test)]
