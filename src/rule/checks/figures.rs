@@ -131,7 +131,10 @@ pub fn estimate_outside_interval(facts: &Facts) -> Vec<Finding> {
         let between = |s: Span| s.block == from.block && from.end <= s.start && s.end <= to.start;
         let apart =
             readings.estimates.iter().any(|x| between(x.span)) || readings.intervals.iter().any(|x| between(x.span));
-        if from.block != to.block || from.start > to.start || apart {
+        // `OR0.5`: the figure read begins inside a printed one.
+        let before = &facts.manuscript.block(from).text[..from.start as usize];
+        let torn = before.ends_with(|c: char| c == '.' || c == ',' || c.is_ascii_digit());
+        if from.block != to.block || from.start > to.start || apart || torn {
             continue;
         }
         let (estimate, interval) = (wording::one_line(facts.quote(from)), wording::one_line(facts.quote(to)));
@@ -164,12 +167,11 @@ pub fn printed_zero(facts: &Facts) -> Vec<Finding> {
             let says = format!("Printed {}; a p-value can be very small, but not zero.", wording::one_line(quote));
             let mut f = Finding { weight: Weight::reporting(), ..about(facts, p.span, says) };
             let number = wording::last_number(quote);
-            // `0.000` stands for less than 0.0005; with two places nothing smaller than 0.01 is sure.
-            let bound = if p.value.is_some_and(|v| v.places >= 3) { "< 0.001" } else { "< 0.01" };
-            f.repair = number.map(|(at, _)| Draft {
+            // `0.000` stands for less than 0.0005, so that `< 0.001` is safe; and so on for other places.
+            f.repair = number.filter(|(_, places)| *places >= 2).map(|(at, places)| Draft {
                 kind: RepairKind::Replace,
                 at: p.span,
-                text: with_p(quote, at, bound),
+                text: with_p(quote, at, &format!("< 0.{:0>places$}", 1)),
                 needs_confirmation: p.relation != Relation::Equal,
             });
             f
