@@ -66,6 +66,7 @@ pub(crate) fn check(g: &Group, agreement: Agreement) -> Vec<Recomputation> {
     let below_all = target.range.hi < exact;
     let hold = match (g.one_expression, printed_here) {
         _ if g.approximate => Some(reason::ABOUT),
+        _ if matches!(total.origin, Origin::Inferred(Inference::Siblings, _)) => None,
         (true, _) | (_, true) => None,
         _ if agreement.settled() && below_all => None,
         _ => Some(reason::DENOMINATOR),
