@@ -133,7 +133,7 @@ fn scales(e: &Estimate, lower: Printed, upper: Printed) -> Vec<Scale> {
 /// p from the estimate and its interval (Altman & Bland 2011), on the scale of the measure.
 pub(crate) fn p_from_interval(case: &Case) -> Result<Vec<Recomputation>, &'static str> {
     let (Some(p), Some(i)) = (case.p, case.interval) else { return Ok(Vec::new()) };
-    let Some(e) = case.estimate else { return Err(reason::NO_ESTIMATE) };
+    let Some(e) = case.estimate() else { return Err(reason::NO_ESTIMATE) };
     if i.credible {
         return Err(reason::NO_METHOD);
     }
@@ -332,7 +332,7 @@ fn exclusion(case: &Case, target: &Target, wald: &Wald, level: f64, inputs: Inpu
 
 /// p from the estimate and its standard error.
 pub(crate) fn p_from_se(case: &Case) -> Option<Recomputation> {
-    let (p, e) = (case.p?, case.estimate?);
+    let (p, e) = (case.p?, case.estimate()?);
     let se = e.se.filter(|se| se.digits > 0)?;
     if !matches!(e.scale, Scale::Difference | Scale::Unknown) {
         return None;
@@ -363,13 +363,17 @@ pub(crate) fn p_from_se(case: &Case) -> Option<Recomputation> {
 
 /// The estimate lies inside its interval, and the lower limit comes first.
 pub(crate) fn inside(case: &Case) -> Option<Recomputation> {
-    let (e, i) = (case.estimate?, case.interval?);
-    let reversed = i.lower.value() > i.upper.value();
+    let (e, i) = (case.estimate()?, case.interval?);
+    let reversed = i.reversed || i.lower.value() > i.upper.value();
     let (lower, upper) = sorted(i);
     let whole = Range::new(lower.rounded().lo, upper.rounded().hi).widened(1e-12);
     let value = e.value.rounded();
     let reciprocal = e.scale == Scale::Reciprocal;
     let inside = whole.meets(value);
+    // A figure of an unnamed kind before the limits may be another thing.
+    if !inside && e.measure == Measure::Other && e.scale == Scale::Unknown {
+        return None;
+    }
     if reciprocal && !inside || e.percent != i.percent && !inside {
         return None;
     }

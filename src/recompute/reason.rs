@@ -58,6 +58,8 @@ pub const ROUGH: &str = "the printed figures leave too wide a range";
 pub const DENOMINATOR: &str = "percent of another denominator";
 /// "agrees by a stronger method".
 pub const STRONGER: &str = "agrees by a stronger method";
+/// "agrees with a test on the groups, beside an interval by another method".
+pub const OTHER_METHOD: &str = "agrees with a test on the groups, beside an interval by another method";
 /// "the approximation does not decide".
 pub const APPROXIMATE: &str = "the approximation does not decide";
 /// "the group sizes are not printed for this result".
@@ -102,6 +104,7 @@ pub const ALL: &[&str] = &[
     DENOMINATOR,
     STRONGER,
     APPROXIMATE,
+    OTHER_METHOD,
     SIZES_DOUBTFUL,
 ];
 
