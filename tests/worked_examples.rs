@@ -46,7 +46,7 @@ fn p_from_an_interval() {
     assert_eq!(c.verdict, Verdict::Tallies);
     let r = found(&c, Quantity::P);
     assert!(r.sharp && r.ground == Ground::IfOneMethod);
-    holds(r, "0.0051", 1.0);
+    holds(r, "0.0051", 1.3);
     let c = Paper::default()
         .estimate(Measure::MeanDifference, Scale::Difference, "1.9")
         .interval("-0.6", "4.3")
@@ -218,7 +218,7 @@ fn counts() {
         .p(Relation::Less, "0.001")
         .check();
     assert_eq!(found(&c, Quantity::Statistic).verdict, Verdict::Tallies);
-    assert!(by(&c, "Pearson").computed.unwrap().meets(n("92.205280").rounded()));
+    holds(found(&c, Quantity::Statistic), "92.205280", 1e-6);
 }
 
 /// 18 to 21: Fagerland (7/34 v 1/34); the odds ratio's limits also in presize's tests (seen only in a transcription).

@@ -46,8 +46,13 @@ impl Wald {
         Some(Wald { estimate: on(e.value)?, lower: on(lower)?, upper: on(upper)? })
     }
 
+    /// Half the interval's width; a limit at the end of the scale leaves it open.
     fn half(&self) -> Range {
-        ((self.upper - self.lower) * 0.5).clamped(0.0, f64::INFINITY)
+        let width = |upper: f64, lower: f64, open: f64| {
+            let w = (upper - lower) / 2.0;
+            if w.is_nan() { open } else { w.max(0.0) }
+        };
+        Range::new(width(self.upper.lo, self.lower.hi, 0.0), width(self.upper.hi, self.lower.lo, f64::INFINITY))
     }
 
     /// |estimate| in half widths of its interval: grows with |estimate|, falls as the interval widens.
@@ -113,17 +118,14 @@ fn sorted(i: &IntervalReading) -> (Printed, Printed) {
     if i.lower.value() <= i.upper.value() { (i.lower, i.upper) } else { (i.upper, i.lower) }
 }
 
+/// The scale of the measure; where it is not known, every scale on which the interval is symmetric.
 fn scales(e: &Estimate, lower: Printed, upper: Printed) -> Vec<Scale> {
     match e.scale {
-        // The scale on which the interval is symmetric, when only one is.
         Scale::Unknown => {
             let fits = |s| Wald::new(s, e, lower, upper).is_some_and(|w| w.symmetric());
             let positive = lower.value() > 0.0;
-            match (fits(Scale::Difference), positive && fits(Scale::Ratio)) {
-                (true, false) => vec![Scale::Difference],
-                (false, true) => vec![Scale::Ratio],
-                _ => Vec::new(),
-            }
+            let both = [(Scale::Difference, true), (Scale::Ratio, positive)];
+            both.into_iter().filter(|&(s, can)| can && fits(s)).map(|(s, _)| s).collect()
         }
         Scale::Reciprocal | Scale::Single => Vec::new(),
         scale => vec![scale],
@@ -152,6 +154,11 @@ pub(crate) fn p_from_interval(case: &Case) -> Result<Vec<Recomputation>, &'stati
         hold = hold.or(Some(reason::ASYMMETRIC));
     }
     let mut candidates = interval_candidates(case, e, &wald, scale, level, lower, upper);
+    for &other in &scales[1..] {
+        if let Some(wald) = Wald::new(other, e, lower, upper) {
+            candidates.extend(interval_candidates(case, e, &wald, other, level, lower, upper));
+        }
+    }
     if candidates.is_empty() {
         return Err(reason::NO_METHOD);
     }

@@ -10,6 +10,8 @@ pub const NO_SIZES: &str = "no group sizes";
 pub const NO_SPREAD: &str = "no spread";
 /// "degrees of freedom not printed".
 pub const NO_DF: &str = "degrees of freedom not printed";
+/// "no interval or standard error beside the estimate".
+pub const NO_INTERVAL: &str = "no interval or standard error beside the estimate";
 /// "no estimate beside the interval".
 pub const NO_ESTIMATE: &str = "no estimate beside the interval";
 /// "only one group is printed".
@@ -79,6 +81,7 @@ pub const ALL: &[&str] = &[
     NO_SIZES,
     NO_SPREAD,
     NO_DF,
+    NO_INTERVAL,
     NO_ESTIMATE,
     ONE_GROUP,
     NO_METHOD,
