@@ -58,6 +58,8 @@ pub const CLOSE: &str = "close, but outside what rounding allows";
 pub const ROUGH: &str = "the printed figures leave too wide a range";
 /// "percent of another denominator".
 pub const DENOMINATOR: &str = "percent of another denominator";
+/// "an approximate percentage".
+pub const ABOUT: &str = "an approximate percentage";
 /// "agrees by a stronger method".
 pub const STRONGER: &str = "agrees by a stronger method";
 /// "agrees with a test on the groups, beside an interval by another method".
@@ -105,6 +107,7 @@ pub const ALL: &[&str] = &[
     CLOSE,
     ROUGH,
     DENOMINATOR,
+    ABOUT,
     STRONGER,
     APPROXIMATE,
     OTHER_METHOD,
