@@ -1,11 +1,13 @@
 //! What the manuscript states about its own methods: alpha, sides, tests named, adjustment, pairing,
 //! arms and group sizes, interval level, each with its place.
 
+mod arm;
+mod statement;
 pub mod test_name;
 
-use crate::manuscript::Manuscript;
+use crate::manuscript::{BlockKind, Manuscript, SectionKind};
 use crate::printed::Printed;
-use crate::reading::{Readings, Scan, Sides};
+use crate::reading::{PlanningKind, Readings, Scan, Sides};
 use crate::text::Span;
 
 pub use test_name::{Test, tests_in};
@@ -55,6 +57,78 @@ pub struct Context {
 }
 
 /// Gathers the context of a manuscript.
-pub fn gather(_manuscript: &Manuscript, _scan: &Scan, _readings: &Readings) -> Context {
-    Context::default()
+pub fn gather(manuscript: &Manuscript, scan: &Scan, readings: &Readings) -> Context {
+    let mut context = Context {
+        has_methods: manuscript.sections.iter().any(|s| s.kind == SectionKind::Methods && s.level > 0),
+        has_results: manuscript.sections.iter().any(|s| s.kind == SectionKind::Results && s.level > 0),
+        ..Context::default()
+    };
+    planned(readings, &mut context);
+    for (number, block) in manuscript.blocks.iter().enumerate() {
+        if matches!(block.kind, BlockKind::Table(_) | BlockKind::Heading) {
+            continue;
+        }
+        let section = &manuscript.sections[block.section as usize];
+        if matches!(section.kind, SectionKind::References | SectionKind::Back) {
+            continue;
+        }
+        let methods = section.kind == SectionKind::Methods;
+        // What an introduction or a discussion says of designs and spreads is as often about other studies.
+        let own = matches!(
+            section.kind,
+            SectionKind::Methods
+                | SectionKind::Results
+                | SectionKind::Abstract
+                | SectionKind::Title
+                | SectionKind::Unknown
+        );
+        for id in scan.of_block(number) {
+            let view = scan.view(manuscript, id);
+            if methods && !section.in_abstract {
+                for (test, first, last) in tests_in(&view) {
+                    context.tests.push(Stated { value: test, span: view.span(first, last) });
+                }
+                statement::methods(&view, &mut context);
+            }
+            if own {
+                statement::anywhere(&view, &mut context);
+                arm::arms(&view, &mut context);
+            }
+        }
+    }
+    context
+}
+
+/// Alpha, sides, power and multiplicity, from the planning statements.
+fn planned(readings: &Readings, context: &mut Context) {
+    for x in &readings.planning {
+        match x.what {
+            PlanningKind::Alpha | PlanningKind::Threshold => {
+                // A threshold for entering a model or for post hoc tests is another matter; keep what may be an alpha.
+                if let Some(value) = x.value.filter(|v| v.value() > 0.0 && v.value() <= 0.1)
+                    && !context.alpha.iter().any(|a| a.value.value() == value.value())
+                {
+                    context.alpha.push(Stated { value, span: x.span });
+                }
+            }
+            PlanningKind::Power => {
+                if let Some(value) = x.value
+                    && context.power.is_none()
+                {
+                    context.power = Some(Stated { value, span: x.span });
+                }
+            }
+            PlanningKind::Sided => {
+                if let Some(sides) = x.sides
+                    && context.sides.is_none()
+                {
+                    context.sides = Some(Stated { value: sides, span: x.span });
+                }
+            }
+            PlanningKind::Multiplicity => {
+                context.multiplicity.get_or_insert(Stated { value: (), span: x.span });
+            }
+            PlanningKind::SampleSize | PlanningKind::Legend => {}
+        }
+    }
 }

@@ -29,18 +29,21 @@ pub fn read(
 ) {
     let names = names(view);
     let start = out.len();
-    interval::read_unnamed(view, |i| names.iter().any(|n| leads_to(view, n, i)), level, taken, intervals);
+    // Where the paragraph has named its intervals, a verb before the figure is enough.
+    let told = |i: usize| level.is_some() && i > 0 && view.any(i - 1, &["was", "were", "is", "of"]);
+    interval::read_unnamed(view, |i| told(i) || names.iter().any(|n| leads_to(view, n, i)), level, taken, intervals);
     intervals[first_interval..].sort_by_key(|x| x.span.start);
     for interval in &intervals[first_interval..] {
         let Some((value, span)) = interval.estimate else { continue };
         let at = view.token_at(span.start);
         let name = names.iter().rev().find(|n| n.last < at && at - n.last <= 24 && !another_between(&names, n, at));
+        let last = view.token_at(span.end).saturating_sub(1);
         let near = name.is_some_and(|n| leads_to(view, n, at));
         let (measure, scale, adjusted) = match name {
             Some(n) if near || at - n.last <= 16 => (n.measure, n.scale, n.adjusted),
+            _ if single(view, at, last) => (Measure::Other, Scale::Single, false),
             _ => (Measure::Other, Scale::Unknown, false),
         };
-        let last = view.token_at(span.end).saturating_sub(1);
         taken[at..=last].fill(true);
         out.push(Estimate {
             span: name.filter(|_| near).map_or(span, |n| view.span(n.first, n.first).to(span)),
@@ -72,6 +75,19 @@ pub fn read(
         });
     }
     out[start..].sort_by_key(|e| e.span.start);
+}
+
+/// A mean, a proportion or a rate of one group: nothing to test its interval against.
+fn single(view: &SentenceView, at: usize, last: usize) -> bool {
+    view.sign(last + 1, '%')
+        || (at.saturating_sub(10)..at).any(|k| {
+            view.is(k, super::lexicon::Classes::MEAN)
+                || view.is(k, super::lexicon::Classes::MEDIAN)
+                || view.any(
+                    k,
+                    &["rate", "prevalence", "incidence", "proportion", "sensitivity", "specificity", "survival"],
+                )
+        })
 }
 
 /// `(SE 0.3)`, `, SE = 0.3` right behind an estimate.

@@ -1,5 +1,8 @@
 //! Readings that belong together: groups, estimate, interval, statistic, p.
 
+mod feature;
+mod sentence;
+
 use crate::context::{Context, Stated, Test};
 use crate::manuscript::Manuscript;
 use crate::reading::{Readings, Scan};
@@ -59,7 +62,33 @@ impl ReportedResult {
     }
 }
 
-/// Joins the readings of a manuscript to results, in reading order.
-pub fn join(_manuscript: &Manuscript, _scan: &Scan, _readings: &Readings, _context: &Context) -> Vec<ReportedResult> {
-    Vec::new()
+/// Joins the readings of a manuscript to results, in reading order: inside a sentence, never by mere nearness.
+pub fn join(manuscript: &Manuscript, scan: &Scan, readings: &Readings, context: &Context) -> Vec<ReportedResult> {
+    let mut results = Vec::new();
+    let mut from = sentence::Members { p: 0..0, intervals: 0..0, statistics: 0..0, groups: 0..0, estimates: 0..0 };
+    loop {
+        // Readings are in reading order, so each list is walked once.
+        let next = [
+            readings.p.get(from.p.end).map(|x| x.sentence),
+            readings.intervals.get(from.intervals.end).map(|x| x.sentence),
+            readings.statistics.get(from.statistics.end).map(|x| x.sentence),
+            readings.groups.get(from.groups.end).map(|x| x.sentence),
+            readings.estimates.get(from.estimates.end).map(|x| x.sentence),
+        ];
+        let Some(id) = next.into_iter().flatten().min() else { break };
+        from = sentence::Members {
+            p: run(&readings.p, from.p.end, |x| x.sentence == id),
+            intervals: run(&readings.intervals, from.intervals.end, |x| x.sentence == id),
+            statistics: run(&readings.statistics, from.statistics.end, |x| x.sentence == id),
+            groups: run(&readings.groups, from.groups.end, |x| x.sentence == id),
+            estimates: run(&readings.estimates, from.estimates.end, |x| x.sentence == id),
+        };
+        sentence::join(&scan.view(manuscript, id), &from, readings, context, &mut results);
+    }
+    results
+}
+
+/// The run of list members from `start` that a test accepts.
+fn run<T>(list: &[T], start: usize, accept: impl Fn(&T) -> bool) -> std::ops::Range<usize> {
+    start..start + list[start..].iter().take_while(|x| accept(x)).count()
 }

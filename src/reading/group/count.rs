@@ -85,7 +85,9 @@ fn percent_in_brackets(view: &SentenceView, at: usize, words: usize) -> Option<(
     while open < at + words
         && view.get(open)?.is_word()
         && !view.is(open, Classes::VERSUS)
-        && !view.any(open, &["and", "or", "to"])
+        && !view.any(open, &["and", "or"])
+        && !(view.eq(open, "to") && view.number(open + 1).is_some())
+        && !(open == at && view.is(open, Classes::UNIT))
     {
         open += 1;
         if view.sign(open, '-') && view.get(open + 1).is_some_and(|t| t.is_word()) {
@@ -170,7 +172,7 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
         let bracket = i > 0 && view.signs(i - 1, &['(', '[']) && view.signs(end, &[')', ']', ',', ';']);
         let members = view.is(end, Classes::GROUP);
         if by_slash && !(bracket || members)
-            || !by_slash && !(members || words > 0 || view.signs(end, &[')', ',', '.']))
+            || !by_slash && !(members || words > 0 || view.eq(at, "out") || view.signs(end, &[')', ',', '.']))
         {
             return None;
         }
@@ -237,7 +239,7 @@ fn of_the(view: &SentenceView, i: usize) -> Option<(u64, crate::text::Span)> {
             at += 1;
         }
         let (total, next) = count_at(view, at)?;
-        let members = (next..i).take(8).any(|m| view.is(m, Classes::GROUP));
+        let members = (next..i).take(8).any(|m| view.is(m, Classes::GROUP) || view.sign(m, ','));
         return (members && next <= i && !view.sign(next, '%')).then(|| (total, view.span(at, next - 1)));
     }
     None

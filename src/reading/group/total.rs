@@ -22,17 +22,35 @@ pub struct Mention {
 pub fn mentions(view: &SentenceView, out: &mut Vec<Mention>) {
     let mut i = 0;
     while i < view.len() {
-        let Some((size, next)) = count_at(view, i) else {
+        let denominator = i > 1 && view.sign(i - 1, '/') && !view.spaced(i) && view.number(i - 2).is_some();
+        let found =
+            if denominator { view.number(i).and_then(Printed::count).map(|c| (c, i + 1)) } else { count_at(view, i) };
+        let Some((size, next)) = found else {
             i += 1;
             continue;
         };
         let after_n = i > 1 && view.sign(i - 1, '=') && view.is(i - 2, Classes::N);
-        let denominator = i > 0 && view.sign(i - 1, '/') && view.number(i.wrapping_sub(2)).is_some();
-        let members = (next..next + 4)
-            .take_while(|&k| view.get(k).is_some_and(|t| t.is_word()) || view.sign(k, '-'))
+        let included = view.any(next, &["were", "was", "completed"])
+            && view.any(
+                next + 1,
+                &[
+                    "included",
+                    "analysed",
+                    "analyzed",
+                    "randomised",
+                    "randomized",
+                    "enrolled",
+                    "eligible",
+                    "assigned",
+                    "recruited",
+                    "the",
+                ],
+            );
+        let members = (next..next + 7)
+            .take_while(|&k| view.get(k).is_some_and(|t| t.is_word()) || view.signs(k, &['-', ',']))
             .take_while(|&k| !view.is(k, Classes::UNIT) && !view.is(k, Classes::COPULA) && !view.is(k, Classes::AND))
             .any(|k| view.is(k, Classes::GROUP) && !view.any(k, &["groups", "group", "arms"]));
-        if size > 1 && (after_n || denominator || members) {
+        if size > 1 && (after_n || denominator || members || included) {
             out.push(Mention { size, span: view.span(i, next - 1), sentence: view.id });
         }
         i = next;
@@ -62,9 +80,13 @@ pub fn fill(groups: &mut [Group], mentions: &[Mention], tested: impl Fn(u32) -> 
                 .iter()
                 .filter(|m| m.span.start < group.span.start && m.sentence <= group.sentence)
                 .filter(|m| m.span.block == group.span.block);
-            if let Some(first) = before.next()
-                && before.all(|m| m.size == first.size)
-            {
+            let here: Vec<&Mention> = before.clone().filter(|m| m.sentence == group.sentence).collect();
+            let only = match (here.as_slice(), before.next()) {
+                ([one], _) => Some(**one),
+                ([], Some(first)) if before.all(|m| m.size == first.size) => Some(*first),
+                _ => None,
+            };
+            if let Some(first) = only {
                 let origin = Origin::Inferred(Inference::OtherSentence, first.span);
                 group.n = Some(Figure { printed: Printed::whole(first.size), origin });
             }
