@@ -4,7 +4,7 @@
 use std::fs;
 use std::path::{Path, PathBuf};
 
-const FLOORS: [(&str, u8); 15] = [
+const FLOORS: [(&str, u8); 16] = [
     ("text", 0),
     ("printed", 0),
     ("distribution", 1),
@@ -19,6 +19,7 @@ const FLOORS: [(&str, u8); 15] = [
     ("rule", 7),
     ("report", 7),
     ("audit", 8),
+    ("explain", 9),
     ("main", 9),
 ];
 

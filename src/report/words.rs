@@ -1,20 +1,11 @@
 //! Names and phrases that the formats share: identifiers for machines, clauses for people.
 
-use crate::intake::Unreadable;
 use crate::query::Ground;
 use crate::reading::{
     Assumption, Attribution, ClaimKind, Direction, Inference, Measure, Origin, PlanningKind, Relation, Role,
     SpreadKind, Symbol,
 };
 use crate::recompute::Quantity;
-
-/// One sentence that says why nothing could be read, and what to do.
-pub fn unreadable(why: &Unreadable) -> &'static str {
-    match why {
-        Unreadable::Empty => "there is no text in it; give the manuscript as Markdown or plain text",
-        Unreadable::Binary => "it is not text; save the manuscript as Markdown or plain text and give that file",
-    }
-}
 
 pub fn relation(relation: Relation) -> &'static str {
     match relation {
