@@ -186,3 +186,9 @@ pub fn assumption(assumption: Assumption) -> &'static str {
         Assumption::UsualScale => "the limits were computed on the scale that is usual for this measure",
     }
 }
+
+/// Whether an explanation of a query says what was taken for granted, not what may have slipped.
+pub fn is_assumption(kind: &str) -> bool {
+    let named = ["two-sided", "level-95", "alpha-05", "spread-unnamed", "unadjusted", "plausible-df", "usual-scale"];
+    kind == "assumption" || named.contains(&kind)
+}
