@@ -191,6 +191,8 @@ pub struct Group {
     pub spread: Vec<Printed>,
     /// The figure is a change from baseline, not a level.
     pub change: bool,
+    /// The percentage is said to be about so much ("over 60 %", "nearly half (45 %)").
+    pub approximate: bool,
     /// Count, total and percent are printed in one expression (`12/40 (30%)`, `12 of 40 (30%)`).
     pub one_expression: bool,
 }

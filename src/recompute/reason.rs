@@ -56,6 +56,8 @@ pub const CLOSE: &str = "close, but outside what rounding allows";
 pub const ROUGH: &str = "the printed figures leave too wide a range";
 /// "percent of another denominator".
 pub const DENOMINATOR: &str = "percent of another denominator";
+/// "an approximate percentage".
+pub const APPROXIMATE: &str = "an approximate percentage";
 /// "agrees by a stronger method".
 pub const STRONGER: &str = "agrees by a stronger method";
 /// "the approximation does not decide".
@@ -100,6 +102,7 @@ pub const ALL: &[&str] = &[
     CLOSE,
     ROUGH,
     DENOMINATOR,
+    APPROXIMATE,
     STRONGER,
     APPROXIMATE,
     SIZES_DOUBTFUL,

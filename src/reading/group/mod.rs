@@ -53,6 +53,7 @@ pub fn read(view: &SentenceView, setting: &mut Setting, taken: &mut [bool], out:
     }
     versus::read(view, taken, &mut drafts);
     drafts.sort_by_key(|d| d.first);
+    count::soften(view, &mut drafts);
     size::assign(view, &mut drafts);
     label::assign(view, &mut drafts);
     out.extend(drafts.into_iter().map(|d| d.group));
@@ -72,6 +73,7 @@ fn empty(view: &SentenceView, first: usize, last: usize) -> Group {
         spread_kind: None,
         spread: Vec::new(),
         change: false,
+        approximate: false,
         one_expression: false,
     }
 }
