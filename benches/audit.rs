@@ -1,16 +1,21 @@
 //! Time and memory of the whole audit: manuscripts of one to eight megabytes in the proportions of a
 //! real paper, texts made to hurt, and the Markdown parser alone for comparison.
 //!
-//! `cargo bench` times; `cargo bench -- peak` prints the peak memory instead.
+//! `cargo bench` times. `cargo bench --bench audit -- peak` prints the peak memory instead, and
+//! `-- passes` the time of each pass by size: a pass that more than doubles when the text doubles is
+//! not linear.
 
 use std::alloc::{GlobalAlloc, Layout, System};
 use std::fmt::Write;
 use std::sync::atomic::{AtomicUsize, Ordering};
+use std::time::Instant;
 
 use divan::counter::BytesCount;
 use divan::{Bencher, black_box};
 use tallyproof::audit::audit;
 use tallyproof::report::{Entry, Json, Report};
+use tallyproof::rule::{self, Facts};
+use tallyproof::{context, intake, reading, recompute, result};
 
 /// The system's allocator, counting what is held and the most that was.
 struct Counting;
@@ -49,10 +54,49 @@ unsafe impl GlobalAlloc for Counting {
 }
 
 fn main() {
-    if std::env::args().any(|a| a == "peak") {
+    let asked = |word: &str| std::env::args().any(|a| a == word);
+    if asked("peak") {
         peak();
+    } else if asked("passes") {
+        passes();
     } else {
         divan::main();
+    }
+}
+
+/// Milliseconds of each pass.
+fn passes() {
+    for megabytes in [1, 2, 4, 8] {
+        let text = manuscript(megabytes << 20);
+        let mut times = Vec::new();
+        let mut last = Instant::now();
+        let mut pass = |name: &'static str| {
+            times.push(format!("{name} {}", last.elapsed().as_millis()));
+            last = Instant::now();
+        };
+        let (manuscript, _) = intake::read(text.as_bytes(), "bench.md", None).expect("it is text");
+        pass("intake");
+        let scan = reading::scan(&manuscript);
+        pass("scan");
+        let readings = reading::read(&manuscript, &scan);
+        pass("reading");
+        let context = context::gather(&manuscript, &scan, &readings);
+        pass("context");
+        let results = result::join(&manuscript, &scan, &readings, &context);
+        pass("result");
+        let checked = recompute::recompute(&readings, &context, &results);
+        pass("recompute");
+        let facts = Facts {
+            manuscript: &manuscript,
+            scan: &scan,
+            readings: &readings,
+            context: &context,
+            results: &results,
+            checked: &checked,
+        };
+        black_box(rule::queries(&facts));
+        pass("rule");
+        println!("{megabytes} MB, milliseconds: {}", times.join(", "));
     }
 }
 
