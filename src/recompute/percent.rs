@@ -65,7 +65,7 @@ pub(crate) fn check(g: &Group, agreement: Agreement) -> Vec<Recomputation> {
     // Missing answers make a percentage larger than the header's n gives, never smaller.
     let below_all = target.range.hi < exact;
     let hold = match (g.one_expression, printed_here) {
-        _ if g.approximate => Some(reason::APPROXIMATE),
+        _ if g.approximate => Some(reason::ABOUT),
         (true, _) | (_, true) => None,
         _ if agreement.settled() && below_all => None,
         _ => Some(reason::DENOMINATOR),

@@ -57,7 +57,7 @@ pub const ROUGH: &str = "the printed figures leave too wide a range";
 /// "percent of another denominator".
 pub const DENOMINATOR: &str = "percent of another denominator";
 /// "an approximate percentage".
-pub const APPROXIMATE: &str = "an approximate percentage";
+pub const ABOUT: &str = "an approximate percentage";
 /// "agrees by a stronger method".
 pub const STRONGER: &str = "agrees by a stronger method";
 /// "the approximation does not decide".
@@ -102,7 +102,7 @@ pub const ALL: &[&str] = &[
     CLOSE,
     ROUGH,
     DENOMINATOR,
-    APPROXIMATE,
+    ABOUT,
     STRONGER,
     APPROXIMATE,
     SIZES_DOUBTFUL,

@@ -196,22 +196,21 @@ pub fn spread_unnamed(facts: &Facts, sign: SpreadSign) -> Vec<Finding> {
         }
     };
     let at: Vec<Span> = unnamed.map(|g| g.span).filter(|&s| with_sign(s)).collect();
-    if at.is_empty() || facts.context.spread.is_some() || facts.mentions(&SPREAD_NAMES) {
+    // The name may stand in Methods that this text does not hold.
+    let fragment = !facts.context.has_methods;
+    if at.is_empty() || fragment || facts.context.spread.is_some() || facts.mentions(&SPREAD_NAMES) {
         return Vec::new();
     }
     let first = wording::one_line(facts.quote(at[0]));
-    let (figure, count) = match sign {
-        SpreadSign::PlusMinus => ("figure after ±", at.len()),
-        SpreadSign::Brackets => ("figure in brackets", at.len()),
+    let count = at.len();
+    let (figure, label) = match sign {
+        SpreadSign::PlusMinus => ("figure after ±", "plus-minus"),
+        SpreadSign::Brackets => ("figure in brackets", "brackets"),
     };
     let says = format!(
         "The {figure} is nowhere said to be a standard deviation or a standard error ({}, first in {first}).",
         places(count)
     );
-    let label = match sign {
-        SpreadSign::PlusMinus => "plus-minus",
-        SpreadSign::Brackets => "brackets",
-    };
     let mut f = Finding::wide(at, Weight::reporting(), says, vec![label.to_owned()]);
     f.fills.push(("count", count.to_string()));
     vec![f]
