@@ -22,9 +22,7 @@ impl Alpha {
     pub fn below(self, p: &PValue) -> bool {
         let Some(value) = p.value else { return p.relation == Relation::NotSignificant };
         match p.relation {
-            Relation::Equal => {
-                value.value() > self.highest + SLACK && value.rounded().lo >= self.highest - SLACK
-            }
+            Relation::Equal => value.value() > self.highest + SLACK && value.rounded().lo >= self.highest - SLACK,
             Relation::Greater | Relation::AtLeast => value.value() >= self.highest - SLACK,
             Relation::NotSignificant => true,
             Relation::Less | Relation::AtMost => false,

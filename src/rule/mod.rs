@@ -23,9 +23,7 @@ use crate::recompute::Checked;
 use crate::result::ReportedResult;
 
 pub use catalogue::{Case, Catalogue, FAMILIES, Rule, RuleError, catalogue, compiled_in};
-pub use check::{
-    Backing, Basis, Bounded, Check, Claimed, Of, Pair, Part, Per, Says, SpreadSign, Statement, Whose,
-};
+pub use check::{Backing, Basis, Bounded, Check, Claimed, Of, Pair, Part, Per, Says, SpreadSign, Statement, Whose};
 pub use directory::load;
 pub use level::{MAJOR_FACTOR, Off, Weight, level};
 pub use wording::PLACEHOLDERS;

@@ -13,13 +13,8 @@ static METHOD: Method = Method { name: "p from an interval", source: "Altman & B
 fn manuscript(text: &str) -> Manuscript {
     let mut pieces = PieceTable::default();
     pieces.push(0, text.len(), 0, text.len(), true);
-    let section = Section {
-        title: "Results".to_owned(),
-        level: 1,
-        parent: None,
-        kind: SectionKind::Results,
-        in_abstract: false,
-    };
+    let section =
+        Section { title: "Results".to_owned(), level: 1, parent: None, kind: SectionKind::Results, in_abstract: false };
     let kind = BlockKind::Paragraph;
     Manuscript {
         sections: vec![section],

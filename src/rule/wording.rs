@@ -106,9 +106,9 @@ pub fn last_number(quote: &str) -> Option<(std::ops::Range<usize>, usize)> {
         }
         start = i;
     }
-    let places = quote[start..end].rfind(['.', ',', '·']).map_or(0, |i| {
-        quote[start + i..end].bytes().filter(u8::is_ascii_digit).count()
-    });
+    let places = quote[start..end]
+        .rfind(['.', ',', '·'])
+        .map_or(0, |i| quote[start + i..end].bytes().filter(u8::is_ascii_digit).count());
     Some((start..end, places))
 }
 

@@ -130,9 +130,8 @@ fn p_words(facts: &Facts, p: &PValue) -> String {
 }
 
 fn results_of(facts: &Facts, p: &[&PValue]) -> Vec<usize> {
-    let with = |r: &crate::result::ReportedResult| {
-        r.p.is_some_and(|i| p.iter().any(|p| p.span == facts.readings.p[i].span))
-    };
+    let with =
+        |r: &crate::result::ReportedResult| r.p.is_some_and(|i| p.iter().any(|p| p.span == facts.readings.p[i].span));
     facts.results.iter().enumerate().filter(|(_, r)| with(r)).map(|(i, _)| i).collect()
 }
 
@@ -203,8 +202,7 @@ pub fn against_p(facts: &Facts, says: Says) -> Vec<Finding> {
         let words: Vec<String> = p.iter().map(|p| p_words(facts, p)).collect();
         let side = if says == Says::Significant { "above" } else { "below" };
         let text = format!("“{quote}” stands beside {}, {side} alpha = {}.", words.join(" and "), alpha.words());
-        let weight =
-            Weight { drives_message: facts.drives_message(claim.span), ..Weight::reporting() };
+        let weight = Weight { drives_message: facts.drives_message(claim.span), ..Weight::reporting() };
         let mut f = Finding::at(claim.span, weight, text);
         f.related = p.iter().map(|p| (p.span, "the p-value".to_owned())).collect();
         f.figures.extend(p.iter().map(|p| p.span));
@@ -222,7 +220,8 @@ fn direct(facts: &Facts, claim: &Claim, p: &PValue) -> bool {
         true => facts.between(claim.span, p.span),
         false => facts.between(p.span, claim.span),
     };
-    let turns = ["but", "except", "whereas", "while", "although", "however", "not", "nor", "only", "than", "unless", "if"];
+    let turns =
+        ["but", "except", "whereas", "while", "although", "however", "not", "nor", "only", "than", "unless", "if"];
     !between.split(|c: char| !c.is_alphabetic()).any(|w| turns.contains(&w) && w != "than")
         && !between.contains("other than")
         && !between.contains([';', ':'])

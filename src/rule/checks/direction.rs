@@ -109,10 +109,8 @@ fn one_ratio(facts: &Facts, claim: &Claim, direction: Direction, view: &Sentence
     let readings = facts.readings;
     let estimates: Vec<&Estimate> = readings.estimates.iter().filter(|e| e.sentence == claim.sentence).collect();
     let [e] = estimates[..] else { return None };
-    let ratio = matches!(
-        e.measure,
-        Measure::RiskRatio | Measure::OddsRatio | Measure::HazardRatio | Measure::RateRatio
-    );
+    let ratio =
+        matches!(e.measure, Measure::RiskRatio | Measure::OddsRatio | Measure::HazardRatio | Measure::RateRatio);
     let result = facts.results.iter().find(|r| r.estimate.is_some_and(|i| readings.estimates[i].span == e.span))?;
     let interval = &readings.intervals[result.interval?];
     if !ratio || e.scale != Scale::Ratio || interval.sentence != claim.sentence {

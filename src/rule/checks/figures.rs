@@ -124,10 +124,18 @@ pub fn estimate_outside_interval(facts: &Facts) -> Vec<Finding> {
         let (Some(e), Some(i)) = (result.estimate, result.interval) else { continue };
         let (e, i) = (&readings.estimates[e], &readings.intervals[i]);
         // The pair must be beyond doubt: same sentence, estimate first, no other estimate or interval between.
-        let between = |s: Span| s != e.span && s != i.span && s.block == e.span.block && s.start >= e.span.start && s.end <= i.span.end;
-        let apart = readings.estimates.iter().any(|x| between(x.span)) || readings.intervals.iter().any(|x| between(x.span));
+        let between = |s: Span| {
+            s != e.span && s != i.span && s.block == e.span.block && s.start >= e.span.start && s.end <= i.span.end
+        };
+        let apart =
+            readings.estimates.iter().any(|x| between(x.span)) || readings.intervals.iter().any(|x| between(x.span));
         let alike = e.percent == i.percent || e.measure != Measure::Other;
-        if e.sentence != i.sentence || e.span.start > i.span.start || apart || !alike || i.lower.value() > i.upper.value() {
+        if e.sentence != i.sentence
+            || e.span.start > i.span.start
+            || apart
+            || !alike
+            || i.lower.value() > i.upper.value()
+        {
             continue;
         }
         let held = i.lower.rounded().hull(i.upper.rounded());

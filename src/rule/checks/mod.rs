@@ -7,9 +7,9 @@ mod planning;
 mod recomputed;
 mod reporting;
 
+use super::Facts;
 use super::check::Check;
 use super::finding::Finding;
-use super::Facts;
 
 /// Runs one check. Exhaustive: a new kind does not compile until it is answered here.
 pub fn run(check: &Check, facts: &Facts) -> Vec<Finding> {

@@ -74,9 +74,8 @@ fn methods(facts: &Facts) -> Option<Span> {
         let section = &m.sections[b.section as usize];
         section.kind == SectionKind::Methods && !section.in_abstract && !b.text.trim().is_empty()
     };
-    let statistical = |b: &crate::manuscript::Block| {
-        b.kind == BlockKind::Heading && b.text.to_lowercase().contains("statistic")
-    };
+    let statistical =
+        |b: &crate::manuscript::Block| b.kind == BlockKind::Heading && b.text.to_lowercase().contains("statistic");
     let found = m.blocks.iter().position(|b| of_methods(b) && statistical(b));
     let number = found.or_else(|| m.blocks.iter().position(of_methods))?;
     let text = &m.blocks[number].text;

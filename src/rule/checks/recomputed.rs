@@ -23,8 +23,7 @@ pub fn differs(facts: &Facts, of: Of, from: &[Basis]) -> Vec<Finding> {
                 continue;
             }
             done.push(first.figure);
-            let all: Vec<_> =
-                candidates(facts, checked, of, from).filter(|r| r.figure == first.figure).collect();
+            let all: Vec<_> = candidates(facts, checked, of, from).filter(|r| r.figure == first.figure).collect();
             // The strongest ground; among equals the nearest figure: the kindest comparison.
             let size = |r: &Recomputation| r.distance.map_or(f64::INFINITY, |d| d.size);
             let best = all.iter().min_by(|a, b| a.ground.cmp(&b.ground).then(size(a).total_cmp(&size(b))));
@@ -46,9 +45,10 @@ fn candidates<'a>(
     let tallies = |r: &Recomputation| {
         // A definition stands by itself; elsewhere one candidate that tallies clears the figure.
         r.ground != Ground::ByDefinition
-            && checked.recomputations.iter().any(|o| {
-                o.verdict == Verdict::Tallies && o.of == r.of && o.figure == r.figure
-            })
+            && checked
+                .recomputations
+                .iter()
+                .any(|o| o.verdict == Verdict::Tallies && o.of == r.of && o.figure == r.figure)
     };
     checked.recomputations.iter().filter(move |r| {
         r.verdict == Verdict::Differs

@@ -83,14 +83,18 @@ pub fn missing(facts: &Facts, what: Part) -> Vec<Finding> {
         Part::EffectEstimate => {
             let spans = facts.results.iter().filter_map(|r| effect_missing(facts, r)).filter(|&s| due(s)).collect();
             per_part(facts, spans, |count, first| {
-                format!("A p-value for a comparison of two groups stands without the size of the effect {} (first: {first}).", places(count))
+                format!(
+                    "A p-value for a comparison of two groups stands without the size of the effect {} (first: {first}).",
+                    places(count)
+                )
             })
         }
         Part::Interval => {
             let bare = facts.results.iter().filter_map(|r| {
                 let e = &readings.estimates[r.estimate?];
                 let has_precision = r.interval.is_some() || e.se.is_some() || interval_beside(e.sentence);
-                (!has_precision && wants_interval(e.measure) && due(e.span) && !facts.in_table(e.span)).then_some(e.span)
+                (!has_precision && wants_interval(e.measure) && due(e.span) && !facts.in_table(e.span))
+                    .then_some(e.span)
             });
             per_part(facts, bare.collect(), |count, first| {
                 format!("An effect is given without an interval or standard error {} (first: {first}).", places(count))
@@ -116,7 +120,10 @@ pub fn missing(facts: &Facts, what: Part) -> Vec<Finding> {
             });
             let spans = bare.map(|g| g.span).filter(|&s| due(s) && !facts.in_table(s)).collect();
             per_part(facts, spans, |count, first| {
-                format!("A group's mean is compared without a measure of its spread {} (first: {first}).", places(count))
+                format!(
+                    "A group's mean is compared without a measure of its spread {} (first: {first}).",
+                    places(count)
+                )
             })
         }
     }
@@ -130,9 +137,8 @@ fn effect_missing(facts: &Facts, r: &ReportedResult) -> Option<Span> {
     if r.groups.len() != 2 || r.estimate.is_some() || r.interval.is_some() || doubtful.iter().any(|&f| r.has(f)) {
         return None;
     }
-    let beside = |sentence: u32, span: Span| {
-        sentence == p.sentence || facts.in_table(p.span) && span.block == p.span.block
-    };
+    let beside =
+        |sentence: u32, span: Span| sentence == p.sentence || facts.in_table(p.span) && span.block == p.span.block;
     let estimate = readings.estimates.iter().any(|e| beside(e.sentence, e.span));
     let interval = readings.intervals.iter().any(|i| beside(i.sentence, i.span));
     (!estimate && !interval).then_some(p.span)
