@@ -13,6 +13,7 @@ pub mod p;
 pub mod planning;
 pub mod sentence;
 pub mod statistic;
+pub mod table;
 pub mod token;
 
 use crate::manuscript::{BlockKind, Manuscript, SectionKind};
@@ -341,11 +342,15 @@ pub struct Readings {
 pub fn read(manuscript: &Manuscript, scan: &Scan) -> Readings {
     let mut readings = Readings::default();
     for (number, block) in manuscript.blocks.iter().enumerate() {
-        if matches!(block.kind, BlockKind::Heading | BlockKind::Table(_)) {
+        if block.kind == BlockKind::Heading {
             continue;
         }
         let section = &manuscript.sections[block.section as usize];
         if matches!(section.kind, SectionKind::References | SectionKind::Back) {
+            continue;
+        }
+        if matches!(block.kind, BlockKind::Table(_)) {
+            table::read(manuscript, scan, number, &mut readings);
             continue;
         }
         read_paragraph(manuscript, scan, scan.of_block(number), section.kind, &mut readings);
