@@ -102,10 +102,12 @@ fn basis(facts: &Facts, checked: &Checked, r: &Recomputation) -> Basis {
 
 fn finding(facts: &Facts, checked: &Checked, r: &Recomputation, all: &[&Recomputation]) -> Finding {
     let quote = facts.quote(r.figure);
-    let printed = wording::one_line(quote);
+    let percent = (r.of == Quantity::Percent).then(|| wording::percent_number(quote)).flatten();
+    let sign = if percent.is_some() { "%" } else { "" };
+    let printed = percent.map_or_else(|| wording::one_line(quote), |(at, _)| format!("{}%", &quote[at]));
     let computed = r.computed.map_or(String::new(), |range| match r.of {
         Quantity::P => wording::p_range(range),
-        of => wording::figure_range(range, number(of, quote).map_or(0, |(_, places)| places)),
+        of => wording::figure_range(range, number(of, quote).map_or(0, |(_, places)| places)) + sign,
     });
     let mut from = inputs(facts, r);
     let estimate = facts.results[checked.result].estimate.map(|i| &facts.readings.estimates[i]);
