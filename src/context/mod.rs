@@ -4,6 +4,9 @@
 mod arm;
 mod statement;
 pub mod test_name;
+// Word lists are easier to read in full lines.
+#[rustfmt::skip]
+mod words;
 
 use crate::manuscript::{BlockKind, Manuscript, SectionKind};
 use crate::printed::Printed;

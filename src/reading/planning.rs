@@ -1,5 +1,10 @@
 //! Planning statements: alpha, power, sides, sample size, thresholds, legends, multiplicity.
 
+// Word lists are easier to read in full lines.
+#[rustfmt::skip]
+mod words;
+
+use self::words::*;
 use super::claim_words::MULTIPLE;
 use super::lexicon::{self, Classes};
 use super::p::PExpression;
@@ -59,66 +64,6 @@ struct Reader<'a, 'b> {
 const MARKS: &[char] =
     &['*', '†', '‡', '§', '¶', '#', '$', '&', '+', '⁎', '∗', '∆', '^', '@', '∧', '◊', '¥', '£', '‖', '※'];
 
-/// Verbs that make a p a limit: "was considered significant".
-const DECLARES: &[&str] = &[
-    "considered",
-    "regarded",
-    "deemed",
-    "defined",
-    "set",
-    "taken",
-    "accepted",
-    "declared",
-    "judged",
-    "assumed",
-    "established",
-    "chosen",
-    "used",
-    "specified",
-    "determined",
-    "by",
-    "fixed",
-    "interpreted",
-    "threshold",
-    "cutoff",
-    "criterion",
-    "adopted",
-    "selected",
-    "viewed",
-    "treated",
-    "classified",
-    "designated",
-    "stipulated",
-    "thresholds",
-    "cut",
-    "level",
-    "levels",
-    "limit",
-    "applied",
-    "rejected",
-    "admitted",
-    "assigned",
-];
-
-/// Verbs that make a p the subject of a definition: "P < 0.05 indicates …".
-const STANDS_FOR: &[&str] = &[
-    "indicated",
-    "indicates",
-    "indicate",
-    "denotes",
-    "denoted",
-    "denote",
-    "represents",
-    "represented",
-    "represent",
-    "indicating",
-    "as",
-    "means",
-    "signifies",
-    "signified",
-    "reflects",
-];
-
 impl Reader<'_, '_> {
     fn add(&mut self, what: PlanningKind, first: usize, last: usize, value: Option<Printed>, sides: Option<Sides>) {
         let span = self.view.span(first, last);
@@ -134,28 +79,7 @@ impl Reader<'_, '_> {
             }
             let mut i = x.first;
             // From the p back to its mark: signs, "indicates", "significant at".
-            while i > 0
-                && (v.signs(i - 1, &[':', '=', ',', ';', '-', '('])
-                    || v.any(
-                        i - 1,
-                        &[
-                            "indicates",
-                            "indicate",
-                            "denotes",
-                            "represents",
-                            "significant",
-                            "significantly",
-                            "at",
-                            "statistically",
-                            "means",
-                            "difference",
-                            "for",
-                            "the",
-                            "with",
-                            "signifies",
-                        ],
-                    ))
-            {
+            while i > 0 && (v.signs(i - 1, &[':', '=', ',', ';', '-', '(']) || v.any(i - 1, LEGEND_WORDS)) {
                 i -= 1;
             }
             if i == 0 {
@@ -281,59 +205,7 @@ impl Reader<'_, '_> {
                 significance(i)
                     || v.is(i, Classes::P.or(Classes::SIDED).or(Classes::NUMBER_WORD))
                     || !v.tokens[i].is_word() && !v.signs(i, &[';'])
-                    || v.any(
-                        i,
-                        &[
-                            "at",
-                            "as",
-                            "to",
-                            "be",
-                            "if",
-                            "when",
-                            "the",
-                            "a",
-                            "an",
-                            "of",
-                            "for",
-                            "with",
-                            "was",
-                            "were",
-                            "is",
-                            "by",
-                            "p",
-                            "value",
-                            "values",
-                            "level",
-                            "difference",
-                            "differences",
-                            "statistically",
-                            "than",
-                            "probability",
-                            "less",
-                            "on",
-                            "all",
-                            "tests",
-                            "in",
-                            "statistical",
-                            "level",
-                            "where",
-                            "analyses",
-                            "and",
-                            "below",
-                            "it",
-                            "corresponding",
-                            "under",
-                            "their",
-                            "its",
-                            "two",
-                            "alpha",
-                            "any",
-                            "resulting",
-                            "associated",
-                            "highly",
-                            "only",
-                        ],
-                    )
+                    || v.any(i, THRESHOLD_LINKS)
             });
             let bracket_result = in_bracket
                 && v.any(w, &["used", "applied", "level", "levels", "chosen", "assigned", "selected"])
@@ -414,23 +286,7 @@ impl Reader<'_, '_> {
             let ci =
                 (i + 1..(i + 12).min(v.len())).find(|&j| v.is(j, Classes::CI) || v.any(j, &["intervals", "interval"]));
             let Some(ci) = ci else { continue };
-            let verb = (ci + 1..(ci + 20).min(v.len())).find(|&j| {
-                v.any(
-                    j,
-                    &[
-                        "contain",
-                        "include",
-                        "exclude",
-                        "excluded",
-                        "excludes",
-                        "cross",
-                        "contained",
-                        "overlap",
-                        "crossed",
-                        "overlapped",
-                    ],
-                )
-            });
+            let verb = (ci + 1..(ci + 20).min(v.len())).find(|&j| v.any(j, EXCLUDES_NULL));
             let Some(verb) = verb else { continue };
             let last = (verb + 1..(verb + 6).min(v.len()))
                 .find(|&j| v.number(j).is_some() || v.any(j, &["zero", "one", "unity"]))
@@ -499,61 +355,7 @@ impl Reader<'_, '_> {
             }
             let skip = v.signs(j, &['=', '(', ':', ')', '-', '<', '≤', ',', '[', ']', '~'])
                 || v.is(j, Classes::P.or(Classes::SIDED).or(Classes::NUMBER_WORD))
-                || v.any(
-                    j,
-                    &[
-                        "level",
-                        "levels",
-                        "error",
-                        "rate",
-                        "was",
-                        "were",
-                        "is",
-                        "of",
-                        "at",
-                        "set",
-                        "the",
-                        "a",
-                        "an",
-                        "to",
-                        "as",
-                        "be",
-                        "and",
-                        "value",
-                        "probability",
-                        "significance",
-                        "fixed",
-                        "equal",
-                        "chosen",
-                        "2",
-                        "1",
-                        "α",
-                        "β",
-                        "alpha",
-                        "used",
-                        "being",
-                        "risk",
-                        "taken",
-                        "for",
-                        "set",
-                        "assumed",
-                        "established",
-                        "accepted",
-                        "i",
-                        "type",
-                        "defined",
-                        "than",
-                        "less",
-                        "statistical",
-                        "overall",
-                        "specified",
-                        "determined",
-                        "by",
-                        "adjusted",
-                        "assuming",
-                        "with",
-                    ],
-                )
+                || v.any(j, ALPHA_LINKS)
                 || v.number(j).is_some_and(|x| x.count().is_some_and(|n| n <= 2));
             if !skip {
                 return None;
@@ -687,34 +489,7 @@ impl Reader<'_, '_> {
                             break;
                         }
                     } else if !(v.signs(j, &['=', '(', ')', ':', '-', ',', '≥', '>', '[', ']'])
-                        || v.any(
-                            j,
-                            &[
-                                "of",
-                                "at",
-                                "was",
-                                "is",
-                                "set",
-                                "to",
-                                "β",
-                                "beta",
-                                "least",
-                                "level",
-                                "the",
-                                "be",
-                                "a",
-                                "approximately",
-                                "about",
-                                "and",
-                                "equal",
-                                "greater",
-                                "than",
-                                "over",
-                                "fixed",
-                                "analysis",
-                                "desired",
-                            ],
-                        ))
+                        || v.any(j, POWER_LINKS))
                     {
                         break;
                     }
@@ -745,26 +520,7 @@ impl Reader<'_, '_> {
     /// "a sample size of 320", "17 volunteers per group were needed to detect …".
     fn sample_size(&mut self) {
         let v = self.view;
-        let planning_words = || {
-            (0..v.len()).any(|i| {
-                v.any(
-                    i,
-                    &[
-                        "power",
-                        "detect",
-                        "calculated",
-                        "calculation",
-                        "estimated",
-                        "alpha",
-                        "α",
-                        "assuming",
-                        "sample",
-                        "powered",
-                        "significance",
-                    ],
-                )
-            })
-        };
+        let planning_words = || (0..v.len()).any(|i| v.any(i, CALCULATES));
         for i in 0..v.len() {
             let size = v.any(i, &["sample"])
                 && (v.any(i + 1, &["size", "sizes"]) || v.sign(i + 1, '-') && v.any(i + 2, &["size"]));
@@ -860,13 +616,7 @@ impl Reader<'_, '_> {
             && !v.signs(j + 1, &['%', '/', '.'])
             && !(v.sign(j + 1, '-') && v.any(j + 2, &["sided", "tailed", "week", "month", "day", "year"]))
             && !v.is(j + 1, Classes::PERCENT.or(Classes::UNIT))
-            && !v.any(
-                j + 1,
-                &[
-                    "years", "months", "weeks", "days", "mg", "kg", "mm", "cm", "points", "point", "minutes", "hours",
-                    "times", "mmhg", "ml", "fold", "per",
-                ],
-            )
+            && !v.any(j + 1, MEASURES)
             && !v
                 .any(j.wrapping_sub(1), &["of"])
                 .then(|| v.any(j.wrapping_sub(2), &["power", "difference", "sd", "alpha"]))
@@ -931,24 +681,7 @@ impl Reader<'_, '_> {
                     && (v.sign(last + 1, '-')
                         || v.is(last + 1, MULTIPLE)
                         || v.any(last + 1, TEST_WORDS)
-                        || v.any(
-                            last + 1,
-                            &[
-                                "keuls",
-                                "honestly",
-                                "significant",
-                                "difference",
-                                "honest",
-                                "kramer",
-                                "range",
-                                "s",
-                                "type",
-                                "for",
-                                "comparisons",
-                                "and",
-                                "method",
-                            ],
-                        )
+                        || v.any(last + 1, CORRECTION_LINKS)
                         || v.sign(last + 1, '\''))
                 {
                     last += 1;
@@ -964,88 +697,9 @@ impl Reader<'_, '_> {
     }
 }
 
-const ADJUSTS: &[&str] = &[
-    "adjusted",
-    "adjustment",
-    "adjustments",
-    "corrected",
-    "correction",
-    "corrections",
-    "correct",
-    "adjust",
-    "adjusting",
-    "correcting",
-    "accounting",
-    "account",
-    "controlled",
-    "control",
-];
-
-const TEST_WORDS: &[&str] = &[
-    "test",
-    "tests",
-    "correction",
-    "corrections",
-    "adjustment",
-    "adjusted",
-    "corrected",
-    "procedure",
-    "method",
-    "post",
-    "hoc",
-    "posthoc",
-    "comparison",
-    "comparisons",
-    "multiple",
-    "range",
-    "rate",
-    "analysis",
-];
-
 /// Words that say how many it takes.
 const NEEDED: &[&str] =
     &["required", "needed", "necessary", "sufficient", "require", "recruit", "enroll", "enrol", "need", "needs"];
-
-/// Who or what is counted into a sample.
-const PEOPLE: &[&str] = &[
-    "patients",
-    "subjects",
-    "participants",
-    "volunteers",
-    "women",
-    "men",
-    "children",
-    "individuals",
-    "people",
-    "infants",
-    "animals",
-    "rats",
-    "mice",
-    "clusters",
-    "eyes",
-    "students",
-    "practices",
-    "adults",
-    "persons",
-    "completers",
-    "cases",
-    "events",
-    "pairs",
-    "families",
-    "girls",
-    "boys",
-    "schools",
-    "villages",
-    "teeth",
-    "babies",
-    "mothers",
-    "evaluable",
-    "households",
-    "dogs",
-    "pigs",
-    "residents",
-    "respondents",
-];
 
 /// A letter that marks figures: `a`, `b`; `p` itself is none.
 fn is_mark_letter(v: &SentenceView, i: usize) -> bool {

@@ -5,9 +5,13 @@
 
 mod clause;
 mod cue;
+// Word lists are easier to read in full lines.
+#[rustfmt::skip]
+mod words;
 
 use self::clause::{Clause, Flat, Lead, clauses};
 use self::cue::{Facts, Found, find};
+use self::words::{CIRCUMSTANCES, OPENERS};
 use super::claim_words::{CHANGED, COMPARATIVE, DIFFER, EXTREME, FINITE, FIT, HEDGE};
 use super::lexicon::Classes;
 use super::p::PExpression;
@@ -99,97 +103,6 @@ fn misreading(view: &SentenceView, out: &mut Vec<Claim>) -> bool {
     });
     true
 }
-
-/// Words that open a sentence and add nothing to its claim.
-const OPENERS: &[&str] = &[
-    "and",
-    "or",
-    "so",
-    "however",
-    "moreover",
-    "furthermore",
-    "additionally",
-    "meanwhile",
-    "finally",
-    "overall",
-    "thus",
-    "therefore",
-    "interestingly",
-    "similarly",
-    "consequently",
-    "also",
-    "then",
-    "hence",
-    "likewise",
-    "nevertheless",
-    "nonetheless",
-    "again",
-    "accordingly",
-    "importantly",
-    "notably",
-    "respectively",
-    "that",
-    "conversely",
-    "surprisingly",
-    "indeed",
-    "generally",
-    "specifically",
-    "further",
-    "besides",
-    "lastly",
-    "firstly",
-    "secondly",
-];
-
-/// Words that open a phrase of circumstance, which ends at a comma: "At 12 months, …".
-const CIRCUMSTANCES: &[&str] = &[
-    "in",
-    "at",
-    "after",
-    "on",
-    "among",
-    "during",
-    "for",
-    "by",
-    "when",
-    "as",
-    "compared",
-    "using",
-    "based",
-    "regarding",
-    "consistent",
-    "of",
-    "from",
-    "within",
-    "following",
-    "under",
-    "despite",
-    "due",
-    "to",
-    "before",
-    "with",
-    "according",
-    "concerning",
-    "over",
-    "between",
-    "relative",
-    "contrary",
-    "unlike",
-    "like",
-    "until",
-    "throughout",
-    "once",
-    "where",
-    "given",
-    "because",
-    "since",
-    "prior",
-    "across",
-    "upon",
-    "if",
-    "considering",
-    "both",
-];
 
 /// The clause from its subject to the end of what the cue says.
 fn extent(flat: &Flat, clause: &Clause, found: &Found) -> (usize, usize) {
