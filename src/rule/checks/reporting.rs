@@ -97,7 +97,11 @@ pub fn missing(facts: &Facts, what: Part) -> Vec<Finding> {
                 let e = &readings.estimates[r.estimate?];
                 let has_precision = r.interval.is_some() || e.se.is_some() || interval_beside(e.sentence);
                 // Without a p, or at the far end of a phrase, the figure may be no tested effect at all.
-                let sure = r.p.is_some() && facts.quote(e.span).chars().count() <= LONGEST_ESTIMATE;
+                let of_group = readings.groups.iter().any(|g| g.span.overlaps(e.span));
+                // "difference in falls (3 of 58" ends in a bracket that says something else.
+                let torn = facts.quote(e.span).contains('(') && !facts.quote(e.span).contains(')');
+                let sure =
+                    r.p.is_some() && !of_group && !torn && facts.quote(e.span).chars().count() <= LONGEST_ESTIMATE;
                 let wanted = !has_precision && sure && wants_interval(e.measure) && due(e.span);
                 (wanted && !facts.in_table(e.span)).then_some(e.span)
             });
@@ -138,7 +142,11 @@ pub fn missing(facts: &Facts, what: Part) -> Vec<Finding> {
 fn effect_missing(facts: &Facts, r: &ReportedResult) -> Option<Span> {
     let readings = facts.readings;
     let p = r.p.map(|i| &readings.p[i]).filter(|p| is_effect(p))?;
-    let doubtful = [Feature::OtherGroups, Feature::Unclear, Feature::Paired];
+    // Rank tests and medians have no effect that guidance would have everyone print.
+    let doubtful = [Feature::OtherGroups, Feature::Unclear, Feature::Paired, Feature::Ranked, Feature::TimeToEvent];
+    if r.groups.iter().any(|&i| readings.groups[i].median.is_some()) {
+        return None;
+    }
     if r.groups.len() != 2 || r.estimate.is_some() || r.interval.is_some() || doubtful.iter().any(|&f| r.has(f)) {
         return None;
     }
