@@ -98,7 +98,9 @@ pub(crate) fn p_of_ratio(ratio: Range, level: f64, df: Range) -> Option<Range> {
 
 /// The degrees of freedom to try beside the normal distribution, and whether they come from group sizes.
 fn degrees(case: &Case, scale: Scale, measure: Measure) -> Option<(Range, bool)> {
-    let ratio_of_means = scale == Scale::Ratio && matches!(measure, Measure::Other);
+    // A ratio of means, say; an unnamed figure is more often a ratio of risks.
+    let named = case.estimate().is_some_and(|e| e.scale == Scale::Ratio);
+    let ratio_of_means = named && scale == Scale::Ratio && matches!(measure, Measure::Other);
     if !(scale == Scale::Difference || ratio_of_means) || measure == Measure::RiskDifference {
         return None;
     }
@@ -381,7 +383,7 @@ pub(crate) fn inside(case: &Case) -> Option<Recomputation> {
     if !inside && e.measure == Measure::Other && e.scale == Scale::Unknown {
         return None;
     }
-    if reciprocal && !inside || e.percent != i.percent && !inside {
+    if !inside && (reciprocal || e.percent != i.percent) {
         return None;
     }
     let unit = e.value.unit().max(lower.unit());
@@ -435,7 +437,7 @@ fn inside_slip(e: &Estimate, lower: Printed, upper: Printed) -> Option<Slip> {
             }
         }
     }
-    for x in slip::moved(e.value).filter(|x| fits(*x, lower, upper)) {
+    if let Some(x) = slip::moved(e.value).find(|x| fits(*x, lower, upper)) {
         let says = format!("with its decimal point moved the estimate reads {}", x.value());
         return Some(Slip { kind: "decimal-point", says });
     }

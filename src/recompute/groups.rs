@@ -283,7 +283,7 @@ fn categories(cells: &[Cell]) -> Option<Vec<Vec<u64>>> {
         });
         sums_to_total.then_some(table)
     };
-    let divisors = (2..=cells.len() / 2).filter(|k| cells.len() % k == 0);
+    let divisors = (2..=cells.len() / 2).filter(|k| cells.len().is_multiple_of(*k));
     divisors.flat_map(|k| [(k, true), (k, false)]).find_map(|(k, way)| by_columns(k, way))
 }
 
