@@ -192,6 +192,7 @@ pub(crate) fn p_from_interval(case: &Case) -> Result<Vec<Recomputation>, &'stati
         ground: Ground::IfOneMethod,
         hold,
         least: if rival_tests(case, e) { 2.0 } else { 1.2 },
+        least_shift: 0.0,
         alpha: case.alpha,
         stated: None,
     };
@@ -358,8 +359,15 @@ pub(crate) fn p_from_se(case: &Case) -> Option<Recomputation> {
     let line = format!("t = {shown}; df {} or more; {}", df.lo, working::p(range));
     candidates.push(Candidate::new(&method::SE_TO_P, "t", range, line).assuming(Assumption::PlausibleDf));
     let hold = case.interval_hold().or((e.scale == Scale::Unknown).then_some(reason::SCALE));
-    let policy =
-        Policy { of: Quantity::P, ground: Ground::IfOneMethod, hold, least: 1.2, alpha: case.alpha, stated: None };
+    let policy = Policy {
+        of: Quantity::P,
+        ground: Ground::IfOneMethod,
+        hold,
+        least: 1.2,
+        least_shift: 0.0,
+        alpha: case.alpha,
+        stated: None,
+    };
     let printed = p.value.filter(|_| p.relation == Relation::Equal);
     let slips = || {
         if target.fit(statistic::halved(normal)) == Fit::Full && target.sharp_against(statistic::halved(normal)) {
