@@ -202,6 +202,28 @@ pub struct Group {
     pub one_expression: bool,
 }
 
+impl Group {
+    /// A group of which nothing is known yet but its place.
+    pub fn new(span: Span, sentence: u32) -> Group {
+        Group {
+            span,
+            sentence,
+            label: String::new(),
+            n: None,
+            events: None,
+            total: None,
+            percent: None,
+            mean: None,
+            median: None,
+            spread_kind: None,
+            spread: Vec::new(),
+            change: false,
+            approximate: false,
+            one_expression: false,
+        }
+    }
+}
+
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
 pub enum Measure {
     MeanDifference,

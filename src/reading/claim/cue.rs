@@ -241,13 +241,19 @@ impl Scope<'_> {
                 || flat.is(k + 1, FUNCTION.or(THAN).or(BREAK))
                 || flat.any(k + 1, &["only", "when", "after", "within", "at"])
                 || flat.token(k + 1) > flat.token(k) + 1;
-            if !(predicate && bare || result_noun && self.finite.is_some()) {
+            // "did not identify significant activations", "no significant clustering was found".
+            let denied = self.negation(k, 4).is_some()
+                && (flat.find(self.range(), REPORT).is_some() || flat.any(self.clause.first, &["there"]))
+                && !(k + 1..(k + 6).min(end)).any(|j| flat.any(j, CLINICAL_NOUNS));
+            if !(predicate && bare || result_noun && self.finite.is_some() || denied) {
                 return None;
             }
         }
+        // "reached significance", "significance was not reached", "without significance".
         if noun
-            && !predicate
-            && !(self.clause.first..k).any(|j| flat.any(j, &["showed", "without", "did", "had", "not", "no", "failed"]))
+            && !(k.saturating_sub(5).max(self.clause.first)..k).any(|j| flat.any(j, REACHES))
+            && !(k + 1..(k + 6).min(end)).any(|j| flat.any(j, REACHES))
+            && self.negation(k, 2).is_none()
         {
             return None;
         }
@@ -258,6 +264,7 @@ impl Scope<'_> {
             return None;
         }
         let hedged = (k.saturating_sub(3).max(self.clause.first)..k).any(|j| flat.is(j, HEDGE))
+            || (k.saturating_sub(6).max(self.clause.first)..k).any(|j| flat.any(j, &["trend", "tended", "tendency"]))
             || (k + 1..(k + 3).min(end)).any(|j| flat.is(j, Classes::TREND));
         let last = target.unwrap_or(k);
         let negation = self.negation(k, 9);

@@ -88,3 +88,17 @@ pub(super) const CIRCUMSTANCES: &[&str] = &[
     "throughout", "once", "where", "given", "because", "since", "prior", "across", "upon", "if", "considering",
     "both",
 ];
+
+/// What may be significant to a clinician without any test.
+pub(super) const CLINICAL_NOUNS: &[&str] = &[
+    "complications", "adverse", "bleeding", "side", "comorbidities", "comorbidity", "disease", "history", "morbidity",
+    "medical", "stenosis", "toxicity", "events", "event", "problems", "illness", "infection", "pain", "complication",
+    "disability", "discomfort", "symptoms", "toxicities", "reactions", "haemorrhage", "hemorrhage", "hypotension",
+    "hypoglycaemia", "hypoglycemia", "psychiatric", "safety", "limitations", "abnormalities", "concerns",
+];
+
+/// Verbs of which significance is the object or the subject.
+pub(super) const REACHES: &[&str] = &[
+    "reach", "reached", "reaching", "achieve", "achieved", "attain", "attained", "approached", "approaching",
+    "approach", "showed", "show", "failed", "lost", "gained", "found", "observed", "retained", "lacked",
+];

@@ -50,7 +50,7 @@ pub fn mentions(view: &SentenceView, out: &mut Vec<Mention>) {
             .take_while(|&k| view.get(k).is_some_and(|t| t.is_word()) || view.signs(k, &['-', ',']))
             .take_while(|&k| !view.is(k, Classes::UNIT) && !view.is(k, Classes::COPULA) && !view.is(k, Classes::AND))
             .any(|k| view.is(k, Classes::GROUP) && !view.any(k, &["groups", "group", "arms"]));
-        if size > 1 && (after_n || denominator || members || included) {
+        if size > 4 && (after_n || denominator || members || included) {
             out.push(Mention { size, span: view.span(i, next - 1), sentence: view.id });
         }
         i = next;
@@ -133,7 +133,7 @@ fn siblings(groups: &mut [Group]) {
     let totals: Vec<Figure> =
         groups.iter().filter(|g| g.percent.is_some() && g.events.is_some()).filter_map(|g| g.total).collect();
     let Some(&first) = totals.first() else { return };
-    if totals.len() < 2 || totals.iter().any(|t| t.printed != first.printed) {
+    if totals.len() < 2 || first.printed.digits < 20 || totals.iter().any(|t| t.printed != first.printed) {
         return;
     }
     let span = match first.origin {
