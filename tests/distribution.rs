@@ -24,16 +24,12 @@ fn table(name: &str, inputs: usize) -> Vec<Row> {
         .map(|line| {
             let cells: Vec<&str> = line.split(',').collect();
             let number = |cell: &str| -> f64 {
-                cell.parse()
-                    .unwrap_or_else(|_| panic!("{path}: not a number: {cell} in {line}"))
+                cell.parse().unwrap_or_else(|_| panic!("{path}: not a number: {cell} in {line}"))
             };
             let last = cells.len() - 2;
             Row {
                 inputs: cells[..inputs].iter().map(|cell| number(cell)).collect(),
-                truths: cells[inputs..last]
-                    .iter()
-                    .map(|cell| number(cell))
-                    .collect(),
+                truths: cells[inputs..last].iter().map(|cell| number(cell)).collect(),
                 tolerance: number(cells[last]),
                 line: line.to_owned(),
             }
@@ -48,11 +44,7 @@ fn check(name: &str, inputs: usize, laxest: f64, compute: impl Fn(&[f64]) -> Vec
     let mut failures = Vec::new();
     let rows = table(name, inputs);
     for row in &rows {
-        assert!(
-            row.tolerance <= laxest,
-            "{name}: lax tolerance in {}",
-            row.line
-        );
+        assert!(row.tolerance <= laxest, "{name}: lax tolerance in {}", row.line);
         let got = compute(&row.inputs);
         assert_eq!(got.len(), row.truths.len(), "{name}: {}", row.line);
         for (value, truth) in got.iter().zip(&row.truths) {
@@ -62,13 +54,7 @@ fn check(name: &str, inputs: usize, laxest: f64, compute: impl Fn(&[f64]) -> Vec
             }
         }
     }
-    assert!(
-        failures.is_empty(),
-        "{name}: {} of {} rows\n{}",
-        failures.len(),
-        rows.len(),
-        failures.join("\n")
-    );
+    assert!(failures.is_empty(), "{name}: {} of {} rows\n{}", failures.len(), rows.len(), failures.join("\n"));
 }
 
 fn both(tails: Result<Tails, DistributionError>) -> Vec<f64> {
@@ -88,60 +74,39 @@ fn limits(value: Result<(f64, f64), DistributionError>) -> Vec<f64> {
 #[test]
 fn normal_agrees_with_its_tables() {
     check("normal", 1, 1e-14, |x| both(Ok(d::normal(x[0]))));
-    check("normal_quantile", 1, 1e-13, |x| {
-        one(d::normal_quantile(x[0]))
-    });
+    check("normal_quantile", 1, 1e-13, |x| one(d::normal_quantile(x[0])));
 }
 
 #[test]
 fn student_agrees_with_its_tables() {
     check("student", 2, 1e-11, |x| both(d::student(x[0], x[1])));
-    check("student_quantile", 2, 1e-11, |x| {
-        one(d::student_quantile(x[0], x[1]))
-    });
+    check("student_quantile", 2, 1e-11, |x| one(d::student_quantile(x[0], x[1])));
 }
 
 #[test]
 fn f_agrees_with_its_tables() {
     check("f", 3, 1e-11, |x| both(d::f(x[0], x[1], x[2])));
-    check("f_quantile", 3, 1e-11, |x| {
-        one(d::f_quantile(x[0], x[1], x[2]))
-    });
+    check("f_quantile", 3, 1e-11, |x| one(d::f_quantile(x[0], x[1], x[2])));
 }
 
 #[test]
 fn chi_squared_and_gamma_agree_with_their_tables() {
-    check("chi_squared", 2, 1e-11, |x| {
-        both(d::chi_squared(x[0], x[1]))
-    });
+    check("chi_squared", 2, 1e-11, |x| both(d::chi_squared(x[0], x[1])));
     check("gamma", 2, 1e-11, |x| both(d::gamma(x[0], x[1])));
-    check("chi_squared_quantile", 2, 1e-11, |x| {
-        one(d::chi_squared_quantile(x[0], x[1]))
-    });
+    check("chi_squared_quantile", 2, 1e-11, |x| one(d::chi_squared_quantile(x[0], x[1])));
 }
 
 #[test]
 fn beta_agrees_with_its_tables() {
     check("beta", 4, 1e-11, |x| both(d::beta(x[0], x[1], x[2], x[3])));
-    check("beta_quantile", 3, 1e-11, |x| {
-        one(d::beta_quantile(x[0], x[1], x[2]))
-    });
+    check("beta_quantile", 3, 1e-11, |x| one(d::beta_quantile(x[0], x[1], x[2])));
 }
 
 #[test]
 fn counts_agree_with_their_tables() {
-    check("binomial", 3, 1e-11, |x| {
-        both(d::binomial(x[0] as u64, x[1] as u64, x[2]))
-    });
+    check("binomial", 3, 1e-11, |x| both(d::binomial(x[0] as u64, x[1] as u64, x[2])));
     check("poisson", 2, 1e-11, |x| both(d::poisson(x[0] as u64, x[1])));
-    check("hypergeometric", 4, 1e-11, |x| {
-        both(d::hypergeometric(
-            x[0] as u64,
-            x[1] as u64,
-            x[2] as u64,
-            x[3] as u64,
-        ))
-    });
+    check("hypergeometric", 4, 1e-11, |x| both(d::hypergeometric(x[0] as u64, x[1] as u64, x[2] as u64, x[3] as u64)));
 }
 
 #[test]
@@ -150,47 +115,30 @@ fn exact_tests_agree_with_their_tables() {
         let p = d::fisher_exact(x[0] as u64, x[1] as u64, x[2] as u64, x[3] as u64).unwrap();
         vec![p.less, p.greater, p.two_sided]
     });
-    check("mcnemar_exact", 2, 1e-12, |x| {
-        one(d::mcnemar_exact(x[0] as u64, x[1] as u64))
-    });
-    check("mann_whitney_exact", 3, 1e-12, |x| {
-        both(d::mann_whitney_exact(x[0] as u64, x[1] as u64, x[2] as u64))
-    });
+    check("mcnemar_exact", 2, 1e-12, |x| one(d::mcnemar_exact(x[0] as u64, x[1] as u64)));
+    check("mann_whitney_exact", 3, 1e-12, |x| both(d::mann_whitney_exact(x[0] as u64, x[1] as u64, x[2] as u64)));
 }
 
 #[test]
 fn intervals_agree_with_their_tables() {
-    check("clopper_pearson", 3, 1e-11, |x| {
-        limits(d::clopper_pearson(x[0] as u64, x[1] as u64, x[2]))
-    });
-    check("wilson", 3, 1e-12, |x| {
-        limits(d::wilson(x[0] as u64, x[1] as u64, x[2]))
-    });
+    check("clopper_pearson", 3, 1e-11, |x| limits(d::clopper_pearson(x[0] as u64, x[1] as u64, x[2])));
+    check("wilson", 3, 1e-12, |x| limits(d::wilson(x[0] as u64, x[1] as u64, x[2])));
 }
 
 #[test]
 fn integrals_agree_with_their_tables() {
-    check("noncentral_student", 3, 1e-10, |x| {
-        both(d::noncentral_student(x[0], x[1], x[2]))
-    });
-    check("studentized_range", 3, 1e-9, |x| {
-        both(d::studentized_range(x[0], x[1] as u64, x[2]))
-    });
+    check("noncentral_student", 3, 1e-10, |x| both(d::noncentral_student(x[0], x[1], x[2])));
+    check("studentized_range", 3, 1e-9, |x| both(d::studentized_range(x[0], x[1] as u64, x[2])));
 }
 
 /// Asserts a value printed with a limited number of digits.
 #[track_caller]
 fn printed(value: f64, text: &str) {
     let (mantissa, exponent) = text.split_once('e').unwrap_or((text, "0"));
-    let places = mantissa
-        .split_once('.')
-        .map_or(0, |(_, digits)| digits.len());
+    let places = mantissa.split_once('.').map_or(0, |(_, digits)| digits.len());
     let unit = 10f64.powi(exponent.parse::<i32>().unwrap() - places as i32);
     let truth: f64 = text.parse().unwrap();
-    assert!(
-        (value - truth).abs() <= 0.5 * unit * (1.0 + 1e-6),
-        "{value:e} is not {text} as printed"
-    );
+    assert!((value - truth).abs() <= 0.5 * unit * (1.0 + 1e-6), "{value:e} is not {text} as printed");
 }
 
 #[test]
@@ -201,10 +149,7 @@ fn published_tests_of_two_by_two_tables() {
     printed(tea.greater, "0.2428571429");
     printed(tea.two_sided, "0.4857142857");
     // Convictions of like-sex twins: R fisher.test (Fisher 1962, 1970).
-    printed(
-        d::fisher_exact(2, 15, 10, 3).unwrap().two_sided,
-        "0.0005367",
-    );
+    printed(d::fisher_exact(2, 15, 10, 3).unwrap().two_sided, "0.0005367");
     // Fagerland, Lydersen & Laake, contingency-table book (authors' R package tests).
     printed(d::fisher_exact(0, 16, 15, 57).unwrap().two_sided, "0.06287");
     // The same book, McNemar (Cavo 2012): exact p 0.052479.
@@ -233,10 +178,7 @@ fn scipy_fisher_results() {
         (190, 800, 200, 900, 0.574111858126088),
     ] {
         let got = d::fisher_exact(a, b, c, dd).unwrap().two_sided;
-        assert!(
-            (got - p).abs() <= 1e-6 * p,
-            "{a} {b} {c} {dd}: {got:e} {p:e}"
-        );
+        assert!((got - p).abs() <= 1e-6 * p, "{a} {b} {c} {dd}: {got:e} {p:e}");
     }
 }
 
@@ -263,10 +205,7 @@ fn published_intervals_of_proportions() {
 #[test]
 fn published_p_values() {
     // Sleep data, Welch: R t.test / scipy ttest_ind, t and df as printed.
-    printed(
-        d::student_two_sided(-1.860813, 17.776474).unwrap(),
-        "0.07939",
-    );
+    printed(d::student_two_sided(-1.860813, 17.776474).unwrap(), "0.07939");
     // Sleep data, paired: R stats t.test reference output.
     printed(d::student_two_sided(-4.0621, 9.0).unwrap(), "0.002833");
     // NIST e-Handbook eda353, Welch: Boost.Math documentation, one tail 7.855e-26.
@@ -296,14 +235,8 @@ fn published_p_values() {
 fn published_rank_tests() {
     // Shier, Mann-Whitney U Test, MLSC 2004 (transcribed in the scipy documentation):
     // groups of 5 and 4, U 17 and 3, exact two-sided p .11.
-    printed(
-        2.0 * d::mann_whitney_exact(17, 5, 4).unwrap().upper,
-        "0.1111",
-    );
-    printed(
-        2.0 * d::mann_whitney_exact(3, 5, 4).unwrap().lower,
-        "0.1111",
-    );
+    printed(2.0 * d::mann_whitney_exact(17, 5, 4).unwrap().upper, "0.1111");
+    printed(2.0 * d::mann_whitney_exact(3, 5, 4).unwrap().lower, "0.1111");
     // R wilcox.test (Hollander & Wolfe): W 35, n 10 and 5, one-sided .1272.
     printed(d::mann_whitney_exact(35, 10, 5).unwrap().upper, "0.1272");
 }
@@ -315,9 +248,7 @@ fn published_studentized_range() {
     // MSE = 0.3885959.
     let scale = (10.0 / 0.388_595_9_f64).sqrt();
     for (difference, p) in [(0.371, 0.390871), (0.494, 0.197996), (0.865, 0.012006)] {
-        let got = d::studentized_range(difference * scale, 3, 27.0)
-            .unwrap()
-            .upper;
+        let got = d::studentized_range(difference * scale, 3, 27.0).unwrap().upper;
         assert!((got - p).abs() < 2e-6, "{got} {p}");
     }
 }
@@ -341,15 +272,9 @@ fn larger_tables_agree_with_two_by_two() {
     let p = d::fisher_exact_table(&table).unwrap();
     assert!((p / d::fisher_exact(7, 27, 1, 33).unwrap().two_sided - 1.0).abs() < 1e-12);
     let ragged: [&[u64]; 2] = [&[1, 2], &[3]];
-    assert_eq!(
-        d::fisher_exact_table(&ragged),
-        Err(DistributionError::OutOfDomain)
-    );
+    assert_eq!(d::fisher_exact_table(&ragged), Err(DistributionError::OutOfDomain));
     let large: [&[u64]; 3] = [&[300, 200, 100], &[100, 300, 200], &[200, 300, 300]];
-    assert_eq!(
-        d::fisher_exact_table(&large),
-        Err(DistributionError::TooLarge)
-    );
+    assert_eq!(d::fisher_exact_table(&large), Err(DistributionError::TooLarge));
 }
 
 #[test]
@@ -374,10 +299,7 @@ fn what_is_not_a_number_is_refused() {
         assert_eq!(d::f_quantile(0.5, bad, 2.0), refused);
         assert_eq!(d::chi_squared_quantile(0.5, bad), refused);
         assert_eq!(d::beta_quantile(0.5, 1.0, bad), refused);
-        assert_eq!(
-            d::clopper_pearson(1, 2, bad),
-            Err(DistributionError::NotFinite)
-        );
+        assert_eq!(d::clopper_pearson(1, 2, bad), Err(DistributionError::NotFinite));
         assert_eq!(d::wilson(1, 2, bad), Err(DistributionError::NotFinite));
     }
 }
@@ -393,31 +315,13 @@ fn what_is_out_of_range_is_refused() {
     assert_eq!(d::hypergeometric(5, 8, 4, 4), refused);
     assert_eq!(d::mann_whitney_exact(13, 3, 4), refused);
     for p in [0.0, 1.0, -0.1, 1.1] {
-        assert_eq!(
-            d::student_quantile(p, 3.0),
-            Err(DistributionError::OutOfDomain)
-        );
+        assert_eq!(d::student_quantile(p, 3.0), Err(DistributionError::OutOfDomain));
     }
-    assert_eq!(
-        d::clopper_pearson(3, 2, 0.95),
-        Err(DistributionError::OutOfDomain)
-    );
-    assert_eq!(
-        d::mann_whitney_exact(1, 1000, 1000),
-        Err(DistributionError::TooLarge)
-    );
-    assert_eq!(
-        d::fisher_exact(u64::MAX, 1, 1, 1),
-        Err(DistributionError::TooLarge)
-    );
-    assert_eq!(
-        d::fisher_exact(100_000_000, 1, 1, 1),
-        Err(DistributionError::TooLarge)
-    );
-    assert_eq!(
-        d::mcnemar_exact(u64::MAX, 1),
-        Err(DistributionError::TooLarge)
-    );
+    assert_eq!(d::clopper_pearson(3, 2, 0.95), Err(DistributionError::OutOfDomain));
+    assert_eq!(d::mann_whitney_exact(1, 1000, 1000), Err(DistributionError::TooLarge));
+    assert_eq!(d::fisher_exact(u64::MAX, 1, 1, 1), Err(DistributionError::TooLarge));
+    assert_eq!(d::fisher_exact(100_000_000, 1, 1, 1), Err(DistributionError::TooLarge));
+    assert_eq!(d::mcnemar_exact(u64::MAX, 1), Err(DistributionError::TooLarge));
 }
 
 /// Positive sizes spread over the orders of magnitude that manuscripts print.
@@ -427,10 +331,7 @@ fn size() -> impl Strategy<Value = f64> {
 
 /// Tail probabilities from 1e-30 up, evenly on the log scale.
 fn tail() -> impl Strategy<Value = f64> {
-    prop_oneof![
-        (-30.0..-0.301f64).prop_map(|exponent| 10f64.powf(exponent)),
-        0.01..0.99f64,
-    ]
+    prop_oneof![(-30.0..-0.301f64).prop_map(|exponent| 10f64.powf(exponent)), 0.01..0.99f64,]
 }
 
 fn adds_up(tails: Tails) {
@@ -439,10 +340,7 @@ fn adds_up(tails: Tails) {
 }
 
 fn near(value: f64, truth: f64) {
-    assert!(
-        (value - truth).abs() <= 1e-10 * truth.abs(),
-        "{value:e} {truth:e}"
-    );
+    assert!((value - truth).abs() <= 1e-10 * truth.abs(), "{value:e} {truth:e}");
 }
 
 proptest! {
