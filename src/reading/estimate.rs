@@ -16,12 +16,21 @@ struct Name {
     adjusted: bool,
 }
 
+/// What a paragraph has named so far, for figures that follow without a name.
+#[derive(Clone, Copy, Debug, Default)]
+pub struct Named {
+    /// The level of its intervals.
+    pub level: Option<super::Figure>,
+    /// The last ratio or difference that it named.
+    measure: Option<(Measure, Scale)>,
+}
+
 /// Appends the estimates of a sentence, and the intervals that only an estimate's name reveals.
 ///
 /// `first_interval` is the first of this sentence's intervals in `intervals`.
 pub fn read(
     view: &SentenceView,
-    level: Option<super::Figure>,
+    named: &mut Named,
     taken: &mut [bool],
     intervals: &mut Vec<IntervalReading>,
     first_interval: usize,
@@ -30,6 +39,7 @@ pub fn read(
     let names = names(view);
     let start = out.len();
     // Where the paragraph has named its intervals, a verb before the figure is enough.
+    let level = named.level;
     let told = |i: usize| level.is_some() && i > 0 && view.any(i - 1, &["was", "were", "is", "of"]);
     interval::read_unnamed(view, |i| told(i) || names.iter().any(|n| leads_to(view, n, i)), level, taken, intervals);
     intervals[first_interval..].sort_by_key(|x| x.span.start);
@@ -51,7 +61,10 @@ pub fn read(
         let (measure, scale, adjusted) = match name {
             Some(n) if near || at - n.last <= 16 => (n.measure, n.scale, n.adjusted),
             _ if single(view, at, last) => (Measure::Other, Scale::Single, false),
-            _ => (Measure::Other, Scale::Unknown, false),
+            _ => {
+                let (measure, scale) = named.measure.filter(|_| inside).unwrap_or((Measure::Other, Scale::Unknown));
+                (measure, scale, false)
+            }
         };
         taken[at..=last].fill(true);
         out.push(Estimate {
@@ -84,6 +97,9 @@ pub fn read(
         });
     }
     out[start..].sort_by_key(|e| e.span.start);
+    if let Some(n) = names.iter().rev().find(|n| n.scale == Scale::Ratio) {
+        named.measure = Some((n.measure, n.scale));
+    }
 }
 
 /// A mean, a proportion or a rate of one group: nothing to test its interval against.

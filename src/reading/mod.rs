@@ -13,6 +13,7 @@ pub mod p;
 pub mod planning;
 pub mod sentence;
 pub mod statistic;
+pub mod table;
 pub mod token;
 
 use crate::manuscript::{BlockKind, Manuscript, SectionKind};
@@ -48,6 +49,10 @@ pub enum Inference {
     OtherSentence,
     /// The arm's size as the Methods or the flow of participants give it.
     ArmSize,
+    /// The total that all other counts of the paragraph have.
+    Siblings,
+    /// The sum of the categories that the sentence lists: their percentages fit it.
+    Categories,
     /// The only count that the printed percent and events allow.
     FromPercent,
     /// Degrees of freedom that the group sizes give.
@@ -197,6 +202,28 @@ pub struct Group {
     pub one_expression: bool,
 }
 
+impl Group {
+    /// A group of which nothing is known yet but its place.
+    pub fn new(span: Span, sentence: u32) -> Group {
+        Group {
+            span,
+            sentence,
+            label: String::new(),
+            n: None,
+            events: None,
+            total: None,
+            percent: None,
+            mean: None,
+            median: None,
+            spread_kind: None,
+            spread: Vec::new(),
+            change: false,
+            approximate: false,
+            one_expression: false,
+        }
+    }
+}
+
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
 pub enum Measure {
     MeanDifference,
@@ -337,11 +364,15 @@ pub struct Readings {
 pub fn read(manuscript: &Manuscript, scan: &Scan) -> Readings {
     let mut readings = Readings::default();
     for (number, block) in manuscript.blocks.iter().enumerate() {
-        if matches!(block.kind, BlockKind::Heading | BlockKind::Table(_)) {
+        if block.kind == BlockKind::Heading {
             continue;
         }
         let section = &manuscript.sections[block.section as usize];
         if matches!(section.kind, SectionKind::References | SectionKind::Back) {
+            continue;
+        }
+        if matches!(block.kind, BlockKind::Table(_)) {
+            table::read(manuscript, scan, number, &mut readings);
             continue;
         }
         read_paragraph(manuscript, scan, scan.of_block(number), section.kind, &mut readings);
@@ -365,10 +396,10 @@ fn read_paragraph(
         group::total::mentions(&view, &mut mentions);
     }
     let mut setting = group::Setting { section, declared };
-    let mut level = None;
+    let mut named = estimate::Named::default();
     let (first_p, first_group) = (readings.p.len(), readings.groups.len());
     for id in sentences {
-        read_sentence(&scan.view(manuscript, id), &mut setting, &mut level, readings);
+        read_sentence(&scan.view(manuscript, id), &mut setting, &mut named, readings);
     }
     let tested = |sentence| readings.p[first_p..].iter().any(|p| p.sentence == sentence);
     group::total::fill(&mut readings.groups[first_group..], &mentions, tested);
@@ -377,7 +408,7 @@ fn read_paragraph(
 fn read_sentence(
     view: &SentenceView,
     setting: &mut group::Setting,
-    level: &mut Option<Figure>,
+    named: &mut estimate::Named,
     readings: &mut Readings,
 ) {
     let mut taken = vec![false; view.len()];
@@ -400,9 +431,9 @@ fn read_sentence(
         });
     }
     let first_interval = readings.intervals.len();
-    *level = interval::read(view, &mut taken, &mut readings.intervals).or(*level);
+    named.level = interval::read(view, &mut taken, &mut readings.intervals).or(named.level);
     statistic::read(view, &mut taken, &mut readings.statistics);
-    estimate::read(view, *level, &mut taken, &mut readings.intervals, first_interval, &mut readings.estimates);
+    estimate::read(view, named, &mut taken, &mut readings.intervals, first_interval, &mut readings.estimates);
     group::read(view, setting, &mut taken, &mut readings.groups);
     claim::read(view, &p, &mut readings.claims);
 }

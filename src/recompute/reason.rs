@@ -10,6 +10,8 @@ pub const NO_SIZES: &str = "no group sizes";
 pub const NO_SPREAD: &str = "no spread";
 /// "degrees of freedom not printed".
 pub const NO_DF: &str = "degrees of freedom not printed";
+/// "no interval or standard error beside the estimate".
+pub const NO_INTERVAL: &str = "no interval or standard error beside the estimate";
 /// "no estimate beside the interval".
 pub const NO_ESTIMATE: &str = "no estimate beside the interval";
 /// "only one group is printed".
@@ -60,6 +62,8 @@ pub const DENOMINATOR: &str = "percent of another denominator";
 pub const ABOUT: &str = "an approximate percentage";
 /// "agrees by a stronger method".
 pub const STRONGER: &str = "agrees by a stronger method";
+/// "agrees with a test on the groups, beside an interval by another method".
+pub const OTHER_METHOD: &str = "agrees with a test on the groups, beside an interval by another method";
 /// "the approximation does not decide".
 pub const APPROXIMATE: &str = "the approximation does not decide";
 /// "the group sizes are not printed for this result".
@@ -79,6 +83,7 @@ pub const ALL: &[&str] = &[
     NO_SIZES,
     NO_SPREAD,
     NO_DF,
+    NO_INTERVAL,
     NO_ESTIMATE,
     ONE_GROUP,
     NO_METHOD,
@@ -105,6 +110,7 @@ pub const ALL: &[&str] = &[
     ABOUT,
     STRONGER,
     APPROXIMATE,
+    OTHER_METHOD,
     SIZES_DOUBTFUL,
 ];
 

@@ -144,6 +144,25 @@ pub(crate) fn settle(recomputations: &mut [Recomputation], has_p: bool) -> Verdi
             }
         }
     }
+    // A test on the counts beside a Wald interval: its p agrees with the groups and need not agree with the interval.
+    let by_groups = |r: &Recomputation| {
+        r.of == Quantity::P
+            && r.verdict == Verdict::Tallies
+            && r.sharp
+            && r.ground > Ground::ByDefinition
+            && r.method != &super::method::INTERVAL_TO_P
+            && r.method != &super::method::INTERVAL_AGAINST_P
+    };
+    if recomputations.iter().any(by_groups) {
+        for r in recomputations.iter_mut() {
+            if r.of == Quantity::P && r.verdict == Verdict::Differs && r.ground == Ground::IfOneMethod {
+                r.verdict = Verdict::Undecided;
+                r.sharp = false;
+                r.slip = None;
+                r.reason = Some(reason::OTHER_METHOD.into());
+            }
+        }
+    }
     // An estimate that lies inside its interval says nothing of a p beside them.
     let counts = |r: &&Recomputation| !(has_p && r.method == &super::method::INSIDE);
     if recomputations.iter().any(|r| r.verdict == Verdict::Differs) {

@@ -2,9 +2,10 @@
 
 mod feature;
 mod sentence;
+mod table;
 
 use crate::context::{Context, Stated, Test};
-use crate::manuscript::Manuscript;
+use crate::manuscript::{BlockKind, Manuscript};
 use crate::reading::{Readings, Scan};
 use crate::text::Span;
 
@@ -62,7 +63,8 @@ impl ReportedResult {
     }
 }
 
-/// Joins the readings of a manuscript to results, in reading order: inside a sentence, never by mere nearness.
+/// Joins the readings of a manuscript to results, in reading order: inside a sentence or across a table's row,
+/// never by mere nearness.
 pub fn join(manuscript: &Manuscript, scan: &Scan, readings: &Readings, context: &Context) -> Vec<ReportedResult> {
     let mut results = Vec::new();
     let mut from = sentence::Members { p: 0..0, intervals: 0..0, statistics: 0..0, groups: 0..0, estimates: 0..0 };
@@ -76,14 +78,21 @@ pub fn join(manuscript: &Manuscript, scan: &Scan, readings: &Readings, context: 
             readings.estimates.get(from.estimates.end).map(|x| x.sentence),
         ];
         let Some(id) = next.into_iter().flatten().min() else { break };
+        let block = scan.sentences[id as usize].block as usize;
+        let in_table = matches!(manuscript.blocks[block].kind, BlockKind::Table(_));
+        let part = if in_table { scan.of_block(block) } else { id..id + 1 };
         from = sentence::Members {
-            p: run(&readings.p, from.p.end, |x| x.sentence == id),
-            intervals: run(&readings.intervals, from.intervals.end, |x| x.sentence == id),
-            statistics: run(&readings.statistics, from.statistics.end, |x| x.sentence == id),
-            groups: run(&readings.groups, from.groups.end, |x| x.sentence == id),
-            estimates: run(&readings.estimates, from.estimates.end, |x| x.sentence == id),
+            p: run(&readings.p, from.p.end, |x| part.contains(&x.sentence)),
+            intervals: run(&readings.intervals, from.intervals.end, |x| part.contains(&x.sentence)),
+            statistics: run(&readings.statistics, from.statistics.end, |x| part.contains(&x.sentence)),
+            groups: run(&readings.groups, from.groups.end, |x| part.contains(&x.sentence)),
+            estimates: run(&readings.estimates, from.estimates.end, |x| part.contains(&x.sentence)),
         };
-        sentence::join(&scan.view(manuscript, id), &from, readings, context, &mut results);
+        if in_table {
+            table::join(manuscript, scan, block, &from, readings, context, &mut results);
+        } else {
+            sentence::join(&scan.view(manuscript, id), &from, readings, context, &mut results);
+        }
     }
     results
 }

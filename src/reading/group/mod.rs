@@ -60,22 +60,7 @@ pub fn read(view: &SentenceView, setting: &mut Setting, taken: &mut [bool], out:
 }
 
 fn empty(view: &SentenceView, first: usize, last: usize) -> Group {
-    Group {
-        span: view.span(first, last),
-        sentence: view.id,
-        label: String::new(),
-        n: None,
-        events: None,
-        total: None,
-        percent: None,
-        mean: None,
-        median: None,
-        spread_kind: None,
-        spread: Vec::new(),
-        change: false,
-        approximate: false,
-        one_expression: false,
-    }
+    Group::new(view.span(first, last), view.id)
 }
 
 fn with_spread(mut group: Group, kind: SpreadKind, spread: &[Printed]) -> Group {

@@ -144,7 +144,7 @@ fn results_of(facts: &Facts, p: &[&PValue]) -> Vec<usize> {
     facts.results.iter().enumerate().filter(|(_, r)| with(r)).map(|(i, _)| i).collect()
 }
 
-/// "no difference" → "no significant difference", and blanks for what lets readers judge.
+/// "no difference" → "no significant difference", with blanks for what lets readers judge.
 fn repair(facts: &Facts, claim: &Claim, found: &Found) -> Option<Draft> {
     if kind_of(claim) != ClaimKind::NoDifference {
         return None;
@@ -156,12 +156,10 @@ fn repair(facts: &Facts, claim: &Claim, found: &Found) -> Option<Draft> {
         ("no difference", "no significant difference"),
         ("did not differ", "did not differ significantly"),
     ];
-    let (found_at, phrase, careful) =
-        plain.into_iter().find_map(|(phrase, careful)| quote.find(phrase).map(|i| (i, phrase, careful)))?;
+    let (phrase, careful) = plain.into_iter().find(|(phrase, _)| quote.contains(phrase))?;
     let blanks = if found.interval.is_some() { "" } else { " (difference …, 95 % CI … to …)" };
-    let start = claim.span.start as usize + found_at;
-    let at = Span::new(claim.span.block as usize, start, start + phrase.len());
-    Some(Draft { kind: RepairKind::Replace, at, text: format!("{careful}{blanks}"), needs_confirmation: true })
+    let text = format!("{}{blanks}", quote.replacen(phrase, careful, 1));
+    Some(Draft { kind: RepairKind::Replace, at: claim.span, text, needs_confirmation: true })
 }
 
 /// One finding for each part of the manuscript, beginning with its first claim.

@@ -43,13 +43,12 @@ fn candidates<'a>(
     of: Of,
     from: &'a [Basis],
 ) -> impl Iterator<Item = &'a Recomputation> {
-    let tallies = |r: &Recomputation| {
-        // A definition stands by itself; elsewhere one candidate that tallies clears the figure.
-        r.ground != Ground::ByDefinition
-            && checked
-                .recomputations
-                .iter()
-                .any(|o| o.verdict == Verdict::Tallies && o.of == r.of && o.figure == r.figure)
+    // A definition stands by itself, and clears nothing else; otherwise one candidate that tallies clears the figure.
+    let clears = |o: &Recomputation, r: &Recomputation| {
+        o.verdict == Verdict::Tallies && o.ground != Ground::ByDefinition && o.of == r.of && o.figure == r.figure
+    };
+    let tallies = move |r: &Recomputation| {
+        r.ground != Ground::ByDefinition && checked.recomputations.iter().any(|o| clears(o, r))
     };
     checked.recomputations.iter().filter(move |r| {
         r.verdict == Verdict::Differs
@@ -103,12 +102,18 @@ fn basis(facts: &Facts, checked: &Checked, r: &Recomputation) -> Basis {
 
 fn finding(facts: &Facts, checked: &Checked, r: &Recomputation, all: &[&Recomputation]) -> Finding {
     let quote = facts.quote(r.figure);
-    let printed = wording::one_line(quote);
+    let percent = (r.of == Quantity::Percent).then(|| wording::percent_number(quote)).flatten();
+    let sign = if percent.is_some() { "%" } else { "" };
+    let printed = percent.map_or_else(|| wording::one_line(quote), |(at, _)| format!("{}%", &quote[at]));
     let computed = r.computed.map_or(String::new(), |range| match r.of {
         Quantity::P => wording::p_range(range),
-        of => wording::figure_range(range, number(of, quote).map_or(0, |(_, places)| places)),
+        of => wording::figure_range(range, number(of, quote).map_or(0, |(_, places)| places)) + sign,
     });
-    let from = inputs(facts, r);
+    let mut from = inputs(facts, r);
+    let estimate = facts.results[checked.result].estimate.map(|i| &facts.readings.estimates[i]);
+    if let (Basis::Estimate, Some(se)) = (basis(facts, checked, r), estimate.and_then(|e| e.se)) {
+        from = format!("{from} with its standard error {se}");
+    }
     let says = match r.of {
         Quantity::P if is_bare(quote) => format!("Printed P {printed}; from {from} we get {computed}."),
         Quantity::P => format!("Printed {printed}; from {from} we get {computed}."),
