@@ -8,7 +8,7 @@ pub fn range(of: Quantity, range: Range) -> String {
     if of == Quantity::P && range.hi < 0.0001 {
         return "below 0.0001".to_owned();
     }
-    if range.width() <= range.hi.abs() * 1e-6 {
+    if range.lo.is_finite() && range.hi.is_finite() && range.width() <= range.hi.abs() * 1e-6 {
         let text = end(range.middle(), places(of, Range::point(range.middle())) + 2, f64::round);
         return if text.contains('.') { text.trim_end_matches('0').trim_end_matches('.').to_owned() } else { text };
     }
