@@ -8,7 +8,7 @@ use super::{DistributionError, Tails, normal_quantile};
 const MOST_STEPS: usize = 200_000;
 
 /// What one evaluation of the incomplete gamma function yields.
-pub(super) struct Evaluation {
+struct Evaluation {
     pub tails: Tails,
     /// `x^a e^−x / Γ(a)`: the derivative of the lower tail by `ln x`.
     pub slope: f64,
@@ -28,15 +28,19 @@ pub fn gamma(x: f64, a: f64) -> Result<Tails, DistributionError> {
     if x < 0.0 || a <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
-    Ok(evaluate(x, a)?.tails)
+    Ok(evaluate(x, (x - a) / a, a)?.tails)
 }
 
-/// The evaluation behind [`gamma`], for arguments already checked.
-pub(super) fn evaluate(x: f64, a: f64) -> Result<Evaluation, DistributionError> {
+/// The evaluation behind [`gamma`], for arguments already checked; `excess` is
+/// `x/a − 1`, which the quantile knows better than the quotient gives it.
+fn evaluate(x: f64, excess: f64, a: f64) -> Result<Evaluation, DistributionError> {
     if x <= 0.0 {
         return Ok(Evaluation { tails: Tails { lower: 0.0, upper: 1.0 }, slope: 0.0 });
     }
-    let slope = (a / std::f64::consts::TAU).sqrt() * (-stirling(a) - a * deviance((x - a) / a, x / a)).exp();
+    let slope = (a / std::f64::consts::TAU).sqrt() * (-stirling(a) - a * deviance(excess, x / a)).exp();
+    if slope.is_nan() {
+        return Err(DistributionError::NotConverged);
+    }
     // Below the mean the lower tail is summed. The floor of one half keeps the
     // continued fraction away from small x, where it crawls.
     let tails = if x < a.max(0.5) {
@@ -91,9 +95,9 @@ fn fraction(x: f64, a: f64) -> Result<f64, DistributionError> {
     Err(DistributionError::NotConverged)
 }
 
-/// `ln x` at which the tails of the gamma distribution with shape `a` are those
+/// `ln(x/a)` at which the tails of the gamma distribution with shape `a` are those
 /// given; only the smaller one is used.
-pub(super) fn log_quantile(target: Tails, a: f64) -> Result<f64, DistributionError> {
+fn log_ratio(target: Tails, a: f64) -> Result<f64, DistributionError> {
     let use_lower = target.lower <= target.upper;
     let wanted = if use_lower { target.lower } else { target.upper };
     if wanted <= 0.0 {
@@ -105,14 +109,14 @@ pub(super) fn log_quantile(target: Tails, a: f64) -> Result<f64, DistributionErr
     let ninth = 1.0 / (9.0 * a);
     let root = 1.0 - ninth + z * ninth.sqrt();
     let start = if root > 0.1 {
-        a.ln() + 3.0 * root.ln()
+        3.0 * root.ln()
     } else {
         // In the far lower tail P ≈ x^a / Γ(a + 1).
-        (wanted.ln() + libm::lgamma(a + 1.0)) / a
+        (wanted.ln() + libm::lgamma(a + 1.0)) / a - a.ln()
     };
     let log_wanted = wanted.ln();
-    bracketed_root(start.clamp(-740.0, 700.0), use_lower, |w| {
-        let at = evaluate(w.exp(), a)?;
+    bracketed_root(start.clamp(-700.0, 700.0), use_lower, |w| {
+        let at = evaluate(a * w.exp(), w.exp_m1(), a)?;
         let (tail, slope) = if use_lower { (at.tails.lower, at.slope) } else { (at.tails.upper, -at.slope) };
         Ok((tail.ln() - log_wanted, slope / tail))
     })
@@ -138,5 +142,5 @@ pub fn chi_squared_quantile(upper: f64, df: f64) -> Result<f64, DistributionErro
         return Err(DistributionError::OutOfDomain);
     }
     let target = Tails { lower: 1.0 - upper, upper };
-    Ok(2.0 * log_quantile(target, 0.5 * df)?.exp())
+    Ok(df * log_ratio(target, 0.5 * df)?.exp())
 }

@@ -83,18 +83,6 @@ pub(super) fn difference_of_products(a: f64, b: f64, c: f64, d: f64) -> f64 {
     a.mul_add(b, -cd) + error
 }
 
-/// `ln(x/y)` as the pair `(x, y)` with `x + y = 1`, each to full relative
-/// accuracy.
-pub(super) fn unit_pair(log_odds: f64) -> (f64, f64) {
-    if log_odds > 0.0 {
-        let e = (-log_odds).exp();
-        (1.0 / (1.0 + e), e / (1.0 + e))
-    } else {
-        let e = log_odds.exp();
-        (e / (1.0 + e), 1.0 / (1.0 + e))
-    }
-}
-
 /// ln Φ(−z), the logarithm of the normal upper tail, also where the tail itself
 /// underflows.
 pub(super) fn ln_normal_upper(z: f64) -> f64 {

@@ -94,12 +94,13 @@ impl Draft {
     }
 
     pub fn finish(self, kind: BlockKind) -> Block {
-        Block { kind, section: 0, text: self.text, pieces: self.pieces, marks: in_order(self.marks) }
+        let marks = in_order(self.marks, &self.text);
+        Block { kind, section: 0, text: self.text, pieces: self.pieces, marks }
     }
 }
 
 /// Marks as a block keeps them: no overlap within a kind, none too long, in order of their start.
-fn in_order(mut marks: Vec<Mark>) -> Vec<Mark> {
+fn in_order(mut marks: Vec<Mark>, text: &str) -> Vec<Mark> {
     marks.sort_by_key(|m| (m.kind as u8, m.start, m.end));
     let mut joined: Vec<Mark> = Vec::with_capacity(marks.len());
     for m in marks {
@@ -111,8 +112,9 @@ fn in_order(mut marks: Vec<Mark>) -> Vec<Mark> {
     let mut split = Vec::with_capacity(joined.len());
     for mut m in joined {
         while m.end - m.start > Mark::LONGEST {
-            split.push(Mark { end: m.start + Mark::LONGEST, ..m });
-            m.start += Mark::LONGEST;
+            let end = text.floor_char_boundary((m.start + Mark::LONGEST) as usize) as u32;
+            split.push(Mark { end, ..m });
+            m.start = end;
         }
         split.push(m);
     }

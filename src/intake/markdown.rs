@@ -1,26 +1,27 @@
 //! Markdown: CommonMark with tables, footnotes, strikethrough, mathematics and YAML metadata, plus
 //! what manuscripts do beyond it (see [`super::tidy`]).
 
+use super::html;
 use super::inline::{Draft, Inline};
 use super::outline::{Outline, is_caption, is_caption_before_table};
 use super::tidy::append;
-use crate::manuscript::{Block, BlockKind, Cell, Grid, MarkKind, Section};
+use crate::manuscript::{Block, BlockKind, Cell, Grid, Mark, MarkKind, Section, SectionKind};
 use pulldown_cmark::{Event, HeadingLevel, Options, Parser, Tag, TagEnd};
+use std::borrow::Cow;
 use std::ops::Range;
 
 /// The sections and blocks of a Markdown text.
 pub(super) fn blocks(source: &str) -> (Vec<Section>, Vec<Block>) {
     // Superscript and subscript are not asked of the parser: it does not see them inside words.
-    let options = Options::ENABLE_TABLES
-        | Options::ENABLE_FOOTNOTES
-        | Options::ENABLE_STRIKETHROUGH
-        | Options::ENABLE_MATH
-        | Options::ENABLE_YAML_STYLE_METADATA_BLOCKS;
-    let mut reader = Reader::new(source);
-    for (event, range) in Parser::new_ext(source, options).into_offset_iter() {
-        reader.event(event, range);
+    let options =
+        Options::ENABLE_TABLES | Options::ENABLE_FOOTNOTES | Options::ENABLE_STRIKETHROUGH | Options::ENABLE_MATH;
+    let skipped = front_matter(source);
+    let parsed = without_notes_as_links(source);
+    let mut reader = Reader::new(source, &parsed);
+    for (event, range) in Parser::new_ext(&parsed[skipped..], options).into_offset_iter() {
+        reader.event(event, range.start + skipped..range.end + skipped);
     }
-    reader.close();
+    reader.flush();
     (reader.outline.sections, reader.outline.blocks)
 }
 
@@ -50,6 +51,8 @@ struct Table {
 
 struct Reader<'a> {
     source: &'a str,
+    /// What the parser saw: the same length and, but for a few signs, the same bytes.
+    parsed: &'a str,
     outline: Outline,
     /// The text of the block or cell that is being read.
     inline: Inline,
@@ -62,15 +65,16 @@ struct Reader<'a> {
     last: usize,
     /// Images whose alternative text is being skipped.
     images: usize,
-    /// A metadata block at the head of the file is being skipped.
-    skipping: bool,
     html: Option<Range<usize>>,
+    /// The block is no list item but the legend of a mark in a table.
+    legend: bool,
 }
 
 impl<'a> Reader<'a> {
-    fn new(source: &'a str) -> Reader<'a> {
+    fn new(source: &'a str, parsed: &'a str) -> Reader<'a> {
         Reader {
             source,
+            parsed,
             outline: Outline::new(),
             inline: Inline::default(),
             open: Vec::new(),
@@ -80,8 +84,8 @@ impl<'a> Reader<'a> {
             in_code: false,
             last: 0,
             images: 0,
-            skipping: false,
             html: None,
+            legend: false,
         }
     }
 
@@ -90,7 +94,7 @@ impl<'a> Reader<'a> {
         match event {
             Event::Start(tag) => self.start(tag, range),
             Event::End(tag) => self.end(tag, range),
-            _ if self.skipping || self.images > 0 => {}
+            _ if self.images > 0 => {}
             Event::Text(text) => self.text(&text, range),
             Event::Code(code) => self.verbatim(&code, range, MarkKind::Code),
             Event::InlineMath(math) | Event::DisplayMath(math) => {
@@ -146,10 +150,6 @@ impl<'a> Reader<'a> {
                 self.flush();
                 self.html = Some(range);
             }
-            Tag::MetadataBlock(_) => {
-                self.flush();
-                self.skipping = self.source[..range.start].trim().is_empty();
-            }
             Tag::Table(alignments) => {
                 self.flush();
                 self.table = Some(Table { columns: alignments.len(), ..Table::default() });
@@ -178,7 +178,9 @@ impl<'a> Reader<'a> {
             }
             Tag::Image { .. } => self.images += 1,
             Tag::Superscript | Tag::Subscript => self.push_open(None, 0, ""),
-            Tag::DefinitionList | Tag::DefinitionListTitle | Tag::DefinitionListDefinition => self.flush(),
+            Tag::MetadataBlock(_) | Tag::DefinitionList | Tag::DefinitionListTitle | Tag::DefinitionListDefinition => {
+                self.flush()
+            }
         }
     }
 
@@ -195,10 +197,6 @@ impl<'a> Reader<'a> {
                 self.flush();
             }
             TagEnd::HtmlBlock => self.html_block(),
-            TagEnd::MetadataBlock(_) => {
-                self.flush();
-                self.skipping = false;
-            }
             TagEnd::TableCell => {
                 self.close_tags();
                 let cell = std::mem::take(&mut self.inline);
@@ -210,9 +208,9 @@ impl<'a> Reader<'a> {
                 if let Some(table) = &mut self.table {
                     table.header_rows = table.rows.len() as u32;
                 }
-                self.surplus_cells(range);
+                self.surplus_cells(range.start);
             }
-            TagEnd::TableRow => self.surplus_cells(range),
+            TagEnd::TableRow => self.surplus_cells(range.start),
             TagEnd::Table => self.end_table(),
             TagEnd::Emphasis | TagEnd::Strong | TagEnd::Strikethrough | TagEnd::Link => self.end_inline(range),
             TagEnd::Superscript | TagEnd::Subscript => self.end_inline(range),
@@ -220,7 +218,10 @@ impl<'a> Reader<'a> {
                 self.images = self.images.saturating_sub(1);
                 self.last = range.end;
             }
-            TagEnd::DefinitionList | TagEnd::DefinitionListTitle | TagEnd::DefinitionListDefinition => self.flush(),
+            TagEnd::MetadataBlock(_)
+            | TagEnd::DefinitionList
+            | TagEnd::DefinitionListTitle
+            | TagEnd::DefinitionListDefinition => self.flush(),
         }
     }
 
@@ -233,7 +234,9 @@ impl<'a> Reader<'a> {
         let Some(at) = marker.take() else { return };
         let rest = &self.source[at + 1..];
         let gap = rest.len() - rest.trim_start_matches(' ').len();
-        if is_legend(&rest[gap..]) {
+        let after_table = matches!(self.outline.blocks.last(), Some(b) if matches!(b.kind, BlockKind::Table(_)));
+        if after_table || is_legend(&rest[gap..]) {
+            self.legend = true;
             self.inline.push_source(self.source, at..at + 1 + gap, true);
         }
     }
@@ -244,7 +247,7 @@ impl<'a> Reader<'a> {
             && range.start > self.last
             && self.source.as_bytes()[range.start - 1] == b'\\'
             && text.starts_with(|c: char| c.is_ascii_punctuation());
-        if self.source[range.clone()] != *text {
+        if self.parsed[range.clone()] != *text {
             let from = if escaped { range.start - 1 } else { range.start };
             self.inline.push_other(text, from..range.end);
         } else if escaped {
@@ -339,18 +342,29 @@ impl<'a> Reader<'a> {
         };
         if !closing {
             self.push_open(Some(kind), 0, tag);
-        } else if let Some(i) = self.open.iter().rposition(|o| o.tag == tag || o.tag.is_empty()) {
-            if self.open[i].tag == tag {
-                let open = self.open.remove(i);
-                self.inline.mark(open.start, self.inline.text.len(), kind);
-            }
+            return;
+        }
+        // Elements nest a few deep; looking no further keeps hostile text cheap.
+        let from = self.open.len().saturating_sub(16);
+        let found = self.open[from..].iter().rposition(|o| o.tag == tag || o.tag.is_empty());
+        if let Some(i) = found.map(|i| from + i).filter(|&i| self.open[i].tag == tag) {
+            let open = self.open.remove(i);
+            self.inline.mark(open.start, self.inline.text.len(), kind);
         }
     }
 
     /// The text of an HTML block, without its tags.
     fn html_block(&mut self) {
         let Some(range) = self.html.take() else { return };
-        self.inline.push_source(self.source, range, true);
+        for part in html::parts(self.source, range) {
+            match part {
+                html::Part::Text(range) => self.inline.push_source(self.source, range, false),
+                html::Part::Entity(text, range) => self.inline.push_other(&text, range),
+                html::Part::Space(range) => self.inline.push_break(range),
+                html::Part::Tag(range) => self.inline_html(&self.source[range.clone()], range),
+                html::Part::Break => self.flush(),
+            }
+        }
         self.flush();
     }
 
@@ -366,6 +380,7 @@ impl<'a> Reader<'a> {
     fn flush(&mut self) {
         self.close_tags();
         let heading = self.heading.take();
+        let legend = std::mem::take(&mut self.legend);
         let inline = std::mem::take(&mut self.inline);
         if inline.is_blank() && heading.is_none() {
             return;
@@ -373,8 +388,10 @@ impl<'a> Reader<'a> {
         let mut draft = Draft::default();
         append(&mut draft, inline);
         let caption = is_caption(&draft.text);
+        let heading = heading.or_else(|| strong_heading(&draft).filter(|_| self.around.is_empty()));
         let kind = match (heading, self.around.last()) {
             _ if caption => BlockKind::Caption,
+            _ if legend => BlockKind::Paragraph,
             (Some(_), _) => BlockKind::Heading,
             (None, Some(Around::Item { .. })) => BlockKind::ListItem,
             (None, Some(Around::Footnote)) => BlockKind::Footnote,
@@ -383,9 +400,30 @@ impl<'a> Reader<'a> {
         self.outline.push(draft.finish(kind), heading.unwrap_or(0));
     }
 
-    /// Cells beyond the header's columns, which the parser drops.
-    fn surplus_cells(&mut self, range: Range<usize>) {
-        let _ = range;
+    /// Cells beyond the header's columns, which the parser drops (GFM, section 4.10): kept, because
+    /// a figure may stand in them.
+    fn surplus_cells(&mut self, start: usize) {
+        let source = self.source;
+        let Some(row) = self.table.as_mut().and_then(|t| t.rows.last_mut()) else { return };
+        let line = source[start..].find(['\n', '\r']).map_or(source.len(), |i| start + i);
+        // The parser ends cells that are missing on the next line.
+        for cell in row.iter_mut() {
+            cell.1 = cell.1.min(line);
+        }
+        let Some(mut at) = row.last().map(|cell| cell.1) else { return };
+        while let Some(gap) = source[at..line].find('|').filter(|&i| source[at..at + i].trim().is_empty()) {
+            let start = at + gap + 1;
+            if source[start..line].trim().is_empty() {
+                break;
+            }
+            let end = end_of_cell(source, start, line);
+            let cell = &source[start..end];
+            let from = start + (cell.len() - cell.trim_start().len());
+            let mut inline = Inline::default();
+            inline.push_source(source, from..from + cell.trim().len(), false);
+            row.push((inline, end));
+            at = end;
+        }
     }
 
     fn end_table(&mut self) {
@@ -420,10 +458,27 @@ impl<'a> Reader<'a> {
         }
         self.outline.push(draft.finish(BlockKind::Table(grid)), 0);
     }
+}
 
-    fn close(&mut self) {
-        self.flush();
+/// The length of YAML metadata at the head of the file. The parser would take any text between two
+/// rules for metadata, also in the middle of a manuscript, so this is not asked of it.
+fn front_matter(source: &str) -> usize {
+    let mut lines = source.split_inclusive('\n');
+    let mut at = match lines.next() {
+        Some(first) if first.trim_end() == "---" => first.len(),
+        _ => return 0,
+    };
+    for (i, line) in lines.enumerate() {
+        let text = line.trim_end();
+        at += line.len();
+        if text == "---" || text == "..." {
+            return at;
+        }
+        if i == 0 && !text.contains(':') && !text.starts_with('#') {
+            return 0;
+        }
     }
+    0
 }
 
 fn depth(level: HeadingLevel) -> u8 {
@@ -435,6 +490,52 @@ fn depth(level: HeadingLevel) -> u8 {
         HeadingLevel::H5 => 5,
         HeadingLevel::H6 => 6,
     }
+}
+
+/// The text with the colon masked in lines such as `[a]: P<0.05`, which the parser would take for
+/// the address of a link and drop.
+fn without_notes_as_links(source: &str) -> Cow<'_, str> {
+    let mut masked: Option<Vec<u8>> = None;
+    let mut at = 0;
+    for line in source.split_inclusive('\n') {
+        let rest = line.trim_start_matches([' ', '>', '\t']);
+        let start = at + (line.len() - rest.len());
+        at += line.len();
+        let Some(label) = rest.strip_prefix('[').filter(|r| !r.starts_with('^')).and_then(|r| r.find("]:")) else {
+            continue;
+        };
+        let address = rest[label + 3..].split_whitespace().next().unwrap_or("http://on.the.next.line");
+        if !is_address(address) {
+            masked.get_or_insert_with(|| source.as_bytes().to_vec())[start + label + 2] = b';';
+        }
+    }
+    // One ASCII byte stands for another, so the copy is as valid as the original.
+    masked.and_then(|m| String::from_utf8(m).ok()).map_or(Cow::Borrowed(source), Cow::Owned)
+}
+
+/// A link's address rather than words.
+fn is_address(text: &str) -> bool {
+    text.contains("://") || text.contains('@') || text.starts_with(['#', '/', '<']) || text.starts_with("www.")
+}
+
+/// `**Results**` alone in a paragraph is a heading, below all others.
+fn strong_heading(draft: &Draft) -> Option<u8> {
+    let title = draft.text.trim_end_matches([':', '.']);
+    let strong = |m: &Mark| m.kind == MarkKind::Strong && m.start == 0 && m.end as usize >= title.len();
+    (title.len() <= 60 && draft.marks.iter().any(strong) && SectionKind::of_title(title).is_some()).then_some(6)
+}
+
+/// Where the next `|` that is not escaped stands, or the end of the line.
+fn end_of_cell(source: &str, start: usize, line: usize) -> usize {
+    let mut escaped = false;
+    for (i, b) in source.as_bytes()[start..line].iter().enumerate() {
+        match b {
+            b'|' if !escaped => return start + i,
+            b'\\' => escaped = !escaped,
+            _ => escaped = false,
+        }
+    }
+    line
 }
 
 /// `* P < 0.05 versus placebo`, `* significantly different from …`: what a star under a table means.
@@ -456,5 +557,6 @@ fn is_money(source: &str, math: &str, range: &Range<usize>) -> bool {
         && !math.contains(['\\', '^', '_', '{'])
         && (after.is_some_and(|c| c.is_ascii_digit())
             || before.is_some_and(char::is_alphanumeric)
+            || math.matches('(').count() != math.matches(')').count()
             || math.split(|c: char| !c.is_alphabetic()).any(|w| w.len() > 2))
 }

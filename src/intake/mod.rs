@@ -1,6 +1,7 @@
 //! From bytes to a manuscript, one file per format. Reading never fails: what cannot be made out
 //! becomes a notice.
 
+mod html;
 mod inline;
 pub mod markdown;
 mod outline;

@@ -9,9 +9,8 @@ use super::inline::{Draft, Inline};
 use crate::manuscript::{Mark, MarkKind};
 use std::ops::Range;
 
-/// The longest super- or subscript, in bytes, and the longest with a space in it.
+/// The longest super- or subscript, in bytes.
 const LONGEST_SCRIPT: usize = 48;
-const LONGEST_SPACED_SCRIPT: usize = 16;
 /// The longest stretch between two asterisks that the parser did not pair, in bytes.
 const LONGEST_EMPHASIS: usize = 64;
 /// The longest bracket of reference numbers, in bytes.
@@ -24,6 +23,11 @@ pub(super) fn append(draft: &mut Draft, mut inline: Inline) {
     scripts(&mut inline, &delimiters.carets, MarkKind::Superscript, &mut cuts);
     scripts(&mut inline, &delimiters.tildes, MarkKind::Subscript, &mut cuts);
     emphasis(&mut inline, &mut delimiters.stars, &mut cuts);
+    let text = &inline.text;
+    // Only plain spaces: others at the head of a cell indent it.
+    let lead = text.len() - text.trim_start_matches(' ').len();
+    let tail = text.trim_end_matches(' ').len().max(lead);
+    cuts.extend([0..lead, tail..text.len()].into_iter().filter(|c| !c.is_empty()));
     cuts.sort_unstable_by_key(|c| c.start);
     let base = draft.text.len();
     copy(draft, &inline, &cuts);
@@ -77,7 +81,8 @@ fn scripts(inline: &mut Inline, at: &[usize], kind: MarkKind, cuts: &mut Vec<Ran
         };
         // `10^ −3^`: the space before the exponent is not meant; the one in `χ^2 ^test` is.
         cuts.push(open..inner.start);
-        cuts.push(close..close + 1);
+        let spaced = inline.text[close + 1..].chars().next().is_none_or(|c| c == ' ');
+        cuts.push(if spaced { inner.end } else { close }..close + 1);
         inline.mark(inner.start, inner.end, kind);
         i += 2;
     }
@@ -90,7 +95,7 @@ fn script(text: &str, open: usize, close: usize, kind: MarkKind) -> Option<Range
     }
     let inner = &text[open + 1..close];
     let body = inner.trim();
-    if body.is_empty() || (inner.len() > LONGEST_SPACED_SCRIPT && inner.contains(char::is_whitespace)) {
+    if body.is_empty() {
         return None;
     }
     let before = text[..open].chars().next_back();
@@ -116,13 +121,13 @@ fn script(text: &str, open: usize, close: usize, kind: MarkKind) -> Option<Range
     Some(start..start + body.len())
 }
 
-/// Marks set apart by spaces: `r & s`, `1, 2`, `a and b`.
+/// Marks set apart by spaces: `r & s`, `1, 2`, `a and b`, `i, ii, iv`.
 fn is_list(body: &str) -> bool {
     body.split_whitespace().all(|t| {
         let t = t.trim_matches([',', ';']);
-        matches!(t, "" | "&" | "and")
-            || t.chars().count() == 1
-            || (t.len() == 2 && t.bytes().all(|b| b.is_ascii_digit()))
+        let roman = t.bytes().all(|b| matches!(b, b'i' | b'v' | b'x'));
+        let short = t.len() <= 2 && t.bytes().all(|b| b.is_ascii_digit());
+        roman || short || matches!(t, "&" | "and") || t.chars().count() == 1
     })
 }
 
@@ -134,6 +139,9 @@ fn emphasis(inline: &mut Inline, runs: &mut Vec<Range<usize>>, cuts: &mut Vec<Ra
     while i + 1 < runs.len() {
         let (open, close) = (runs[i].clone(), runs[i + 1].clone());
         if !is_emphasis(&inline.text, &open, &close) {
+            if is_stray(&inline.text, &open) {
+                cuts.push(open);
+            }
             i += 1;
             continue;
         }
@@ -147,6 +155,17 @@ fn emphasis(inline: &mut Inline, runs: &mut Vec<Range<usize>>, cuts: &mut Vec<Ra
         cuts.push(close);
         i += 2;
     }
+    if let Some(last) = runs.get(i).filter(|r| is_stray(&inline.text, r)) {
+        cuts.push(last.clone());
+    }
+}
+
+/// An asterisk between a sign and its figure (`−*2.9`) marks nothing.
+fn is_stray(text: &str, run: &Range<usize>) -> bool {
+    let signs = ['−', '-', '+', '±', '=', '<', '>', '≤', '≥', '.', '·'];
+    text.as_bytes()[run.start] == b'*'
+        && text[..run.start].ends_with(signs)
+        && text[run.end..].starts_with(|c: char| c.is_ascii_digit())
 }
 
 fn is_emphasis(text: &str, open: &Range<usize>, close: &Range<usize>) -> bool {
@@ -159,7 +178,11 @@ fn is_emphasis(text: &str, open: &Range<usize>, close: &Range<usize>) -> bool {
     let body = inner.trim();
     let before = text[..open.start].chars().next_back();
     let after = text[close.end..].chars().next();
-    if body.is_empty() || before == Some('^') || after == Some('^') {
+    // `^*^` is a raised star.
+    if body.is_empty()
+        || (before == Some('^') && inner.starts_with('^'))
+        || (after == Some('^') && inner.ends_with('^'))
+    {
         return false;
     }
     // An opening delimiter follows a space or a sign; a star after a figure or a word is a mark.
@@ -171,7 +194,8 @@ fn is_emphasis(text: &str, open: &Range<usize>, close: &Range<usize>) -> bool {
     }
     let digits = body.contains(|c: char| c.is_ascii_digit());
     let spaced = inner.ends_with(char::is_whitespace);
-    if digits && spaced && after.is_some_and(char::is_alphabetic) {
+    let relation = body.contains(['<', '>', '=', '≤', '≥']);
+    if digits && relation && spaced && after.is_some_and(char::is_alphabetic) {
         // `*P < 0.05, *Q …`: two marks in a legend.
         return false;
     }

@@ -18,8 +18,8 @@ struct Pair {
     last: usize,
 }
 
-/// Appends the intervals of a sentence; marks the tokens they take in `taken`.
-pub fn read(view: &SentenceView, taken: &mut [bool], out: &mut Vec<IntervalReading>) {
+/// Appends the intervals of a sentence; marks the tokens they take in `taken`. Gives the level that the sentence names.
+pub fn read(view: &SentenceView, taken: &mut [bool], out: &mut Vec<IntervalReading>) -> Option<Figure> {
     let mut declared: Option<(Option<Figure>, bool)> = None;
     let mut i = 0;
     while i < view.len() {
@@ -66,6 +66,7 @@ pub fn read(view: &SentenceView, taken: &mut [bool], out: &mut Vec<IntervalReadi
         }
         i = (last + 1).max(at.min(last + 1));
     }
+    declared.and_then(|(level, _)| level)
 }
 
 #[allow(clippy::too_many_arguments)]
@@ -151,6 +152,10 @@ fn anchor(view: &SentenceView, i: usize) -> Option<Anchor> {
         && is_level(p)
     {
         level = Some(Figure { printed: p, origin: Origin::Printed(view.span(i, i)) });
+    }
+    // confidence interval CI
+    if last > i && view.is(last + 1, Classes::CI) {
+        last += 1;
     }
     // (CI), [CI]
     if view.signs(last + 1, &['(', '[']) && view.is(last + 2, Classes::CI) && view.signs(last + 3, &[')', ']']) {
@@ -328,6 +333,7 @@ fn spread_named(view: &SentenceView, i: usize) -> bool {
 pub fn read_unnamed(
     view: &SentenceView,
     named: impl Fn(usize) -> bool,
+    level: Option<Figure>,
     taken: &mut [bool],
     out: &mut Vec<IntervalReading>,
 ) {
@@ -341,6 +347,6 @@ pub fn read_unnamed(
         if taken[pair.first] || !decimals || spread_named(view, i) || !named(i) {
             continue;
         }
-        emit(view, pair, pair.first, None, false, estimate, taken, out);
+        emit(view, pair, pair.first, level, false, estimate, taken, out);
     }
 }

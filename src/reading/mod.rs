@@ -5,6 +5,7 @@
 
 pub mod claim;
 mod claim_words;
+pub mod estimate;
 pub mod group;
 pub mod interval;
 pub mod lexicon;
@@ -12,6 +13,7 @@ pub mod p;
 pub mod planning;
 pub mod sentence;
 pub mod statistic;
+pub mod table;
 pub mod token;
 
 use crate::manuscript::{BlockKind, Manuscript, SectionKind};
@@ -47,6 +49,10 @@ pub enum Inference {
     OtherSentence,
     /// The arm's size as the Methods or the flow of participants give it.
     ArmSize,
+    /// The total that all other counts of the paragraph have.
+    Siblings,
+    /// The sum of the categories that the sentence lists: their percentages fit it.
+    Categories,
     /// The only count that the printed percent and events allow.
     FromPercent,
     /// Degrees of freedom that the group sizes give.
@@ -190,8 +196,32 @@ pub struct Group {
     pub spread: Vec<Printed>,
     /// The figure is a change from baseline, not a level.
     pub change: bool,
+    /// The percentage is said to be about so much ("over 60 %", "nearly half (45 %)").
+    pub approximate: bool,
     /// Count, total and percent are printed in one expression (`12/40 (30%)`, `12 of 40 (30%)`).
     pub one_expression: bool,
+}
+
+impl Group {
+    /// A group of which nothing is known yet but its place.
+    pub fn new(span: Span, sentence: u32) -> Group {
+        Group {
+            span,
+            sentence,
+            label: String::new(),
+            n: None,
+            events: None,
+            total: None,
+            percent: None,
+            mean: None,
+            median: None,
+            spread_kind: None,
+            spread: Vec::new(),
+            change: false,
+            approximate: false,
+            one_expression: false,
+        }
+    }
 }
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -334,28 +364,53 @@ pub struct Readings {
 pub fn read(manuscript: &Manuscript, scan: &Scan) -> Readings {
     let mut readings = Readings::default();
     for (number, block) in manuscript.blocks.iter().enumerate() {
-        if matches!(block.kind, BlockKind::Heading | BlockKind::Table(_)) {
+        if block.kind == BlockKind::Heading {
             continue;
         }
         let section = &manuscript.sections[block.section as usize];
         if matches!(section.kind, SectionKind::References | SectionKind::Back) {
             continue;
         }
-        let sentences = scan.of_block(number);
-        // A paragraph's "values are mean ± SD" may stand behind the figures that it explains.
-        let mut declared = group::Declared::default();
-        for id in sentences.clone() {
-            declared.note(&scan.view(manuscript, id));
+        if matches!(block.kind, BlockKind::Table(_)) {
+            table::read(manuscript, scan, number, &mut readings);
+            continue;
         }
-        let mut setting = group::Setting { section: section.kind, declared };
-        for id in sentences {
-            read_sentence(&scan.view(manuscript, id), &mut setting, &mut readings);
-        }
+        read_paragraph(manuscript, scan, scan.of_block(number), section.kind, &mut readings);
     }
     readings
 }
 
-fn read_sentence(view: &SentenceView, setting: &mut group::Setting, readings: &mut Readings) {
+fn read_paragraph(
+    manuscript: &Manuscript,
+    scan: &Scan,
+    sentences: std::ops::Range<u32>,
+    section: SectionKind,
+    readings: &mut Readings,
+) {
+    // A paragraph's "values are mean ± SD" may stand behind the figures that it explains.
+    let mut declared = group::Declared::default();
+    let mut mentions = Vec::new();
+    for id in sentences.clone() {
+        let view = scan.view(manuscript, id);
+        declared.note(&view);
+        group::total::mentions(&view, &mut mentions);
+    }
+    let mut setting = group::Setting { section, declared };
+    let mut named = estimate::Named::default();
+    let (first_p, first_group) = (readings.p.len(), readings.groups.len());
+    for id in sentences {
+        read_sentence(&scan.view(manuscript, id), &mut setting, &mut named, readings);
+    }
+    let tested = |sentence| readings.p[first_p..].iter().any(|p| p.sentence == sentence);
+    group::total::fill(&mut readings.groups[first_group..], &mentions, tested);
+}
+
+fn read_sentence(
+    view: &SentenceView,
+    setting: &mut group::Setting,
+    named: &mut estimate::Named,
+    readings: &mut Readings,
+) {
     let mut taken = vec![false; view.len()];
     let p = p::find(view);
     let mut defines = vec![false; p.len()];
@@ -375,8 +430,10 @@ fn read_sentence(view: &SentenceView, setting: &mut group::Setting, readings: &m
             shared: x.shared,
         });
     }
-    interval::read(view, &mut taken, &mut readings.intervals);
+    let first_interval = readings.intervals.len();
+    named.level = interval::read(view, &mut taken, &mut readings.intervals).or(named.level);
     statistic::read(view, &mut taken, &mut readings.statistics);
+    estimate::read(view, named, &mut taken, &mut readings.intervals, first_interval, &mut readings.estimates);
     group::read(view, setting, &mut taken, &mut readings.groups);
     claim::read(view, &p, &mut readings.claims);
 }

@@ -98,7 +98,7 @@ fn letter(view: &SentenceView, i: usize) -> Option<(usize, Qualifiers)> {
     if token.is(Classes::P) {
         // `log-p`, `e.p.`: part of something else. `-P` after a dash set apart is fine.
         let glued = i > 0 && !token.spaced && (view.sign(i - 1, '-') && i > 1 && !view.spaced(i - 1));
-        return (!glued).then_some((i + 1, Qualifiers::default()));
+        return (!glued || relation(view, i + 1).is_some()).then_some((i + 1, Qualifiers::default()));
     }
     let word = view.word(i);
     let rest = word.strip_prefix(['p', 'P']).filter(|r| r.len() >= 2 && word.len() < 18)?;

@@ -1,11 +1,31 @@
 //! Figures computed anew from the other figures of a result, as ranges, and the verdicts.
 
+mod association;
+mod case;
+mod estimate;
+mod groups;
+mod mean;
+pub mod method;
+mod percent;
+mod proportion;
+pub mod reason;
+mod slip;
+mod statistic;
+mod tail;
+mod target;
+mod verdict;
+mod working;
+
+use std::collections::HashMap;
+
 use crate::context::Context;
 use crate::printed::Range;
 use crate::query::{Ground, Verdict};
 use crate::reading::{Assumption, Readings};
 use crate::result::ReportedResult;
 use crate::text::Span;
+
+use case::Case;
 
 /// A published method.
 #[derive(Debug, PartialEq, Eq)]
@@ -86,8 +106,84 @@ pub struct Checked {
 }
 
 /// Recomputes every result; one [`Checked`] each, in the same order.
-pub fn recompute(_readings: &Readings, _context: &Context, results: &[ReportedResult]) -> Vec<Checked> {
-    (0..results.len())
-        .map(|result| Checked { result, recomputations: Vec::new(), verdict: Verdict::Undecided, reason: None })
-        .collect()
+pub fn recompute(readings: &Readings, context: &Context, results: &[ReportedResult]) -> Vec<Checked> {
+    let agreement = percent::agreement(readings);
+    results.iter().enumerate().map(|(index, result)| check(readings, context, result, index, &agreement)).collect()
+}
+
+fn check(
+    readings: &Readings,
+    context: &Context,
+    result: &ReportedResult,
+    index: usize,
+    agreement: &HashMap<u32, percent::Agreement>,
+) -> Checked {
+    let case = Case::new(readings, context, result);
+    let mut found = Vec::new();
+    let mut why: Option<&'static str> = None;
+    // The first reason given is that of the strongest ground.
+    let mut note = |reason: &'static str| {
+        why.get_or_insert(reason);
+    };
+    match statistic::p_from_statistic(&case) {
+        Ok(r) => found.extend(r),
+        Err(reason) => note(reason),
+    }
+    match estimate::p_from_interval(&case) {
+        Ok(r) => found.extend(r),
+        Err(reason) => note(reason),
+    }
+    found.extend(estimate::p_from_se(&case));
+    if case.p.is_some() && !case.groups.is_empty() {
+        match p_from_groups(&case) {
+            Ok(r) => found.extend(r),
+            Err(reason) => note(reason),
+        }
+    }
+    found.extend(groups::statistic_from_groups(&case));
+    found.extend(statistic::df_against_groups(&case));
+    found.extend(estimate::inside(&case));
+    found.extend(association::check(&case));
+    if case.p.is_none() && case.interval.is_none() && case.statistic.is_none() && case.estimate().is_none() {
+        for g in &case.groups {
+            found.extend(percent::check(g, agreement.get(&g.span.block).copied().unwrap_or_default()));
+            found.extend(percent::parts(g, &readings.groups));
+        }
+    }
+    let verdict = verdict::settle(&mut found, case.p.is_some());
+    let reason = match verdict {
+        Verdict::Undecided => Some(undecided(&case, &found, why)),
+        _ => None,
+    };
+    Checked { result: index, recomputations: found, verdict, reason }
+}
+
+/// p from the groups: means, else counts.
+fn p_from_groups(case: &Case) -> Result<Option<Recomputation>, &'static str> {
+    if case.groups.iter().all(|g| g.mean.is_some()) {
+        groups::p_from_means(case)
+    } else if case.groups.iter().all(|g| g.events.is_some() || g.percent.is_some()) {
+        groups::p_from_counts(case)
+    } else if case.groups.iter().any(|g| g.median.is_some()) {
+        Err(reason::MEDIANS)
+    } else {
+        Err(reason::UNCLEAR)
+    }
+}
+
+/// The phrase for the closing account.
+fn undecided(case: &Case, found: &[Recomputation], why: Option<&'static str>) -> &'static str {
+    let of_p = found.iter().filter(|r| r.of == Quantity::P || case.p.is_none());
+    let said = of_p.filter_map(|r| r.reason.as_deref()).find_map(reason::listed);
+    if let Some(said) = said {
+        return said;
+    }
+    let alone =
+        case.interval.is_none() && case.statistic.is_none() && case.estimate().is_none() && case.groups.is_empty();
+    match (case.p.is_some(), alone) {
+        (true, true) => reason::ONLY_P,
+        (true, false) if why.is_none() && case.estimate().is_some() && case.groups.is_empty() => reason::NO_INTERVAL,
+        (true, false) => why.or(case.group_hold()).unwrap_or(reason::NO_METHOD),
+        (false, _) => why.unwrap_or(reason::NO_P),
+    }
 }

@@ -1,7 +1,11 @@
 //! Readings that belong together: groups, estimate, interval, statistic, p.
 
+mod feature;
+mod sentence;
+mod table;
+
 use crate::context::{Context, Stated, Test};
-use crate::manuscript::Manuscript;
+use crate::manuscript::{BlockKind, Manuscript};
 use crate::reading::{Readings, Scan};
 use crate::text::Span;
 
@@ -59,7 +63,41 @@ impl ReportedResult {
     }
 }
 
-/// Joins the readings of a manuscript to results, in reading order.
-pub fn join(_manuscript: &Manuscript, _scan: &Scan, _readings: &Readings, _context: &Context) -> Vec<ReportedResult> {
-    Vec::new()
+/// Joins the readings of a manuscript to results, in reading order: inside a sentence or across a table's row,
+/// never by mere nearness.
+pub fn join(manuscript: &Manuscript, scan: &Scan, readings: &Readings, context: &Context) -> Vec<ReportedResult> {
+    let mut results = Vec::new();
+    let mut from = sentence::Members { p: 0..0, intervals: 0..0, statistics: 0..0, groups: 0..0, estimates: 0..0 };
+    loop {
+        // Readings are in reading order, so each list is walked once.
+        let next = [
+            readings.p.get(from.p.end).map(|x| x.sentence),
+            readings.intervals.get(from.intervals.end).map(|x| x.sentence),
+            readings.statistics.get(from.statistics.end).map(|x| x.sentence),
+            readings.groups.get(from.groups.end).map(|x| x.sentence),
+            readings.estimates.get(from.estimates.end).map(|x| x.sentence),
+        ];
+        let Some(id) = next.into_iter().flatten().min() else { break };
+        let block = scan.sentences[id as usize].block as usize;
+        let in_table = matches!(manuscript.blocks[block].kind, BlockKind::Table(_));
+        let part = if in_table { scan.of_block(block) } else { id..id + 1 };
+        from = sentence::Members {
+            p: run(&readings.p, from.p.end, |x| part.contains(&x.sentence)),
+            intervals: run(&readings.intervals, from.intervals.end, |x| part.contains(&x.sentence)),
+            statistics: run(&readings.statistics, from.statistics.end, |x| part.contains(&x.sentence)),
+            groups: run(&readings.groups, from.groups.end, |x| part.contains(&x.sentence)),
+            estimates: run(&readings.estimates, from.estimates.end, |x| part.contains(&x.sentence)),
+        };
+        if in_table {
+            table::join(manuscript, scan, block, &from, readings, context, &mut results);
+        } else {
+            sentence::join(&scan.view(manuscript, id), &from, readings, context, &mut results);
+        }
+    }
+    results
+}
+
+/// The run of list members from `start` that a test accepts.
+fn run<T>(list: &[T], start: usize, accept: impl Fn(&T) -> bool) -> std::ops::Range<usize> {
+    start..start + list[start..].iter().take_while(|x| accept(x)).count()
 }

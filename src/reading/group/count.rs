@@ -15,7 +15,7 @@ pub(super) fn read(view: &SentenceView, i: usize, setting: &Setting, taken: &[bo
 }
 
 /// A count in digits or words: `45`, `Sixteen`, `One hundred and forty nine`; gives the token after it.
-fn count_at(view: &SentenceView, i: usize) -> Option<(u64, usize)> {
+pub(super) fn count_at(view: &SentenceView, i: usize) -> Option<(u64, usize)> {
     let token = view.get(i)?;
     if token.style != Style::Plain {
         return None;
@@ -85,7 +85,9 @@ fn percent_in_brackets(view: &SentenceView, at: usize, words: usize) -> Option<(
     while open < at + words
         && view.get(open)?.is_word()
         && !view.is(open, Classes::VERSUS)
-        && !view.any(open, &["and", "or", "to"])
+        && !view.any(open, &["and", "or"])
+        && !(view.eq(open, "to") && view.number(open + 1).is_some())
+        && !(open == at && view.is(open, Classes::UNIT))
     {
         open += 1;
         if view.sign(open, '-') && view.get(open + 1).is_some_and(|t| t.is_word()) {
@@ -140,6 +142,12 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
         .take_while(|&k| view.get(k).is_some_and(|t| t.is_word()) && !view.eq(k, "of") && !view.eq(k, "out"))
         .count();
     let by_slash = view.sign(next, '/');
+    if !by_slash && view.sign(next + words, '/') {
+        return None;
+    }
+    if words > 0 && !by_slash && !(next..next + words).any(|k| view.is(k, Classes::GROUP)) {
+        return None;
+    }
     let at = if by_slash { next } else { next + words };
     let (total, k, end) = denominator(view, at)?;
     let plausible = total > 1 && events <= total && !(by_slash && view.sign(end, '/'));
@@ -164,10 +172,10 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
     };
     if percent.is_none() {
         // Without a percentage a slash may be a unit, a date or a score; "of" may be anything.
-        let bracket = i > 0 && view.signs(i - 1, &['(', '[']) && view.signs(end, &[')', ']', ',', ';']);
-        let members = view.is(end, Classes::GROUP) || view.any(end, MEMBERS);
+        let bracket = i > 0 && view.signs(i - 1, &['(', '[', ',']) && view.signs(end, &[')', ']', ',', ';']);
+        let members = view.is(end, Classes::GROUP);
         if by_slash && !(bracket || members)
-            || !by_slash && !(members || words > 0 || view.signs(end, &[')', ',', '.']))
+            || !by_slash && !(members || words > 0 || view.eq(at, "out") || view.signs(end, &[')', ',', '.']))
         {
             return None;
         }
@@ -190,43 +198,6 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
     group.one_expression = true;
     Some(Draft { first: i, last, group })
 }
-
-const MEMBERS: &[&str] = &[
-    "patients",
-    "participants",
-    "subjects",
-    "women",
-    "men",
-    "children",
-    "cases",
-    "people",
-    "individuals",
-    "persons",
-    "infants",
-    "babies",
-    "adults",
-    "students",
-    "girls",
-    "boys",
-    "females",
-    "males",
-    "eyes",
-    "teeth",
-    "samples",
-    "controls",
-    "respondents",
-    "households",
-    "clusters",
-    "practices",
-    "volunteers",
-    "animals",
-    "mice",
-    "rats",
-    "patient",
-    "mothers",
-    "newborns",
-    "pregnancies",
-];
 
 /// `12 (26.7%)`, `12 patients (26.7%)`, `Sixteen (76%) of the 21`, `n = 12 (26.7%)`.
 fn count_and_percent(view: &SentenceView, i: usize, taken: &[bool]) -> Option<Draft> {
@@ -271,7 +242,7 @@ fn of_the(view: &SentenceView, i: usize) -> Option<(u64, crate::text::Span)> {
             at += 1;
         }
         let (total, next) = count_at(view, at)?;
-        let members = (next..i).take(8).any(|m| view.is(m, Classes::GROUP) || view.any(m, MEMBERS));
+        let members = (next..i).take(8).any(|m| view.is(m, Classes::GROUP) || view.sign(m, ','));
         return (members && next <= i && !view.sign(next, '%')).then(|| (total, view.span(at, next - 1)));
     }
     None
@@ -283,8 +254,12 @@ fn percent_first(view: &SentenceView, i: usize, setting: &Setting, taken: &[bool
         return None;
     }
     let (percent, next) = percent_at(view, i)?;
-    if view.signs(next, &['(', '[']) && !taken[next] {
-        let mut at = next + 1;
+    // `60% of the sample (100/163)`
+    let words =
+        (next..next + 5).take_while(|&k| view.get(k).is_some_and(|t| t.is_word()) && !view.is(k, Classes::AND)).count();
+    let open = if view.signs(next, &['(', '[']) { next } else { next + words };
+    if view.signs(open, &['(', '[']) && !taken[open] {
+        let mut at = open + 1;
         if view.is(at, Classes::N) && view.sign(at + 1, '=') {
             at += 2;
         }
@@ -301,7 +276,7 @@ fn percent_first(view: &SentenceView, i: usize, setting: &Setting, taken: &[bool
                 group.one_expression = true;
                 return Some(Draft { first: i, last, group });
             }
-            if at > next + 1 && view.signs(after, &[')', ']', ',', ';']) {
+            if at > open + 1 && open == next && view.signs(after, &[')', ']', ',', ';']) {
                 // 44.6% (n = 45): events as a rule; the size of a group when the percentage is of it is rarer.
                 let last = if view.signs(after, &[')', ']']) { after } else { after - 1 };
                 let mut group = empty(view, i, last);
@@ -438,4 +413,35 @@ fn alone(
 /// "rate of 12%", "proportion of 45%".
 fn share_of(view: &SentenceView, of: usize) -> bool {
     of > 0 && view.any(of - 1, &["rate", "rates", "proportion", "prevalence", "incidence", "frequency", "percentage"])
+}
+
+/// Marks percentages that are said to be about so much or that no count over a total gives (survival, actuarial rates),
+/// and takes back a total from "Of the 26 patients, …" where several counts follow: they may be of parts of it.
+pub(super) fn soften(view: &SentenceView, drafts: &mut [Draft]) {
+    let estimated = (0..view.len()).any(|k| {
+        view.any(k, &["actuarial", "kaplan", "survival", "cumulative", "weighted", "standardised", "standardized"])
+    });
+    let counts = drafts.iter().filter(|d| d.group.events.is_some() && d.group.percent.is_some()).count();
+    for d in drafts {
+        let about = d.first > 0
+            && (view.any(
+                d.first - 1,
+                &["over", "about", "approximately", "nearly", "almost", "around", "roughly", "least", "most", "than"],
+            ) || view.signs(d.first - 1, &['~', '<', '>', '≥', '≤']));
+        d.group.approximate = (about || estimated) && d.group.percent.is_some();
+        let total = d.group.total.map(|t| t.origin);
+        if counts > 1 && matches!(total, Some(Origin::Inferred(Inference::SameSentence, _))) && !fits(&d.group) {
+            (d.group.total, d.group.n) = (None, None);
+        }
+    }
+}
+
+/// Whether the percentage is the count over the total, as rounded.
+fn fits(group: &super::Group) -> bool {
+    match (group.events, group.total, group.percent) {
+        (Some(e), Some(t), Some(p)) => {
+            p.rounded().widened(1e-12).contains(100.0 * e.printed.value() / t.printed.value())
+        }
+        _ => true,
+    }
 }

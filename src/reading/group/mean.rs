@@ -138,6 +138,7 @@ pub(super) fn read(view: &SentenceView, i: usize, setting: &Setting, taken: &[bo
         plus_minus(view, i, centre, next, setting)
             .or_else(|| bracketed(view, i, centre, next, setting, taken))
             .or_else(|| after_comma(view, i, centre, next))
+            .or_else(|| bare(view, i, centre, next))
     })
 }
 
@@ -397,4 +398,30 @@ fn near_mean_later(view: &SentenceView, i: usize) -> bool {
         .rev()
         .find(|&k| view.is(k, Classes::MEAN) || view.is(k, Classes::MEDIAN))
         .is_some_and(|k| view.is(k, Classes::MEAN))
+}
+
+/// "the mean age of the participants was 57 years", "median days since diagnosis was 139": no spread is printed.
+fn bare(view: &SentenceView, i: usize, centre: Printed, next: usize) -> Option<Draft> {
+    if i == 0
+        || !view.any(i - 1, &["was", "were", "of", "is"])
+        || view.signs(next, &['%', '(', '[', '-', '/', '±', ','])
+    {
+        return None;
+    }
+    let k = (i.saturating_sub(9)..i).rev().find(|&k| view.is(k, Classes::MEAN) || view.is(k, Classes::MEDIAN))?;
+    let other = (k + 1..i).any(|j| {
+        view.number(j).is_some()
+            || view.any(j, &["difference", "change", "reduction", "increase", "decrease", "than", "score"])
+            || view.signs(j, &['(', ';'])
+    });
+    if other || view.any(next, &["to", "and", "or", "times", "of"]) || view.any(i - 1, &["of"]) && i - 1 != k + 1 {
+        return None;
+    }
+    let mut group = empty(view, i, next - 1);
+    if view.is(k, Classes::MEDIAN) {
+        group.median = Some(centre);
+    } else {
+        group.mean = Some(centre);
+    }
+    Some(Draft { first: i, last: next - 1, group })
 }

@@ -31,7 +31,9 @@ pub(super) fn read(view: &SentenceView, taken: &mut [bool], drafts: &mut Vec<Dra
         {
             continue;
         }
-        if value.places == 0 && right.places == 0 {
+        // Whole numbers are figures of a result only in a bracket that holds their p as well.
+        let tested = left > 0 && view.sign(left - 1, '(') && (after..after + 6).any(|k| view.is(k, Classes::P));
+        if value.places == 0 && right.places == 0 && !tested {
             continue;
         }
         let mut first = left;

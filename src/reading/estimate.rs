@@ -1,0 +1,365 @@
+//! Between-group estimates: `HR 0.75`, `mean difference of −1.2`, `OR = 2.1`, `η² = .06`, `NNT 12`.
+
+use super::interval;
+use super::sentence::SentenceView;
+use super::token::{Style, TokenKind};
+use super::{Estimate, IntervalReading, Measure, Scale};
+use crate::printed::Printed;
+
+/// A printed name of a measure: tokens `first..=last`.
+#[derive(Clone, Copy, Debug)]
+struct Name {
+    measure: Measure,
+    scale: Scale,
+    first: usize,
+    last: usize,
+    adjusted: bool,
+}
+
+/// What a paragraph has named so far, for figures that follow without a name.
+#[derive(Clone, Copy, Debug, Default)]
+pub struct Named {
+    /// The level of its intervals.
+    pub level: Option<super::Figure>,
+    /// The last ratio or difference that it named.
+    measure: Option<(Measure, Scale)>,
+}
+
+/// Appends the estimates of a sentence, and the intervals that only an estimate's name reveals.
+///
+/// `first_interval` is the first of this sentence's intervals in `intervals`.
+pub fn read(
+    view: &SentenceView,
+    named: &mut Named,
+    taken: &mut [bool],
+    intervals: &mut Vec<IntervalReading>,
+    first_interval: usize,
+    out: &mut Vec<Estimate>,
+) {
+    let names = names(view);
+    let start = out.len();
+    // Where the paragraph has named its intervals, a verb before the figure is enough.
+    let level = named.level;
+    let told = |i: usize| level.is_some() && i > 0 && view.any(i - 1, &["was", "were", "is", "of"]);
+    interval::read_unnamed(view, |i| told(i) || names.iter().any(|n| leads_to(view, n, i)), level, taken, intervals);
+    intervals[first_interval..].sort_by_key(|x| x.span.start);
+    for interval in &mut intervals[first_interval..] {
+        let Some((value, span)) = interval.estimate else { continue };
+        let at = view.token_at(span.start);
+        let name = names.iter().rev().find(|n| n.last < at && at - n.last <= 24 && !another_between(&names, n, at));
+        let last = view.token_at(span.end).saturating_sub(1);
+        let near = name.is_some_and(|n| leads_to(view, n, at));
+        let inside = interval.lower.value() <= value.value() && value.value() <= interval.upper.value();
+        let time = view.is(last + 1, super::lexicon::Classes::UNIT)
+            && at > 0
+            && view.any(at - 1, &["at", "after", "per", "in", "by", "to"]);
+        if (!inside && !near) || time || taken[at] {
+            // Some other figure that happens to stand there.
+            interval.estimate = None;
+            continue;
+        }
+        let (measure, scale, adjusted) = match name {
+            Some(n) if near || at - n.last <= 16 => (n.measure, n.scale, n.adjusted),
+            _ if single(view, at, last) => (Measure::Other, Scale::Single, false),
+            _ => {
+                let (measure, scale) = named.measure.filter(|_| inside).unwrap_or((Measure::Other, Scale::Unknown));
+                (measure, scale, false)
+            }
+        };
+        taken[at..=last].fill(true);
+        out.push(Estimate {
+            span: name.filter(|_| near).map_or(span, |n| view.span(n.first, n.first).to(span)),
+            sentence: view.id,
+            measure,
+            scale,
+            value,
+            se: None,
+            percent: view.sign(last + 1, '%') || interval.percent,
+            adjusted,
+        });
+    }
+    for n in &names {
+        let Some(at) = value_after(view, n) else { continue };
+        let Some((value, next)) = view.signed(at) else { continue };
+        if taken[at..next].iter().any(|&t| t) || view.sign(next, '±') {
+            continue;
+        }
+        taken[at..next].fill(true);
+        out.push(Estimate {
+            span: view.span(n.first, next - 1),
+            sentence: view.id,
+            measure: n.measure,
+            scale: n.scale,
+            value,
+            se: standard_error(view, next),
+            percent: view.sign(next, '%'),
+            adjusted: n.adjusted,
+        });
+    }
+    out[start..].sort_by_key(|e| e.span.start);
+    if let Some(n) = names.iter().rev().find(|n| n.scale == Scale::Ratio) {
+        named.measure = Some((n.measure, n.scale));
+    }
+}
+
+/// A mean, a proportion or a rate of one group: nothing to test its interval against.
+fn single(view: &SentenceView, at: usize, last: usize) -> bool {
+    view.sign(last + 1, '%')
+        || (at.saturating_sub(10)..at).any(|k| {
+            view.is(k, super::lexicon::Classes::MEAN)
+                || view.is(k, super::lexicon::Classes::MEDIAN)
+                || view.any(
+                    k,
+                    &["rate", "prevalence", "incidence", "proportion", "sensitivity", "specificity", "survival"],
+                )
+        })
+}
+
+/// `(SE 0.3)`, `, SE = 0.3` right behind an estimate.
+fn standard_error(view: &SentenceView, mut at: usize) -> Option<Printed> {
+    while view.signs(at, &['(', ',', ';', '[']) {
+        at += 1;
+    }
+    if !view.any(at, &["se", "sem"]) {
+        return None;
+    }
+    at += 1;
+    while view.signs(at, &['=', ':']) {
+        at += 1;
+    }
+    view.number(at)
+}
+
+/// Whether another measure's name stands between a name and a figure.
+fn another_between(names: &[Name], name: &Name, at: usize) -> bool {
+    names.iter().any(|m| m.first > name.last && m.first < at)
+}
+
+/// Whether the name's figure is the one at token `at`: only linking words and signs, or a list's earlier members, between.
+fn leads_to(view: &SentenceView, name: &Name, at: usize) -> bool {
+    at > name.last && value_after(view, name) == Some(at)
+}
+
+/// The token of the figure that a name introduces.
+fn value_after(view: &SentenceView, name: &Name) -> Option<usize> {
+    let mut k = name.last + 1;
+    let stop = (k + 22).min(view.len());
+    let mut verb = false;
+    let mut words = 0;
+    while k < stop {
+        let token = view.get(k)?;
+        match token.kind {
+            TokenKind::Number(_) => {
+                if token.style != Style::Plain || is_level(view, k) {
+                    k += 1;
+                    continue;
+                }
+                if k + 1 < view.len() && view.get(k + 1).is_some_and(|t| t.is_word()) && words > 0 && !verb {
+                    // "difference in 12 month survival"
+                    k += 1;
+                    words += 1;
+                    continue;
+                }
+                return (words <= 2 || verb).then_some(k);
+            }
+            TokenKind::Sign('-' | '+') if view.number(k + 1).is_some() => {
+                return (words <= 2 || verb || view.sign(k - 1, '=')).then_some(k);
+            }
+            TokenKind::Sign('=' | ':') => verb = true,
+            TokenKind::Sign('(' | ')' | '[' | ']' | ',' | ';' | '%' | '-' | '~' | '/' | 'Δ') => {}
+            TokenKind::Word => {
+                use super::lexicon::Classes;
+                if view.is(k, Classes::MEAN.or(Classes::MEDIAN).or(Classes::N).or(Classes::SD).or(Classes::P)) {
+                    return None;
+                }
+                if view.any(k, &["was", "is", "of", "were", "by", "being", "equal"]) {
+                    // The figure must follow its verb at once.
+                    let next =
+                        k + 1 + usize::from(view.any(k + 1, &["only", "about", "approximately", "estimated", "also"]));
+                    let follows = view.signed(next).is_some();
+                    verb |= follows;
+                    if follows && view.number(next).is_none() {
+                        return Some(next);
+                    }
+                    if !follows {
+                        words += 1;
+                    }
+                } else if view.is(k, super::lexicon::Classes::CI)
+                    || view.is(k, super::lexicon::Classes::CONFIDENCE)
+                    || view.any(
+                        k,
+                        &[
+                            "interval",
+                            "intervals",
+                            "with",
+                            "hr",
+                            "or",
+                            "rr",
+                            "irr",
+                            "ci",
+                            "md",
+                            "smd",
+                            "aor",
+                            "ahr",
+                            "arr",
+                        ],
+                    )
+                {
+                } else {
+                    words += 1;
+                }
+            }
+            _ => return None,
+        }
+        if words > 12 {
+            return None;
+        }
+        k += 1;
+    }
+    None
+}
+
+/// `95` of `95% CI`.
+fn is_level(view: &SentenceView, k: usize) -> bool {
+    view.number(k).is_some_and(|p| (80.0..100.0).contains(&p.value()))
+        && (view.sign(k + 1, '%') || view.is(k + 1, super::lexicon::Classes::CI))
+        && (view.is(k + 2, super::lexicon::Classes::CI)
+            || view.is(k + 2, super::lexicon::Classes::CONFIDENCE)
+            || view.is(k + 1, super::lexicon::Classes::CI)
+            || (view.sign(k + 2, '-') && view.is(k + 3, super::lexicon::Classes::CI)))
+}
+
+fn names(view: &SentenceView) -> Vec<Name> {
+    let mut found: Vec<Name> = Vec::new();
+    let mut i = 0;
+    while i < view.len() {
+        match name(view, i) {
+            Some(n) => {
+                i = n.last + 1;
+                // `odds ratio (OR)`: one name
+                if view.signs(i, &['(', '[']) && name(view, i + 1).is_some_and(|m| m.measure == n.measure) {
+                    i += 2;
+                }
+                found.push(Name { last: i - 1, ..n });
+            }
+            None => i += 1,
+        }
+    }
+    found
+}
+
+fn name(view: &SentenceView, i: usize) -> Option<Name> {
+    use Measure::*;
+    let token = view.get(i)?;
+    if !token.is_word() || token.style != Style::Plain {
+        return None;
+    }
+    let word = view.word(i);
+    let before = |words: &[&str]| i > 0 && view.any(i - 1, words);
+    let adjusted_before = (i.saturating_sub(4)..i).any(|k| view.any(k, &["adjusted", "multivariable", "multivariate"]));
+    let hit = |measure: Measure, scale: Scale, last: usize, adjusted: bool| {
+        Some(Name { measure, scale, first: i, last, adjusted: adjusted || adjusted_before })
+    };
+    // abbreviations, case kept: `or` is a conjunction
+    match word {
+        "HR" | "HRs" => return hit(HazardRatio, Scale::Ratio, i, false),
+        "aHR" | "AHR" => return hit(HazardRatio, Scale::Ratio, i, true),
+        "OR" | "ORs" => return hit(OddsRatio, Scale::Ratio, i, false),
+        "aOR" | "AOR" | "aORs" | "AORs" | "ORadj" => return hit(OddsRatio, Scale::Ratio, i, true),
+        "RR" | "RRs" => return hit(RiskRatio, Scale::Ratio, i, false),
+        "aRR" | "ARRs" => return hit(RiskRatio, Scale::Ratio, i, true),
+        "aRRR" | "PR" if view.signs(i + 1, &['=', ':', '(']) => return hit(RiskRatio, Scale::Ratio, i, true),
+        "IRR" | "IRRs" => return hit(RateRatio, Scale::Ratio, i, false),
+        "aIRR" => return hit(RateRatio, Scale::Ratio, i, true),
+        "MD" | "WMD" if view.signed(i + 1).is_some() || view.signs(i + 1, &['=', ':', ',']) => {
+            return hit(MeanDifference, Scale::Difference, i, false);
+        }
+        "SMD" => return hit(StandardizedDifference, Scale::Difference, i, false),
+        "RD" | "ARD" | "ARR" if view.signed(i + 1).is_some() || view.signs(i + 1, &['=', ':', ',', '(']) => {
+            return hit(RiskDifference, Scale::Difference, i, false);
+        }
+        "NNT" | "NNH" | "NNTB" | "NNTH" => return hit(NumberNeededToTreat, Scale::Reciprocal, i, false),
+        "RRR" | "VE" => {
+            // A reduction is printed in percent; without a sign it may be a ratio of ratios.
+            let percent =
+                (i..(i + 12).min(view.len())).any(|k| view.sign(k, '%') && !is_level(view, k.saturating_sub(1)));
+            return hit(Efficacy, if percent { Scale::Efficacy } else { Scale::Unknown }, i, false);
+        }
+        "β" | "B" | "b" | "beta" if view.signs(i + 1, &['=', ':']) => {
+            return hit(RegressionCoefficient, Scale::Difference, i, false);
+        }
+        "d" | "g" if view.sign(i + 1, '=') && view.spaced(i) => {
+            return hit(StandardizedDifference, Scale::Difference, i, false);
+        }
+        "Δ" => return hit(MeanDifference, Scale::Difference, i, false),
+        "AUC" | "AUROC" => return hit(Other, Scale::Single, i, false),
+        _ => {}
+    }
+    if word.starts_with('η') || matches!(word, "eta" | "Eta") {
+        let mut last = i;
+        while view.style(last + 1) != Style::Plain || view.any(last + 1, &["squared", "p"]) {
+            last += 1;
+            if last > i + 3 {
+                break;
+            }
+        }
+        return hit(EtaSquared, Scale::Single, last, false);
+    }
+    let two = |a: &str, b: &str| view.eq(i, a) && view.eq(i + 1, b);
+    if two("hazard", "ratio") || two("hazard", "ratios") || two("hazards", "ratio") {
+        return hit(HazardRatio, Scale::Ratio, i + 1, false);
+    }
+    if two("odds", "ratio") || two("odds", "ratios") {
+        return hit(OddsRatio, Scale::Ratio, i + 1, false);
+    }
+    if two("risk", "ratio")
+        || two("relative", "risk")
+        || two("risk", "ratios")
+        || two("relative", "risks")
+        || two("rate", "ratios") && before(&["risk"])
+    {
+        if view.any(i + 2, &["reduction", "reductions"]) {
+            return hit(Efficacy, Scale::Efficacy, i + 2, false);
+        }
+        return hit(RiskRatio, Scale::Ratio, i + 1, false);
+    }
+    if two("prevalence", "ratio") {
+        return hit(RiskRatio, Scale::Ratio, i + 1, false);
+    }
+    if two("rate", "ratio") || two("rate", "ratios") {
+        return hit(RateRatio, Scale::Ratio, i + 1, false);
+    }
+    if two("risk", "difference")
+        || (view.eq(i, "absolute")
+            && view.eq(i + 1, "risk")
+            && view.any(i + 2, &["difference", "reduction", "increase"]))
+    {
+        return hit(RiskDifference, Scale::Difference, if view.eq(i, "risk") { i + 1 } else { i + 2 }, false);
+    }
+    if view.phrase(i, &["number", "needed", "to", "treat"]) || view.phrase(i, &["number", "needed", "to", "harm"]) {
+        return hit(NumberNeededToTreat, Scale::Reciprocal, i + 3, false);
+    }
+    if view.any(i, &["efficacy"]) && before(&["vaccine", "protective"]) {
+        return hit(Efficacy, Scale::Efficacy, i, false);
+    }
+    if view.any(i, &["cohen", "hedges"]) {
+        return None;
+    }
+    if two("effect", "size") || two("effect", "sizes") {
+        return hit(StandardizedDifference, Scale::Unknown, i + 1, false);
+    }
+    if (view.any(i, &["coefficient", "slope"]) && !before(&["correlation", "of", "variation"])) && !view.eq(i + 1, "of")
+    {
+        return hit(RegressionCoefficient, Scale::Difference, i, false);
+    }
+    if view.any(i, &["difference", "differences"]) {
+        if before(&["standardized", "standardised"])
+            || (before(&["mean"]) && i > 1 && view.any(i - 2, &["standardized", "standardised"]))
+        {
+            return hit(StandardizedDifference, Scale::Difference, i, false);
+        }
+        let percent = before(&["percent", "percentage", "relative"]);
+        return hit(if percent { PercentDifference } else { MeanDifference }, Scale::Difference, i, false);
+    }
+    None
+}

@@ -1,0 +1,317 @@
+//! The forms of one cell of results: `12.4 (3.1)`, `5.2 ± 1.1`, `12/40 (30)`, `8 (7–10)`, `0.03`.
+//!
+//! A cell is read whole or not at all: what stands in it besides the form and footnote marks makes it another thing.
+
+use super::super::lexicon::Classes;
+use super::super::sentence::SentenceView;
+use super::super::token::{Style, TokenKind};
+use super::super::{Relation, SpreadKind};
+use crate::printed::Printed;
+
+/// The figures of a cell, before it is known what they mean.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(super) enum Form {
+    /// `5.2 ± 1.1`, `5.2 (±1.1)`
+    PlusMinus { centre: Printed, spread: Printed },
+    /// `12.4 (3.1)`, `12 (30%)`, `12.4 (SD 3.1)`
+    Bracket { centre: At, inner: Printed, percent: bool, named: Option<SpreadKind> },
+    /// `12/40`, `12/40 (30)`, `30% (12/40)`
+    Fraction { events: At, total: At, percent: Option<Printed> },
+    /// `30% (12)`
+    PercentFirst { percent: Printed, events: At },
+    /// `8 (7–10)`
+    Pair { centre: At, lower: Printed, upper: Printed },
+    /// `12.4`, `30%`
+    Single { value: At, percent: bool },
+}
+
+/// A number with its token.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(super) struct At {
+    pub printed: Printed,
+    /// First and last token.
+    pub first: usize,
+    pub last: usize,
+}
+
+/// A cell that is a form and nothing else.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(super) struct Read {
+    pub form: Form,
+    /// First and last token of the form.
+    pub first: usize,
+    pub last: usize,
+    /// A size of its own behind the form: `12.4 (3.1) (n = 20)`.
+    pub n: Option<At>,
+}
+
+/// The tokens of a cell without footnote marks.
+struct Line<'a> {
+    view: &'a SentenceView<'a>,
+    kept: Vec<usize>,
+}
+
+impl<'a> Line<'a> {
+    fn of(view: &'a SentenceView<'a>) -> Line<'a> {
+        let kept = (0..view.len())
+            .filter(|&i| {
+                view.style(i) != Style::Superscript && !view.signs(i, &['*', '†', '‡', '§', '¶', '#', '$', '∗'])
+            })
+            .collect();
+        Line { view, kept }
+    }
+
+    /// The token behind position `k`; past the end it is past the view's end.
+    fn at(&self, k: usize) -> usize {
+        self.kept.get(k).copied().unwrap_or(self.view.len())
+    }
+
+    fn sign(&self, k: usize, signs: &[char]) -> bool {
+        self.view.signs(self.at(k), signs)
+    }
+
+    /// A number with its sign; gives the position after it.
+    fn number(&self, k: usize) -> Option<(At, usize)> {
+        let first = self.at(k);
+        if let Some(printed) = self.view.number(first) {
+            return Some((At { printed, first, last: first }, k + 1));
+        }
+        let negative = self.sign(k, &['-']);
+        if !negative && !self.sign(k, &['+']) {
+            return None;
+        }
+        let last = self.at(k + 1);
+        let printed = self.view.number(last)?;
+        Some((At { printed: if negative { printed.negated() } else { printed }, first, last }, k + 2))
+    }
+
+    /// A percent sign may stand at `k`; gives whether it does and the position after it.
+    fn percent(&self, k: usize) -> (bool, usize) {
+        let there = self.sign(k, &['%']);
+        (there, k + usize::from(there))
+    }
+}
+
+/// The form of a cell.
+pub(super) fn read(view: &SentenceView) -> Option<Read> {
+    let line = Line::of(view);
+    let (form, end) = form(&line)?;
+    let (n, after) = match own_size(&line, end) {
+        Some((n, after)) => (Some(n), after),
+        None => (None, end),
+    };
+    // A mark that lost its raised setting: `12.4 (3.1)a`.
+    let marks = |k: usize| {
+        let at = line.at(k);
+        view.get(at).is_some_and(|t| t.is_word() && view.word(at).len() == 1)
+    };
+    let mut rest = after;
+    while rest < line.kept.len() && (marks(rest) || rest > after && line.sign(rest, &[','])) {
+        rest += 1;
+    }
+    (rest == line.kept.len()).then(|| Read { form, first: line.at(0), last: line.at(end - 1), n })
+}
+
+fn form(line: &Line) -> Option<(Form, usize)> {
+    let (centre, next) = line.number(0)?;
+    let (centre_percent, next) = line.percent(next);
+    if line.sign(next, &['±']) {
+        let (spread, next) = line.number(next + 1)?;
+        let (_, next) = line.percent(next);
+        return Some((Form::PlusMinus { centre: centre.printed, spread: spread.printed }, next));
+    }
+    if line.sign(next, &['/']) && !centre_percent {
+        let (total, next) = line.number(next + 1)?;
+        let whole = centre.printed.count().is_some() && total.printed.count().is_some();
+        if !whole {
+            return None;
+        }
+        if line.sign(next, &['(', '[', ',', ';']) {
+            let bracket = line.sign(next, &['(', '[']);
+            let (percent, next) = line.number(next + 1)?;
+            let (_, next) = line.percent(next);
+            let closed = line.sign(next, &[')', ']']);
+            let form = Form::Fraction { events: centre, total, percent: Some(percent.printed) };
+            return (closed == bracket).then_some((form, next + usize::from(closed)));
+        }
+        return Some((Form::Fraction { events: centre, total, percent: None }, next));
+    }
+    if !line.sign(next, &['(', '[', '{']) || own_size(line, next).is_some() {
+        return Some((Form::Single { value: centre, percent: centre_percent }, next));
+    }
+    let mut at = next + 1;
+    if line.sign(at, &['±']) {
+        let (spread, next) = line.number(at + 1)?;
+        return closed(line, next, Form::PlusMinus { centre: centre.printed, spread: spread.printed });
+    }
+    let named = named_spread(line, at);
+    if named.is_some() {
+        at += 1;
+        at += usize::from(line.sign(at, &['=', ':', ',', '±']));
+    }
+    let (inner, next) = line.number(at)?;
+    if line.sign(next, &['/']) {
+        let (total, next) = line.number(next + 1)?;
+        let whole = inner.printed.count().is_some() && total.printed.count().is_some() && named.is_none();
+        let form = Form::Fraction { events: inner, total, percent: Some(centre.printed) };
+        return if whole { closed(line, next, form) } else { None };
+    }
+    let (inner_percent, next) = line.percent(next);
+    if line.sign(next, &[')', ']', '}']) {
+        // `8 (7,100)` may be two quartiles: its comma is no thousands separator for certain.
+        if line.view.word(inner.last).contains(',') && inner.printed.places == 0 {
+            return None;
+        }
+        let form = if centre_percent && !inner_percent {
+            inner.printed.count()?;
+            Form::PercentFirst { percent: centre.printed, events: inner }
+        } else if centre_percent {
+            return None;
+        } else {
+            Form::Bracket { centre, inner: inner.printed, percent: inner_percent, named }
+        };
+        return closed(line, next, form);
+    }
+    let to = line.view.any(line.at(next), &["to", "and"]);
+    if !to && !line.sign(next, &['-', ',', ';', ':']) {
+        return None;
+    }
+    let (upper, next) = line.number(next + 1)?;
+    let (_, next) = line.percent(next);
+    let (a, b) = (inner.printed, upper.printed);
+    closed(line, next, Form::Pair { centre, lower: a, upper: b })
+}
+
+fn closed(line: &Line, at: usize, form: Form) -> Option<(Form, usize)> {
+    line.sign(at, &[')', ']', '}']).then_some((form, at + 1))
+}
+
+/// `SD` or `SE` before the figure in brackets.
+fn named_spread(line: &Line, k: usize) -> Option<SpreadKind> {
+    let at = line.at(k);
+    if line.view.any(at, &["sd"]) {
+        Some(SpreadKind::Sd)
+    } else if line.view.any(at, &["se", "sem"]) {
+        Some(SpreadKind::Se)
+    } else {
+        None
+    }
+}
+
+/// `(n = 20)`, `, n = 20`; gives the position after it.
+fn own_size(line: &Line, k: usize) -> Option<(At, usize)> {
+    let open = line.sign(k, &['(', '[']);
+    let at = k + usize::from(open || line.sign(k, &[',', ';']));
+    if !line.view.eq(line.at(at), "n") || !line.sign(at + 1, &['=']) {
+        return None;
+    }
+    let (n, next) = line.number(at + 2)?;
+    n.printed.count()?;
+    if open { line.sign(next, &[')', ']']).then_some((n, next + 1)) } else { Some((n, next)) }
+}
+
+/// A bare p with its tokens.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(super) struct BareP {
+    pub relation: Relation,
+    pub value: Option<Printed>,
+    pub first: usize,
+    pub last: usize,
+}
+
+/// The p-values of a cell under (or beside) a P: `0.03`, `<0.001`, `NS`, `0.02^a^`, `0.029/<0.001`.
+pub(super) fn bare_p(view: &SentenceView) -> Vec<BareP> {
+    let line = Line::of(view);
+    let mut found = Vec::new();
+    let mut k = 0;
+    loop {
+        let Some((p, next)) = one_p(&line, k) else { return Vec::new() };
+        found.push(p);
+        let mut at = next;
+        // Marks fused to the figure or set behind it, in brackets or without: `0.18A`, `0.006 B`, `0.03 (a)`.
+        while at < line.kept.len() {
+            let i = line.at(at);
+            let mark = line.sign(at, &['(', ')', ',', '+', '.', '‖', '|'])
+                || view.get(i).is_some_and(|t| t.is_word()) && view.word(i).chars().count() <= 2;
+            if !mark || at > next + 4 {
+                break;
+            }
+            at += 1;
+        }
+        if at >= line.kept.len() {
+            return found;
+        }
+        if !line.sign(at, &['/', ';']) {
+            return Vec::new();
+        }
+        k = at + 1;
+    }
+}
+
+fn one_p(line: &Line, k: usize) -> Option<(BareP, usize)> {
+    let view = line.view;
+    let first = line.at(k);
+    // n.s., NS, ns
+    if view.any(first, &["ns"]) {
+        return Some((BareP { relation: Relation::NotSignificant, value: None, first, last: first }, k + 1));
+    }
+    if view.any(first, &["n"]) && line.sign(k + 1, &['.']) && view.any(line.at(k + 2), &["s"]) {
+        let stop = k + 2 + usize::from(line.sign(k + 3, &['.']));
+        let last = line.at(stop);
+        return Some((BareP { relation: Relation::NotSignificant, value: None, first, last }, stop + 1));
+    }
+    // `P = 0.03` in a column that is headed P all the same
+    let mut at = k;
+    if view.is(first, Classes::P) {
+        at += 1;
+    }
+    let mut relation = Relation::Equal;
+    while let Some(TokenKind::Sign(c)) = view.get(line.at(at)).map(|t| t.kind) {
+        relation = match (c, relation) {
+            ('=', Relation::Less) => Relation::AtMost,
+            ('=', Relation::Greater) => Relation::AtLeast,
+            ('=' | '~', r) => r,
+            ('<', _) => Relation::Less,
+            ('>', _) => Relation::Greater,
+            ('≤', _) => Relation::AtMost,
+            ('≥', _) => Relation::AtLeast,
+            _ => break,
+        };
+        at += 1;
+        if at > k + 4 {
+            return None;
+        }
+    }
+    let (value, mut next) = {
+        let i = line.at(at);
+        (view.number(i)?, at + 1)
+    };
+    let mut value = value;
+    let mut last = line.at(next - 1);
+    // 1.2 × 10⁻⁵: the exponent is raised, so it is looked up among all tokens.
+    if (line.sign(next, &['×', '·']) || view.any(line.at(next), &["x"]))
+        && view.number(line.at(next + 1)) == Some(Printed::whole(10))
+    {
+        let i = line.at(next + 1) + 1;
+        let (exponent, after) = view.signed(i)?;
+        let size = exponent.count().or(exponent.negated().count()).filter(|&e| e < 400)? as i16;
+        value.exponent = if exponent.negative { -size } else { size };
+        last = after - 1;
+        next = (next + 2..=line.kept.len()).find(|&j| line.at(j) >= after)?;
+    }
+    let plausible = value.value() <= 1.0 && (value.places > 0 || value.exponent < 0 || value.digits == 1);
+    if !plausible {
+        return None;
+    }
+    // A range of p-values is at least its lower end.
+    let to = line.sign(next, &['-']) || view.any(line.at(next), &["to"]);
+    if to
+        && relation == Relation::Equal
+        && let Some(upper) = view.number(line.at(next + 1)).filter(|u| u.value() <= 1.0 && u.places > 0)
+        && upper.value() > value.value()
+    {
+        let last = line.at(next + 1);
+        return Some((BareP { relation: Relation::AtLeast, value: Some(value), first, last }, next + 2));
+    }
+    Some((BareP { relation, value: Some(value), first, last }, next))
+}

@@ -1,0 +1,251 @@
+//! Sentences that conclude more, or other things, than the figures beside them carry.
+
+use crate::manuscript::{BlockKind, SectionKind};
+use crate::query::{Explanation, RepairKind};
+use crate::reading::{Attribution, Claim, ClaimKind, PValue, Role};
+use crate::rule::Facts;
+use crate::rule::check::{Backing, Claimed, Per, Says, Whose};
+use crate::rule::finding::{Draft, Finding};
+use crate::rule::level::Weight;
+use crate::rule::look::is_effect;
+use crate::rule::wording;
+use crate::text::Span;
+use std::collections::BTreeMap;
+
+/// What stands behind a claim, when it is of the backing that a rule asks for.
+struct Found<'a> {
+    p: Vec<&'a PValue>,
+    /// An interval stands in the sentence: readers can judge, so less hangs on the words.
+    interval: Option<Span>,
+}
+
+/// Claims of some kinds, about some matters, on some ground.
+pub fn claim(facts: &Facts, kinds: &[Claimed], of: &[Whose], backing: Backing, per: Per) -> Vec<Finding> {
+    let mut singles: Vec<Finding> = Vec::new();
+    for claim in &facts.readings.claims {
+        let wanted = kinds.iter().any(|k| k.is(kind_of(claim))) && of.iter().any(|w| w.is(claim.attribution));
+        // What an introduction tells is what others found.
+        let wanted = wanted && facts.manuscript.section(claim.span).kind != SectionKind::Introduction;
+        if let Some(found) = wanted.then(|| backed(facts, claim, backing)).flatten() {
+            singles.push(finding(facts, claim, &found));
+        }
+    }
+    match per {
+        Per::Claim => singles,
+        Per::Section => by_section(facts, singles),
+    }
+}
+
+/// "No significant difference" says that significance is missing, not that there is no difference.
+fn kind_of(claim: &Claim) -> ClaimKind {
+    match claim.kind {
+        ClaimKind::NoDifference if claim.says_significant => ClaimKind::NotSignificant,
+        kind => kind,
+    }
+}
+
+fn backed<'a>(facts: &Facts<'a>, claim: &Claim, backing: Backing) -> Option<Found<'a>> {
+    let r = facts.readings;
+    let sentence = facts.sentence(claim.sentence);
+    let p = facts.p_of(claim);
+    let alpha = facts.alpha();
+    let interval = r.intervals.iter().find(|i| i.sentence == claim.sentence).map(|i| i.span);
+    let elsewhere = |p: &&PValue| matches!(p.role, Role::Interaction | Role::AssumptionOrFit | Role::Baseline);
+    let in_sentence = || r.p.iter().filter(|p| p.sentence == claim.sentence);
+    let holds = match backing {
+        Backing::Any => true,
+        Backing::PAboveAlpha => {
+            let all = !p.is_empty() && p.iter().all(|p| is_effect(p) && alpha.below(p));
+            let margin = sentence.contains("margin") || facts.context.non_inferiority.is_some();
+            let judged = interval.is_some() && margin;
+            all && !judged && !in_sentence().any(|p| elsewhere(&p)) && !excepted(&sentence)
+        }
+        Backing::NoPBelowAlpha => {
+            let trend = p.iter().any(|p| matches!(p.role, Role::TrendOrJoint | Role::Interaction));
+            // Without a p only the plain wording is asked about: "opposite trends" may be of another kind.
+            let quote = facts.quote(claim.span).to_lowercase();
+            let plain = !p.is_empty() || quote.contains("toward") || quote.contains("significan");
+            plain && !trend && p.iter().all(|p| alpha.below(p))
+        }
+        Backing::Nothing => {
+            let text = matches!(facts.manuscript.block(claim.span).kind, BlockKind::Paragraph | BlockKind::ListItem);
+            let bare = text && interval.is_none() && !facts.figures_in_block(claim.span);
+            let told = facts.reports_results(claim.span) || facts.drives_message(claim.span);
+            let points = ["table", "fig", "appendix", "supplement", "see ", "described", "previous", "elsewhere"];
+            bare && told && !points.iter().any(|w| sentence.contains(w)) && !excepted(&sentence)
+        }
+        Backing::NoMargin => {
+            let margin = facts.context.non_inferiority.is_some()
+                || facts.mentions(&["margin", "two one-sided", "tost", "equivalence limit", "equivalence bound"]);
+            !margin
+        }
+        Backing::NoBetweenGroupTest => {
+            let words = ["interaction", "between group", "between-group", "between the", "between-arm"];
+            !in_sentence().any(|p| p.role == Role::Interaction) && !words.iter().any(|w| sentence.contains(w))
+        }
+    };
+    holds.then_some(Found { p, interval })
+}
+
+/// The sentence makes an exception or weighs its own claim; what is excepted cannot be told safely.
+fn excepted(sentence: &str) -> bool {
+    ["except", "other than", "apart from", "cannot be excluded", "could not be excluded", "underpowered", "too small"]
+        .iter()
+        .any(|w| sentence.contains(w))
+}
+
+fn finding(facts: &Facts, claim: &Claim, found: &Found) -> Finding {
+    let quote = wording::one_line(facts.quote(claim.span));
+    let alpha = facts.alpha();
+    let mut p: Vec<String> = found.p.iter().map(|p| p_words(facts, p)).collect();
+    p.dedup();
+    let says = match (&p[..], found.interval) {
+        ([], None) => format!("“{quote}” stands without a p-value or an interval in its sentence."),
+        ([], Some(i)) => format!("“{quote}” stands beside {}.", wording::one_line(facts.quote(i))),
+        (p, None) => format!("“{quote}” stands beside {}; alpha is {}.", p.join(" and "), alpha.words()),
+        (p, Some(i)) => {
+            let interval = wording::one_line(facts.quote(i));
+            format!("“{quote}” stands beside {interval} and {}; alpha is {}.", p.join(" and "), alpha.words())
+        }
+    };
+    let weight = Weight {
+        drives_message: facts.drives_message(claim.span) && !facts.interval_in_part(claim.span),
+        peripheral: found.interval.is_some(),
+        ..Weight::reporting()
+    };
+    let mut f = Finding::at(claim.span, weight, says);
+    f.related = found.p.iter().map(|p| (p.span, "the p-value".to_owned())).collect();
+    f.related.extend(found.interval.map(|i| (i, "the interval".to_owned())));
+    f.figures.extend(found.p.iter().map(|p| p.span));
+    f.fills = vec![("alpha", alpha.words())];
+    if !p.is_empty() {
+        f.fills.push(("p", p.join(" and ")));
+        f.explanations.extend(alpha_assumed(facts));
+    }
+    f.results = results_of(facts, &found.p);
+    f.repair = repair(facts, claim, found);
+    f
+}
+
+fn alpha_assumed(facts: &Facts) -> Option<Explanation> {
+    let assumption = crate::reading::Assumption::Alpha05;
+    (!facts.alpha().stated).then(|| wording::assumption(assumption))
+}
+
+/// A bare cell or `NS` gets its letter, so that the sentence around it reads.
+fn p_words(facts: &Facts, p: &PValue) -> String {
+    let quote = wording::one_line(facts.quote(p.span));
+    if quote.contains(['p', 'P']) || p.value.is_none() { quote } else { format!("P {quote}") }
+}
+
+fn results_of(facts: &Facts, p: &[&PValue]) -> Vec<usize> {
+    let with =
+        |r: &crate::result::ReportedResult| r.p.is_some_and(|i| p.iter().any(|p| p.span == facts.readings.p[i].span));
+    facts.results.iter().enumerate().filter(|(_, r)| with(r)).map(|(i, _)| i).collect()
+}
+
+/// "no difference" → "no significant difference", with blanks for what lets readers judge.
+fn repair(facts: &Facts, claim: &Claim, found: &Found) -> Option<Draft> {
+    if kind_of(claim) != ClaimKind::NoDifference {
+        return None;
+    }
+    let quote = facts.quote(claim.span);
+    // Only where the phrase is a plain one: elsewhere a new wording is the author's to find.
+    let plain = [
+        ("no differences", "no significant differences"),
+        ("no difference", "no significant difference"),
+        ("did not differ", "did not differ significantly"),
+    ];
+    let (phrase, careful) = plain.into_iter().find(|(phrase, _)| quote.contains(phrase))?;
+    let blanks = if found.interval.is_some() { "" } else { " (difference …, 95 % CI … to …)" };
+    let text = format!("{}{blanks}", quote.replacen(phrase, careful, 1));
+    Some(Draft { kind: RepairKind::Replace, at: claim.span, text, needs_confirmation: true })
+}
+
+/// One finding for each part of the manuscript, beginning with its first claim.
+fn by_section(facts: &Facts, singles: Vec<Finding>) -> Vec<Finding> {
+    let mut parts: BTreeMap<u32, Vec<Finding>> = BTreeMap::new();
+    for f in singles {
+        parts.entry(facts.part(f.at[0])).or_default().push(f);
+    }
+    let mut findings = Vec::new();
+    for (part, mut all) in parts {
+        let count = all.len();
+        let at: Vec<Span> = all.iter().map(|f| f.at[0]).collect();
+        let first = all.swap_remove(0);
+        let label = facts.manuscript.sections[part as usize].title.clone();
+        let more = match count {
+            1 => String::new(),
+            2 => " One more claim in this section stands likewise.".to_owned(),
+            n => format!(" {} more claims in this section stand likewise.", n - 1),
+        };
+        let mut wide = Finding::wide(at.clone(), first.weight, format!("{}{more}", first.says), vec![label]);
+        wide.related = at[1..].iter().map(|&s| (s, "another such claim".to_owned())).collect();
+        wide.repair = first.repair;
+        wide.fills = first.fills;
+        wide.fills.push(("count", count.to_string()));
+        findings.push(wide);
+    }
+    findings
+}
+
+/// "Significant" beside a p above alpha, or "not significant" beside one below.
+pub fn against_p(facts: &Facts, says: Says) -> Vec<Finding> {
+    let alpha = facts.alpha();
+    let mut findings = Vec::new();
+    for claim in &facts.readings.claims {
+        let kind = match says {
+            Says::Significant => claim.kind == ClaimKind::Difference && claim.says_significant,
+            Says::NotSignificant => kind_of(claim) == ClaimKind::NotSignificant,
+        };
+        let told = facts.manuscript.section(claim.span).kind == SectionKind::Introduction
+            || matches!(claim.attribution, Attribution::Plan | Attribution::OtherAuthors);
+        if !kind || told || excepted(&facts.sentence(claim.sentence)) {
+            continue;
+        }
+        let p = facts.p_of(claim);
+        let against = |p: &&PValue| match says {
+            Says::Significant => alpha.below(p),
+            Says::NotSignificant => alpha.above(p),
+        };
+        let comparable = |p: &&PValue| is_effect(p) || matches!(p.role, Role::WithinGroup | Role::Baseline);
+        let all = !p.is_empty() && p.iter().all(|p| against(p) && comparable(p) && !p.corrected);
+        if !all || !direct(facts, claim, p[0]) || says == Says::NotSignificant && corrects(facts, claim) {
+            continue;
+        }
+        let quote = wording::one_line(facts.quote(claim.span));
+        let mut words: Vec<String> = p.iter().map(|p| p_words(facts, p)).collect();
+        words.dedup();
+        let side = if says == Says::Significant { "above" } else { "below" };
+        let text = format!("“{quote}” stands beside {}, {side} alpha = {}.", words.join(" and "), alpha.words());
+        let weight = Weight { drives_message: facts.drives_message(claim.span), ..Weight::reporting() };
+        let mut f = Finding::at(claim.span, weight, text);
+        f.related = p.iter().map(|p| (p.span, "the p-value".to_owned())).collect();
+        f.figures.extend(p.iter().map(|p| p.span));
+        f.fills = vec![("p", words.join(" and ")), ("alpha", alpha.words())];
+        f.explanations.extend(alpha_assumed(facts));
+        f.results = results_of(facts, &p);
+        findings.push(f);
+    }
+    findings
+}
+
+/// Nothing between the claim and its p turns to another comparison.
+fn direct(facts: &Facts, claim: &Claim, p: &PValue) -> bool {
+    let between = match p.span.start >= claim.span.end {
+        true => facts.between(claim.span, p.span),
+        false => facts.between(p.span, claim.span),
+    };
+    let turns =
+        ["but", "except", "whereas", "while", "although", "however", "not", "nor", "only", "than", "unless", "if"];
+    !between.split(|c: char| !c.is_alphabetic()).any(|w| turns.contains(&w) && w != "than")
+        && !between.contains("other than")
+        && !between.contains([';', ':'])
+}
+
+/// A correction for several comparisons may rightly leave a small p "not significant".
+fn corrects(facts: &Facts, claim: &Claim) -> bool {
+    let sentence = facts.sentence(claim.sentence);
+    let words = ["correct", "adjust", "bonferroni", "multiple", "holm", "threshold", "clinical", "non-inferior"];
+    facts.context.multiplicity.is_some() || words.iter().any(|w| sentence.contains(w))
+}
