@@ -397,9 +397,7 @@ impl Reader<'_, '_> {
             }
             let start = if named {
                 i + 1
-            } else if type_one {
-                i + 3
-            } else if v.any(i, &["level"]) {
+            } else if type_one || v.any(i, &["level"]) {
                 i + 3
             } else {
                 i + 2
@@ -507,15 +505,13 @@ impl Reader<'_, '_> {
                 if planned
                     && !(beta && v.any(i.wrapping_sub(2), &["1"])
                         || v.number(i.wrapping_sub(2)).is_some() && v.sign(i.wrapping_sub(1), '-'))
-                {
-                    if let Some((x, end)) =
+                    && let Some((x, end)) =
                         self.share_after(at, 8).filter(|x| x.0.value() <= 0.5 && x.0.value() >= 0.01)
-                    {
-                        let complement = complement(x);
-                        self.add(PlanningKind::Power, i, end - 1, complement, None);
-                        i = end;
-                        continue;
-                    }
+                {
+                    let complement = complement(x);
+                    self.add(PlanningKind::Power, i, end - 1, complement, None);
+                    i = end;
+                    continue;
                 }
             }
             i += 1;
@@ -617,20 +613,16 @@ impl Reader<'_, '_> {
         let Some(n) = v.number(j).and_then(Printed::count) else {
             return v.is(j, Classes::NUMBER_WORD) && lexicon::number_word(v.word(j)).is_some_and(|n| n > 5);
         };
-        n >= 4
-            && n < 1_000_000
-            && v.style(j) == Style::Plain
-            && !v.signs(j + 1, &['%', '/', '.'])
-            && !(v.sign(j + 1, '-') && v.any(j + 2, &["sided", "tailed", "week", "month", "day", "year"]))
-            && !v.is(j + 1, Classes::PERCENT.or(Classes::UNIT))
-            && !v.any(j + 1, MEASURES)
-            && !v
-                .any(j.wrapping_sub(1), &["of"])
-                .then(|| v.any(j.wrapping_sub(2), &["power", "difference", "sd", "alpha"]))
-                .unwrap_or(false)
-            && !v.signs(j.wrapping_sub(1), &['[', '±', '/'])
-            && !((1990..2040).contains(&n) && !self.people_after(j))
-            && !((1900..2100).contains(&n) && v.any(j.wrapping_sub(1), &["in", "since", "until", "from"]))
+        let span = v.sign(j + 1, '-') && v.any(j + 2, &["sided", "tailed", "week", "month", "day", "year"]);
+        let measure = v.signs(j + 1, &['%', '/', '.'])
+            || v.is(j + 1, Classes::PERCENT.or(Classes::UNIT))
+            || v.any(j + 1, MEASURES);
+        let before = j.wrapping_sub(1);
+        let other = v.any(before, &["of"]) && v.any(j.wrapping_sub(2), &["power", "difference", "sd", "alpha"]);
+        let year = (1990..2040).contains(&n) && !self.people_after(j)
+            || (1900..2100).contains(&n) && v.any(before, &["in", "since", "until", "from"]);
+        let plain = v.style(j) == Style::Plain && !v.signs(before, &['[', '±', '/']);
+        (4..1_000_000).contains(&n) && plain && !(span || measure || other || year)
     }
 
     /// The count in digits or in one word.
@@ -749,8 +741,10 @@ mod tests {
     use crate::reading::{p, scan};
     use crate::text::{LineIndex, PieceTable};
 
+    type Statement = (PlanningKind, String, Option<f64>);
+
     /// The planning statements of one paragraph as kind, quote and value, and which p's define.
-    fn planning(text: &str) -> (Vec<(PlanningKind, String, Option<f64>)>, Vec<bool>) {
+    fn planning(text: &str) -> (Vec<Statement>, Vec<bool>) {
         let block = Block {
             kind: BlockKind::Paragraph,
             section: 0,
