@@ -91,7 +91,7 @@ impl Reader<'_, '_> {
                 && (v.style(mark) == Style::Superscript
                     && (mark == 0 || v.spaced(mark) || v.signs(mark - 1, &[',', ';', '.']))
                     || v.signs(mark + 1, &[';', ':', '=', ')'])
-                        && (mark == 0 || v.signs(mark - 1, &[';', ',', '.', '('])));
+                        && (mark == 0 || v.signs(mark - 1, &[';', ',', '.', '(', ':', '-'])));
             if !(star || letter) {
                 continue;
             }
