@@ -91,7 +91,7 @@ impl Reader<'_, '_> {
                 && (v.style(mark) == Style::Superscript
                     && (mark == 0 || v.spaced(mark) || v.signs(mark - 1, &[',', ';', '.']))
                     || v.signs(mark + 1, &[';', ':', '=', ')'])
-                        && (mark == 0 || v.signs(mark - 1, &[';', ',', '.', '('])));
+                        && (mark == 0 || v.signs(mark - 1, &[';', ',', '.', '(', ':', '-'])));
             if !(star || letter) {
                 continue;
             }
@@ -397,9 +397,7 @@ impl Reader<'_, '_> {
             }
             let start = if named {
                 i + 1
-            } else if type_one {
-                i + 3
-            } else if v.any(i, &["level"]) {
+            } else if type_one || v.any(i, &["level"]) {
                 i + 3
             } else {
                 i + 2
@@ -507,15 +505,13 @@ impl Reader<'_, '_> {
                 if planned
                     && !(beta && v.any(i.wrapping_sub(2), &["1"])
                         || v.number(i.wrapping_sub(2)).is_some() && v.sign(i.wrapping_sub(1), '-'))
-                {
-                    if let Some((x, end)) =
+                    && let Some((x, end)) =
                         self.share_after(at, 8).filter(|x| x.0.value() <= 0.5 && x.0.value() >= 0.01)
-                    {
-                        let complement = complement(x);
-                        self.add(PlanningKind::Power, i, end - 1, complement, None);
-                        i = end;
-                        continue;
-                    }
+                {
+                    let complement = complement(x);
+                    self.add(PlanningKind::Power, i, end - 1, complement, None);
+                    i = end;
+                    continue;
                 }
             }
             i += 1;
@@ -617,20 +613,16 @@ impl Reader<'_, '_> {
         let Some(n) = v.number(j).and_then(Printed::count) else {
             return v.is(j, Classes::NUMBER_WORD) && lexicon::number_word(v.word(j)).is_some_and(|n| n > 5);
         };
-        n >= 4
-            && n < 1_000_000
-            && v.style(j) == Style::Plain
-            && !v.signs(j + 1, &['%', '/', '.'])
-            && !(v.sign(j + 1, '-') && v.any(j + 2, &["sided", "tailed", "week", "month", "day", "year"]))
-            && !v.is(j + 1, Classes::PERCENT.or(Classes::UNIT))
-            && !v.any(j + 1, MEASURES)
-            && !v
-                .any(j.wrapping_sub(1), &["of"])
-                .then(|| v.any(j.wrapping_sub(2), &["power", "difference", "sd", "alpha"]))
-                .unwrap_or(false)
-            && !v.signs(j.wrapping_sub(1), &['[', '±', '/'])
-            && !((1990..2040).contains(&n) && !self.people_after(j))
-            && !((1900..2100).contains(&n) && v.any(j.wrapping_sub(1), &["in", "since", "until", "from"]))
+        let span = v.sign(j + 1, '-') && v.any(j + 2, &["sided", "tailed", "week", "month", "day", "year"]);
+        let measure = v.signs(j + 1, &['%', '/', '.'])
+            || v.is(j + 1, Classes::PERCENT.or(Classes::UNIT))
+            || v.any(j + 1, MEASURES);
+        let before = j.wrapping_sub(1);
+        let other = v.any(before, &["of"]) && v.any(j.wrapping_sub(2), &["power", "difference", "sd", "alpha"]);
+        let year = (1990..2040).contains(&n) && !self.people_after(j)
+            || (1900..2100).contains(&n) && v.any(before, &["in", "since", "until", "from"]);
+        let plain = v.style(j) == Style::Plain && !v.signs(before, &['[', '±', '/']);
+        (4..1_000_000).contains(&n) && plain && !(span || measure || other || year)
     }
 
     /// The count in digits or in one word.
@@ -743,95 +735,4 @@ fn complement(beta: Printed) -> Option<Printed> {
 }
 
 #[cfg(test)]
-mod tests {
-    use super::*;
-    use crate::manuscript::{Block, BlockKind, Manuscript, Section, SectionKind, Source};
-    use crate::reading::{p, scan};
-    use crate::text::{LineIndex, PieceTable};
-
-    /// The planning statements of one paragraph as kind, quote and value, and which p's define.
-    fn planning(text: &str) -> (Vec<(PlanningKind, String, Option<f64>)>, Vec<bool>) {
-        let block = Block {
-            kind: BlockKind::Paragraph,
-            section: 0,
-            text: text.to_string(),
-            pieces: PieceTable::default(),
-            marks: Vec::new(),
-        };
-        let section =
-            Section { title: String::new(), level: 0, parent: None, kind: SectionKind::Unknown, in_abstract: false };
-        let decoded = crate::text::decode(b"");
-        let source = Source { format: "text", decoded, lines: LineIndex::new("") };
-        let manuscript = Manuscript::new(vec![section], vec![block], source);
-        let scan = scan(&manuscript);
-        let (mut out, mut all) = (Vec::new(), Vec::new());
-        for id in scan.of_block(0) {
-            let view = scan.view(&manuscript, id);
-            let found = p::find(&view);
-            let mut defines = vec![false; found.len()];
-            read(&view, &found, &mut defines, &mut out);
-            all.extend(defines);
-        }
-        let out = out.into_iter().map(|x| (x.what, manuscript.quote(x.span).to_string(), x.value.map(Printed::value)));
-        (out.collect(), all)
-    }
-
-    #[test]
-    fn thresholds_define_and_results_do_not() {
-        for text in [
-            "P < 0.05 was considered significant.",
-            "Statistical significance was set at p<0.05.",
-            "A P value of less than 0.05 was regarded as statistically significant.",
-            "Statistical significance: P ≤ 0.05.",
-            "Differences were considered significant if p < 0.05.",
-            "P values < 0.05 indicated significance.",
-        ] {
-            let (found, defines) = planning(text);
-            assert_eq!(defines, [true], "{text}");
-            assert!(found.iter().any(|x| x.0 == PlanningKind::Threshold && x.2 == Some(0.05)), "{text}: {found:?}");
-        }
-        for text in [
-            "Fed hives were heavier (P < 0.05).",
-            "The difference in hive weight was significant (p < 0.05).",
-            "There was a significant difference at 12 weeks (p = 0.04).",
-            "Yield was significantly higher at week 8 (P < 0.01) and was similar at week 12 (P > 0.05).",
-        ] {
-            let (found, defines) = planning(text);
-            assert!(defines.iter().all(|d| !d) && found.is_empty(), "{text}: {found:?}");
-        }
-    }
-
-    #[test]
-    fn a_sample_size_with_its_parts() {
-        let text = "To detect a difference of 4 kg with 80% power and a two-sided alpha of 0.05, 36 hives per group \
-                    were needed.";
-        let (found, _) = planning(text);
-        let of = |kind| found.iter().find(|x| x.0 == kind).and_then(|x| x.2);
-        assert_eq!(of(PlanningKind::Power), Some(80.0));
-        assert_eq!(of(PlanningKind::Alpha), Some(0.05));
-        assert_eq!(of(PlanningKind::SampleSize), Some(36.0));
-        assert!(found.iter().any(|x| x.0 == PlanningKind::Sided && x.1 == "two-sided"));
-        let (found, _) = planning("With α = 5 % and β = 0.2 the sample size was calculated to be 60 participants.");
-        assert_eq!(found.iter().map(|x| x.2).collect::<Vec<_>>(), [Some(0.05), Some(0.8), Some(60.0)], "{found:?}");
-    }
-
-    #[test]
-    fn power_and_sides_of_other_kinds() {
-        for text in
-            ["Peak power of 85 W was reached.", "Bees landed on one side of the frame.", "Cronbach's alpha was 0.15."]
-        {
-            assert!(planning(text).0.is_empty(), "{text}: {:?}", planning(text).0);
-        }
-    }
-
-    #[test]
-    fn legends_and_corrections() {
-        let (found, defines) = planning("* P < 0.05, ** P < 0.01 versus control.");
-        assert_eq!(defines, [true, true]);
-        assert!(found.iter().all(|x| x.0 == PlanningKind::Legend), "{found:?}");
-        let (found, _) = planning("Pairs of hives were compared with a Bonferroni correction.");
-        assert_eq!((found[0].0, found[0].1.as_str()), (PlanningKind::Multiplicity, "Bonferroni correction"));
-        let (found, _) = planning("No correction for multiple comparisons was made.");
-        assert_eq!(found.len(), 1);
-    }
-}
+mod tests;

@@ -143,13 +143,18 @@ impl Scope<'_> {
         let flat = self.flat;
         let from = k.saturating_sub(reach).max(self.clause.first);
         let near = (from..k).rev().find(|&j| {
-            flat.is(j, Classes::NEGATION)
-                && !flat.any(j + 1, NOT_DENYING)
-                && !(flat.any(j + 1, &["more", "less", "later"]) && flat.any(j + 2, &["than"]))
-                && !(flat.any(j, &["no"]) && flat.sign(j + 1, '.'))
-                && !(j + 1..k).any(|h| flat.signs(h, &[';', ':']) || flat.is(h, BREAK))
-                // "without complications, X was significantly higher"
-                && !(flat.any(j, &["without", "no"]) && (j + 1..k).any(|h| flat.sign(h, ',')) && !(j + 1..k).any(|h| flat.any(h, &["or", "nor"])))
+            if !flat.is(j, Classes::NEGATION) || flat.any(j + 1, NOT_DENYING) {
+                return false;
+            }
+            let bound = flat.any(j + 1, &["more", "less", "later"]) && flat.any(j + 2, &["than"]);
+            let number = flat.any(j, &["no"]) && flat.sign(j + 1, '.');
+            let between = || j + 1..k;
+            let clause = between().any(|h| flat.signs(h, &[';', ':']) || flat.is(h, BREAK));
+            // "without complications, X was significantly higher"
+            let aside = flat.any(j, &["without", "no"])
+                && between().any(|h| flat.sign(h, ','))
+                && !between().any(|h| flat.any(h, &["or", "nor"]));
+            !(bound || number || clause || aside)
         });
         // "None of the … were significant", "No X was higher": the subject is denied.
         near.or_else(|| {
@@ -342,7 +347,7 @@ impl Scope<'_> {
             flat.any(k, &["trend", "tendency", "trends"])
                 && (k + 1..k + 3).any(|j| flat.any(j, &["toward", "towards", "to", "for", "in"]))
                 && !flat.any(k + 2, &["trend", "test"])
-                && !(flat.any(k + 1, &["in"]) && !flat.any(k + 2, &["favor", "favour"]))
+                && (!flat.any(k + 1, &["in"]) || flat.any(k + 2, &["favor", "favour"]))
                 || flat.any(k, &["tended"]) && flat.any(k + 1, &["to", "towards", "toward"])
                 || flat.any(k, &["trended", "trending"])
                 || flat.any(k, &["some"]) && flat.any(k + 1, &["evidence"]) && self.facts.figures
