@@ -224,3 +224,24 @@ fn nothing_in_a_manuscript_steers_the_terminal() {
     let text = String::from_utf8(out).expect("reports are UTF-8");
     assert!(!text.contains("\u{1b}[2J") && !text.contains("\u{1b}[31m.md") && !text.contains('\u{202e}'));
 }
+
+#[test]
+fn the_readme_shows_a_query_that_the_fixture_raises() {
+    let path = format!("{}/README.md", env!("CARGO_MANIFEST_DIR"));
+    let readme = std::fs::read_to_string(path).expect("the document is there");
+    let shown = readme.split("\n\n    Query ").nth(1).expect("it shows a query");
+    let shown: Vec<&str> = shown.lines().take_while(|l| l.is_empty() || l.starts_with("    ")).map(str::trim).collect();
+    // The number of the query may change with the rules.
+    let text = one(&TERMINAL, "flawed.md");
+    let report: Vec<&str> = text.lines().map(str::trim).collect();
+    let found = |at: usize| {
+        let first = shown[0].split_once(' ').map_or("", |(_, rest)| rest.trim());
+        report[at].starts_with("Query ")
+            && report[at].ends_with(first)
+            && shown[1..].iter().filter(|l| !l.is_empty()).eq(report[at + 1..]
+                .iter()
+                .filter(|l| !l.is_empty())
+                .take(shown[1..].iter().filter(|l| !l.is_empty()).count()))
+    };
+    assert!((0..report.len()).any(found), "the query in README.md is not in the report of fixtures/flawed.md");
+}
