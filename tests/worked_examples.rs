@@ -337,6 +337,20 @@ fn differences_and_what_holds_them_back() {
 }
 
 #[test]
+fn statistics_cut_or_without_df() {
+    // F = 0.0053 (P = 0.942) prints as 0.01, cut as 0.00.
+    let c = Paper::default().statistic(Symbol::F, ["1", "146"], "0.00").p(EQ, "0.942").check();
+    assert_eq!((c.verdict, found(&c, Quantity::P).reason.as_deref()), (Verdict::Tallies, Some("cut, not rounded")));
+    // Below 1, t is far from significant whatever its degrees of freedom; above, they are needed.
+    let t = |v| Paper::default().statistic(Symbol::T, ["", ""], v).p(Relation::Greater, "0.05").check();
+    assert_eq!(t("0.62").verdict, Verdict::Tallies);
+    assert_eq!((t("2.2").verdict, t("2.2").reason), (Verdict::Undecided, Some("degrees of freedom not printed")));
+    // `P < 0.0000` says that it rounds to nothing.
+    let c = Paper::default().count("280", "309").count("166", "307").p(Relation::Less, "0.0000").check();
+    assert_eq!(c.verdict, Verdict::Tallies);
+}
+
+#[test]
 fn slips_are_named_when_they_restore_the_figure() {
     let kind = |c: Checked| {
         assert_eq!(c.verdict, Verdict::Differs, "{c:#?}");

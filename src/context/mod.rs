@@ -174,7 +174,7 @@ mod tests {
         let c = context(&[
             (
                 "Methods",
-                "Sixty beekeepers were randomised to syrup or water. Means were compared with the paired t test and \
+                "Sixty participants were randomised to syrup or water. Means were compared with the paired t test and \
                  analysis of covariance. Tests were two-sided and P < 0.01 was considered significant. Values are \
                  means ± SEM. Intervals are 95% confidence intervals. Pairs were compared with a Bonferroni correction.",
             ),

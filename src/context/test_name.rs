@@ -376,7 +376,7 @@ const NAMES: &[Name] = &[
 /// The tests that a sentence names, with the tokens (first and last, included) of each name.
 pub fn tests_in(view: &SentenceView) -> Vec<(Test, usize, usize)> {
     let mut found = Vec::new();
-    // Every name holds one of these words, but for χ² and a `t` by itself.
+    // Every name holds one of these words.
     if !view.tokens.iter().any(|t| t.is(Classes::TEST)) {
         return found;
     }
@@ -415,7 +415,6 @@ fn lower<'b>(word: &str, buffer: &'b mut [u8; LONGEST]) -> Option<&'b str> {
     }
     let to = &mut buffer[..word.len()];
     to.copy_from_slice(word.as_bytes());
-    // A typographic apostrophe is three bytes; it is levelled by the caller of `same`.
     to.make_ascii_lowercase();
     std::str::from_utf8(&buffer[..word.len()]).ok()
 }
@@ -469,7 +468,9 @@ fn skip(view: &SentenceView, mut at: usize, first: bool) -> usize {
 }
 
 fn same(printed: &str, word: &str) -> bool {
-    printed.eq_ignore_ascii_case(word) || !printed.is_ascii() && printed.replace(['’', '‘'], "'").to_lowercase() == word
+    printed.eq_ignore_ascii_case(word)
+        || printed == "²" && word == "2"
+        || !printed.is_ascii() && printed.replace(['’', '‘'], "'").to_lowercase() == word
 }
 
 /// What the words around a name make of it.

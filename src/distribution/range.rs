@@ -32,7 +32,7 @@ pub fn studentized_range(q: f64, k: u64, df: f64) -> Result<Tails, DistributionE
         return Err(DistributionError::TooLarge);
     }
     let inner = NormalRange::new(k);
-    let step = (0.6 / (2.0 * df + 0.5 * q * q).sqrt()).min(0.12);
+    let step = (0.6 / (2.0 * df + 0.5 * q * q).sqrt()).min(0.1);
     let value = |v: f64| inner.upper(q * v.exp()) * ln_density_of_log_scale(v, df).exp();
     let mut sum = value(0.0);
     for direction in [1.0, -1.0] {
@@ -58,7 +58,10 @@ pub fn studentized_range(q: f64, k: u64, df: f64) -> Result<Tails, DistributionE
         }
     }
     let upper = (sum * step).clamp(0.0, 1.0);
-    Ok(Tails { lower: 1.0 - upper, upper })
+    Ok(Tails {
+        lower: 1.0 - upper,
+        upper,
+    })
 }
 
 /// Upper tail of the range of `k` standard normal variables, with everything

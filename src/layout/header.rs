@@ -127,9 +127,10 @@ fn size(text: &str) -> Option<(u64, std::ops::Range<usize>, std::ops::Range<usiz
         let start = at + sign.len() + (rest.len() - rest.trim_start().len());
         let digits = digits(&text[start..]);
         let after = &text[start + digits..];
-        let odd = after.starts_with(['.', '/', '%', '-', '–', '·'])
-            && after[1..].starts_with(|c: char| c.is_ascii_digit())
-            || after.trim_start().starts_with('%');
+        // `n = 24/25`, `n = 24–26` and `n = 24%` are no sizes.
+        let mut behind = after.chars();
+        let joins = behind.next().is_some_and(|c| matches!(c, '.' | '/' | '%' | '-' | '–' | '−' | '·' | '±'));
+        let odd = joins && behind.next().is_some_and(|c| c.is_ascii_digit()) || after.trim_start().starts_with('%');
         if digits == 0 || glued {
             continue;
         }

@@ -106,8 +106,8 @@ impl Reader<'_, '_> {
         // "*Significantly different from controls (p < 0.05)": the mark opens the sentence. The mark may be lost:
         // "Statistically significant (p < 0.05)." has no subject that could be a result.
         let bare = v.len() < 12
-            && !(0..v.len()).any(|i| v.any(i, DECLARES) || v.any(i, &["was", "were"]))
-            && (v.is(0, Classes::SIGNIFICANCE) || v.any(0, &["statistical"]));
+            && (0..2).any(|i| v.any(i, &["significant", "significantly"]))
+            && !(0..v.len()).any(|i| v.any(i, DECLARES) || v.any(i, &["was", "were"]));
         let opening = bare || v.signs(0, MARKS) || v.style(0) == Style::Superscript && is_mark_letter(v, 0);
         if opening
             && self.p.len() == 1

@@ -144,6 +144,7 @@ fn from_groups(case: &Case, e: &Estimate) -> Option<Recomputation> {
         ground: Ground::IfUnadjusted,
         hold,
         least: 1.0,
+        least_shift: 0.0,
         alpha: case.alpha,
         stated: None,
     };

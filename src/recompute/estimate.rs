@@ -98,7 +98,9 @@ pub(crate) fn p_of_ratio(ratio: Range, level: f64, df: Range) -> Option<Range> {
 
 /// The degrees of freedom to try beside the normal distribution, and whether they come from group sizes.
 fn degrees(case: &Case, scale: Scale, measure: Measure) -> Option<(Range, bool)> {
-    let ratio_of_means = scale == Scale::Ratio && matches!(measure, Measure::Other);
+    // A ratio of means, say; an unnamed figure is more often a ratio of risks.
+    let named = case.estimate().is_some_and(|e| e.scale == Scale::Ratio);
+    let ratio_of_means = named && scale == Scale::Ratio && matches!(measure, Measure::Other);
     if !(scale == Scale::Difference || ratio_of_means) || measure == Measure::RiskDifference {
         return None;
     }
@@ -190,6 +192,7 @@ pub(crate) fn p_from_interval(case: &Case) -> Result<Vec<Recomputation>, &'stati
         ground: Ground::IfOneMethod,
         hold,
         least: if rival_tests(case, e) { 2.0 } else { 1.2 },
+        least_shift: 0.0,
         alpha: case.alpha,
         stated: None,
     };
@@ -356,8 +359,15 @@ pub(crate) fn p_from_se(case: &Case) -> Option<Recomputation> {
     let line = format!("t = {shown}; df {} or more; {}", df.lo, working::p(range));
     candidates.push(Candidate::new(&method::SE_TO_P, "t", range, line).assuming(Assumption::PlausibleDf));
     let hold = case.interval_hold().or((e.scale == Scale::Unknown).then_some(reason::SCALE));
-    let policy =
-        Policy { of: Quantity::P, ground: Ground::IfOneMethod, hold, least: 1.2, alpha: case.alpha, stated: None };
+    let policy = Policy {
+        of: Quantity::P,
+        ground: Ground::IfOneMethod,
+        hold,
+        least: 1.2,
+        least_shift: 0.0,
+        alpha: case.alpha,
+        stated: None,
+    };
     let printed = p.value.filter(|_| p.relation == Relation::Equal);
     let slips = || {
         if target.fit(statistic::halved(normal)) == Fit::Full && target.sharp_against(statistic::halved(normal)) {
@@ -381,7 +391,7 @@ pub(crate) fn inside(case: &Case) -> Option<Recomputation> {
     if !inside && e.measure == Measure::Other && e.scale == Scale::Unknown {
         return None;
     }
-    if reciprocal && !inside || e.percent != i.percent && !inside {
+    if !inside && (reciprocal || e.percent != i.percent) {
         return None;
     }
     let unit = e.value.unit().max(lower.unit());
@@ -435,7 +445,7 @@ fn inside_slip(e: &Estimate, lower: Printed, upper: Printed) -> Option<Slip> {
             }
         }
     }
-    for x in slip::moved(e.value).filter(|x| fits(*x, lower, upper)) {
+    if let Some(x) = slip::moved(e.value).find(|x| fits(*x, lower, upper)) {
         let says = format!("with its decimal point moved the estimate reads {}", x.value());
         return Some(Slip { kind: "decimal-point", says });
     }

@@ -76,6 +76,7 @@ pub(crate) fn check(g: &Group, agreement: Agreement) -> Vec<Recomputation> {
         ground: if g.one_expression { Ground::ByDefinition } else { Ground::IfOneMethod },
         hold,
         least: 0.0,
+        least_shift: 0.0,
         alpha: 0.05,
         stated: None,
     };
@@ -119,6 +120,7 @@ pub(crate) fn parts(g: &Group, all: &[Group]) -> Option<Recomputation> {
         ground: Ground::IfOneMethod,
         hold: Some(reason::DENOMINATOR),
         least: 0.0,
+        least_shift: 0.0,
         alpha: 0.05,
         stated: None,
     };

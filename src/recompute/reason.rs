@@ -10,6 +10,8 @@ pub const NO_SIZES: &str = "no group sizes";
 pub const NO_SPREAD: &str = "no spread";
 /// "degrees of freedom not printed".
 pub const NO_DF: &str = "degrees of freedom not printed";
+/// "the percentage is said to be about so much".
+pub const APPROXIMATELY: &str = "the percentage is said to be about so much";
 /// "no interval or standard error beside the estimate".
 pub const NO_INTERVAL: &str = "no interval or standard error beside the estimate";
 /// "no estimate beside the interval".
@@ -84,6 +86,7 @@ pub const ALL: &[&str] = &[
     NO_SPREAD,
     NO_DF,
     NO_INTERVAL,
+    APPROXIMATELY,
     NO_ESTIMATE,
     ONE_GROUP,
     NO_METHOD,

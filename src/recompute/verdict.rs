@@ -42,6 +42,8 @@ pub(crate) struct Policy {
     pub hold: Option<&'static str>,
     /// Smaller distances (see [`Distance`]) stay undecided.
     pub least: f64,
+    /// Smaller shifts of p as a normal deviate (see [`Target::shift`]) stay undecided.
+    pub least_shift: f64,
     pub alpha: f64,
     /// The stated test's name, where one is stated for this result.
     pub stated: Option<Test>,
@@ -87,11 +89,12 @@ pub(crate) fn judge(
     out = Recomputation { inputs: out.inputs, ..blank(target, nearest, policy, Vec::new()) };
     out.computed = deciding().map(|c| c.range).reduce(Range::hull);
     let size = candidates.iter().map(|c| target.distance(c.range)).fold(f64::INFINITY, f64::min);
+    let shift = candidates.iter().map(|c| target.shift(c.range)).fold(f64::INFINITY, f64::min);
     let across_alpha = candidates.iter().all(|c| target.across(c.range, policy.alpha));
     out.distance = Some(Distance { size, across_alpha });
     if let Some(hold) = policy.hold {
         out.reason = Some(hold.into());
-    } else if size < policy.least {
+    } else if size < policy.least || target.is_p && shift < policy.least_shift {
         out.reason = Some(reason::CLOSE.into());
     } else {
         out.verdict = Verdict::Differs;

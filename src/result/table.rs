@@ -3,9 +3,9 @@
 use super::sentence::Members;
 use super::{Feature, ReportedResult, StatedTest, feature};
 use crate::context::{Context, Stated, Test, tests_in};
-use crate::layout::{Around, ColumnRole, Layout, Row, around};
+use crate::layout::{Around, ColumnRole, Layout, Row, RowRole, around};
 use crate::manuscript::{BlockKind, Grid, Manuscript};
-use crate::reading::{Group, Inference, Origin, Readings, Scan, SentenceView, Style};
+use crate::reading::{Figure, Group, Inference, Origin, Readings, Scan, SentenceView, Style};
 use crate::text::Span;
 use std::ops::Range;
 
@@ -27,7 +27,7 @@ pub(super) fn join(
     let notes = table.notes(&around);
     let (mut p, mut groups) = (members.p.clone(), members.groups.clone());
     let (mut intervals, mut estimates) = (members.intervals.clone(), members.estimates.clone());
-    for row in &table.layout.rows {
+    for (index, row) in table.layout.rows.iter().enumerate() {
         // Each list is in the order of cells, so it is walked once.
         let end = table.first + row.cells.end as u32;
         let found = Found {
@@ -36,7 +36,7 @@ pub(super) fn join(
             intervals: take(&mut intervals, |i| readings.intervals[i].sentence < end),
             estimates: take(&mut estimates, |i| readings.estimates[i].sentence < end),
         };
-        table.results_of(row, &found, &notes, readings, context, out);
+        table.results_of(index, &found, &notes, readings, context, out);
     }
 }
 
@@ -85,13 +85,14 @@ impl<'a> Table<'a> {
 
     fn results_of(
         &self,
-        row: &Row,
+        index: usize,
         found: &Found,
         notes: &Notes,
         readings: &Readings,
         context: &Context,
         out: &mut Vec<ReportedResult>,
     ) {
+        let row = &self.layout.rows[index];
         let mut compared: Vec<usize> = found
             .groups
             .clone()
@@ -110,6 +111,9 @@ impl<'a> Table<'a> {
         let (interval, estimate) = (found.intervals.clone().next(), found.estimates.clone().next());
         if joined && (p.is_some() || interval.is_some() || estimate.is_some()) {
             let mut result = ReportedResult { p, interval, estimate, groups: compared, ..ReportedResult::default() };
+            if let Some(p) = p.filter(|_| self.shares_p(index, &result.groups, readings)) {
+                result.features.push((Feature::OtherGroups, readings.p[p].span));
+            }
             self.describe(row, &mut result, notes, readings, context);
             out.push(result);
         }
@@ -124,6 +128,44 @@ impl<'a> Table<'a> {
         for g in found.groups.clone().filter(|&g| is_arithmetic(&readings.groups[g])) {
             out.push(ReportedResult { groups: vec![g], ..ReportedResult::default() });
         }
+    }
+
+    /// Whether a row's P may be that of several rows: a row beside it has figures and no P of its own. Two rows that
+    /// share out the whole of each group ("male", "female") have one and the same P.
+    fn shares_p(&self, index: usize, groups: &[usize], readings: &Readings) -> bool {
+        let bare = |k: Option<usize>| {
+            k.and_then(|k| self.layout.rows.get(k)).is_some_and(|row| {
+                let empty = |c: usize| self.view(c).is_empty();
+                let role = |c: usize| self.layout.role(&self.grid.cells[c]);
+                row.role == RowRole::Data
+                    && row.cells.clone().any(|c| role(c).size().is_some() && !empty(c))
+                    && row.cells.clone().all(|c| *role(c) != ColumnRole::P || empty(c))
+            })
+        };
+        let beside = match (bare(index.checked_sub(1)), bare(index.checked_add(1))) {
+            (false, false) => return false,
+            (true, true) => return true,
+            (true, false) if bare(index.checked_sub(2)) => return true,
+            (false, true) if bare(index.checked_add(2)) => return true,
+            (true, false) => index - 1,
+            (false, true) => index + 1,
+        };
+        let cells = &self.layout.rows[beside].cells;
+        let sentences = self.first + cells.start as u32..self.first + cells.end as u32;
+        let column = |s: u32| self.grid.cells.get((s - self.first) as usize).map(|c| c.column);
+        let other_half = |g: usize| {
+            let group = &readings.groups[g];
+            let count = |f: Option<Figure>| f.and_then(|f| f.printed.count());
+            // The row beside is at most a row's width away in the list.
+            let near = g.saturating_sub(2 * cells.len())..(g + 2 * cells.len()).min(readings.groups.len());
+            readings.groups[near].iter().any(|o| {
+                sentences.contains(&o.sentence)
+                    && column(o.sentence) == column(group.sentence)
+                    && count(o.events).zip(count(group.events)).map(|(a, b)| a.saturating_add(b)) == count(group.total)
+                    && group.total.is_some()
+            })
+        };
+        groups.is_empty() || !groups.iter().all(|&g| other_half(g))
     }
 
     fn describe(&self, row: &Row, result: &mut ReportedResult, notes: &Notes, readings: &Readings, context: &Context) {

@@ -54,6 +54,7 @@ impl Paper {
             spread_kind: None,
             spread: Vec::new(),
             change: false,
+            approximate: false,
             one_expression: false,
         }
     }

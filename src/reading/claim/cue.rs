@@ -7,12 +7,14 @@ use crate::reading::claim_words::{
 };
 use crate::reading::lexicon::Classes;
 use crate::reading::p::PExpression;
-use crate::reading::{ClaimKind, Direction};
+use crate::reading::{ClaimKind, Direction, Relation};
 
 /// What the whole sentence says, for all its clauses.
 pub(super) struct Facts {
     /// A p-value stands in the sentence, or an interval or a percent beside a ratio.
     pub figures: bool,
+    /// A p with an equals sign: a result in any case.
+    pub exact: bool,
     /// Any number.
     pub numbers: bool,
     /// Findings of others: "previous studies", "et al.".
@@ -24,6 +26,7 @@ impl Facts {
     pub fn of(flat: &Flat, p: &[PExpression], union: Classes) -> Facts {
         let view = flat.view;
         let figures = !p.is_empty() || union.meets(Classes::CI);
+        let exact = p.iter().any(|x| x.relation == Relation::Equal);
         let numbers = view.tokens.iter().any(|t| t.number().is_some());
         let cited = union.meets(OTHERS)
             && (0..view.len()).any(|i| {
@@ -31,7 +34,7 @@ impl Facts {
                     || view.any(i, &["previous", "previously", "earlier", "literature", "published", "recent", "other"])
                         && (1..4).any(|d| view.any(i + d, STUDIES))
             });
-        Facts { figures, numbers, others: cited, has_groups: union.meets(Classes::GROUP) }
+        Facts { figures, exact, numbers, others: cited, has_groups: union.meets(Classes::GROUP) }
     }
 }
 
@@ -201,6 +204,11 @@ impl Scope<'_> {
             || self.planned(k)
             || self.possible(k) && !self.facts.figures
         {
+            return None;
+        }
+        // "P < 0.05 was considered significant" defines.
+        let considered = (k.saturating_sub(5).max(self.clause.first)..k).any(|j| flat.any(j, CONSIDERED));
+        if considered && !self.facts.exact {
             return None;
         }
         let word = flat.word(k).as_bytes();

@@ -102,3 +102,9 @@ pub(super) const REACHES: &[&str] = &[
     "reach", "reached", "reaching", "achieve", "achieved", "attain", "attained", "approached", "approaching",
     "approach", "showed", "show", "failed", "lost", "gained", "found", "observed", "retained", "lacked",
 ];
+
+/// Verbs that make "significant" a definition.
+pub(super) const CONSIDERED: &[&str] = &[
+    "considered", "regarded", "deemed", "defined", "taken", "accepted", "declared", "judged", "denotes", "indicates",
+    "indicated", "denoted", "represents", "interpreted", "designated",
+];

@@ -426,7 +426,21 @@ pub(super) fn soften(view: &SentenceView, drafts: &mut [Draft]) {
         let about = d.first > 0
             && (view.any(
                 d.first - 1,
-                &["over", "about", "approximately", "nearly", "almost", "around", "roughly", "least", "most", "than"],
+                &[
+                    "over",
+                    "about",
+                    "approximately",
+                    "nearly",
+                    "almost",
+                    "around",
+                    "roughly",
+                    "least",
+                    "most",
+                    "than",
+                    "below",
+                    "above",
+                    "under",
+                ],
             ) || view.signs(d.first - 1, &['~', '<', '>', '≥', '≤']));
         d.group.approximate = (about || estimated) && d.group.percent.is_some();
         let total = d.group.total.map(|t| t.origin);

@@ -128,7 +128,8 @@ fn categories(groups: &mut [Group]) {
     }
 }
 
-/// A count whose percentage fits no size, where every other count of the paragraph (two at least) has one and the same total.
+/// A count whose percentage fits no size, in a sentence whose other counts all have one and the same total (as has all
+/// the paragraph, twice at least).
 fn siblings(groups: &mut [Group]) {
     let totals: Vec<Figure> =
         groups.iter().filter(|g| g.percent.is_some() && g.events.is_some()).filter_map(|g| g.total).collect();
@@ -140,9 +141,12 @@ fn siblings(groups: &mut [Group]) {
         Origin::Printed(span) | Origin::Inferred(_, span) => span,
         Origin::Assumed(_) => return,
     };
-    let mut odd: Vec<&mut Group> =
-        groups.iter_mut().filter(|g| open(g).is_some_and(|(e, _)| e <= first.printed.digits)).collect();
-    if let [group] = odd.as_mut_slice() {
+    let counts = groups.iter().filter(|g| g.percent.is_some() && g.events.is_some()).count();
+    if counts != totals.len() + 1 {
+        return;
+    }
+    let odd = groups.iter_mut().find(|g| open(g).is_some_and(|(events, _)| events < first.printed.digits));
+    if let Some(group) = odd {
         group.total = Some(Figure { printed: first.printed, origin: Origin::Inferred(Inference::Siblings, span) });
         group.n = group.total;
     }

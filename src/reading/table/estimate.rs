@@ -23,9 +23,15 @@ pub(super) fn read(table: &Table, row: &Row, setting: &Setting, counts: bool, re
             Form::Single { value, .. } => (value, None),
             _ => continue,
         };
-        let Some((mut measure, scale)) = measure(&head) else { continue };
+        let Some((mut measure, mut scale)) = measure(&head, counts) else { continue };
         if counts && measure == Measure::MeanDifference {
             measure = Measure::RiskDifference;
+        }
+        let negative = |p: Printed| p.value() <= 0.0;
+        if scale == Scale::Ratio && (negative(value.printed) || limits.is_some_and(|(a, b)| negative(a) || negative(b)))
+        {
+            // A header for several measures, of which this is another.
+            (measure, scale) = (Measure::Other, Scale::Unknown);
         }
         // A difference of shares beyond 1 is in percentage points, printed or not.
         let points = measure == Measure::RiskDifference && value.printed.value().abs() > 1.0;
@@ -76,13 +82,18 @@ fn level(head: &SentenceView) -> Option<Figure> {
     })
 }
 
-/// The measure that a header names, and its scale.
-fn measure(head: &SentenceView) -> Option<(Measure, Scale)> {
+/// The measure that a header names, and its scale. "Odds ratio or mean difference" is the ratio for counts.
+fn measure(head: &SentenceView, counts: bool) -> Option<(Measure, Scale)> {
     let two = |a: &[&str], b: &[&str]| (0..head.len()).any(|i| head.any(i, a) && head.any(i + 1, b));
     let one = |words: &[&str]| (0..head.len()).any(|i| words.contains(&head.word(i)));
     let ratio: &[&str] = &["ratio", "ratios"];
     let difference: &[&str] = &["difference", "differences"];
     let has = |words: &[&str]| (0..head.len()).any(|i| head.any(i, words));
+    let differs = has(difference) || one(&["MD", "RD", "ARD"]);
+    let divides = has(ratio) || one(&["HR", "OR", "RR", "IRR"]) || has(&["relative"]) && has(&["risk"]);
+    if differs && divides && !counts {
+        return Some((Measure::MeanDifference, Scale::Difference));
+    }
     Some(if one(&["HR", "aHR", "AHR"]) || two(&["hazard", "hazards"], ratio) {
         (Measure::HazardRatio, Scale::Ratio)
     } else if one(&["OR", "aOR", "AOR"]) || two(&["odds"], ratio) {

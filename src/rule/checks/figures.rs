@@ -157,7 +157,7 @@ pub fn printed_zero(facts: &Facts) -> Vec<Finding> {
         let relations = [Relation::Equal, Relation::Less, Relation::AtMost];
         p.value.is_some_and(|v| v.digits == 0) && relations.contains(&p.relation)
     };
-    facts
+    let found = facts
         .readings
         .p
         .iter()
@@ -176,5 +176,23 @@ pub fn printed_zero(facts: &Facts) -> Vec<Finding> {
             });
             f
         })
-        .collect()
+        .collect();
+    one_per_table(facts, found)
+}
+
+/// A table full of `0.000` is one question, with all its places.
+fn one_per_table(facts: &Facts, found: Vec<Finding>) -> Vec<Finding> {
+    let mut kept: Vec<Finding> = Vec::new();
+    for f in found {
+        let span = f.at[0];
+        let first = kept.iter_mut().find(|k| facts.in_table(span) && k.at[0].block == span.block);
+        match first {
+            Some(first) => {
+                first.related.push((span, "printed likewise".to_owned()));
+                first.results.extend(f.results);
+            }
+            None => kept.push(f),
+        }
+    }
+    kept
 }

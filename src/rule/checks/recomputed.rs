@@ -57,6 +57,7 @@ fn candidates<'a>(
             && r.computed.is_some()
             && from.contains(&basis(facts, checked, r))
             && !within_group(facts, checked, r)
+            && !small_total_elsewhere(facts, checked, r)
             && !tallies(r)
     })
 }
@@ -65,6 +66,19 @@ fn candidates<'a>(
 fn within_group(facts: &Facts, checked: &Checked, r: &Recomputation) -> bool {
     let groups = &facts.results[checked.result].groups;
     r.of == Quantity::Estimate && groups.iter().any(|&i| facts.readings.groups[i].span.overlaps(r.figure))
+}
+
+/// A percentage of a handful that stands elsewhere: "two strategies … in 2 (18 %) measures" is of other things.
+fn small_total_elsewhere(facts: &Facts, checked: &Checked, r: &Recomputation) -> bool {
+    const HANDFUL: u64 = 10;
+    let groups = facts.results[checked.result].groups.iter().map(|&i| &facts.readings.groups[i]);
+    let mut totals = groups.filter_map(|g| g.total.and_then(|t| t.printed.count()));
+    elsewhere(r) && totals.any(|t| t < HANDFUL)
+}
+
+/// Count, total and percentage are not printed in one expression.
+fn elsewhere(r: &Recomputation) -> bool {
+    matches!(r.of, Quantity::Percent | Quantity::Events | Quantity::Total) && r.ground != Ground::ByDefinition
 }
 
 /// What a figure was recomputed from: the reading nearest to a test's own arithmetic that is among its inputs.
@@ -142,6 +156,10 @@ fn finding(facts: &Facts, checked: &Checked, r: &Recomputation, all: &[&Recomput
 /// The inputs as a phrase: "4.1 (SD 1.2) and 5.3 (SD 1.4) with n = 40 and 40".
 fn inputs(facts: &Facts, r: &Recomputation) -> String {
     const MOST: usize = 4;
+    let part = |name: &str| r.inputs.iter().find(|(_, part)| *part == name).map(|&(s, _)| facts.quote(s));
+    if let (Some(count), Some(total)) = (part("the count"), part("the total")) {
+        return wording::one_line(&format!("{count} of {total}"));
+    }
     let others = || r.inputs.iter().filter(|(s, _)| *s != r.figure);
     let words = |sizes: bool| {
         let mut spans: Vec<Span> = Vec::new();
@@ -178,9 +196,10 @@ fn weight(facts: &Facts, checked: &Checked, r: &Recomputation) -> Weight {
         ground: r.ground,
         distance,
         drives_message: false,
-        // What an introduction reports is mostly the work of others.
+        // What an introduction reports is mostly the work of others; a percentage may be of another total.
         peripheral: p.is_some_and(|p| matches!(p.role, Role::Baseline | Role::AssumptionOrFit))
-            || facts.manuscript.section(r.figure).kind == SectionKind::Introduction,
+            || facts.manuscript.section(r.figure).kind == SectionKind::Introduction
+            || elsewhere(r),
         table_vouches: r.ground == Ground::IfUnadjusted && table_vouches(facts, checked, r),
     }
 }
