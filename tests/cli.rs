@@ -137,3 +137,28 @@ fn the_order_of_work_does_not_show() {
     let batch: serde_json::Value = serde_json::from_str(&first).expect("the report is JSON");
     assert_eq!(batch[1], alone);
 }
+
+#[test]
+fn the_catalogue_is_listed_and_explained() {
+    let list = out(&tallyproof(&["rules"]));
+    for rule in tallyproof::rule::catalogue().rules() {
+        assert!(list.contains(&rule.id), "{}", rule.id);
+    }
+    let one = out(&tallyproof(&["rules", "p-from-interval"]));
+    assert!(one.starts_with("arithmetic/p-from-interval\n") && one.contains("raises it") && one.contains("BMJ"));
+    let none = tallyproof(&["rules", "p-from-nothing"]);
+    assert_eq!(none.status.code(), Some(2));
+    assert!(err(&none).contains("p-from-nothing"));
+}
+
+#[test]
+fn a_reader_who_has_seen_enough_is_no_fault() {
+    let mut child = command(&["audit", "--as", "json-lines", "fixtures/flawed.md", "fixtures/sound.md"])
+        .stdout(Stdio::piped())
+        .stderr(Stdio::piped())
+        .spawn()
+        .expect("the program starts");
+    drop(child.stdout.take());
+    let ended = child.wait_with_output().expect("it ends");
+    assert!(ended.stderr.is_empty(), "{}", String::from_utf8_lossy(&ended.stderr));
+}

@@ -224,3 +224,17 @@ fn nothing_in_a_manuscript_steers_the_terminal() {
     let text = String::from_utf8(out).expect("reports are UTF-8");
     assert!(!text.contains("\u{1b}[2J") && !text.contains("\u{1b}[31m.md") && !text.contains('\u{202e}'));
 }
+
+#[test]
+fn the_readme_shows_a_query_that_the_fixture_raises() {
+    let path = format!("{}/README.md", env!("CARGO_MANIFEST_DIR"));
+    let readme = std::fs::read_to_string(path).expect("the document is there");
+    // The number of the query may change with the rules.
+    let flat = |text: &str| text.split_whitespace().collect::<Vec<_>>().join(" ");
+    let shown = readme.split("\n\n    Query ").nth(1).expect("it shows a query");
+    let shown: Vec<&str> = shown.split("\n\n").take_while(|part| !part.starts_with("Then")).collect();
+    let shown = flat(&shown.join("\n\n"));
+    let (_, shown) = shown.split_once(' ').expect("a number stands first");
+    let report = flat(&one(&TERMINAL, "flawed.md"));
+    assert!(report.contains(shown), "the query in README.md is not in the report of fixtures/flawed.md: {shown}");
+}

@@ -106,6 +106,6 @@ impl<'a> Places<'a> {
 fn row_of(grid: &Grid, row: u32) -> Option<(usize, usize)> {
     let mut cells = grid.cells.iter().filter(|c| c.row == row);
     let first = cells.next()?;
-    let last = cells.last().unwrap_or(first);
+    let last = cells.next_back().unwrap_or(first);
     Some((first.start as usize, last.end as usize))
 }

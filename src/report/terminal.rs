@@ -4,6 +4,7 @@
 //! without colour. Styles are always written; whoever opens the output strips them where they are
 //! not wanted.
 
+use std::collections::BTreeSet;
 use std::io::{self, Write};
 
 use anstyle::{AnsiColor, Style};
@@ -13,7 +14,9 @@ use super::place::{Context, Places};
 use super::{Account, Audited, CAUTIONS, Entry, Line, Report, numbers, words};
 use crate::manuscript::Location;
 use crate::query::{Level, Query, Related, Repair, RepairKind, Verdict};
+use crate::reading::{Figure, Group};
 use crate::recompute::{Checked, Quantity, Recomputation};
+use crate::text::Span;
 
 /// Characters of a sentence shown before and after the words in question, and of the words themselves.
 const AROUND: usize = 220;
@@ -49,6 +52,7 @@ impl Report for Terminal {
         opening(&mut galley, entry.path, audited)?;
         queries(&mut galley, audited, &places)?;
         if self.workings {
+            as_read(&mut galley, audited)?;
             workings(&mut galley, audited)?;
         }
         account(&mut galley, audited)
@@ -249,14 +253,57 @@ fn in_question<'a>(query: &Query, audited: &'a Audited) -> Vec<&'a Recomputation
     chosen
 }
 
+/// What each stretch of a snippet was taken for.
+fn as_read(galley: &mut Galley, audited: &Audited) -> io::Result<()> {
+    let r = &audited.readings;
+    let mut read: Vec<(Span, &str, String)> = Vec::new();
+    read.extend(r.p.iter().map(|x| (x.span, "p-value", words::role(x.role).to_owned())));
+    read.extend(r.intervals.iter().map(|x| (x.span, "interval", format!("{} to {}", x.lower, x.upper))));
+    read.extend(r.statistics.iter().map(|x| (x.span, "statistic", words::symbol(x.symbol).to_owned())));
+    read.extend(r.groups.iter().map(|x| (x.span, "group", group_in_words(x))));
+    read.extend(r.estimates.iter().map(|x| (x.span, "estimate", words::measure(x.measure).to_owned())));
+    read.extend(r.claims.iter().map(|x| (x.span, "claim", words::claim_kind(x.kind).to_owned())));
+    read.extend(r.planning.iter().map(|x| (x.span, "planning", words::planning_kind(x.what).to_owned())));
+    read.sort_by_key(|(span, ..)| *span);
+    if read.is_empty() {
+        return Ok(());
+    }
+    galley.gap()?;
+    galley.across(&[(BOLD, "What was read")])?;
+    galley.gap()?;
+    for (span, kind, what) in read {
+        let quote = first_part(&clean(audited.manuscript.quote(span)), 80);
+        let comma = if what.is_empty() { "" } else { ": " };
+        galley.labelled(kind, &[(BOLD, &quote), (FAINT, comma), (FAINT, &clean(&what))])?;
+    }
+    galley.flush()
+}
+
+/// "sling, n = 119": the name and sizes that a group was given.
+fn group_in_words(group: &Group) -> String {
+    let size = |name: &str, figure: &Option<Figure>| figure.as_ref().map(|f| format!("{name} = {}", f.printed));
+    let label = (!group.label.is_empty()).then(|| group.label.clone());
+    let spread = group.spread_kind.map(|k| format!("spread {}", words::spread_kind(k)));
+    let parts = [label, size("n", &group.n), size("events", &group.events), size("total", &group.total), spread];
+    parts.into_iter().flatten().collect::<Vec<_>>().join(", ")
+}
+
 /// Everything that follows from the figures, for a snippet.
 fn workings(galley: &mut Galley, audited: &Audited) -> io::Result<()> {
     galley.gap()?;
     galley.across(&[(BOLD, "What follows from the figures")])?;
     let recomputed: Vec<&Checked> = audited.checked.iter().filter(|c| !c.recomputations.is_empty()).collect();
     if recomputed.is_empty() {
+        let reasons: BTreeSet<&str> = audited.checked.iter().filter_map(|c| c.reason).collect();
+        let because = if reasons.is_empty() { "" } else { ": " };
+        let reasons: Vec<_> = reasons.into_iter().collect();
         galley.gap()?;
-        galley.text(&[(PLAIN, "Nothing can be recomputed from the figures of this text alone.")])?;
+        galley.text(&[
+            (PLAIN, "Nothing can be recomputed from the figures of this text alone"),
+            (PLAIN, because),
+            (PLAIN, &reasons.join("; ")),
+            (PLAIN, "."),
+        ])?;
     }
     for (i, checked) in recomputed.iter().enumerate() {
         galley.gap()?;
@@ -285,8 +332,9 @@ fn working(galley: &mut Galley, r: &Recomputation, audited: &Audited) -> io::Res
     match r.computed {
         Some(range) => {
             let range = numbers::range(r.of, range);
-            let rest = format!(" ({}, by the {})", words::quantity(r.of), r.method.name);
-            galley.labelled("recomputed", &[(BOLD, &range), (PLAIN, &rest)])?;
+            let of = if r.of == Quantity::P { "P " } else { "" };
+            let method = format!(" ({})", r.method.name);
+            galley.labelled("recomputed", &[(BOLD, of), (BOLD, &range), (PLAIN, &method)])?;
         }
         None => galley.labelled("method", &[(PLAIN, r.method.name)])?,
     }
