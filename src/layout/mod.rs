@@ -348,3 +348,6 @@ fn plain_columns(text: &Text, grid: &Grid, columns: &[Column]) -> bool {
         && !timed
         && !odd_p
 }
+
+#[cfg(test)]
+mod tests;
