@@ -1,5 +1,7 @@
 //! The command line: arguments to settings, files to the audit, reports to the output.
 
+mod explain;
+
 use std::fs::{self, File};
 use std::io::{self, BufWriter, IsTerminal, Read, Write};
 use std::panic;
@@ -11,7 +13,8 @@ use std::thread;
 use clap::{Args, Parser, Subcommand, ValueEnum};
 use tallyproof::audit::{self, is_manuscript};
 use tallyproof::query::Level;
-use tallyproof::report::{self, Audited, Entry, Json, Line, Report, Terminal};
+use tallyproof::report::{Audited, Entry, Json, Line, Report, Terminal};
+use tallyproof::rule::catalogue;
 
 #[derive(Parser)]
 #[command(version, about, max_term_width = 100)]
@@ -27,6 +30,11 @@ enum Command {
     /// Exit status: 0 when no query is at the asked level or above, 1 when one is, 2 when a manuscript could not
     /// be read.
     Audit(Audit),
+    /// List the rules, or explain one with its sources and cases
+    Rules {
+        /// A rule, as a query or the list names it
+        name: Option<String>,
+    },
 }
 
 #[derive(Args)]
@@ -66,8 +74,11 @@ enum AskLevel {
 }
 
 fn main() -> ExitCode {
-    let Command::Audit(arguments) = Arguments::parse().command;
-    match run(&arguments) {
+    let done = match Arguments::parse().command {
+        Command::Audit(arguments) => run(&arguments),
+        Command::Rules { name } => rules(name.as_deref()),
+    };
+    match done {
         Ok(status) => ExitCode::from(status),
         // Whoever read the output has seen enough.
         Err(Stop::Output(e)) if e.kind() == io::ErrorKind::BrokenPipe => ExitCode::SUCCESS,
@@ -134,6 +145,24 @@ fn run(arguments: &Audit) -> Result<u8, Stop> {
     Ok(status(&lines, arguments.ask_level))
 }
 
+/// The catalogue, or one rule of it.
+fn rules(name: Option<&str>) -> Result<u8, Stop> {
+    let mut out = BufWriter::new(anstream::stdout().lock());
+    let width = terminal_width(true);
+    match name {
+        None => explain::list(catalogue().rules(), &mut out, width)?,
+        Some(name) => match catalogue().find(name) {
+            Some(rule) => explain::rule(rule, &mut out, width)?,
+            None => {
+                complain(name, "there is no such rule; `tallyproof rules` lists them all");
+                return Err(Stop::Said);
+            }
+        },
+    }
+    out.flush()?;
+    Ok(0)
+}
+
 fn status(lines: &[Line], ask: AskLevel) -> u8 {
     let from = match ask {
         AskLevel::Note => Level::Note,
@@ -149,7 +178,9 @@ fn status(lines: &[Line], ask: AskLevel) -> u8 {
 
 fn form(arguments: &Audit, one: bool) -> Box<dyn Report> {
     match arguments.form {
-        Form::Terminal => Box::new(Terminal { width: width(arguments), workings: arguments.text.is_some() }),
+        Form::Terminal => {
+            Box::new(Terminal { width: terminal_width(arguments.out.is_none()), workings: arguments.text.is_some() })
+        }
         Form::Json if one => Box::new(Json::Object),
         Form::Json => Box::new(Json::Array),
         Form::JsonLines => Box::new(Json::Lines),
@@ -161,10 +192,10 @@ fn one_object(arguments: &Audit, jobs: &[Job]) -> bool {
     jobs.len() == 1 && !arguments.files.iter().any(|f| f.is_dir())
 }
 
-/// Columns for the terminal report.
-fn width(arguments: &Audit) -> usize {
+/// Columns to fill: those of the terminal, within what reads well, else 80.
+fn terminal_width(standard_output: bool) -> usize {
     let terminal = || terminal_size::terminal_size().map(|(w, _)| usize::from(w.0));
-    let seen = arguments.out.is_none() && io::stdout().is_terminal();
+    let seen = standard_output && io::stdout().is_terminal();
     seen.then(terminal).flatten().unwrap_or(80).clamp(60, 100)
 }
 
@@ -261,7 +292,7 @@ fn read(input: &Input) -> Result<Vec<u8>, String> {
 fn audit_safely(bytes: &[u8], job: &Job) -> Result<Audited, String> {
     let name = if matches!(job.input, Input::Text(_)) { "snippet.md" } else { &job.path };
     match panic::catch_unwind(|| audit::audit(bytes, name)) {
-        Ok(audited) => audited.map_err(|why| report::unreadable(&why).to_owned()),
+        Ok(audited) => audited.map_err(|why| why.to_string()),
         Err(_) => {
             Err("tallyproof stumbled over this manuscript, which is a fault in tallyproof; please report it".into())
         }

@@ -4,7 +4,7 @@
 use std::fs;
 use std::path::{Path, PathBuf};
 
-const FLOORS: [(&str, u8); 15] = [
+const FLOORS: [(&str, u8); 16] = [
     ("text", 0),
     ("printed", 0),
     ("distribution", 1),
@@ -19,6 +19,7 @@ const FLOORS: [(&str, u8); 15] = [
     ("rule", 7),
     ("report", 7),
     ("audit", 8),
+    ("explain", 9),
     ("main", 9),
 ];
 
@@ -185,5 +186,32 @@ fn no_crate_brings_a_network_in() {
     let lock = fs::read_to_string(root().join("Cargo.lock")).expect("Cargo.lock is committed");
     for name in NETWORK {
         assert!(!lock.contains(&format!("name = \"{name}\"\n")), "{name} opens sockets");
+    }
+}
+
+/// What stands between backquotes in a document.
+fn quoted(document: &str) -> Vec<String> {
+    let text = fs::read_to_string(root().join(document)).expect("the document is there");
+    text.split('`').skip(1).step_by(2).map(str::to_owned).collect()
+}
+
+#[test]
+fn documents_name_what_exists() {
+    let code: String = ["src", "tests"]
+        .into_iter()
+        .flat_map(sources)
+        .map(|f| fs::read_to_string(f).expect("it can be read"))
+        .collect();
+    for document in ["README.md", "DEVELOPERS.md"] {
+        for name in quoted(document) {
+            let path = ["src/", "tests/", "fixtures/", "fuzz/", "rules/", ".ci/"].iter().any(|p| name.starts_with(p));
+            if path && !name.contains(['<', '*', ' ']) {
+                assert!(root().join(&name).exists(), "{document} names {name}, which is not there");
+            }
+            let test = name.matches('_').count() >= 2 && name.chars().all(|c| c.is_ascii_lowercase() || c == '_');
+            if test {
+                assert!(code.contains(&format!("fn {name}(")), "{document} names the test {name}, which is not there");
+            }
+        }
     }
 }

@@ -1,5 +1,6 @@
 //! Arms with their sizes, and how many took part in all.
 
+use super::words::{BEFORE, NO_ARM};
 use super::{Arm, Context, Stated};
 use crate::reading::SentenceView;
 use crate::reading::lexicon::{self, Classes};
@@ -7,99 +8,6 @@ use crate::reading::lexicon::{self, Classes};
 /// Words that name a group's members or the group itself, and end its name.
 const GROUP: &[&str] =
     &["group", "groups", "arm", "arms", "controls", "control", "placebo", "condition", "cohort", "treatment"];
-
-/// Words at which a name going backwards from its bracket starts.
-const BEFORE: &[&str] = &[
-    "the",
-    "a",
-    "an",
-    "to",
-    "and",
-    "or",
-    "either",
-    "of",
-    "with",
-    "into",
-    "received",
-    "receive",
-    "receiving",
-    "versus",
-    "vs",
-    "in",
-    "for",
-    "by",
-    "were",
-    "was",
-    "than",
-    "as",
-    "from",
-    "both",
-    "one",
-    "two",
-    "three",
-    "four",
-    "between",
-    "on",
-    "at",
-    "had",
-    "group",
-    "groups",
-    "arms",
-    "that",
-    "who",
-    "which",
-    "included",
-    "including",
-    "completed",
-    "given",
-];
-
-/// Labels that name no arm: `(n = 24)` after them counts something else.
-const NO_ARM: &[&str] = &[
-    "patients",
-    "subjects",
-    "participants",
-    "women",
-    "men",
-    "children",
-    "volunteers",
-    "individuals",
-    "people",
-    "males",
-    "females",
-    "adults",
-    "consent",
-    "withdrawal",
-    "violation",
-    "events",
-    "reasons",
-    "infants",
-    "animals",
-    "died",
-    "excluded",
-    "sites",
-    "studies",
-    "boys",
-    "girls",
-    "nausea",
-    "headache",
-    "rats",
-    "mice",
-    "pigs",
-    "trials",
-    "cases",
-    "efficacy",
-    "lost",
-    "missing",
-    "follow",
-    "analysis",
-    "data",
-    "female",
-    "male",
-    "refused",
-    "criteria",
-    "consented",
-];
 
 /// Appends the arms that a sentence introduces (`the placebo group (n = 24)`), and the number randomised.
 pub(super) fn arms(view: &SentenceView, context: &mut Context) {

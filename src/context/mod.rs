@@ -4,6 +4,9 @@
 mod arm;
 mod statement;
 pub mod test_name;
+// Word lists are easier to read in full lines.
+#[rustfmt::skip]
+mod words;
 
 use crate::manuscript::{BlockKind, Manuscript, SectionKind};
 use crate::printed::Printed;
@@ -130,5 +133,72 @@ fn planned(readings: &Readings, context: &mut Context) {
             }
             PlanningKind::SampleSize | PlanningKind::Legend => {}
         }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::manuscript::{Block, Section, Source};
+    use crate::text::{LineIndex, PieceTable};
+
+    /// A manuscript of headed paragraphs.
+    pub(super) fn manuscript(parts: &[(&str, &str)]) -> Manuscript {
+        let (mut sections, mut blocks) = (Vec::new(), Vec::new());
+        for (number, (title, text)) in parts.iter().enumerate() {
+            let kind = SectionKind::of_title(title).unwrap_or(SectionKind::Unknown);
+            let level = u8::from(!title.is_empty());
+            let in_abstract = kind == SectionKind::Abstract;
+            sections.push(Section { title: title.to_string(), level, parent: None, kind, in_abstract });
+            blocks.push(Block {
+                kind: BlockKind::Paragraph,
+                section: number as u32,
+                text: text.to_string(),
+                pieces: PieceTable::default(),
+                marks: Vec::new(),
+            });
+        }
+        let decoded = crate::text::decode(b"");
+        Manuscript::new(sections, blocks, Source { format: "text", decoded, lines: LineIndex::new("") })
+    }
+
+    fn context(parts: &[(&str, &str)]) -> Context {
+        let manuscript = manuscript(parts);
+        let scan = crate::reading::scan(&manuscript);
+        let readings = crate::reading::read(&manuscript, &scan);
+        gather(&manuscript, &scan, &readings)
+    }
+
+    #[test]
+    fn gathers_methods() {
+        let c = context(&[
+            (
+                "Methods",
+                "Sixty participants were randomised to syrup or water. Means were compared with the paired t test and \
+                 analysis of covariance. Tests were two-sided and P < 0.01 was considered significant. Values are \
+                 means ± SEM. Intervals are 95% confidence intervals. Pairs were compared with a Bonferroni correction.",
+            ),
+            ("Results", "Hives in the syrup group (n = 31) were heavier than in the water group (n = 29)."),
+        ]);
+        assert!(c.has_methods && c.has_results);
+        assert_eq!(c.alpha.iter().map(|a| a.value.value()).collect::<Vec<_>>(), [0.01]);
+        assert_eq!(c.sides.map(|s| s.value), Some(Sides::Two));
+        assert_eq!(c.spread.map(|s| s.value), Some(crate::reading::SpreadKind::Se));
+        assert_eq!(c.level.map(|l| l.value.value()), Some(95.0));
+        assert_eq!(c.randomised.map(|r| r.value), Some(60));
+        let arms: Vec<_> = c.arms.iter().map(|a| (a.label.as_str(), a.n)).collect();
+        assert_eq!(arms, [("syrup", 31), ("water", 29)]);
+        let tests: Vec<_> = c.tests.iter().map(|t| t.value).collect();
+        assert_eq!(tests, [Test::PairedT, Test::Ancova, Test::PostHoc]);
+        assert!(c.paired.is_some() && c.adjusted.is_some() && c.multiplicity.is_some());
+        assert!(c.crossover.is_none() && c.clustered.is_none() && c.non_inferiority.is_none());
+    }
+
+    #[test]
+    fn stays_silent_where_nothing_is_stated() {
+        let c =
+            context(&[("Results", "Stings were reported by some women (n = 4). Crossing over the road took time.")]);
+        assert!(!c.has_methods && c.alpha.is_empty() && c.arms.is_empty() && c.randomised.is_none());
+        assert!(c.spread.is_none() && c.level.is_none() && c.crossover.is_none());
     }
 }

@@ -376,7 +376,7 @@ const NAMES: &[Name] = &[
 /// The tests that a sentence names, with the tokens (first and last, included) of each name.
 pub fn tests_in(view: &SentenceView) -> Vec<(Test, usize, usize)> {
     let mut found = Vec::new();
-    // Every name holds one of these words, but for χ² and a `t` by itself.
+    // Every name holds one of these words.
     if !view.tokens.iter().any(|t| t.is(Classes::TEST)) {
         return found;
     }
@@ -415,7 +415,6 @@ fn lower<'b>(word: &str, buffer: &'b mut [u8; LONGEST]) -> Option<&'b str> {
     }
     let to = &mut buffer[..word.len()];
     to.copy_from_slice(word.as_bytes());
-    // A typographic apostrophe is three bytes; it is levelled by the caller of `same`.
     to.make_ascii_lowercase();
     std::str::from_utf8(&buffer[..word.len()]).ok()
 }
@@ -469,7 +468,9 @@ fn skip(view: &SentenceView, mut at: usize, first: bool) -> usize {
 }
 
 fn same(printed: &str, word: &str) -> bool {
-    printed.eq_ignore_ascii_case(word) || !printed.is_ascii() && printed.replace(['’', '‘'], "'").to_lowercase() == word
+    printed.eq_ignore_ascii_case(word)
+        || printed == "²" && word == "2"
+        || !printed.is_ascii() && printed.replace(['’', '‘'], "'").to_lowercase() == word
 }
 
 /// What the words around a name make of it.
@@ -490,5 +491,54 @@ fn qualified(view: &SentenceView, first: usize, last: usize, test: Test) -> Test
         Test::LinearRegression if before(&["logistic"]) => Test::LogisticRegression,
         Test::LogisticRegression if before(&["mixed", "multilevel"]) => Test::MixedModel,
         _ => test,
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::context::tests::manuscript;
+    use crate::reading::scan;
+
+    fn names(text: &str) -> Vec<Test> {
+        let manuscript = manuscript(&[("", text)]);
+        let scan = scan(&manuscript);
+        let blocks = 0..manuscript.blocks.len();
+        let ids: Vec<u32> = blocks.flat_map(|b| scan.of_block(b)).collect();
+        ids.into_iter().flat_map(|id| tests_in(&scan.view(&manuscript, id))).map(|x| x.0).collect()
+    }
+
+    #[test]
+    fn printed_names() {
+        for (text, test) in [
+            ("Hives were compared with Student's t-test.", Test::T),
+            ("Hives were compared with an unpaired t test.", Test::T),
+            ("Hives were compared with the paired t-test.", Test::PairedT),
+            ("Hives were compared with a paired Student’s t test.", Test::PairedT),
+            ("Hives were compared with Welch's t test.", Test::WelchT),
+            ("Hives were compared by the Mann–Whitney U test.", Test::MannWhitney),
+            ("Hives were compared by the Wilcoxon rank-sum test.", Test::MannWhitney),
+            ("Hives were compared by the Wilcoxon signed-rank test.", Test::WilcoxonSignedRank),
+            ("Losses were compared with the chi-squared test.", Test::ChiSquared),
+            ("Losses were compared with the χ2 test.", Test::ChiSquared),
+            ("Losses were compared with the χ² test.", Test::ChiSquared),
+            ("Losses were compared with Fisher's exact test.", Test::FisherExact),
+            ("Weights were compared by one-way ANOVA.", Test::Anova),
+            ("Weights were compared by repeated-measures ANOVA.", Test::RepeatedMeasuresAnova),
+            ("Weights were compared by analysis of covariance.", Test::Ancova),
+            ("Weights were compared in a linear mixed model.", Test::MixedModel),
+            ("Weights were compared by generalized estimating equations.", Test::Gee),
+            ("Survival was compared with the log-rank test.", Test::LogRank),
+            ("Survival was modelled with Cox proportional hazards regression.", Test::Cox),
+            ("Losses were modelled by logistic regression.", Test::LogisticRegression),
+            ("Weights were compared by the Kruskal-Wallis test.", Test::KruskalWallis),
+            ("Pairs were compared with McNemar's test.", Test::McNemar),
+            ("Pairs were compared with Tukey's post hoc test.", Test::PostHoc),
+            ("Normality was examined with the Shapiro–Wilk test.", Test::AssumptionOrFit),
+            ("Variances were compared with Levene's test.", Test::AssumptionOrFit),
+        ] {
+            assert_eq!(names(text), [test], "{text}");
+        }
+        assert!(names("The Fisher family tested their hives; the model hive won.").is_empty());
     }
 }

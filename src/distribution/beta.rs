@@ -1,6 +1,8 @@
 //! The regularised incomplete beta function, both tails, and its inverse.
 
-use super::kernel::{bracketed_root, deviance, difference_of_products, finite, open_unit, stirling, unit_pair};
+use super::kernel::{
+    bracketed_root, deviance, difference_of_products, finite, open_unit, stirling,
+};
 use super::{DistributionError, Tails, normal_quantile};
 
 /// Bound on the steps of the continued fraction. It needs about the square root
@@ -42,10 +44,22 @@ pub fn beta(x: f64, y: f64, a: f64, b: f64) -> Result<Tails, DistributionError> 
 ///
 /// `lambda` is `a·y − b·x`, positive below the mean. Callers that know it better
 /// than the products give it pass their own.
-pub(super) fn evaluate(x: f64, y: f64, a: f64, b: f64, lambda: f64) -> Result<Evaluation, DistributionError> {
+pub(super) fn evaluate(
+    x: f64,
+    y: f64,
+    a: f64,
+    b: f64,
+    lambda: f64,
+) -> Result<Evaluation, DistributionError> {
     if x <= 0.0 || y <= 0.0 {
         let lower = if x <= 0.0 { 0.0 } else { 1.0 };
-        return Ok(Evaluation { tails: Tails { lower, upper: 1.0 - lower }, slope: 0.0 });
+        return Ok(Evaluation {
+            tails: Tails {
+                lower,
+                upper: 1.0 - lower,
+            },
+            slope: 0.0,
+        });
     }
     let slope = prefactor(x, y, a, b, lambda);
     let (direct, swapped) = if lambda >= 0.0 {
@@ -53,9 +67,22 @@ pub(super) fn evaluate(x: f64, y: f64, a: f64, b: f64, lambda: f64) -> Result<Ev
     } else {
         (slope * fraction(y, x, b, a, -lambda)?, true)
     };
+    if direct.is_nan() {
+        return Err(DistributionError::NotConverged);
+    }
     let direct = direct.clamp(0.0, 1.0);
     let other = 1.0 - direct;
-    let tails = if swapped { Tails { lower: other, upper: direct } } else { Tails { lower: direct, upper: other } };
+    let tails = if swapped {
+        Tails {
+            lower: other,
+            upper: direct,
+        }
+    } else {
+        Tails {
+            lower: direct,
+            upper: other,
+        }
+    };
     Ok(Evaluation { tails, slope })
 }
 
@@ -99,31 +126,119 @@ fn fraction(x: f64, y: f64, a: f64, b: f64, lambda: f64) -> Result<f64, Distribu
     Err(DistributionError::NotConverged)
 }
 
-/// The log odds `ln(x/y)` at which the tails of the beta distribution are those
-/// given. Only the smaller of the two is used, so that nothing is lost in either.
-pub(super) fn log_odds(target: Tails, a: f64, b: f64) -> Result<f64, DistributionError> {
+/// Odds beyond which they can no longer be held as a pair of numbers.
+const EXTREME_ODDS: f64 = 1e290;
+
+/// Tails at the odds `x/y = (a/b)·ratio`, where `excess` is `ratio − 1` and `log`
+/// is `ln ratio`. Near the mean `excess` is exact where `x` and `y` are not, and in
+/// the far tails the logarithm still is where the odds overflow.
+pub(super) fn evaluate_ratio(
+    ratio: f64,
+    excess: f64,
+    log: f64,
+    a: f64,
+    b: f64,
+) -> Result<Evaluation, DistributionError> {
+    let odds = a / b * ratio;
+    if odds.is_nan() {
+        return Err(DistributionError::NotConverged);
+    }
+    if odds > EXTREME_ODDS {
+        let upper = leading_term(-log, b, a)?;
+        return Ok(Evaluation {
+            tails: Tails {
+                lower: 1.0 - upper,
+                upper,
+            },
+            slope: b * upper,
+        });
+    }
+    if odds < 1.0 / EXTREME_ODDS {
+        let lower = leading_term(log, a, b)?;
+        return Ok(Evaluation {
+            tails: Tails {
+                lower,
+                upper: 1.0 - lower,
+            },
+            slope: a * lower,
+        });
+    }
+    let (x, y) = if odds > 1.0 {
+        let inverse = 1.0 / odds;
+        (1.0 / (1.0 + inverse), inverse / (1.0 + inverse))
+    } else {
+        (odds / (1.0 + odds), 1.0 / (1.0 + odds))
+    };
+    // a·y − b·x = −a·y·(ratio − 1), or with x: the factor below 1 is the better.
+    let lambda = if odds > 1.0 {
+        -b * x * (excess / ratio)
+    } else {
+        -a * y * excess
+    };
+    evaluate(x, y, a, b, lambda)
+}
+
+/// I_x(a, b) at the odds `(a/b)·e^log`, for `x` so small that the series is its
+/// first term, `x^a / (a B(a, b))`; the next is smaller by the factor `x` itself.
+fn leading_term(log: f64, a: f64, b: f64) -> Result<f64, DistributionError> {
+    let n = a + b;
+    // x is (a/b)·e^log up to a factor 1 + x. With Stirling's form of B(a, b):
+    // x^a/B = e^{a log} (n/b)^n √(ab/(2πn)) e^{δ(n) − δ(a) − δ(b)}.
+    let exponent = a * log + n * (a / b).ln_1p() + stirling(n) - stirling(a) - stirling(b) - a.ln()
+        + 0.5 * (a / n * b / std::f64::consts::TAU).ln();
+    let value = exponent.exp();
+    if value.is_nan() {
+        Err(DistributionError::NotConverged)
+    } else {
+        Ok(value.min(1.0))
+    }
+}
+
+/// `ln((x/y)/(a/b))` at which the tails of the beta distribution are those given:
+/// the log odds less those of the mean, which is the logarithm of F. Only the
+/// smaller tail is used, so that nothing is lost in either.
+pub(super) fn log_ratio(target: Tails, a: f64, b: f64) -> Result<f64, DistributionError> {
     let use_lower = target.lower <= target.upper;
-    let wanted = if use_lower { target.lower } else { target.upper };
+    let wanted = if use_lower {
+        target.lower
+    } else {
+        target.upper
+    };
     if wanted <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
     let z = normal_quantile(wanted)?;
     // The log odds of a beta variable are nearly normal about ln(a/b).
     let spread = z * (1.0 / a + 1.0 / b).sqrt();
-    let start = (a / b).ln() + if use_lower { -spread } else { spread };
+    let start = if use_lower { -spread } else { spread };
     let log_wanted = wanted.ln();
-    bracketed_root(start.clamp(-740.0, 740.0), use_lower, |w| {
-        let (x, y) = unit_pair(w);
-        let at = evaluate(x, y, a, b, difference_of_products(a, y, b, x))?;
-        let (tail, slope) = if use_lower { (at.tails.lower, at.slope) } else { (at.tails.upper, -at.slope) };
+    bracketed_root(start.clamp(-700.0, 700.0), use_lower, |w| {
+        let at = evaluate_ratio(w.exp(), w.exp_m1(), w, a, b)?;
+        let (tail, slope) = if use_lower {
+            (at.tails.lower, at.slope)
+        } else {
+            (at.tails.upper, -at.slope)
+        };
         Ok((tail.ln() - log_wanted, slope / tail))
     })
+}
+
+/// The pair `(x, 1 − x)` whose odds are `(a/b)·e^log`.
+pub(super) fn pair_at(log: f64, a: f64, b: f64) -> (f64, f64) {
+    if log > 0.0 {
+        let inverse = b / a * (-log).exp();
+        (1.0 / (1.0 + inverse), inverse / (1.0 + inverse))
+    } else {
+        let odds = a / b * log.exp();
+        (odds / (1.0 + odds), 1.0 / (1.0 + odds))
+    }
 }
 
 /// The `x` below which the beta distribution with parameters `a, b > 0` has
 /// probability `lower`, 0 < `lower` < 1.
 ///
-/// Errors and accuracy as for [`beta`]; the root is found on the log-odds scale
+/// Errors and accuracy as for [`beta`]; an `x` below the smallest `f64` comes out as
+/// 0. The root is found on the log-odds scale
 /// in the smaller tail.
 pub fn beta_quantile(lower: f64, a: f64, b: f64) -> Result<f64, DistributionError> {
     open_unit(lower)?;
@@ -131,6 +246,9 @@ pub fn beta_quantile(lower: f64, a: f64, b: f64) -> Result<f64, DistributionErro
     if a <= 0.0 || b <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
-    let target = Tails { lower, upper: 1.0 - lower };
-    Ok(unit_pair(log_odds(target, a, b)?).0)
+    let target = Tails {
+        lower,
+        upper: 1.0 - lower,
+    };
+    Ok(pair_at(log_ratio(target, a, b)?, a, b).0)
 }

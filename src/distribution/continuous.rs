@@ -2,7 +2,7 @@
 
 use std::f64::consts::FRAC_1_SQRT_2;
 
-use super::beta::{evaluate, log_odds};
+use super::beta::{evaluate_ratio, log_ratio};
 use super::kernel::{finite, open_unit};
 use super::{DistributionError, Tails};
 
@@ -12,14 +12,17 @@ use super::{DistributionError, Tails};
 /// (FreeBSD msun); the argument's rounding is corrected to first order.
 #[must_use]
 pub fn normal(z: f64) -> Tails {
-    Tails { lower: normal_upper(-z), upper: normal_upper(z) }
+    Tails {
+        lower: normal_upper(-z),
+        upper: normal_upper(z),
+    }
 }
 
 /// The upper tail of the standard normal distribution.
 pub(super) fn normal_upper(z: f64) -> f64 {
     let h = z * FRAC_1_SQRT_2;
     let tail = 0.5 * libm::erfc(h);
-    if z > 1.0 && z < 40.0 {
+    if z > 1.0 && z < 37.5 {
         // h is z/√2 rounded; in the far tail that rounding is worth z² ulps. The
         // low part of 1/√2 is 1/√2 − FRAC_1_SQRT_2.
         const LOW: f64 = -4.833_646_656_726_457e-17;
@@ -51,7 +54,17 @@ pub fn student(t: f64, df: f64) -> Result<Tails, DistributionError> {
     let two_sided = student_two_sided(t, df)?;
     let small = 0.5 * two_sided;
     let large = 1.0 - small;
-    Ok(if t >= 0.0 { Tails { lower: large, upper: small } } else { Tails { lower: small, upper: large } })
+    Ok(if t >= 0.0 {
+        Tails {
+            lower: large,
+            upper: small,
+        }
+    } else {
+        Tails {
+            lower: small,
+            upper: large,
+        }
+    })
 }
 
 /// Two-sided p-value of Student's `t` with `df > 0`: P(|T| ≥ |t|).
@@ -62,7 +75,12 @@ pub fn student_two_sided(t: f64, df: f64) -> Result<f64, DistributionError> {
     if df <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
-    Ok(ratio_tails(t.abs() / df.sqrt(), t.abs() / df.sqrt(), t * t - 1.0, 1.0, df)?.upper)
+    // t² is F with 1 and df degrees of freedom; t² − 1 as a product keeps what
+    // squaring near t = 1 would round away.
+    let t = t.abs();
+    let excess = (t - 1.0) * (t + 1.0);
+    let at = evaluate_ratio(t * t, excess, 2.0 * t.ln(), 0.5, 0.5 * df)?;
+    Ok(at.tails.upper)
 }
 
 /// F distribution with `df1, df2 > 0` (need not be whole): both tails at `x ≥ 0`.
@@ -75,29 +93,7 @@ pub fn f(x: f64, df1: f64, df2: f64) -> Result<Tails, DistributionError> {
     if x < 0.0 || df1 <= 0.0 || df2 <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
-    ratio_tails(x, df1 / df2, x - 1.0, df1, df2)
-}
-
-/// Tails of a ratio of mean squares; the odds of the beta variable are
-/// `one · two`, and `excess` is the ratio less 1.
-fn ratio_tails(one: f64, two: f64, excess: f64, df1: f64, df2: f64) -> Result<Tails, DistributionError> {
-    let odds = one * two;
-    if odds == f64::INFINITY {
-        // Beyond 1e308 the odds cannot be held; what is left of the upper tail
-        // is (odds)^(−df2/2), far below anything a manuscript prints.
-        return Ok(Tails { lower: 1.0, upper: 0.0 });
-    }
-    let (x, y) = if odds > 1.0 {
-        let inverse = 1.0 / odds;
-        (1.0 / (1.0 + inverse), inverse / (1.0 + inverse))
-    } else {
-        (odds / (1.0 + odds), 1.0 / (1.0 + odds))
-    };
-    let (a, b) = (0.5 * df1, 0.5 * df2);
-    // a·y − b·x = a·y·(1 − F): exact where F is near 1, which the products are
-    // not.
-    let lambda = if excess.abs() < 1.0 { -a * y * excess } else { super::kernel::difference_of_products(a, y, b, x) };
-    Ok(evaluate(x, y, a, b, lambda)?.tails)
+    Ok(evaluate_ratio(x, x - 1.0, x.ln(), 0.5 * df1, 0.5 * df2)?.tails)
 }
 
 /// The `t` that Student's t with `df > 0` exceeds with probability `upper`,
@@ -116,9 +112,11 @@ pub fn student_quantile(upper: f64, df: f64) -> Result<f64, DistributionError> {
     }
     // For upper > 1/2 the reflection 1 − upper is exact.
     let small = upper.min(1.0 - upper);
-    let target = Tails { lower: 1.0 - 2.0 * small, upper: 2.0 * small };
-    let w = log_odds(target, 0.5, 0.5 * df)?;
-    let t = (0.5 * w).exp() * df.sqrt();
+    let target = Tails {
+        lower: 1.0 - 2.0 * small,
+        upper: 2.0 * small,
+    };
+    let t = (0.5 * log_ratio(target, 0.5, 0.5 * df)?).exp();
     if !t.is_finite() {
         return Err(DistributionError::OutOfDomain);
     }
@@ -135,8 +133,14 @@ pub fn f_quantile(upper: f64, df1: f64, df2: f64) -> Result<f64, DistributionErr
     if df1 <= 0.0 || df2 <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
-    let target = Tails { lower: 1.0 - upper, upper };
-    let w = log_odds(target, 0.5 * df1, 0.5 * df2)?;
-    let x = w.exp() * (df2 / df1);
-    if x.is_finite() { Ok(x) } else { Err(DistributionError::OutOfDomain) }
+    let target = Tails {
+        lower: 1.0 - upper,
+        upper,
+    };
+    let x = log_ratio(target, 0.5 * df1, 0.5 * df2)?.exp();
+    if x.is_finite() {
+        Ok(x)
+    } else {
+        Err(DistributionError::OutOfDomain)
+    }
 }

@@ -8,7 +8,7 @@ use super::{DistributionError, Tails, normal_quantile};
 const MOST_STEPS: usize = 200_000;
 
 /// What one evaluation of the incomplete gamma function yields.
-pub(super) struct Evaluation {
+struct Evaluation {
     pub tails: Tails,
     /// `x^a e^−x / Γ(a)`: the derivative of the lower tail by `ln x`.
     pub slope: f64,
@@ -28,23 +28,40 @@ pub fn gamma(x: f64, a: f64) -> Result<Tails, DistributionError> {
     if x < 0.0 || a <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
-    Ok(evaluate(x, a)?.tails)
+    Ok(evaluate(x, (x - a) / a, a)?.tails)
 }
 
-/// The evaluation behind [`gamma`], for arguments already checked.
-pub(super) fn evaluate(x: f64, a: f64) -> Result<Evaluation, DistributionError> {
+/// The evaluation behind [`gamma`], for arguments already checked; `excess` is
+/// `x/a − 1`, which the quantile knows better than the quotient gives it.
+fn evaluate(x: f64, excess: f64, a: f64) -> Result<Evaluation, DistributionError> {
     if x <= 0.0 {
-        return Ok(Evaluation { tails: Tails { lower: 0.0, upper: 1.0 }, slope: 0.0 });
+        return Ok(Evaluation {
+            tails: Tails {
+                lower: 0.0,
+                upper: 1.0,
+            },
+            slope: 0.0,
+        });
     }
-    let slope = (a / std::f64::consts::TAU).sqrt() * (-stirling(a) - a * deviance((x - a) / a, x / a)).exp();
+    let slope =
+        (a / std::f64::consts::TAU).sqrt() * (-stirling(a) - a * deviance(excess, x / a)).exp();
+    if slope.is_nan() {
+        return Err(DistributionError::NotConverged);
+    }
     // Below the mean the lower tail is summed. The floor of one half keeps the
     // continued fraction away from small x, where it crawls.
     let tails = if x < a.max(0.5) {
         let lower = (slope * series(x, a)?).clamp(0.0, 1.0);
-        Tails { lower, upper: 1.0 - lower }
+        Tails {
+            lower,
+            upper: 1.0 - lower,
+        }
     } else {
         let upper = (slope * fraction(x, a)?).clamp(0.0, 1.0);
-        Tails { lower: 1.0 - upper, upper }
+        Tails {
+            lower: 1.0 - upper,
+            upper,
+        }
     };
     Ok(Evaluation { tails, slope })
 }
@@ -91,11 +108,15 @@ fn fraction(x: f64, a: f64) -> Result<f64, DistributionError> {
     Err(DistributionError::NotConverged)
 }
 
-/// `ln x` at which the tails of the gamma distribution with shape `a` are those
+/// `ln(x/a)` at which the tails of the gamma distribution with shape `a` are those
 /// given; only the smaller one is used.
-pub(super) fn log_quantile(target: Tails, a: f64) -> Result<f64, DistributionError> {
+fn log_ratio(target: Tails, a: f64) -> Result<f64, DistributionError> {
     let use_lower = target.lower <= target.upper;
-    let wanted = if use_lower { target.lower } else { target.upper };
+    let wanted = if use_lower {
+        target.lower
+    } else {
+        target.upper
+    };
     if wanted <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
@@ -105,15 +126,19 @@ pub(super) fn log_quantile(target: Tails, a: f64) -> Result<f64, DistributionErr
     let ninth = 1.0 / (9.0 * a);
     let root = 1.0 - ninth + z * ninth.sqrt();
     let start = if root > 0.1 {
-        a.ln() + 3.0 * root.ln()
+        3.0 * root.ln()
     } else {
         // In the far lower tail P ≈ x^a / Γ(a + 1).
-        (wanted.ln() + libm::lgamma(a + 1.0)) / a
+        (wanted.ln() + libm::lgamma(a + 1.0)) / a - a.ln()
     };
     let log_wanted = wanted.ln();
-    bracketed_root(start.clamp(-740.0, 700.0), use_lower, |w| {
-        let at = evaluate(w.exp(), a)?;
-        let (tail, slope) = if use_lower { (at.tails.lower, at.slope) } else { (at.tails.upper, -at.slope) };
+    bracketed_root(start.clamp(-700.0, 700.0), use_lower, |w| {
+        let at = evaluate(a * w.exp(), w.exp_m1(), a)?;
+        let (tail, slope) = if use_lower {
+            (at.tails.lower, at.slope)
+        } else {
+            (at.tails.upper, -at.slope)
+        };
         Ok((tail.ln() - log_wanted, slope / tail))
     })
 }
@@ -137,6 +162,9 @@ pub fn chi_squared_quantile(upper: f64, df: f64) -> Result<f64, DistributionErro
     if df <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
-    let target = Tails { lower: 1.0 - upper, upper };
-    Ok(2.0 * log_quantile(target, 0.5 * df)?.exp())
+    let target = Tails {
+        lower: 1.0 - upper,
+        upper,
+    };
+    Ok(df * log_ratio(target, 0.5 * df)?.exp())
 }

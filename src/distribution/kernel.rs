@@ -17,13 +17,21 @@ pub(super) const SQRT_2PI: f64 = 2.506_628_274_631_000_7;
 
 /// Refuses what is not a finite number, before anything is computed with it.
 pub(super) fn finite(values: &[f64]) -> Result<(), DistributionError> {
-    if values.iter().all(|value| value.is_finite()) { Ok(()) } else { Err(DistributionError::NotFinite) }
+    if values.iter().all(|value| value.is_finite()) {
+        Ok(())
+    } else {
+        Err(DistributionError::NotFinite)
+    }
 }
 
 /// Accepts a probability strictly between 0 and 1.
 pub(super) fn open_unit(p: f64) -> Result<(), DistributionError> {
     finite(&[p])?;
-    if p > 0.0 && p < 1.0 { Ok(()) } else { Err(DistributionError::OutOfDomain) }
+    if p > 0.0 && p < 1.0 {
+        Ok(())
+    } else {
+        Err(DistributionError::OutOfDomain)
+    }
 }
 
 /// `u − ln(1 + u)` for `ratio = 1 + u`, without cancellation near `u = 0`.
@@ -69,7 +77,8 @@ pub(super) fn stirling(a: f64) -> f64 {
                     - s * (1.0 / 1260.0
                         - s * (1.0 / 1680.0
                             - s * (1.0 / 1188.0
-                                - s * (691.0 / 360_360.0 - s * (1.0 / 156.0 - s * (3617.0 / 122_400.0))))))))
+                                - s * (691.0 / 360_360.0
+                                    - s * (1.0 / 156.0 - s * (3617.0 / 122_400.0))))))))
     } else {
         libm::lgamma(a) - (a - 0.5) * a.ln() + a - LN_SQRT_2PI
     }
@@ -81,18 +90,6 @@ pub(super) fn difference_of_products(a: f64, b: f64, c: f64, d: f64) -> f64 {
     let cd = c * d;
     let error = (-c).mul_add(d, cd);
     a.mul_add(b, -cd) + error
-}
-
-/// `ln(x/y)` as the pair `(x, y)` with `x + y = 1`, each to full relative
-/// accuracy.
-pub(super) fn unit_pair(log_odds: f64) -> (f64, f64) {
-    if log_odds > 0.0 {
-        let e = (-log_odds).exp();
-        (1.0 / (1.0 + e), e / (1.0 + e))
-    } else {
-        let e = log_odds.exp();
-        (e / (1.0 + e), 1.0 / (1.0 + e))
-    }
 }
 
 /// ln Φ(−z), the logarithm of the normal upper tail, also where the tail itself

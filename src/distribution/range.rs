@@ -8,6 +8,10 @@ use super::{DistributionError, Tails};
 /// Largest number of groups taken.
 const MOST_GROUPS: u64 = 1000;
 
+/// Bound on the points on either side of the outer quadrature; 1 degree of
+/// freedom and q = 50 need 2,000.
+const MOST_POINTS: i32 = 3000;
+
 /// Studentized range distribution (Tukey's honestly significant difference) of
 /// `k ≥ 2` group means with `df > 0` degrees of freedom for error: tails at
 /// `q ≥ 0`.
@@ -28,13 +32,13 @@ pub fn studentized_range(q: f64, k: u64, df: f64) -> Result<Tails, DistributionE
         return Err(DistributionError::TooLarge);
     }
     let inner = NormalRange::new(k);
-    let step = (0.6 / (2.0 * df + 0.5 * q * q).sqrt()).min(0.12);
+    let step = (0.6 / (2.0 * df + 0.5 * q * q).sqrt()).min(0.1);
     let value = |v: f64| inner.upper(q * v.exp()) * ln_density_of_log_scale(v, df).exp();
     let mut sum = value(0.0);
     for direction in [1.0, -1.0] {
         let mut settled = false;
         let mut largest = 0.0f64;
-        for i in 1..100_000 {
+        for i in 1..MOST_POINTS {
             let term = value(direction * step * f64::from(i));
             sum += term;
             largest = largest.max(term);
@@ -54,7 +58,10 @@ pub fn studentized_range(q: f64, k: u64, df: f64) -> Result<Tails, DistributionE
         }
     }
     let upper = (sum * step).clamp(0.0, 1.0);
-    Ok(Tails { lower: 1.0 - upper, upper })
+    Ok(Tails {
+        lower: 1.0 - upper,
+        upper,
+    })
 }
 
 /// Upper tail of the range of `k` standard normal variables, with everything

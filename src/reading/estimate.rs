@@ -16,12 +16,21 @@ struct Name {
     adjusted: bool,
 }
 
+/// What a paragraph has named so far, for figures that follow without a name.
+#[derive(Clone, Copy, Debug, Default)]
+pub struct Named {
+    /// The level of its intervals.
+    pub level: Option<super::Figure>,
+    /// The last ratio or difference that it named.
+    measure: Option<(Measure, Scale)>,
+}
+
 /// Appends the estimates of a sentence, and the intervals that only an estimate's name reveals.
 ///
 /// `first_interval` is the first of this sentence's intervals in `intervals`.
 pub fn read(
     view: &SentenceView,
-    level: Option<super::Figure>,
+    named: &mut Named,
     taken: &mut [bool],
     intervals: &mut Vec<IntervalReading>,
     first_interval: usize,
@@ -30,19 +39,32 @@ pub fn read(
     let names = names(view);
     let start = out.len();
     // Where the paragraph has named its intervals, a verb before the figure is enough.
+    let level = named.level;
     let told = |i: usize| level.is_some() && i > 0 && view.any(i - 1, &["was", "were", "is", "of"]);
     interval::read_unnamed(view, |i| told(i) || names.iter().any(|n| leads_to(view, n, i)), level, taken, intervals);
     intervals[first_interval..].sort_by_key(|x| x.span.start);
-    for interval in &intervals[first_interval..] {
+    for interval in &mut intervals[first_interval..] {
         let Some((value, span)) = interval.estimate else { continue };
         let at = view.token_at(span.start);
         let name = names.iter().rev().find(|n| n.last < at && at - n.last <= 24 && !another_between(&names, n, at));
         let last = view.token_at(span.end).saturating_sub(1);
         let near = name.is_some_and(|n| leads_to(view, n, at));
+        let inside = interval.lower.value() <= value.value() && value.value() <= interval.upper.value();
+        let time = view.is(last + 1, super::lexicon::Classes::UNIT)
+            && at > 0
+            && view.any(at - 1, &["at", "after", "per", "in", "by", "to"]);
+        if (!inside && !near) || time || taken[at] {
+            // Some other figure that happens to stand there.
+            interval.estimate = None;
+            continue;
+        }
         let (measure, scale, adjusted) = match name {
             Some(n) if near || at - n.last <= 16 => (n.measure, n.scale, n.adjusted),
             _ if single(view, at, last) => (Measure::Other, Scale::Single, false),
-            _ => (Measure::Other, Scale::Unknown, false),
+            _ => {
+                let (measure, scale) = named.measure.filter(|_| inside).unwrap_or((Measure::Other, Scale::Unknown));
+                (measure, scale, false)
+            }
         };
         taken[at..=last].fill(true);
         out.push(Estimate {
@@ -75,6 +97,9 @@ pub fn read(
         });
     }
     out[start..].sort_by_key(|e| e.span.start);
+    if let Some(n) = names.iter().rev().find(|n| n.scale == Scale::Ratio) {
+        named.measure = Some((n.measure, n.scale));
+    }
 }
 
 /// A mean, a proportion or a rate of one group: nothing to test its interval against.
@@ -143,6 +168,10 @@ fn value_after(view: &SentenceView, name: &Name) -> Option<usize> {
             TokenKind::Sign('=' | ':') => verb = true,
             TokenKind::Sign('(' | ')' | '[' | ']' | ',' | ';' | '%' | '-' | '~' | '/' | 'Δ') => {}
             TokenKind::Word => {
+                use super::lexicon::Classes;
+                if view.is(k, Classes::MEAN.or(Classes::MEDIAN).or(Classes::N).or(Classes::SD).or(Classes::P)) {
+                    return None;
+                }
                 if view.any(k, &["was", "is", "of", "were", "by", "being", "equal"]) {
                     // The figure must follow its verb at once.
                     let next =
@@ -250,7 +279,12 @@ fn name(view: &SentenceView, i: usize) -> Option<Name> {
             return hit(RiskDifference, Scale::Difference, i, false);
         }
         "NNT" | "NNH" | "NNTB" | "NNTH" => return hit(NumberNeededToTreat, Scale::Reciprocal, i, false),
-        "RRR" | "VE" => return hit(Efficacy, Scale::Efficacy, i, false),
+        "RRR" | "VE" => {
+            // A reduction is printed in percent; without a sign it may be a ratio of ratios.
+            let percent =
+                (i..(i + 12).min(view.len())).any(|k| view.sign(k, '%') && !is_level(view, k.saturating_sub(1)));
+            return hit(Efficacy, if percent { Scale::Efficacy } else { Scale::Unknown }, i, false);
+        }
         "β" | "B" | "b" | "beta" if view.signs(i + 1, &['=', ':']) => {
             return hit(RegressionCoefficient, Scale::Difference, i, false);
         }

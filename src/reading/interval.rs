@@ -153,6 +153,10 @@ fn anchor(view: &SentenceView, i: usize) -> Option<Anchor> {
     {
         level = Some(Figure { printed: p, origin: Origin::Printed(view.span(i, i)) });
     }
+    // confidence interval CI
+    if last > i && view.is(last + 1, Classes::CI) {
+        last += 1;
+    }
     // (CI), [CI]
     if view.signs(last + 1, &['(', '[']) && view.is(last + 2, Classes::CI) && view.signs(last + 3, &[')', ']']) {
         last += 3;

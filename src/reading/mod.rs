@@ -49,6 +49,10 @@ pub enum Inference {
     OtherSentence,
     /// The arm's size as the Methods or the flow of participants give it.
     ArmSize,
+    /// The total that all other counts of the paragraph have.
+    Siblings,
+    /// The sum of the categories that the sentence lists: their percentages fit it.
+    Categories,
     /// The only count that the printed percent and events allow.
     FromPercent,
     /// Degrees of freedom that the group sizes give.
@@ -192,8 +196,32 @@ pub struct Group {
     pub spread: Vec<Printed>,
     /// The figure is a change from baseline, not a level.
     pub change: bool,
+    /// The percentage is said to be about so much ("over 60 %", "nearly half (45 %)").
+    pub approximate: bool,
     /// Count, total and percent are printed in one expression (`12/40 (30%)`, `12 of 40 (30%)`).
     pub one_expression: bool,
+}
+
+impl Group {
+    /// A group of which nothing is known yet but its place.
+    pub fn new(span: Span, sentence: u32) -> Group {
+        Group {
+            span,
+            sentence,
+            label: String::new(),
+            n: None,
+            events: None,
+            total: None,
+            percent: None,
+            mean: None,
+            median: None,
+            spread_kind: None,
+            spread: Vec::new(),
+            change: false,
+            approximate: false,
+            one_expression: false,
+        }
+    }
 }
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -368,10 +396,10 @@ fn read_paragraph(
         group::total::mentions(&view, &mut mentions);
     }
     let mut setting = group::Setting { section, declared };
-    let mut level = None;
+    let mut named = estimate::Named::default();
     let (first_p, first_group) = (readings.p.len(), readings.groups.len());
     for id in sentences {
-        read_sentence(&scan.view(manuscript, id), &mut setting, &mut level, readings);
+        read_sentence(&scan.view(manuscript, id), &mut setting, &mut named, readings);
     }
     let tested = |sentence| readings.p[first_p..].iter().any(|p| p.sentence == sentence);
     group::total::fill(&mut readings.groups[first_group..], &mentions, tested);
@@ -380,7 +408,7 @@ fn read_paragraph(
 fn read_sentence(
     view: &SentenceView,
     setting: &mut group::Setting,
-    level: &mut Option<Figure>,
+    named: &mut estimate::Named,
     readings: &mut Readings,
 ) {
     let mut taken = vec![false; view.len()];
@@ -403,9 +431,9 @@ fn read_sentence(
         });
     }
     let first_interval = readings.intervals.len();
-    *level = interval::read(view, &mut taken, &mut readings.intervals).or(*level);
+    named.level = interval::read(view, &mut taken, &mut readings.intervals).or(named.level);
     statistic::read(view, &mut taken, &mut readings.statistics);
-    estimate::read(view, *level, &mut taken, &mut readings.intervals, first_interval, &mut readings.estimates);
+    estimate::read(view, named, &mut taken, &mut readings.intervals, first_interval, &mut readings.estimates);
     group::read(view, setting, &mut taken, &mut readings.groups);
     claim::read(view, &p, &mut readings.claims);
 }

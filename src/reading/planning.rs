@@ -1,5 +1,10 @@
 //! Planning statements: alpha, power, sides, sample size, thresholds, legends, multiplicity.
 
+// Word lists are easier to read in full lines.
+#[rustfmt::skip]
+mod words;
+
+use self::words::*;
 use super::claim_words::MULTIPLE;
 use super::lexicon::{self, Classes};
 use super::p::PExpression;
@@ -59,66 +64,6 @@ struct Reader<'a, 'b> {
 const MARKS: &[char] =
     &['*', '†', '‡', '§', '¶', '#', '$', '&', '+', '⁎', '∗', '∆', '^', '@', '∧', '◊', '¥', '£', '‖', '※'];
 
-/// Verbs that make a p a limit: "was considered significant".
-const DECLARES: &[&str] = &[
-    "considered",
-    "regarded",
-    "deemed",
-    "defined",
-    "set",
-    "taken",
-    "accepted",
-    "declared",
-    "judged",
-    "assumed",
-    "established",
-    "chosen",
-    "used",
-    "specified",
-    "determined",
-    "by",
-    "fixed",
-    "interpreted",
-    "threshold",
-    "cutoff",
-    "criterion",
-    "adopted",
-    "selected",
-    "viewed",
-    "treated",
-    "classified",
-    "designated",
-    "stipulated",
-    "thresholds",
-    "cut",
-    "level",
-    "levels",
-    "limit",
-    "applied",
-    "rejected",
-    "admitted",
-    "assigned",
-];
-
-/// Verbs that make a p the subject of a definition: "P < 0.05 indicates …".
-const STANDS_FOR: &[&str] = &[
-    "indicated",
-    "indicates",
-    "indicate",
-    "denotes",
-    "denoted",
-    "denote",
-    "represents",
-    "represented",
-    "represent",
-    "indicating",
-    "as",
-    "means",
-    "signifies",
-    "signified",
-    "reflects",
-];
-
 impl Reader<'_, '_> {
     fn add(&mut self, what: PlanningKind, first: usize, last: usize, value: Option<Printed>, sides: Option<Sides>) {
         let span = self.view.span(first, last);
@@ -134,28 +79,7 @@ impl Reader<'_, '_> {
             }
             let mut i = x.first;
             // From the p back to its mark: signs, "indicates", "significant at".
-            while i > 0
-                && (v.signs(i - 1, &[':', '=', ',', ';', '-', '('])
-                    || v.any(
-                        i - 1,
-                        &[
-                            "indicates",
-                            "indicate",
-                            "denotes",
-                            "represents",
-                            "significant",
-                            "significantly",
-                            "at",
-                            "statistically",
-                            "means",
-                            "difference",
-                            "for",
-                            "the",
-                            "with",
-                            "signifies",
-                        ],
-                    ))
-            {
+            while i > 0 && (v.signs(i - 1, &[':', '=', ',', ';', '-', '(']) || v.any(i - 1, LEGEND_WORDS)) {
                 i -= 1;
             }
             if i == 0 {
@@ -181,7 +105,9 @@ impl Reader<'_, '_> {
         }
         // "*Significantly different from controls (p < 0.05)": the mark opens the sentence. The mark may be lost:
         // "Statistically significant (p < 0.05)." has no subject that could be a result.
-        let bare = v.len() < 12 && (v.is(0, Classes::SIGNIFICANCE) || v.any(0, &["statistical"]));
+        let bare = v.len() < 12
+            && (0..2).any(|i| v.any(i, &["significant", "significantly"]))
+            && !(0..v.len()).any(|i| v.any(i, DECLARES) || v.any(i, &["was", "were"]));
         let opening = bare || v.signs(0, MARKS) || v.style(0) == Style::Superscript && is_mark_letter(v, 0);
         if opening
             && self.p.len() == 1
@@ -281,59 +207,7 @@ impl Reader<'_, '_> {
                 significance(i)
                     || v.is(i, Classes::P.or(Classes::SIDED).or(Classes::NUMBER_WORD))
                     || !v.tokens[i].is_word() && !v.signs(i, &[';'])
-                    || v.any(
-                        i,
-                        &[
-                            "at",
-                            "as",
-                            "to",
-                            "be",
-                            "if",
-                            "when",
-                            "the",
-                            "a",
-                            "an",
-                            "of",
-                            "for",
-                            "with",
-                            "was",
-                            "were",
-                            "is",
-                            "by",
-                            "p",
-                            "value",
-                            "values",
-                            "level",
-                            "difference",
-                            "differences",
-                            "statistically",
-                            "than",
-                            "probability",
-                            "less",
-                            "on",
-                            "all",
-                            "tests",
-                            "in",
-                            "statistical",
-                            "level",
-                            "where",
-                            "analyses",
-                            "and",
-                            "below",
-                            "it",
-                            "corresponding",
-                            "under",
-                            "their",
-                            "its",
-                            "two",
-                            "alpha",
-                            "any",
-                            "resulting",
-                            "associated",
-                            "highly",
-                            "only",
-                        ],
-                    )
+                    || v.any(i, THRESHOLD_LINKS)
             });
             let bracket_result = in_bracket
                 && v.any(w, &["used", "applied", "level", "levels", "chosen", "assigned", "selected"])
@@ -387,6 +261,9 @@ impl Reader<'_, '_> {
                 first -= 1;
             }
         }
+        while first < x.first && v.is(first, Classes::AND) {
+            first += 1;
+        }
         let mut last = x.last;
         let declared_before = (first..x.first).any(|i| v.any(i, DECLARES) || v.is(i, Classes::SIGNIFICANCE));
         if declared_before {
@@ -414,23 +291,7 @@ impl Reader<'_, '_> {
             let ci =
                 (i + 1..(i + 12).min(v.len())).find(|&j| v.is(j, Classes::CI) || v.any(j, &["intervals", "interval"]));
             let Some(ci) = ci else { continue };
-            let verb = (ci + 1..(ci + 20).min(v.len())).find(|&j| {
-                v.any(
-                    j,
-                    &[
-                        "contain",
-                        "include",
-                        "exclude",
-                        "excluded",
-                        "excludes",
-                        "cross",
-                        "contained",
-                        "overlap",
-                        "crossed",
-                        "overlapped",
-                    ],
-                )
-            });
+            let verb = (ci + 1..(ci + 20).min(v.len())).find(|&j| v.any(j, EXCLUDES_NULL));
             let Some(verb) = verb else { continue };
             let last = (verb + 1..(verb + 6).min(v.len()))
                 .find(|&j| v.number(j).is_some() || v.any(j, &["zero", "one", "unity"]))
@@ -499,61 +360,7 @@ impl Reader<'_, '_> {
             }
             let skip = v.signs(j, &['=', '(', ':', ')', '-', '<', '≤', ',', '[', ']', '~'])
                 || v.is(j, Classes::P.or(Classes::SIDED).or(Classes::NUMBER_WORD))
-                || v.any(
-                    j,
-                    &[
-                        "level",
-                        "levels",
-                        "error",
-                        "rate",
-                        "was",
-                        "were",
-                        "is",
-                        "of",
-                        "at",
-                        "set",
-                        "the",
-                        "a",
-                        "an",
-                        "to",
-                        "as",
-                        "be",
-                        "and",
-                        "value",
-                        "probability",
-                        "significance",
-                        "fixed",
-                        "equal",
-                        "chosen",
-                        "2",
-                        "1",
-                        "α",
-                        "β",
-                        "alpha",
-                        "used",
-                        "being",
-                        "risk",
-                        "taken",
-                        "for",
-                        "set",
-                        "assumed",
-                        "established",
-                        "accepted",
-                        "i",
-                        "type",
-                        "defined",
-                        "than",
-                        "less",
-                        "statistical",
-                        "overall",
-                        "specified",
-                        "determined",
-                        "by",
-                        "adjusted",
-                        "assuming",
-                        "with",
-                    ],
-                )
+                || v.any(j, ALPHA_LINKS)
                 || v.number(j).is_some_and(|x| x.count().is_some_and(|n| n <= 2));
             if !skip {
                 return None;
@@ -687,34 +494,7 @@ impl Reader<'_, '_> {
                             break;
                         }
                     } else if !(v.signs(j, &['=', '(', ')', ':', '-', ',', '≥', '>', '[', ']'])
-                        || v.any(
-                            j,
-                            &[
-                                "of",
-                                "at",
-                                "was",
-                                "is",
-                                "set",
-                                "to",
-                                "β",
-                                "beta",
-                                "least",
-                                "level",
-                                "the",
-                                "be",
-                                "a",
-                                "approximately",
-                                "about",
-                                "and",
-                                "equal",
-                                "greater",
-                                "than",
-                                "over",
-                                "fixed",
-                                "analysis",
-                                "desired",
-                            ],
-                        ))
+                        || v.any(j, POWER_LINKS))
                     {
                         break;
                     }
@@ -745,26 +525,7 @@ impl Reader<'_, '_> {
     /// "a sample size of 320", "17 volunteers per group were needed to detect …".
     fn sample_size(&mut self) {
         let v = self.view;
-        let planning_words = || {
-            (0..v.len()).any(|i| {
-                v.any(
-                    i,
-                    &[
-                        "power",
-                        "detect",
-                        "calculated",
-                        "calculation",
-                        "estimated",
-                        "alpha",
-                        "α",
-                        "assuming",
-                        "sample",
-                        "powered",
-                        "significance",
-                    ],
-                )
-            })
-        };
+        let planning_words = || (0..v.len()).any(|i| v.any(i, CALCULATES));
         for i in 0..v.len() {
             let size = v.any(i, &["sample"])
                 && (v.any(i + 1, &["size", "sizes"]) || v.sign(i + 1, '-') && v.any(i + 2, &["size"]));
@@ -820,7 +581,9 @@ impl Reader<'_, '_> {
             if v.any(w, &["recruit", "enroll", "enrol", "require"]) && ahead.is_none() {
                 continue;
             }
-            if first > 0 && v.any(first - 1, &["approximately", "about", "least"]) {
+            if first > 1 && v.any(first - 1, &["least"]) && v.any(first - 2, &["at"]) {
+                first -= 2;
+            } else if first > 0 && v.any(first - 1, &["approximately", "about"]) {
                 first -= 1;
             }
             // With its assumption: "to detect a 30 % difference between treatments".
@@ -860,13 +623,7 @@ impl Reader<'_, '_> {
             && !v.signs(j + 1, &['%', '/', '.'])
             && !(v.sign(j + 1, '-') && v.any(j + 2, &["sided", "tailed", "week", "month", "day", "year"]))
             && !v.is(j + 1, Classes::PERCENT.or(Classes::UNIT))
-            && !v.any(
-                j + 1,
-                &[
-                    "years", "months", "weeks", "days", "mg", "kg", "mm", "cm", "points", "point", "minutes", "hours",
-                    "times", "mmhg", "ml", "fold", "per",
-                ],
-            )
+            && !v.any(j + 1, MEASURES)
             && !v
                 .any(j.wrapping_sub(1), &["of"])
                 .then(|| v.any(j.wrapping_sub(2), &["power", "difference", "sd", "alpha"]))
@@ -931,24 +688,7 @@ impl Reader<'_, '_> {
                     && (v.sign(last + 1, '-')
                         || v.is(last + 1, MULTIPLE)
                         || v.any(last + 1, TEST_WORDS)
-                        || v.any(
-                            last + 1,
-                            &[
-                                "keuls",
-                                "honestly",
-                                "significant",
-                                "difference",
-                                "honest",
-                                "kramer",
-                                "range",
-                                "s",
-                                "type",
-                                "for",
-                                "comparisons",
-                                "and",
-                                "method",
-                            ],
-                        )
+                        || v.any(last + 1, CORRECTION_LINKS)
                         || v.sign(last + 1, '\''))
                 {
                     last += 1;
@@ -964,88 +704,9 @@ impl Reader<'_, '_> {
     }
 }
 
-const ADJUSTS: &[&str] = &[
-    "adjusted",
-    "adjustment",
-    "adjustments",
-    "corrected",
-    "correction",
-    "corrections",
-    "correct",
-    "adjust",
-    "adjusting",
-    "correcting",
-    "accounting",
-    "account",
-    "controlled",
-    "control",
-];
-
-const TEST_WORDS: &[&str] = &[
-    "test",
-    "tests",
-    "correction",
-    "corrections",
-    "adjustment",
-    "adjusted",
-    "corrected",
-    "procedure",
-    "method",
-    "post",
-    "hoc",
-    "posthoc",
-    "comparison",
-    "comparisons",
-    "multiple",
-    "range",
-    "rate",
-    "analysis",
-];
-
 /// Words that say how many it takes.
 const NEEDED: &[&str] =
     &["required", "needed", "necessary", "sufficient", "require", "recruit", "enroll", "enrol", "need", "needs"];
-
-/// Who or what is counted into a sample.
-const PEOPLE: &[&str] = &[
-    "patients",
-    "subjects",
-    "participants",
-    "volunteers",
-    "women",
-    "men",
-    "children",
-    "individuals",
-    "people",
-    "infants",
-    "animals",
-    "rats",
-    "mice",
-    "clusters",
-    "eyes",
-    "students",
-    "practices",
-    "adults",
-    "persons",
-    "completers",
-    "cases",
-    "events",
-    "pairs",
-    "families",
-    "girls",
-    "boys",
-    "schools",
-    "villages",
-    "teeth",
-    "babies",
-    "mothers",
-    "evaluable",
-    "households",
-    "dogs",
-    "pigs",
-    "residents",
-    "respondents",
-];
 
 /// A letter that marks figures: `a`, `b`; `p` itself is none.
 fn is_mark_letter(v: &SentenceView, i: usize) -> bool {
@@ -1079,4 +740,98 @@ fn complement(beta: Printed) -> Option<Printed> {
     let places = u8::try_from(places).ok().filter(|&p| p <= 6)?;
     let one = 10u64.pow(u32::from(places));
     (beta.digits < one).then_some(Printed { negative: false, digits: one - beta.digits, places, exponent: 0 })
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::manuscript::{Block, BlockKind, Manuscript, Section, SectionKind, Source};
+    use crate::reading::{p, scan};
+    use crate::text::{LineIndex, PieceTable};
+
+    /// The planning statements of one paragraph as kind, quote and value, and which p's define.
+    fn planning(text: &str) -> (Vec<(PlanningKind, String, Option<f64>)>, Vec<bool>) {
+        let block = Block {
+            kind: BlockKind::Paragraph,
+            section: 0,
+            text: text.to_string(),
+            pieces: PieceTable::default(),
+            marks: Vec::new(),
+        };
+        let section =
+            Section { title: String::new(), level: 0, parent: None, kind: SectionKind::Unknown, in_abstract: false };
+        let decoded = crate::text::decode(b"");
+        let source = Source { format: "text", decoded, lines: LineIndex::new("") };
+        let manuscript = Manuscript::new(vec![section], vec![block], source);
+        let scan = scan(&manuscript);
+        let (mut out, mut all) = (Vec::new(), Vec::new());
+        for id in scan.of_block(0) {
+            let view = scan.view(&manuscript, id);
+            let found = p::find(&view);
+            let mut defines = vec![false; found.len()];
+            read(&view, &found, &mut defines, &mut out);
+            all.extend(defines);
+        }
+        let out = out.into_iter().map(|x| (x.what, manuscript.quote(x.span).to_string(), x.value.map(Printed::value)));
+        (out.collect(), all)
+    }
+
+    #[test]
+    fn thresholds_define_and_results_do_not() {
+        for text in [
+            "P < 0.05 was considered significant.",
+            "Statistical significance was set at p<0.05.",
+            "A P value of less than 0.05 was regarded as statistically significant.",
+            "Statistical significance: P ≤ 0.05.",
+            "Differences were considered significant if p < 0.05.",
+            "P values < 0.05 indicated significance.",
+        ] {
+            let (found, defines) = planning(text);
+            assert_eq!(defines, [true], "{text}");
+            assert!(found.iter().any(|x| x.0 == PlanningKind::Threshold && x.2 == Some(0.05)), "{text}: {found:?}");
+        }
+        for text in [
+            "Fed hives were heavier (P < 0.05).",
+            "The difference in hive weight was significant (p < 0.05).",
+            "There was a significant difference at 12 weeks (p = 0.04).",
+            "Yield was significantly higher at week 8 (P < 0.01) and was similar at week 12 (P > 0.05).",
+        ] {
+            let (found, defines) = planning(text);
+            assert!(defines.iter().all(|d| !d) && found.is_empty(), "{text}: {found:?}");
+        }
+    }
+
+    #[test]
+    fn a_sample_size_with_its_parts() {
+        let text = "To detect a difference of 4 kg with 80% power and a two-sided alpha of 0.05, 36 hives per group \
+                    were needed.";
+        let (found, _) = planning(text);
+        let of = |kind| found.iter().find(|x| x.0 == kind).and_then(|x| x.2);
+        assert_eq!(of(PlanningKind::Power), Some(80.0));
+        assert_eq!(of(PlanningKind::Alpha), Some(0.05));
+        assert_eq!(of(PlanningKind::SampleSize), Some(36.0));
+        assert!(found.iter().any(|x| x.0 == PlanningKind::Sided && x.1 == "two-sided"));
+        let (found, _) = planning("With α = 5 % and β = 0.2 the sample size was calculated to be 60 participants.");
+        assert_eq!(found.iter().map(|x| x.2).collect::<Vec<_>>(), [Some(0.05), Some(0.8), Some(60.0)], "{found:?}");
+    }
+
+    #[test]
+    fn power_and_sides_of_other_kinds() {
+        for text in
+            ["Peak power of 85 W was reached.", "Bees landed on one side of the frame.", "Cronbach's alpha was 0.15."]
+        {
+            assert!(planning(text).0.is_empty(), "{text}: {:?}", planning(text).0);
+        }
+    }
+
+    #[test]
+    fn legends_and_corrections() {
+        let (found, defines) = planning("* P < 0.05, ** P < 0.01 versus control.");
+        assert_eq!(defines, [true, true]);
+        assert!(found.iter().all(|x| x.0 == PlanningKind::Legend), "{found:?}");
+        let (found, _) = planning("Pairs of hives were compared with a Bonferroni correction.");
+        assert_eq!((found[0].0, found[0].1.as_str()), (PlanningKind::Multiplicity, "Bonferroni correction"));
+        let (found, _) = planning("No correction for multiple comparisons was made.");
+        assert_eq!(found.len(), 1);
+    }
 }

@@ -25,14 +25,14 @@ struct Limits {
 /// Everything about the estimate and interval of a result that its groups give.
 pub(crate) fn check(case: &Case) -> Vec<Recomputation> {
     let mut out = Vec::new();
-    if let Some(e) = case.estimate {
+    if let Some(e) = case.estimate() {
         out.extend(statistic::eta_squared(case, e));
         out.extend(from_groups(case, e));
     }
     let Some(i) = case.interval else { return out };
     let limits = match case.groups[..] {
         [a, b] => two_groups(case, a, b),
-        [g] if case.estimate.is_none() => one_group(case, g),
+        [g] if case.result.estimate.is_none() => one_group(case, g),
         _ => Vec::new(),
     };
     out.extend(judge_interval(case, i, limits));
@@ -144,6 +144,7 @@ fn from_groups(case: &Case, e: &Estimate) -> Option<Recomputation> {
         ground: Ground::IfUnadjusted,
         hold,
         least: 1.0,
+        least_shift: 0.0,
         alpha: case.alpha,
         stated: None,
     };
@@ -216,7 +217,7 @@ fn two_groups(case: &Case, a: &Group, b: &Group) -> Vec<Limits> {
     let Some(z) = tail::critical(upper, f64::INFINITY) else { return Vec::new() };
     let mut out = Vec::new();
     if a.mean.is_some() && b.mean.is_some() {
-        let measure = case.estimate.map_or(Measure::MeanDifference, |e| e.measure);
+        let measure = case.estimate().map_or(Measure::MeanDifference, |e| e.measure);
         let groups = [a, b];
         if !matches!(measure, Measure::MeanDifference) {
             return out;
@@ -239,7 +240,7 @@ fn two_groups(case: &Case, a: &Group, b: &Group) -> Vec<Limits> {
         case.interval.is_some_and(|i| i.percent || i.upper.value().abs() > 1.0 || i.lower.value().abs() > 1.0);
     let unit = if percent { 100.0 } else { 1.0 };
     let scaled = |l: Limits| Limits { lower: l.lower * unit, upper: l.upper * unit, ..l };
-    match case.estimate.map(|e| e.measure) {
+    match case.estimate().map(|e| e.measure) {
         Some(Measure::RiskRatio) => {
             out.extend(katz(&c, &d, z));
             out.extend(katz(&d, &c, z));
@@ -248,9 +249,18 @@ fn two_groups(case: &Case, a: &Group, b: &Group) -> Vec<Limits> {
             out.extend(woolf(&c, &d, z));
             out.extend(woolf(&d, &c, z));
         }
-        Some(Measure::RiskDifference | Measure::PercentDifference) | None => {
+        Some(Measure::Other) | None => {
+            out.extend([katz(&c, &d, z), katz(&d, &c, z)].into_iter().flatten());
+            out.extend([woolf(&c, &d, z), woolf(&d, &c, z)].into_iter().flatten());
             for l in [wald(&c, &d, z), newcombe(&c, &d, level)].into_iter().flatten() {
-                let other = Limits { ..turned(Limits { ..l }) };
+                let other = turned(Limits { ..l });
+                out.push(scaled(l));
+                out.push(scaled(other));
+            }
+        }
+        Some(Measure::RiskDifference | Measure::PercentDifference) => {
+            for l in [wald(&c, &d, z), newcombe(&c, &d, level)].into_iter().flatten() {
+                let other = turned(Limits { ..l });
                 out.push(scaled(l));
                 out.push(scaled(other));
             }
@@ -338,7 +348,7 @@ pub(crate) fn fisher_z(r: Range, n: f64, z: f64) -> (Range, Range) {
 }
 
 fn correlation_interval(case: &Case, i: &IntervalReading) -> Option<Recomputation> {
-    let from_estimate = case.estimate.filter(|e| e.measure == Measure::Correlation).map(|e| e.value);
+    let from_estimate = case.estimate().filter(|e| e.measure == Measure::Correlation).map(|e| e.value);
     let statistic = case.statistic.filter(|s| s.symbol == Symbol::R);
     let r = from_estimate.or(statistic.map(|s| s.value))?;
     let n = statistic.and_then(|s| s.n).or(match case.groups[..] {
@@ -369,6 +379,7 @@ fn judge_interval(case: &Case, i: &IntervalReading, limits: Vec<Limits>) -> Opti
     let sharp = limits.iter().all(|l| lower.sharp_against(l.lower) || upper.sharp_against(l.upper));
     let hold = case.group_hold();
     let sizes_own = case.groups.iter().all(|g| size(g).is_some_and(|n| own(&n)));
+    let named = case.estimate().is_some_and(|e| e.measure != Measure::Other);
     let (verdict, why) = match fit(best) {
         Fit::Off => {
             let printed = upper.range.middle() - lower.range.middle();
@@ -376,9 +387,7 @@ fn judge_interval(case: &Case, i: &IntervalReading, limits: Vec<Limits>) -> Opti
             let far = widths.clone().all(|w| printed > 1.5 * w.hi || printed < w.lo / 1.5);
             match hold {
                 Some(hold) => (Verdict::Undecided, Some(hold)),
-                None if far && case.groups.len() == 2 && sizes_own && case.estimate.is_some() => {
-                    (Verdict::Differs, None)
-                }
+                None if far && case.groups.len() == 2 && sizes_own && named => (Verdict::Differs, None),
                 None => (Verdict::Undecided, Some(reason::CLOSE)),
             }
         }

@@ -1,10 +1,13 @@
 //! One reported result with its readings looked up, and what holds an objection to it back.
 
+use std::borrow::Cow;
+
 use super::reason;
 use crate::context::{Context, Test};
 use crate::query::Ground;
 use crate::reading::{
-    Estimate, Figure, Group, Inference, IntervalReading, Origin, PValue, Readings, Role, Sides, Statistic,
+    Estimate, Figure, Group, Inference, IntervalReading, Measure, Origin, PValue, Readings, Role, Scale, Sides,
+    Statistic,
 };
 use crate::result::{Feature, ReportedResult};
 use crate::text::Span;
@@ -16,7 +19,7 @@ pub(crate) struct Case<'a> {
     pub p: Option<&'a PValue>,
     pub interval: Option<&'a IntervalReading>,
     pub statistic: Option<&'a Statistic>,
-    pub estimate: Option<&'a Estimate>,
+    estimate: Option<Cow<'a, Estimate>>,
     pub groups: Vec<&'a Group>,
     /// The stated significance level, else 0.05.
     pub alpha: f64,
@@ -76,10 +79,14 @@ impl<'a> Case<'a> {
             p: result.p.and_then(|i| readings.p.get(i)),
             interval: result.interval.and_then(|i| readings.intervals.get(i)),
             statistic: result.statistic.and_then(|i| readings.statistics.get(i)),
-            estimate: result.estimate.and_then(|i| readings.estimates.get(i)),
+            estimate: estimate(readings, result),
             groups: result.groups.iter().filter_map(|&i| readings.groups.get(i)).collect(),
             alpha: if alpha > 0.0 && alpha < 1.0 { alpha } else { 0.05 },
         }
+    }
+
+    pub fn estimate(&self) -> Option<&Estimate> {
+        self.estimate.as_deref()
     }
 
     /// Tests named for this very result.
@@ -120,7 +127,7 @@ impl<'a> Case<'a> {
                 return Some(reason::UNCLEAR);
             }
         }
-        if self.estimate.is_some_and(|e| e.adjusted) {
+        if self.estimate().is_some_and(|e| e.adjusted) {
             return Some(reason::ADJUSTED);
         }
         if let Some(other) = self.here().find(|&t| !from_summaries(t)) {
@@ -227,6 +234,26 @@ impl<'a> Case<'a> {
     pub fn has(&self, feature: Feature) -> bool {
         self.result.has(feature)
     }
+}
+
+/// The result's estimate; without one, the unnamed figure printed right before the interval's limits, whose
+/// measure and scale are not known.
+fn estimate<'a>(readings: &'a Readings, result: &ReportedResult) -> Option<Cow<'a, Estimate>> {
+    if let Some(e) = result.estimate {
+        return readings.estimates.get(e).map(Cow::Borrowed);
+    }
+    let interval = readings.intervals.get(result.interval?)?;
+    let (value, span) = interval.estimate?;
+    Some(Cow::Owned(Estimate {
+        span,
+        sentence: interval.sentence,
+        measure: Measure::Other,
+        scale: Scale::Unknown,
+        value,
+        se: None,
+        percent: interval.percent,
+        adjusted: false,
+    }))
 }
 
 /// The group's size: `n`, else the total of its count.

@@ -46,8 +46,13 @@ impl Wald {
         Some(Wald { estimate: on(e.value)?, lower: on(lower)?, upper: on(upper)? })
     }
 
+    /// Half the interval's width; a limit at the end of the scale leaves it open.
     fn half(&self) -> Range {
-        ((self.upper - self.lower) * 0.5).clamped(0.0, f64::INFINITY)
+        let width = |upper: f64, lower: f64, open: f64| {
+            let w = (upper - lower) / 2.0;
+            if w.is_nan() { open } else { w.max(0.0) }
+        };
+        Range::new(width(self.upper.lo, self.lower.hi, 0.0), width(self.upper.hi, self.lower.lo, f64::INFINITY))
     }
 
     /// |estimate| in half widths of its interval: grows with |estimate|, falls as the interval widens.
@@ -93,7 +98,9 @@ pub(crate) fn p_of_ratio(ratio: Range, level: f64, df: Range) -> Option<Range> {
 
 /// The degrees of freedom to try beside the normal distribution, and whether they come from group sizes.
 fn degrees(case: &Case, scale: Scale, measure: Measure) -> Option<(Range, bool)> {
-    let ratio_of_means = scale == Scale::Ratio && matches!(measure, Measure::Other);
+    // A ratio of means, say; an unnamed figure is more often a ratio of risks.
+    let named = case.estimate().is_some_and(|e| e.scale == Scale::Ratio);
+    let ratio_of_means = named && scale == Scale::Ratio && matches!(measure, Measure::Other);
     if !(scale == Scale::Difference || ratio_of_means) || measure == Measure::RiskDifference {
         return None;
     }
@@ -113,17 +120,14 @@ fn sorted(i: &IntervalReading) -> (Printed, Printed) {
     if i.lower.value() <= i.upper.value() { (i.lower, i.upper) } else { (i.upper, i.lower) }
 }
 
+/// The scale of the measure; where it is not known, every scale on which the interval is symmetric.
 fn scales(e: &Estimate, lower: Printed, upper: Printed) -> Vec<Scale> {
     match e.scale {
-        // The scale on which the interval is symmetric, when only one is.
         Scale::Unknown => {
             let fits = |s| Wald::new(s, e, lower, upper).is_some_and(|w| w.symmetric());
             let positive = lower.value() > 0.0;
-            match (fits(Scale::Difference), positive && fits(Scale::Ratio)) {
-                (true, false) => vec![Scale::Difference],
-                (false, true) => vec![Scale::Ratio],
-                _ => Vec::new(),
-            }
+            let both = [(Scale::Difference, true), (Scale::Ratio, positive)];
+            both.into_iter().filter(|&(s, can)| can && fits(s)).map(|(s, _)| s).collect()
         }
         Scale::Reciprocal | Scale::Single => Vec::new(),
         scale => vec![scale],
@@ -133,7 +137,7 @@ fn scales(e: &Estimate, lower: Printed, upper: Printed) -> Vec<Scale> {
 /// p from the estimate and its interval (Altman & Bland 2011), on the scale of the measure.
 pub(crate) fn p_from_interval(case: &Case) -> Result<Vec<Recomputation>, &'static str> {
     let (Some(p), Some(i)) = (case.p, case.interval) else { return Ok(Vec::new()) };
-    let Some(e) = case.estimate else { return Err(reason::NO_ESTIMATE) };
+    let Some(e) = case.estimate() else { return Err(reason::NO_ESTIMATE) };
     if i.credible {
         return Err(reason::NO_METHOD);
     }
@@ -152,6 +156,11 @@ pub(crate) fn p_from_interval(case: &Case) -> Result<Vec<Recomputation>, &'stati
         hold = hold.or(Some(reason::ASYMMETRIC));
     }
     let mut candidates = interval_candidates(case, e, &wald, scale, level, lower, upper);
+    for &other in &scales[1..] {
+        if let Some(wald) = Wald::new(other, e, lower, upper) {
+            candidates.extend(interval_candidates(case, e, &wald, other, level, lower, upper));
+        }
+    }
     if candidates.is_empty() {
         return Err(reason::NO_METHOD);
     }
@@ -183,6 +192,7 @@ pub(crate) fn p_from_interval(case: &Case) -> Result<Vec<Recomputation>, &'stati
         ground: Ground::IfOneMethod,
         hold,
         least: if rival_tests(case, e) { 2.0 } else { 1.2 },
+        least_shift: 0.0,
         alpha: case.alpha,
         stated: None,
     };
@@ -332,7 +342,7 @@ fn exclusion(case: &Case, target: &Target, wald: &Wald, level: f64, inputs: Inpu
 
 /// p from the estimate and its standard error.
 pub(crate) fn p_from_se(case: &Case) -> Option<Recomputation> {
-    let (p, e) = (case.p?, case.estimate?);
+    let (p, e) = (case.p?, case.estimate()?);
     let se = e.se.filter(|se| se.digits > 0)?;
     if !matches!(e.scale, Scale::Difference | Scale::Unknown) {
         return None;
@@ -349,8 +359,15 @@ pub(crate) fn p_from_se(case: &Case) -> Option<Recomputation> {
     let line = format!("t = {shown}; df {} or more; {}", df.lo, working::p(range));
     candidates.push(Candidate::new(&method::SE_TO_P, "t", range, line).assuming(Assumption::PlausibleDf));
     let hold = case.interval_hold().or((e.scale == Scale::Unknown).then_some(reason::SCALE));
-    let policy =
-        Policy { of: Quantity::P, ground: Ground::IfOneMethod, hold, least: 1.2, alpha: case.alpha, stated: None };
+    let policy = Policy {
+        of: Quantity::P,
+        ground: Ground::IfOneMethod,
+        hold,
+        least: 1.2,
+        least_shift: 0.0,
+        alpha: case.alpha,
+        stated: None,
+    };
     let printed = p.value.filter(|_| p.relation == Relation::Equal);
     let slips = || {
         if target.fit(statistic::halved(normal)) == Fit::Full && target.sharp_against(statistic::halved(normal)) {
@@ -363,14 +380,18 @@ pub(crate) fn p_from_se(case: &Case) -> Option<Recomputation> {
 
 /// The estimate lies inside its interval, and the lower limit comes first.
 pub(crate) fn inside(case: &Case) -> Option<Recomputation> {
-    let (e, i) = (case.estimate?, case.interval?);
-    let reversed = i.lower.value() > i.upper.value();
+    let (e, i) = (case.estimate()?, case.interval?);
+    let reversed = i.reversed || i.lower.value() > i.upper.value();
     let (lower, upper) = sorted(i);
     let whole = Range::new(lower.rounded().lo, upper.rounded().hi).widened(1e-12);
     let value = e.value.rounded();
     let reciprocal = e.scale == Scale::Reciprocal;
     let inside = whole.meets(value);
-    if reciprocal && !inside || e.percent != i.percent && !inside {
+    // A figure of an unnamed kind before the limits may be another thing.
+    if !inside && e.measure == Measure::Other && e.scale == Scale::Unknown {
+        return None;
+    }
+    if !inside && (reciprocal || e.percent != i.percent) {
         return None;
     }
     let unit = e.value.unit().max(lower.unit());
@@ -424,7 +445,7 @@ fn inside_slip(e: &Estimate, lower: Printed, upper: Printed) -> Option<Slip> {
             }
         }
     }
-    for x in slip::moved(e.value).filter(|x| fits(*x, lower, upper)) {
+    if let Some(x) = slip::moved(e.value).find(|x| fits(*x, lower, upper)) {
         let says = format!("with its decimal point moved the estimate reads {}", x.value());
         return Some(Slip { kind: "decimal-point", says });
     }

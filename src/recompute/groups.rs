@@ -12,10 +12,10 @@ use crate::printed::Range;
 use crate::query::Ground;
 use crate::reading::{Assumption, Group, Relation, SpreadKind, Symbol};
 
-/// p or the statistic of a comparison needs a distance of at least this factor for an objection, where the
-/// group sizes are printed with the groups; more where they come from a header, whose n may shrink down a table.
-const LEAST: f64 = 1.25;
-const LEAST_HEADER_N: f64 = 2.0;
+/// An objection needs p to be off by at least this much as a normal deviate, where the group sizes are printed with
+/// the groups; more where they come from a header, whose n may shrink down a table.
+const LEAST_SHIFT: f64 = 0.05;
+const LEAST_SHIFT_HEADER_N: f64 = 0.1;
 
 /// A spread read one way, with what to call it.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -118,7 +118,8 @@ fn policy(case: &Case, of: Quantity, own_sizes: bool) -> Policy {
         of,
         ground: case.group_ground(),
         hold: case.group_hold(),
-        least: if rivals || !own_sizes { LEAST_HEADER_N } else { LEAST },
+        least: if rivals { 2.0 } else { 1.05 },
+        least_shift: if rivals || !own_sizes { LEAST_SHIFT_HEADER_N } else { LEAST_SHIFT },
         alpha: case.alpha,
         stated: case.stated(),
     }
@@ -183,7 +184,10 @@ pub(crate) fn p_from_means(case: &Case) -> Result<Option<Recomputation>, &'stati
     let (inputs, own_sizes) = size_inputs(groups);
     let mut policy = policy(case, Quantity::P, own_sizes);
     one_sided_too(case, &mut candidates);
-    if groups.len() > 2 && candidates.iter().all(|c| target.fit(c.range) == Fit::Off) {
+    if groups.len() > 2
+        && policy.stated != Some(Test::Anova)
+        && candidates.iter().all(|c| target.fit(c.range) == Fit::Off)
+    {
         // The p may be that of two of the groups.
         let pairs = (0..groups.len()).flat_map(|i| (i + 1..groups.len()).map(move |j| (i, j))).take(15);
         let pair = |(i, j): (usize, usize)| means_candidates(case, &[groups[i], groups[j]]).ok();
@@ -270,7 +274,7 @@ fn cells(groups: &[&Group]) -> Result<(Vec<Cell>, bool), &'static str> {
 
 /// Exhaustive categories over the same arms: the rows of a table, and its number of columns.
 fn categories(cells: &[Cell]) -> Option<Vec<Vec<u64>>> {
-    if cells.len() < 4 || !cells.iter().all(Cell::is_exact) {
+    if cells.len() < 4 || cells.iter().any(|c| c.events.0 != c.events.1) {
         return None;
     }
     let by_columns = |arms: usize, interleaved: bool| -> Option<Vec<Vec<u64>>> {
@@ -278,12 +282,12 @@ fn categories(cells: &[Cell]) -> Option<Vec<Vec<u64>>> {
         let at = |i: usize, j: usize| if interleaved { i * arms + j } else { j * rows + i };
         let table: Vec<Vec<u64>> = (0..rows).map(|i| (0..arms).map(|j| cells[at(i, j)].events.0).collect()).collect();
         let sums_to_total = (0..arms).all(|j| {
-            let total = cells[at(0, j)].total.0;
-            (0..rows).all(|i| cells[at(i, j)].total.0 == total) && table.iter().map(|r| r[j]).sum::<u64>() == total
+            let total = table.iter().map(|r| r[j]).sum::<u64>();
+            (0..rows).map(|i| cells[at(i, j)].total).all(|(least, most)| least <= total && total <= most)
         });
         sums_to_total.then_some(table)
     };
-    let divisors = (2..=cells.len() / 2).filter(|k| cells.len() % k == 0);
+    let divisors = (2..=cells.len() / 2).filter(|k| cells.len().is_multiple_of(*k));
     divisors.flat_map(|k| [(k, true), (k, false)]).find_map(|(k, way)| by_columns(k, way))
 }
 
@@ -490,7 +494,8 @@ pub(crate) fn statistic_from_groups(case: &Case) -> Option<Recomputation> {
     let settled = case.groups.len() == 2 && case.stated().is_some() && own_sizes;
     let hold = case.group_hold().or((!settled).then_some(reason::OTHER_TEST));
     let ground = if case.stated().is_some() { Ground::GivenTheStatedTest } else { Ground::IfUnadjusted };
-    let policy = Policy { of: Quantity::Statistic, ground, hold, least: 1.0, alpha: case.alpha, stated: None };
+    let policy =
+        Policy { of: Quantity::Statistic, ground, hold, least: 1.0, least_shift: 0.0, alpha: case.alpha, stated: None };
     let mut out = judge(&Target::unsigned(s.value, s.span), candidates, &policy, inputs, || None)?;
     super::verdict::soften(&mut out, 0.1);
     Some(out)

@@ -144,9 +144,10 @@ fn check(
     found.extend(statistic::df_against_groups(&case));
     found.extend(estimate::inside(&case));
     found.extend(association::check(&case));
-    if case.p.is_none() && case.interval.is_none() && case.statistic.is_none() && case.estimate.is_none() {
+    if case.p.is_none() && case.interval.is_none() && case.statistic.is_none() && case.estimate().is_none() {
         for g in &case.groups {
             found.extend(percent::check(g, agreement.get(&g.span.block).copied().unwrap_or_default()));
+            found.extend(percent::parts(g, &readings.groups));
         }
     }
     let verdict = verdict::settle(&mut found, case.p.is_some());
@@ -178,9 +179,10 @@ fn undecided(case: &Case, found: &[Recomputation], why: Option<&'static str>) ->
         return said;
     }
     let alone =
-        case.interval.is_none() && case.statistic.is_none() && case.estimate.is_none() && case.groups.is_empty();
+        case.interval.is_none() && case.statistic.is_none() && case.estimate().is_none() && case.groups.is_empty();
     match (case.p.is_some(), alone) {
         (true, true) => reason::ONLY_P,
+        (true, false) if why.is_none() && case.estimate().is_some() && case.groups.is_empty() => reason::NO_INTERVAL,
         (true, false) => why.or(case.group_hold()).unwrap_or(reason::NO_METHOD),
         (false, _) => why.unwrap_or(reason::NO_P),
     }

@@ -6,7 +6,7 @@ use super::case::{own, place};
 use super::target::{Fit, Target};
 use super::verdict::{Candidate, Inputs, Policy, judge};
 use super::{Distance, Quantity, Recomputation, Slip, method, reason, slip, working};
-use crate::printed::Range;
+use crate::printed::{Printed, Range};
 use crate::query::{Ground, Verdict};
 use crate::reading::{Figure, Group, Inference, Origin, Readings};
 use crate::text::Span;
@@ -65,6 +65,8 @@ pub(crate) fn check(g: &Group, agreement: Agreement) -> Vec<Recomputation> {
     // Missing answers make a percentage larger than the header's n gives, never smaller.
     let below_all = target.range.hi < exact;
     let hold = match (g.one_expression, printed_here) {
+        _ if g.approximate => Some(reason::ABOUT),
+        _ if matches!(total.origin, Origin::Inferred(Inference::Siblings, _)) => None,
         (true, _) | (_, true) => None,
         _ if agreement.settled() && below_all => None,
         _ => Some(reason::DENOMINATOR),
@@ -74,6 +76,7 @@ pub(crate) fn check(g: &Group, agreement: Agreement) -> Vec<Recomputation> {
         ground: if g.one_expression { Ground::ByDefinition } else { Ground::IfOneMethod },
         hold,
         least: 0.0,
+        least_shift: 0.0,
         alpha: 0.05,
         stated: None,
     };
@@ -87,6 +90,42 @@ pub(crate) fn check(g: &Group, agreement: Agreement) -> Vec<Recomputation> {
         r.working.push_str(&format!("; {percent} % would fit a total of {fits}"));
     }
     out.into_iter().collect()
+}
+
+/// Categories of one sentence whose percentages make 100: their counts make the total of each. Agreement only:
+/// whether they are exhaustive is a guess.
+pub(crate) fn parts(g: &Group, all: &[Group]) -> Option<Recomputation> {
+    let plain = |x: &Group| Some((x.events?.printed.count()?, x.percent?));
+    if g.total.is_some() {
+        return None;
+    }
+    let (e, percent) = plain(g)?;
+    // Readings are in order, so that one sentence is one run.
+    let first = all.partition_point(|x| x.sentence < g.sentence);
+    let same = all[first..].iter().take_while(|x| x.sentence == g.sentence).take(12);
+    let siblings: Vec<(u64, Printed, Span)> =
+        same.filter(|x| x.total.is_none()).filter_map(|x| plain(x).map(|(e, p)| (e, p, x.span))).collect();
+    let sum: f64 = siblings.iter().map(|s| s.1.value()).sum();
+    let slack: f64 = siblings.iter().map(|s| s.1.unit() / 2.0).sum();
+    let total = siblings.iter().try_fold(0u64, |t, s| t.checked_add(s.0))?;
+    if siblings.len() < 2 || total == 0 || (sum - 100.0).abs() > slack + 1e-9 {
+        return None;
+    }
+    let exact = 100.0 * e as f64 / total as f64;
+    let counts: Vec<String> = siblings.iter().map(|s| s.0.to_string()).collect();
+    let line = format!("{e}/({}) = {} %", counts.join(" + "), working::number(exact, 4));
+    let candidate = Candidate::new(&method::PERCENT, "arithmetic", Range::point(exact), line);
+    let policy = Policy {
+        of: Quantity::Percent,
+        ground: Ground::IfOneMethod,
+        hold: Some(reason::DENOMINATOR),
+        least: 0.0,
+        least_shift: 0.0,
+        alpha: 0.05,
+        stated: None,
+    };
+    let inputs = siblings.iter().map(|s| (s.2, "a category")).collect();
+    judge(&Target::figure(percent, g.span), vec![candidate], &policy, inputs, || None)
 }
 
 fn part(figure: &Figure, name: &'static str) -> Option<(Span, &'static str)> {

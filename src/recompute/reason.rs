@@ -10,6 +10,10 @@ pub const NO_SIZES: &str = "no group sizes";
 pub const NO_SPREAD: &str = "no spread";
 /// "degrees of freedom not printed".
 pub const NO_DF: &str = "degrees of freedom not printed";
+/// "the percentage is said to be about so much".
+pub const APPROXIMATELY: &str = "the percentage is said to be about so much";
+/// "no interval or standard error beside the estimate".
+pub const NO_INTERVAL: &str = "no interval or standard error beside the estimate";
 /// "no estimate beside the interval".
 pub const NO_ESTIMATE: &str = "no estimate beside the interval";
 /// "only one group is printed".
@@ -56,8 +60,12 @@ pub const CLOSE: &str = "close, but outside what rounding allows";
 pub const ROUGH: &str = "the printed figures leave too wide a range";
 /// "percent of another denominator".
 pub const DENOMINATOR: &str = "percent of another denominator";
+/// "an approximate percentage".
+pub const ABOUT: &str = "an approximate percentage";
 /// "agrees by a stronger method".
 pub const STRONGER: &str = "agrees by a stronger method";
+/// "agrees with a test on the groups, beside an interval by another method".
+pub const OTHER_METHOD: &str = "agrees with a test on the groups, beside an interval by another method";
 /// "the approximation does not decide".
 pub const APPROXIMATE: &str = "the approximation does not decide";
 /// "the group sizes are not printed for this result".
@@ -77,6 +85,8 @@ pub const ALL: &[&str] = &[
     NO_SIZES,
     NO_SPREAD,
     NO_DF,
+    NO_INTERVAL,
+    APPROXIMATELY,
     NO_ESTIMATE,
     ONE_GROUP,
     NO_METHOD,
@@ -100,8 +110,10 @@ pub const ALL: &[&str] = &[
     CLOSE,
     ROUGH,
     DENOMINATOR,
+    ABOUT,
     STRONGER,
     APPROXIMATE,
+    OTHER_METHOD,
     SIZES_DOUBTFUL,
 ];
 

@@ -74,7 +74,7 @@ pub(crate) fn p_from_statistic(case: &Case) -> Result<Option<Recomputation>, &'s
     if case.here().any(|t| t == Test::PostHoc) {
         hold = Some(reason::CORRECTED);
     }
-    let candidates = candidates(case, s, &mut ground, &mut hold, &mut inputs)?;
+    let candidates = candidates(case, s, value_range(s), &mut ground, &mut hold, &mut inputs)?;
     if candidates.is_empty() {
         return Err(reason::NO_METHOD);
     }
@@ -87,7 +87,8 @@ pub(crate) fn p_from_statistic(case: &Case) -> Result<Option<Recomputation>, &'s
             ..c.clone()
         }));
     }
-    let policy = Policy { of: Quantity::P, ground, hold, least: 1.0, alpha: case.alpha, stated: None };
+    let policy =
+        Policy { of: Quantity::P, ground, hold, least: 1.0, least_shift: 0.0, alpha: case.alpha, stated: None };
     let slips = || {
         if one_sided && candidates.iter().any(|c| target.fit(halved(c.range)) == Fit::Full) {
             return Some(Slip { kind: "one-sided", says: "it agrees with a one-sided test".into() });
@@ -95,7 +96,19 @@ pub(crate) fn p_from_statistic(case: &Case) -> Result<Option<Recomputation>, &'s
         let ranges: Vec<Range> = candidates.iter().map(|c| c.range).collect();
         slip::in_p(p.value.filter(|_| p.relation == Relation::Equal), &ranges).or_else(|| moved_statistic(s, &target))
     };
-    Ok(judge(&target, all, &policy, inputs, slips))
+    let mut out = judge(&target, all, &policy, inputs, slips);
+    if let Some(r) = out.as_mut().filter(|r| r.verdict == Verdict::Differs && s.relation == Relation::Equal) {
+        // The statistic may be cut instead of rounded.
+        let (mut ground, mut hold, mut inputs) = (policy.ground, None, Inputs::new());
+        let cut = self::candidates(case, s, s.value.cut(), &mut ground, &mut hold, &mut inputs)?;
+        if let Some(c) = cut.into_iter().find(|c| target.fit(c.range) == Fit::Full) {
+            r.verdict = Verdict::Tallies;
+            r.sharp = target.sharp_against(c.range);
+            r.reason = Some(reason::CUT.into());
+            (r.computed, r.working, r.distance, r.slip) = (Some(c.range), c.working, None, None);
+        }
+    }
+    Ok(out)
 }
 
 pub(crate) fn halved(p: Range) -> Range {
@@ -125,11 +138,11 @@ fn moved_statistic(s: &Statistic, target: &Target) -> Option<Slip> {
 fn candidates(
     case: &Case,
     s: &Statistic,
+    value: Range,
     ground: &mut Ground,
     hold: &mut Option<&'static str>,
     inputs: &mut Inputs,
 ) -> Result<Vec<Candidate>, &'static str> {
-    let value = value_range(s);
     let mut out = Vec::new();
     let mut add = |method: &'static Method, short, range: Option<Range>, line: String| {
         if let Some(range) = range {
@@ -150,11 +163,12 @@ fn candidates(
                 );
             } else {
                 *ground = Ground::IfOneMethod;
-                let (low, high) = plausible_df(case).ok_or(reason::NO_DF)?;
+                // Without any size, all degrees of freedom: |t| < 1 is far from significant with any.
+                let (low, high) = plausible_df(case).unwrap_or((1.0, f64::INFINITY));
                 for g in &case.groups {
                     inputs.extend(size(g).as_ref().and_then(place).map(|span| (span, "the group size")));
                 }
-                if case.groups.iter().any(|g| !size(g).is_some_and(|n| own(&n))) {
+                if high.is_infinite() || case.groups.iter().any(|g| !size(g).is_some_and(|n| own(&n))) {
                     *hold = hold.or(Some(reason::NO_DF));
                 }
                 let line = format!("t = {}, df {}", s.value, working::range(Range::new(low, high), 3));
@@ -327,6 +341,7 @@ pub(crate) fn eta_squared(case: &Case, e: &Estimate) -> Option<Recomputation> {
         ground: Ground::IfOneMethod,
         hold: Some(reason::NO_METHOD),
         least: 0.0,
+        least_shift: 0.0,
         alpha: case.alpha,
         stated: None,
     };

@@ -1,5 +1,6 @@
 //! What a printed figure stands for, and what a recomputed range is held against.
 
+use crate::distribution;
 use crate::printed::{Printed, Range};
 use crate::reading::{PValue, Relation};
 use crate::text::Span;
@@ -59,7 +60,8 @@ impl Target {
         }
         let unit_range = |lo: f64, hi: f64| Range::new(lo.clamp(0.0, 1.0), hi.clamp(0.0, 1.0));
         match p.relation {
-            Relation::Equal if printed.digits == 0 => {
+            // `0.000` and `< 0.000` both say that it rounds to nothing.
+            Relation::Equal | Relation::Less | Relation::AtMost if printed.digits == 0 => {
                 let range = unit_range(0.0, unit / 2.0);
                 let wide = unit_range(0.0, unit);
                 at(range, wide, wide, Against::Above(unit), unit)
@@ -146,6 +148,21 @@ impl Target {
             return if self.is_p { 1.0 } else { 0.0 };
         };
         if self.is_p { if near > 0.0 { (far / near).min(1e12) } else { 1e12 } } else { (far - near) / self.unit }
+    }
+
+    /// How far the nearest ends of printed and recomputed p lie apart as normal deviates, relative to the larger: a
+    /// fifth fewer participants move p by a tenth on this scale, whatever its size.
+    pub fn shift(&self, computed: Range) -> f64 {
+        let (near, far) = if computed.lo > self.range.hi {
+            (self.range.hi, computed.lo)
+        } else if computed.hi < self.range.lo {
+            (computed.hi, self.range.lo)
+        } else {
+            return 0.0;
+        };
+        let deviate = |p: f64| distribution::normal_quantile((p / 2.0).clamp(1e-300, 0.499_999)).unwrap_or(0.0);
+        let (large, small) = (deviate(near), deviate(far));
+        if large > 0.0 { (large - small) / large } else { 0.0 }
     }
 
     /// Printed and computed lie strictly on two sides of alpha; alpha itself is on neither.

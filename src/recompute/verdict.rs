@@ -42,6 +42,8 @@ pub(crate) struct Policy {
     pub hold: Option<&'static str>,
     /// Smaller distances (see [`Distance`]) stay undecided.
     pub least: f64,
+    /// Smaller shifts of p as a normal deviate (see [`Target::shift`]) stay undecided.
+    pub least_shift: f64,
     pub alpha: f64,
     /// The stated test's name, where one is stated for this result.
     pub stated: Option<Test>,
@@ -87,11 +89,12 @@ pub(crate) fn judge(
     out = Recomputation { inputs: out.inputs, ..blank(target, nearest, policy, Vec::new()) };
     out.computed = deciding().map(|c| c.range).reduce(Range::hull);
     let size = candidates.iter().map(|c| target.distance(c.range)).fold(f64::INFINITY, f64::min);
+    let shift = candidates.iter().map(|c| target.shift(c.range)).fold(f64::INFINITY, f64::min);
     let across_alpha = candidates.iter().all(|c| target.across(c.range, policy.alpha));
     out.distance = Some(Distance { size, across_alpha });
     if let Some(hold) = policy.hold {
         out.reason = Some(hold.into());
-    } else if size < policy.least {
+    } else if size < policy.least || target.is_p && shift < policy.least_shift {
         out.reason = Some(reason::CLOSE.into());
     } else {
         out.verdict = Verdict::Differs;
@@ -141,6 +144,25 @@ pub(crate) fn settle(recomputations: &mut [Recomputation], has_p: bool) -> Verdi
                 r.sharp = false;
                 r.slip = None;
                 r.reason = Some(reason::STRONGER.into());
+            }
+        }
+    }
+    // A test on the counts beside a Wald interval: its p agrees with the groups and need not agree with the interval.
+    let by_groups = |r: &Recomputation| {
+        r.of == Quantity::P
+            && r.verdict == Verdict::Tallies
+            && r.sharp
+            && r.ground > Ground::ByDefinition
+            && r.method != &super::method::INTERVAL_TO_P
+            && r.method != &super::method::INTERVAL_AGAINST_P
+    };
+    if recomputations.iter().any(by_groups) {
+        for r in recomputations.iter_mut() {
+            if r.of == Quantity::P && r.verdict == Verdict::Differs && r.ground == Ground::IfOneMethod {
+                r.verdict = Verdict::Undecided;
+                r.sharp = false;
+                r.slip = None;
+                r.reason = Some(reason::OTHER_METHOD.into());
             }
         }
     }

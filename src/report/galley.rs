@@ -41,6 +41,11 @@ impl<'w> Galley<'w> {
         self.hang(&format!("{label:<LABEL$}"), pieces)
     }
 
+    /// A line that keeps its spaces and its breaks: text to be copied.
+    pub fn as_it_stands(&mut self, text: &str) -> io::Result<()> {
+        self.line(&[(Style::new(), clean(text))])
+    }
+
     /// Wrapped text behind a right-aligned count.
     pub fn counted(&mut self, count: usize, text: &str) -> io::Result<()> {
         self.hang(&format!("{count:>5}  "), &[(Style::new(), text)])

@@ -5,7 +5,7 @@
 //! `&self`, so that manuscripts of a batch may be rendered side by side and written in order.
 
 mod account;
-mod galley;
+pub mod galley;
 pub mod json;
 mod numbers;
 mod place;
@@ -24,7 +24,6 @@ use crate::result::ReportedResult;
 pub use account::Account;
 pub use json::Json;
 pub use terminal::Terminal;
-pub use words::unreadable;
 
 /// A manuscript after the audit.
 #[derive(Clone, Debug)]

@@ -53,6 +53,15 @@ impl<'a> Places<'a> {
         Some(Context { before: block.text.get(from..start)?, after: block.text.get(end..to)?, columns })
     }
 
+    /// A section's titles without that of the whole manuscript, which stands over all of them.
+    pub fn below_title<'s>(&self, section: &'s [String]) -> &'s [String] {
+        let mut top = self.audited.manuscript.sections.iter().filter(|s| s.level == 1);
+        match (top.next(), top.next(), section) {
+            (Some(title), None, [first, rest @ ..]) if title.title == *first && !rest.is_empty() => rest,
+            _ => section,
+        }
+    }
+
     /// The number of a row among those below the header, from 0.
     pub fn body_row(&self, cell: CellPlace) -> Option<u32> {
         let tables = self.audited.manuscript.blocks.iter().filter_map(|b| match &b.kind {

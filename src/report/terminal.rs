@@ -13,7 +13,7 @@ use super::place::{Context, Places};
 use super::{Account, Audited, CAUTIONS, Entry, Line, Report, numbers, words};
 use crate::manuscript::Location;
 use crate::query::{Level, Query, Related, Repair, RepairKind, Verdict};
-use crate::recompute::{Checked, Recomputation};
+use crate::recompute::{Checked, Quantity, Recomputation};
 
 /// Characters of a sentence shown before and after the words in question, and of the words themselves.
 const AROUND: usize = 220;
@@ -112,7 +112,7 @@ fn queries(galley: &mut Galley, audited: &Audited, places: &Places) -> io::Resul
     for (i, query) in audited.queries.iter().enumerate() {
         galley.gap()?;
         if section != Some(&query.section) {
-            let title = clean(&query.section.join(" › "));
+            let title = clean(&places.below_title(&query.section).join(" › "));
             if !title.is_empty() {
                 galley.across(&[(BOLD, "§ "), (BOLD, &title)])?;
                 galley.gap()?;
@@ -141,14 +141,18 @@ fn one_query(galley: &mut Galley, number: usize, query: &Query, audited: &Audite
     }
     in_context(galley, query, &context)?;
     galley.gap()?;
-    galley.text(&[(PLAIN, &clean(&query.says))])?;
-    galley.gap()?;
-    for r in in_question(query, audited) {
+    let in_question = in_question(query, audited);
+    if in_question.len() != 1 || query.results.len() != 1 {
+        galley.text(&[(PLAIN, &clean(&query.says))])?;
+        galley.gap()?;
+    }
+    for r in in_question {
         galley.labelled("printed", &[(BOLD, &clean(audited.manuscript.quote(r.figure)))])?;
         if let Some(computed) = r.computed {
             let computed = numbers::range(r.of, computed);
+            let of = if r.of == Quantity::P { "P " } else { "" };
             let method = format!(" ({})", r.method.name);
-            galley.labelled("recomputed", &[(BOLD, &computed), (PLAIN, &method)])?;
+            galley.labelled("recomputed", &[(BOLD, of), (BOLD, &computed), (PLAIN, &method)])?;
         }
     }
     if let Some(working) = &query.working {
@@ -164,8 +168,12 @@ fn one_query(galley: &mut Galley, number: usize, query: &Query, audited: &Audite
 
 /// What helps to answer a query: explanations, related places, a repair, the rule.
 fn aside(galley: &mut Galley, query: &Query) -> io::Result<()> {
-    for (i, explanation) in query.explanations.iter().enumerate() {
-        galley.labelled(if i == 0 { "perhaps" } else { "" }, &[(PLAIN, &clean(&explanation.says))])?;
+    let (assumed, innocent): (Vec<_>, Vec<_>) = query.explanations.iter().partition(|e| words::is_assumption(&e.kind));
+    for (label, explanations) in [("perhaps", innocent), ("assumed", assumed)] {
+        if !explanations.is_empty() {
+            let says: Vec<_> = explanations.iter().map(|e| clean(&e.says)).collect();
+            galley.labelled(label, &[(PLAIN, &says.join(" "))])?;
+        }
     }
     for (i, related) in query.related.iter().enumerate() {
         galley.labelled(if i == 0 { "see" } else { "" }, &[(PLAIN, &see(related))])?;

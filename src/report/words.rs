@@ -1,20 +1,11 @@
 //! Names and phrases that the formats share: identifiers for machines, clauses for people.
 
-use crate::intake::Unreadable;
 use crate::query::Ground;
 use crate::reading::{
     Assumption, Attribution, ClaimKind, Direction, Inference, Measure, Origin, PlanningKind, Relation, Role,
     SpreadKind, Symbol,
 };
 use crate::recompute::Quantity;
-
-/// One sentence that says why nothing could be read, and what to do.
-pub fn unreadable(why: &Unreadable) -> &'static str {
-    match why {
-        Unreadable::Empty => "there is no text in it; give the manuscript as Markdown or plain text",
-        Unreadable::Binary => "it is not text; save the manuscript as Markdown or plain text and give that file",
-    }
-}
 
 pub fn relation(relation: Relation) -> &'static str {
     match relation {
@@ -154,6 +145,8 @@ pub fn origin(origin: Origin) -> &'static str {
         Origin::Inferred(Inference::SameSentence, _) => "same sentence",
         Origin::Inferred(Inference::OtherSentence, _) => "other sentence",
         Origin::Inferred(Inference::ArmSize, _) => "arm size",
+        Origin::Inferred(Inference::Siblings, _) => "other counts of the paragraph",
+        Origin::Inferred(Inference::Categories, _) => "sum of categories",
         Origin::Inferred(Inference::FromPercent, _) => "percent",
         Origin::Inferred(Inference::FromGroupSizes, _) => "group sizes",
         Origin::Assumed(assumption) => assumption_name(assumption),
@@ -194,4 +187,10 @@ pub fn assumption(assumption: Assumption) -> &'static str {
         Assumption::PlausibleDf => "the degrees of freedom are not printed; plausible ones were tried",
         Assumption::UsualScale => "the limits were computed on the scale that is usual for this measure",
     }
+}
+
+/// Whether an explanation of a query says what was taken for granted, not what may have slipped.
+pub fn is_assumption(kind: &str) -> bool {
+    let named = ["two-sided", "level-95", "alpha-05", "spread-unnamed", "unadjusted", "plausible-df", "usual-scale"];
+    kind == "assumption" || named.contains(&kind)
 }

@@ -36,7 +36,6 @@ const WORDS: &[(&str, Feature)] = &[
     ("weighted", Feature::Adjusted),
     ("imputed", Feature::Imputed),
     ("imputation", Feature::Imputed),
-    ("locf", Feature::Imputed),
     ("geometric", Feature::Transformed),
     ("log", Feature::Transformed),
     ("transformed", Feature::Transformed),

@@ -296,6 +296,12 @@ fn describe(
     {
         add(feature, p.span);
     }
+    if let Some(p) = result.p.map(|p| &readings.p[p])
+        && here.is_empty()
+        && names_other_analysis(view, p.span)
+    {
+        add(Feature::Unclear, p.span);
+    }
     if let Some(e) = result.estimate.map(|e| &readings.estimates[e]).filter(|e| e.adjusted) {
         add(Feature::Adjusted, e.span);
     }
@@ -312,4 +318,16 @@ fn describe(
     }
     result.tests.extend(here.iter().map(|&test| StatedTest { test, here: true }));
     result.tests.extend(context.tests.iter().map(|&test| StatedTest { test, here: false }));
+}
+
+/// An analysis that is named in the p's own bracket and that we do not know: `(P < 0.01, ridit analysis)`.
+fn names_other_analysis(view: &SentenceView, p: Span) -> bool {
+    let at = view.token_at(p.start);
+    let open = (at.saturating_sub(8)..at)
+        .rev()
+        .find(|&k| view.signs(k, &['(', '[', ')', ']']))
+        .filter(|&k| view.signs(k, &['(', '[']));
+    let Some(open) = open else { return false };
+    let close = (at..(at + 14).min(view.len())).find(|&k| view.signs(k, &[')', ']'])).unwrap_or(at);
+    (open..close).any(|k| view.any(k, &["analysis", "analyses", "test", "tests", "model", "regression", "statistic"]))
 }

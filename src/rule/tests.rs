@@ -16,11 +16,9 @@ fn manuscript(text: &str) -> Manuscript {
     let section =
         Section { title: "Results".to_owned(), level: 1, parent: None, kind: SectionKind::Results, in_abstract: false };
     let kind = BlockKind::Paragraph;
-    Manuscript {
-        sections: vec![section],
-        blocks: vec![Block { kind, section: 0, text: text.to_owned(), pieces, marks: Vec::new() }],
-        source: Source { format: "text", decoded: decode(text.as_bytes()), lines: LineIndex::new(text) },
-    }
+    let block = Block { kind, section: 0, text: text.to_owned(), pieces, marks: Vec::new() };
+    let source = Source { format: "text", decoded: decode(text.as_bytes()), lines: LineIndex::new(text) };
+    Manuscript::new(vec![section], vec![block], source)
 }
 
 fn span(text: &str, part: &str) -> Span {
@@ -65,6 +63,8 @@ fn both_ways(text: &str) -> Vec<Query> {
         upper: Printed::parse("1.61").unwrap(),
         percent: false,
         credible: false,
+        reversed: false,
+        estimate: None,
     };
     let readings = Readings { p: vec![p_value(p, "0.03")], intervals: vec![interval], ..Readings::default() };
     let result = ReportedResult { p: Some(0), interval: Some(0), ..ReportedResult::default() };

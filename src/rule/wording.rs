@@ -3,7 +3,7 @@
 use crate::printed::Range;
 use crate::query::Explanation;
 use crate::reading::Assumption;
-use crate::recompute::Quantity;
+use crate::recompute::{Quantity, Slip};
 
 /// What `asks` may hold in braces.
 ///
@@ -41,7 +41,7 @@ pub fn one_line(text: &str) -> String {
     format!("{}…", head.trim_end())
 }
 
-/// A p-value for people: two decimals from 0.1 on, else two digits that count, `< 0.001` below.
+/// A p-value for people: two decimals from 0.1 on, else two digits that count, four decimals at most.
 fn p_figure(p: f64) -> String {
     if p >= 0.0995 {
         return format!("{p:.2}");
@@ -51,14 +51,14 @@ fn p_figure(p: f64) -> String {
     format!("{p:.places$}")
 }
 
-/// A range of p-values: `P = 0.13`, `P = 0.12 to 0.14`, `P < 0.001`.
+/// A range of p-values: `P = 0.13`, `P = 0.12 to 0.14`, `P < 0.0001`.
 pub fn p_range(range: Range) -> String {
     let range = range.clamped(0.0, 1.0);
-    if range.hi < 0.001 {
-        return "P < 0.001".to_owned();
+    if range.hi < 0.0001 {
+        return "P < 0.0001".to_owned();
     }
     let high = p_figure(range.hi);
-    if range.lo < 0.001 {
+    if range.lo < 0.00005 {
         return format!("P below {high}");
     }
     match p_figure(range.lo) {
@@ -91,6 +91,13 @@ pub fn journal_p(range: Range) -> Option<String> {
     };
     let low = printed(range.lo);
     (low == printed(range.hi) && range.hi < 0.995).then_some(low)
+}
+
+/// The one number of a quote that carries a percent sign: bytes, and its decimal places.
+pub fn percent_number(quote: &str) -> Option<(std::ops::Range<usize>, usize)> {
+    let mut signs = quote.match_indices('%');
+    let (at, _) = signs.next().filter(|_| signs.next().is_none())?;
+    last_number(&quote[..at])
 }
 
 /// The last number of a quote: bytes, and its decimal places.
@@ -150,6 +157,18 @@ pub fn assumption(assumption: Assumption) -> Explanation {
     Explanation { kind: kind.to_owned(), says: says.to_owned() }
 }
 
+/// An innocent slip that restores the printed figure.
+pub fn slip(slip: &Slip) -> Explanation {
+    Explanation { kind: slip.kind.to_owned(), says: sentence(&slip.says) }
+}
+
+fn sentence(clause: &str) -> String {
+    let mut chars = clause.chars();
+    let first: String = chars.next().into_iter().flat_map(char::to_uppercase).collect();
+    let end = if clause.ends_with('.') { "" } else { "." };
+    format!("{first}{}{end}", chars.as_str())
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -158,8 +177,9 @@ mod tests {
     fn p_values_read_as_in_a_journal() {
         assert_eq!(p_range(Range::new(0.128, 0.133)), "P = 0.13");
         assert_eq!(p_range(Range::new(0.0231, 0.0284)), "P = 0.023 to 0.028");
-        assert_eq!(p_range(Range::new(0.0, 0.0004)), "P < 0.001");
-        assert_eq!(p_range(Range::new(0.0004, 0.0021)), "P below 0.0021");
+        assert_eq!(p_range(Range::new(0.0, 0.00004)), "P < 0.0001");
+        assert_eq!(p_range(Range::new(0.00021, 0.00046)), "P = 0.0002 to 0.0005");
+        assert_eq!(p_range(Range::new(0.0, 0.0021)), "P below 0.0021");
         assert_eq!(journal_p(Range::new(0.128, 0.133)).as_deref(), Some("= 0.13"));
         assert_eq!(journal_p(Range::new(0.0478, 0.0482)).as_deref(), Some("= 0.048"));
         assert_eq!(journal_p(Range::new(0.12, 0.14)), None);
@@ -171,6 +191,8 @@ mod tests {
         assert_eq!(last_number("45/101 (44·6%)"), Some((8..13, 1)));
         assert_eq!(last_number("p=.03"), Some((2..5, 2)));
         assert_eq!(last_number("ns"), None);
+        assert_eq!(percent_number("60% of them (100/163)"), Some((0..2, 0)));
+        assert_eq!(percent_number("60%, 61%"), None);
     }
 
     #[test]

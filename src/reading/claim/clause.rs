@@ -257,6 +257,7 @@ fn subject_and_verb(flat: &Flat, k: usize) -> bool {
         if flat.signs(j, &[',', ';', ':', '=', '<', '>'])
             || flat.is(j, BREAK)
             || flat.any(j, &["that", "which", "who", "when", "where"])
+            || flat.is(j, Classes::AND) && flat.any(j + 1, &["no", "there"])
         {
             return false;
         }

@@ -1,17 +1,20 @@
 //! The cue of a clause: the words that make it a claim, and of which kind.
 
 use super::clause::{Clause, Flat, Lead};
+use super::words::*;
 use crate::reading::claim_words::{
     BREAK, CHANGED, COMPARATIVE, DIFFER, EXTREME, FINITE, FUNCTION, HEDGE, METHOD, MODAL, OTHERS, PLAN, REPORT, THAN,
 };
 use crate::reading::lexicon::Classes;
 use crate::reading::p::PExpression;
-use crate::reading::{ClaimKind, Direction};
+use crate::reading::{ClaimKind, Direction, Relation};
 
 /// What the whole sentence says, for all its clauses.
 pub(super) struct Facts {
     /// A p-value stands in the sentence, or an interval or a percent beside a ratio.
     pub figures: bool,
+    /// A p with an equals sign: a result in any case.
+    pub exact: bool,
     /// Any number.
     pub numbers: bool,
     /// Findings of others: "previous studies", "et al.".
@@ -23,22 +26,15 @@ impl Facts {
     pub fn of(flat: &Flat, p: &[PExpression], union: Classes) -> Facts {
         let view = flat.view;
         let figures = !p.is_empty() || union.meets(Classes::CI);
+        let exact = p.iter().any(|x| x.relation == Relation::Equal);
         let numbers = view.tokens.iter().any(|t| t.number().is_some());
         let cited = union.meets(OTHERS)
             && (0..view.len()).any(|i| {
                 view.eq(i, "al") && view.eq(i.wrapping_sub(1), "et")
                     || view.any(i, &["previous", "previously", "earlier", "literature", "published", "recent", "other"])
-                        && (1..4).any(|d| {
-                            view.any(
-                                i + d,
-                                &[
-                                    "study", "studies", "reports", "report", "reported", "trials", "trial", "findings",
-                                    "work", "research", "data", "reviews", "shown",
-                                ],
-                            )
-                        })
+                        && (1..4).any(|d| view.any(i + d, STUDIES))
             });
-        Facts { figures, numbers, others: cited, has_groups: union.meets(Classes::GROUP) }
+        Facts { figures, exact, numbers, others: cited, has_groups: union.meets(Classes::GROUP) }
     }
 }
 
@@ -51,49 +47,6 @@ pub(super) struct Found {
     pub direction: Option<Direction>,
     pub says_significant: bool,
 }
-
-/// Nouns and adjectives after "significant" that make it a word of everyday or clinical use.
-const NOT_STATISTICAL: &[&str] = &[
-    "clinically",
-    "clinical",
-    "practically",
-    "functionally",
-    "biologically",
-    "haemodynamically",
-    "hemodynamically",
-    "economically",
-];
-
-/// Nouns besides those of difference and association that significance is said of.
-const RESULT_NOUNS: &[&str] = &[
-    "main",
-    "interaction",
-    "interactions",
-    "trend",
-    "trends",
-    "results",
-    "result",
-    "finding",
-    "findings",
-    "value",
-    "values",
-    "group",
-    "time",
-    "treatment",
-    "gender",
-    "superiority",
-    "risk",
-    "factor",
-    "factors",
-    "odds",
-    "contribution",
-    "progress",
-    "recovery",
-    "comparisons",
-    "outcome",
-    "outcomes",
-    "p",
-];
 
 pub(super) fn find(flat: &Flat, clause: &Clause, facts: &Facts) -> Option<Found> {
     let range = clause.first..clause.end;
@@ -253,6 +206,11 @@ impl Scope<'_> {
         {
             return None;
         }
+        // "P < 0.05 was considered significant" defines.
+        let considered = (k.saturating_sub(5).max(self.clause.first)..k).any(|j| flat.any(j, CONSIDERED));
+        if considered && !self.facts.exact {
+            return None;
+        }
         let word = flat.word(k).as_bytes();
         let non = word[0].eq_ignore_ascii_case(&b'n')
             || word[0].eq_ignore_ascii_case(&b'i')
@@ -282,33 +240,7 @@ impl Scope<'_> {
                 .or(Classes::SIMILAR)
                 .or(EXTREME),
         );
-        let predicate = (k.saturating_sub(5).max(self.clause.first)..k).any(|j| {
-            flat.any(
-                j,
-                &[
-                    "was",
-                    "were",
-                    "is",
-                    "are",
-                    "be",
-                    "been",
-                    "being",
-                    "became",
-                    "remained",
-                    "reached",
-                    "reach",
-                    "achieved",
-                    "achieve",
-                    "reaching",
-                    "remain",
-                    "attain",
-                    "attained",
-                    "approached",
-                    "failed",
-                    "proved",
-                ],
-            )
-        });
+        let predicate = (k.saturating_sub(5).max(self.clause.first)..k).any(|j| flat.any(j, PREDICATE_VERBS));
         if !adverb && !noun && target.is_none() {
             // An adjective needs its noun, or stands behind its verb.
             let result_noun = (k + 1..(k + 5).min(end)).any(|j| flat.any(j, RESULT_NOUNS));
@@ -317,13 +249,19 @@ impl Scope<'_> {
                 || flat.is(k + 1, FUNCTION.or(THAN).or(BREAK))
                 || flat.any(k + 1, &["only", "when", "after", "within", "at"])
                 || flat.token(k + 1) > flat.token(k) + 1;
-            if !(predicate && bare || result_noun && self.finite.is_some()) {
+            // "did not identify significant activations", "no significant clustering was found".
+            let denied = self.negation(k, 4).is_some()
+                && (flat.find(self.range(), REPORT).is_some() || flat.any(self.clause.first, &["there"]))
+                && !(k + 1..(k + 6).min(end)).any(|j| flat.any(j, CLINICAL_NOUNS));
+            if !(predicate && bare || result_noun && self.finite.is_some() || denied) {
                 return None;
             }
         }
+        // "reached significance", "significance was not reached", "without significance".
         if noun
-            && !predicate
-            && !(self.clause.first..k).any(|j| flat.any(j, &["showed", "without", "did", "had", "not", "no", "failed"]))
+            && !(k.saturating_sub(5).max(self.clause.first)..k).any(|j| flat.any(j, REACHES))
+            && !(k + 1..(k + 6).min(end)).any(|j| flat.any(j, REACHES))
+            && self.negation(k, 2).is_none()
         {
             return None;
         }
@@ -334,6 +272,7 @@ impl Scope<'_> {
             return None;
         }
         let hedged = (k.saturating_sub(3).max(self.clause.first)..k).any(|j| flat.is(j, HEDGE))
+            || (k.saturating_sub(6).max(self.clause.first)..k).any(|j| flat.any(j, &["trend", "tended", "tendency"]))
             || (k + 1..(k + 3).min(end)).any(|j| flat.is(j, Classes::TREND));
         let last = target.unwrap_or(k);
         let negation = self.negation(k, 9);
@@ -392,21 +331,7 @@ impl Scope<'_> {
                 && (j + 1..j + 9).any(|h| flat.is(h, Classes::GROUP))
         });
         let but_not = range.clone().any(|j| flat.any(j, &["but"]) && flat.any(j + 1, &["not"]));
-        let change = flat.find(range, CHANGED.or(Classes::CHANGE)).is_some()
-            || flat.any(
-                k + 1,
-                &[
-                    "improvement",
-                    "improvements",
-                    "reduction",
-                    "reductions",
-                    "increase",
-                    "increases",
-                    "decrease",
-                    "decreases",
-                    "decline",
-                ],
-            );
+        let change = flat.find(range, CHANGED.or(Classes::CHANGE)).is_some() || flat.any(k + 1, GAINS);
         let compared = flat.find(self.range(), THAN).is_some();
         change && !compared && (only || but_not)
     }
@@ -472,13 +397,7 @@ impl Scope<'_> {
                 // The noun denied must be the difference itself: "no patients with reduced function" denies patients.
                 let blocked = between.clone().any(|j| {
                     flat.is(j, Classes::GROUP) && !flat.any(j, &["group", "treatment", "condition", "intervention"])
-                        || flat.any(
-                            j,
-                            &[
-                                "with", "in", "was", "were", "had", "who", "that", "at", "on", "during", "adverse",
-                                "side",
-                            ],
-                        )
+                        || flat.any(j, BOUNDARY)
                 });
                 if blocked
                     || flat.any(t - 1, &["side", "adverse"])
@@ -613,21 +532,7 @@ impl Scope<'_> {
                     && next.is_none()
             } else if predicate {
                 // "was similar to that of earlier studies" compares with others, "similar to that of controls" does not.
-                let elsewhere = (k + 2..k + 8).any(|j| {
-                    flat.any(
-                        j,
-                        &[
-                            "previous",
-                            "previously",
-                            "earlier",
-                            "studies",
-                            "literature",
-                            "reported",
-                            "ours",
-                            "published",
-                        ],
-                    )
-                });
+                let elsewhere = (k + 2..k + 8).any(|j| flat.any(j, ELSEWHERE));
                 let manner = flat.any(k + 1, &["manner", "way", "fashion", "looking"])
                     || flat.any(k + 2, &["appearance", "design", "taste", "shape"]);
                 !elsewhere && !manner
@@ -741,27 +646,7 @@ impl Scope<'_> {
     /// Who was included, what was given, what was done.
     fn eligibility(&self) -> bool {
         let flat = self.flat;
-        self.range().any(|j| {
-            flat.any(
-                j,
-                &[
-                    "eligible",
-                    "excluded",
-                    "included",
-                    "inclusion",
-                    "exclusion",
-                    "enrolled",
-                    "recruited",
-                    "administered",
-                    "instructed",
-                    "asked",
-                    "randomized",
-                    "randomised",
-                    "allocated",
-                    "assigned",
-                ],
-            )
-        })
+        self.range().any(|j| flat.any(j, ELIGIBILITY))
     }
 
     /// "decreased from 12 to 9 (P …)", "was reduced".
@@ -830,121 +715,3 @@ const LINKING: &[&str] = &["was", "were", "remained", "is", "are", "appeared", "
 
 /// After a negation these turn it into something else: "not only", "no longer".
 const NOT_DENYING: &[&str] = &["only", "longer", "surprisingly", "just", "least", "yet", "because", "due"];
-
-/// Verbs of inquiry after "to".
-const INQUIRE: &[&str] = &[
-    "test",
-    "determine",
-    "assess",
-    "compare",
-    "examine",
-    "evaluate",
-    "investigate",
-    "identify",
-    "explore",
-    "detect",
-    "analyse",
-    "analyze",
-    "estimate",
-    "demonstrate",
-    "show",
-    "find",
-    "see",
-    "verify",
-    "establish",
-    "study",
-    "reveal",
-    "quantify",
-    "check",
-    "achieve",
-    "ensure",
-    "describe",
-    "evaluate",
-    "produce",
-    "observe",
-];
-
-/// Words after "similar" that make it a likeness to something else than the other group.
-const OTHER_LIKENESS: &[&str] = &[
-    "previous",
-    "previously",
-    "earlier",
-    "studies",
-    "study",
-    "those",
-    "that",
-    "other",
-    "literature",
-    "manner",
-    "way",
-    "fashion",
-    "method",
-    "methods",
-    "procedure",
-    "procedures",
-    "pattern",
-    "patterns",
-    "design",
-    "approach",
-    "protocol",
-    "reported",
-    "ours",
-    "findings",
-    "conditions",
-    "age",
-    "trial",
-    "trials",
-    "appearance",
-    "packaging",
-    "trends",
-    "described",
-    "capsules",
-    "tablets",
-];
-
-/// Nouns whose likeness is a claim of no difference.
-const LIKE_NOUNS: &[&str] = &[
-    "proportions",
-    "proportion",
-    "rates",
-    "rate",
-    "levels",
-    "level",
-    "scores",
-    "score",
-    "values",
-    "efficacy",
-    "safety",
-    "tolerability",
-    "effectiveness",
-    "incidence",
-    "frequency",
-    "frequencies",
-    "outcomes",
-    "outcome",
-    "numbers",
-    "number",
-    "percentages",
-    "percentage",
-    "mean",
-    "means",
-    "baseline",
-    "results",
-    "weeks",
-    "characteristics",
-    "impact",
-    "profile",
-    "profiles",
-    "survival",
-    "response",
-    "responses",
-    "risk",
-    "duration",
-    "degree",
-    "extent",
-    "amount",
-    "amounts",
-    "time",
-    "times",
-    "performance",
-];

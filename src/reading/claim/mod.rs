@@ -5,9 +5,13 @@
 
 mod clause;
 mod cue;
+// Word lists are easier to read in full lines.
+#[rustfmt::skip]
+mod words;
 
 use self::clause::{Clause, Flat, Lead, clauses};
 use self::cue::{Facts, Found, find};
+use self::words::{CIRCUMSTANCES, OPENERS};
 use super::claim_words::{CHANGED, COMPARATIVE, DIFFER, EXTREME, FINITE, FIT, HEDGE};
 use super::lexicon::Classes;
 use super::p::PExpression;
@@ -100,97 +104,6 @@ fn misreading(view: &SentenceView, out: &mut Vec<Claim>) -> bool {
     true
 }
 
-/// Words that open a sentence and add nothing to its claim.
-const OPENERS: &[&str] = &[
-    "and",
-    "or",
-    "so",
-    "however",
-    "moreover",
-    "furthermore",
-    "additionally",
-    "meanwhile",
-    "finally",
-    "overall",
-    "thus",
-    "therefore",
-    "interestingly",
-    "similarly",
-    "consequently",
-    "also",
-    "then",
-    "hence",
-    "likewise",
-    "nevertheless",
-    "nonetheless",
-    "again",
-    "accordingly",
-    "importantly",
-    "notably",
-    "respectively",
-    "that",
-    "conversely",
-    "surprisingly",
-    "indeed",
-    "generally",
-    "specifically",
-    "further",
-    "besides",
-    "lastly",
-    "firstly",
-    "secondly",
-];
-
-/// Words that open a phrase of circumstance, which ends at a comma: "At 12 months, …".
-const CIRCUMSTANCES: &[&str] = &[
-    "in",
-    "at",
-    "after",
-    "on",
-    "among",
-    "during",
-    "for",
-    "by",
-    "when",
-    "as",
-    "compared",
-    "using",
-    "based",
-    "regarding",
-    "consistent",
-    "of",
-    "from",
-    "within",
-    "following",
-    "under",
-    "despite",
-    "due",
-    "to",
-    "before",
-    "with",
-    "according",
-    "concerning",
-    "over",
-    "between",
-    "relative",
-    "contrary",
-    "unlike",
-    "like",
-    "until",
-    "throughout",
-    "once",
-    "where",
-    "given",
-    "because",
-    "since",
-    "prior",
-    "across",
-    "upon",
-    "if",
-    "considering",
-    "both",
-];
-
 /// The clause from its subject to the end of what the cue says.
 fn extent(flat: &Flat, clause: &Clause, found: &Found) -> (usize, usize) {
     let mut first = clause.first;
@@ -279,4 +192,161 @@ fn attribution(flat: &Flat, clause: &Clause, facts: &Facts) -> Attribution {
         return Attribution::Baseline;
     }
     Attribution::ThisStudy
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::manuscript::{Block, BlockKind, Manuscript, Section, SectionKind, Source};
+    use crate::reading::{Direction, p, scan};
+    use crate::text::{LineIndex, PieceTable};
+
+    /// The claims of one paragraph: kind and quote.
+    fn claims(text: &str) -> Vec<(ClaimKind, String, Claim)> {
+        let block = Block {
+            kind: BlockKind::Paragraph,
+            section: 0,
+            text: text.to_string(),
+            pieces: PieceTable::default(),
+            marks: Vec::new(),
+        };
+        let section =
+            Section { title: String::new(), level: 0, parent: None, kind: SectionKind::Unknown, in_abstract: false };
+        let decoded = crate::text::decode(b"");
+        let source = Source { format: "text", decoded, lines: LineIndex::new("") };
+        let manuscript = Manuscript::new(vec![section], vec![block], source);
+        let scan = scan(&manuscript);
+        let mut out = Vec::new();
+        for id in scan.of_block(0) {
+            let view = scan.view(&manuscript, id);
+            read(&view, &p::find(&view), &mut out);
+        }
+        out.into_iter().map(|c| (c.kind, manuscript.quote(c.span).to_string(), c)).collect()
+    }
+
+    fn kinds(text: &str) -> Vec<ClaimKind> {
+        claims(text).into_iter().map(|c| c.0).collect()
+    }
+
+    fn one(text: &str) -> (ClaimKind, String) {
+        let all = claims(text);
+        assert_eq!(all.len(), 1, "{text}: {all:?}");
+        (all[0].0, all[0].1.clone())
+    }
+
+    #[test]
+    fn no_difference_in_its_many_words() {
+        for text in [
+            "Yield of honey did not differ between the hives (p = 0.21).",
+            "Brood area was similar in the two apiaries (P = 0.4).",
+            "There was no difference in wing length between the groups (p = 0.62).",
+            "Syrup had no effect on foraging time (p = 0.15).",
+            "Hive weight was not associated with flower density (p = 0.33).",
+            "No correlation between hive weight and flower density was observed.",
+            "Swarming remained unchanged over the summer.",
+            "Similar proportions of colonies in each group survived the winter (12/40 vs 13/41).",
+            "We found no evidence that queen age affected swarming (p = 0.7).",
+            "Colony losses were evenly distributed over the three groups.",
+        ] {
+            assert_eq!(one(text).0, ClaimKind::NoDifference, "{text}");
+        }
+    }
+
+    #[test]
+    fn not_significant_is_weaker_than_no_difference() {
+        for text in [
+            "There was no significant difference in wing length between the groups (p = 0.62).",
+            "Hive weight did not differ significantly between the arms (p = 0.3).",
+            "The rise in honey yield did not reach statistical significance (P = 0.08).",
+            "Brood area was not significantly larger in fed hives (p = 0.2).",
+            "The difference was non-significant (p = 0.4).",
+            "None of the differences between hives were significant.",
+            "Feeding failed to show significant effects on swarming compared with water (p = 0.5).",
+        ] {
+            assert_eq!(one(text).0, ClaimKind::NotSignificant, "{text}");
+        }
+        assert!(claims("There was no significant difference in wing length (p = 0.6).")[0].2.says_significant);
+    }
+
+    #[test]
+    fn differences_with_their_direction() {
+        let all = claims("Honey yield was significantly higher in fed hives than in controls (p = 0.01).");
+        assert_eq!(all[0].0, ClaimKind::Difference);
+        assert_eq!(all[0].1, "Honey yield was significantly higher in fed hives than in controls");
+        assert_eq!(all[0].2.direction, Some(Direction::Higher));
+        assert!(all[0].2.says_significant);
+        let all = claims("At 12 weeks, mite counts decreased from 14.1 to 9.0 (p < 0.001).");
+        assert_eq!((all[0].0, all[0].2.direction), (ClaimKind::Difference, Some(Direction::Lower)));
+        assert!(all[0].1.starts_with("mite counts"), "{}", all[0].1);
+        assert_eq!(one("Queen age was associated with swarming (p = 0.02).").0, ClaimKind::Difference);
+    }
+
+    #[test]
+    fn trend_equivalence_and_one_arm() {
+        assert_eq!(one("There was a trend towards heavier hives in the fed group (p = 0.07).").0, ClaimKind::Trend);
+        assert_eq!(one("The gain was marginally significant (p = 0.06).").0, ClaimKind::Trend);
+        assert_eq!(one("Fondant was as effective as syrup in preventing losses (p = 0.6).").0, ClaimKind::Equivalence);
+        assert_eq!(one("Fondant was non-inferior to syrup.").0, ClaimKind::Equivalence);
+        assert_eq!(
+            one("Hive weight increased significantly with fondant (p = 0.01) but not water (p = 0.3).").0,
+            ClaimKind::WithinGroupContrast
+        );
+        assert_eq!(
+            one("A significant improvement in brood area was observed only in the fondant group (p = 0.02).").0,
+            ClaimKind::WithinGroupContrast
+        );
+    }
+
+    #[test]
+    fn misreadings_of_p() {
+        assert_eq!(
+            one("With p = 0.03 there is only a 3% probability that this result was due to chance.").0,
+            ClaimKind::PMisread
+        );
+        assert_eq!(
+            one("Yield was highly significantly greater with syrup (p < 0.001).").0,
+            ClaimKind::SignificanceAsSize
+        );
+        assert!(kinds("The probability that a bee returns was 3% in both hives at dusk.").is_empty());
+    }
+
+    #[test]
+    fn plans_and_everyday_words_make_no_claim() {
+        for text in [
+            "We tested whether hive weight differed between the groups.",
+            "Differences between groups were analysed with the t test.",
+            "P < 0.05 was considered statistically significant.",
+            "The aim was to detect a significant difference in honey yield.",
+            "Hives with clinically significant disease were excluded.",
+            "It was hypothesised that fed hives would be heavier than controls.",
+            "The boxes were identical in appearance.",
+            "Not all beekeepers improved their records.",
+            "More than 50 colonies were visited.",
+        ] {
+            assert!(kinds(text).is_empty(), "{text}: {:?}", claims(text));
+        }
+    }
+
+    #[test]
+    fn clauses_make_claims_of_their_own() {
+        use ClaimKind::*;
+        let text = "Honey yield was higher in fed hives (p = 0.01), but there was no difference in swarming (p = 0.8).";
+        assert_eq!(kinds(text), [Difference, NoDifference]);
+        let text = "Mite counts fell by 12% in the fondant group (p = 0.02), whereas wing length did not differ \
+                    significantly between the groups.";
+        assert_eq!(kinds(text), [Difference, NotSignificant]);
+        let text = "Brood area increased in both groups (p = 0.01), with no differences between groups.";
+        assert_eq!(kinds(text), [Difference, NoDifference]);
+    }
+
+    #[test]
+    fn attributions() {
+        let of = |text: &str| claims(text)[0].2.attribution;
+        assert_eq!(of("Hive characteristics were similar in the two groups."), Attribution::Baseline);
+        assert_eq!(of("Hive weight did not differ between the groups (p = 0.4)."), Attribution::ThisStudy);
+        assert_eq!(
+            of("Previous studies have shown that feeding did not affect swarming (p = 0.4)."),
+            Attribution::OtherAuthors
+        );
+    }
 }

@@ -145,6 +145,9 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
     if !by_slash && view.sign(next + words, '/') {
         return None;
     }
+    if words > 0 && !by_slash && !(next..next + words).any(|k| view.is(k, Classes::GROUP)) {
+        return None;
+    }
     let at = if by_slash { next } else { next + words };
     let (total, k, end) = denominator(view, at)?;
     let plausible = total > 1 && events <= total && !(by_slash && view.sign(end, '/'));
@@ -169,7 +172,7 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
     };
     if percent.is_none() {
         // Without a percentage a slash may be a unit, a date or a score; "of" may be anything.
-        let bracket = i > 0 && view.signs(i - 1, &['(', '[']) && view.signs(end, &[')', ']', ',', ';']);
+        let bracket = i > 0 && view.signs(i - 1, &['(', '[', ',']) && view.signs(end, &[')', ']', ',', ';']);
         let members = view.is(end, Classes::GROUP);
         if by_slash && !(bracket || members)
             || !by_slash && !(members || words > 0 || view.eq(at, "out") || view.signs(end, &[')', ',', '.']))
@@ -410,4 +413,49 @@ fn alone(
 /// "rate of 12%", "proportion of 45%".
 fn share_of(view: &SentenceView, of: usize) -> bool {
     of > 0 && view.any(of - 1, &["rate", "rates", "proportion", "prevalence", "incidence", "frequency", "percentage"])
+}
+
+/// Marks percentages that are said to be about so much or that no count over a total gives (survival, actuarial rates),
+/// and takes back a total from "Of the 26 patients, …" where several counts follow: they may be of parts of it.
+pub(super) fn soften(view: &SentenceView, drafts: &mut [Draft]) {
+    let estimated = (0..view.len()).any(|k| {
+        view.any(k, &["actuarial", "kaplan", "survival", "cumulative", "weighted", "standardised", "standardized"])
+    });
+    let counts = drafts.iter().filter(|d| d.group.events.is_some() && d.group.percent.is_some()).count();
+    for d in drafts {
+        let about = d.first > 0
+            && (view.any(
+                d.first - 1,
+                &[
+                    "over",
+                    "about",
+                    "approximately",
+                    "nearly",
+                    "almost",
+                    "around",
+                    "roughly",
+                    "least",
+                    "most",
+                    "than",
+                    "below",
+                    "above",
+                    "under",
+                ],
+            ) || view.signs(d.first - 1, &['~', '<', '>', '≥', '≤']));
+        d.group.approximate = (about || estimated) && d.group.percent.is_some();
+        let total = d.group.total.map(|t| t.origin);
+        if counts > 1 && matches!(total, Some(Origin::Inferred(Inference::SameSentence, _))) && !fits(&d.group) {
+            (d.group.total, d.group.n) = (None, None);
+        }
+    }
+}
+
+/// Whether the percentage is the count over the total, as rounded.
+fn fits(group: &super::Group) -> bool {
+    match (group.events, group.total, group.percent) {
+        (Some(e), Some(t), Some(p)) => {
+            p.rounded().widened(1e-12).contains(100.0 * e.printed.value() / t.printed.value())
+        }
+        _ => true,
+    }
 }

@@ -53,27 +53,14 @@ pub fn read(view: &SentenceView, setting: &mut Setting, taken: &mut [bool], out:
     }
     versus::read(view, taken, &mut drafts);
     drafts.sort_by_key(|d| d.first);
+    count::soften(view, &mut drafts);
     size::assign(view, &mut drafts);
     label::assign(view, &mut drafts);
     out.extend(drafts.into_iter().map(|d| d.group));
 }
 
 fn empty(view: &SentenceView, first: usize, last: usize) -> Group {
-    Group {
-        span: view.span(first, last),
-        sentence: view.id,
-        label: String::new(),
-        n: None,
-        events: None,
-        total: None,
-        percent: None,
-        mean: None,
-        median: None,
-        spread_kind: None,
-        spread: Vec::new(),
-        change: false,
-        one_expression: false,
-    }
+    Group::new(view.span(first, last), view.id)
 }
 
 fn with_spread(mut group: Group, kind: SpreadKind, spread: &[Printed]) -> Group {

@@ -50,7 +50,7 @@ pub fn mentions(view: &SentenceView, out: &mut Vec<Mention>) {
             .take_while(|&k| view.get(k).is_some_and(|t| t.is_word()) || view.signs(k, &['-', ',']))
             .take_while(|&k| !view.is(k, Classes::UNIT) && !view.is(k, Classes::COPULA) && !view.is(k, Classes::AND))
             .any(|k| view.is(k, Classes::GROUP) && !view.any(k, &["groups", "group", "arms"]));
-        if size > 1 && (after_n || denominator || members || included) {
+        if size > 4 && (after_n || denominator || members || included) {
             out.push(Mention { size, span: view.span(i, next - 1), sentence: view.id });
         }
         i = next;
@@ -59,7 +59,8 @@ pub fn mentions(view: &SentenceView, out: &mut Vec<Mention>) {
 
 /// Fills totals and sizes of one paragraph's groups. `tested(sentence)` tells whether a sentence prints a p-value.
 pub fn fill(groups: &mut [Group], mentions: &[Mention], tested: impl Fn(u32) -> bool) {
-    for group in groups {
+    categories(groups);
+    for group in groups.iter_mut() {
         if let (Some(events), Some(percent), None) = (group.events, group.percent, group.total) {
             let fits = |m: &&Mention| {
                 let share = 100.0 * events.printed.value() / m.size as f64;
@@ -91,5 +92,62 @@ pub fn fill(groups: &mut [Group], mentions: &[Mention], tested: impl Fn(u32) -> 
                 group.n = Some(Figure { printed: Printed::whole(first.size), origin });
             }
         }
+    }
+    siblings(groups);
+}
+
+/// A count with its percentage and no total.
+fn open(group: &Group) -> Option<(u64, Printed)> {
+    let events = group.events?.printed.count()?;
+    group.percent.filter(|_| group.total.is_none() && !group.approximate).map(|p| (events, p))
+}
+
+fn fits(events: u64, total: u64, percent: Printed) -> bool {
+    total > 0 && percent.rounded().widened(1e-12).contains(100.0 * events as f64 / total as f64)
+}
+
+/// `38 male (63.3%) and 22 female (36.7%)`: the categories of one sentence, where all percentages fit their sum.
+fn categories(groups: &mut [Group]) {
+    let mut from = 0;
+    while from < groups.len() {
+        let sentence = groups[from].sentence;
+        let to = from + groups[from..].iter().take_while(|g| g.sentence == sentence).count();
+        let counts: Option<Vec<(u64, Printed)>> = groups[from..to].iter().map(open).collect();
+        if let Some(counts) = counts.filter(|c| c.len() >= 2) {
+            let sum = counts.iter().map(|c| c.0).sum();
+            if counts.iter().all(|&(events, percent)| fits(events, sum, percent)) {
+                let span = groups[from].span.to(groups[to - 1].span);
+                for group in &mut groups[from..to] {
+                    let origin = Origin::Inferred(Inference::Categories, span);
+                    group.total = Some(Figure { printed: Printed::whole(sum), origin });
+                    group.n = group.total;
+                }
+            }
+        }
+        from = to;
+    }
+}
+
+/// A count whose percentage fits no size, in a sentence whose other counts all have one and the same total (as has all
+/// the paragraph, twice at least).
+fn siblings(groups: &mut [Group]) {
+    let totals: Vec<Figure> =
+        groups.iter().filter(|g| g.percent.is_some() && g.events.is_some()).filter_map(|g| g.total).collect();
+    let Some(&first) = totals.first() else { return };
+    if totals.len() < 2 || first.printed.digits < 20 || totals.iter().any(|t| t.printed != first.printed) {
+        return;
+    }
+    let span = match first.origin {
+        Origin::Printed(span) | Origin::Inferred(_, span) => span,
+        Origin::Assumed(_) => return,
+    };
+    let counts = groups.iter().filter(|g| g.percent.is_some() && g.events.is_some()).count();
+    if counts != totals.len() + 1 {
+        return;
+    }
+    let odd = groups.iter_mut().find(|g| open(g).is_some_and(|(events, _)| events < first.printed.digits));
+    if let Some(group) = odd {
+        group.total = Some(Figure { printed: first.printed, origin: Origin::Inferred(Inference::Siblings, span) });
+        group.n = group.total;
     }
 }

@@ -126,21 +126,7 @@ fn summary(
     bracket: Option<Bracket>,
 ) -> Option<Group> {
     let header = Figure { printed: Printed::whole(size.value), origin: Origin::Inferred(Inference::Header, size.span) };
-    let group = Group {
-        span: view.span(read.first, read.last),
-        sentence: view.id,
-        label: String::new(),
-        n: Some(header),
-        events: None,
-        total: None,
-        percent: None,
-        mean: None,
-        median: None,
-        spread_kind: None,
-        spread: Vec::new(),
-        change: false,
-        one_expression: false,
-    };
+    let group = Group { n: Some(header), ..Group::new(view.span(read.first, read.last), view.id) };
     let mean = |centre: Printed, kind: SpreadKind, spread: Printed| {
         (!spread.negative).then(|| Group {
             mean: Some(centre),

@@ -1,7 +1,8 @@
 //! Sentences that conclude more, or other things, than the figures beside them carry.
 
+use crate::manuscript::{BlockKind, SectionKind};
 use crate::query::{Explanation, RepairKind};
-use crate::reading::{Claim, ClaimKind, PValue, Role};
+use crate::reading::{Attribution, Claim, ClaimKind, PValue, Role};
 use crate::rule::Facts;
 use crate::rule::check::{Backing, Claimed, Per, Says, Whose};
 use crate::rule::finding::{Draft, Finding};
@@ -23,6 +24,8 @@ pub fn claim(facts: &Facts, kinds: &[Claimed], of: &[Whose], backing: Backing, p
     let mut singles: Vec<Finding> = Vec::new();
     for claim in &facts.readings.claims {
         let wanted = kinds.iter().any(|k| k.is(kind_of(claim))) && of.iter().any(|w| w.is(claim.attribution));
+        // What an introduction tells is what others found.
+        let wanted = wanted && facts.manuscript.section(claim.span).kind != SectionKind::Introduction;
         if let Some(found) = wanted.then(|| backed(facts, claim, backing)).flatten() {
             singles.push(finding(facts, claim, &found));
         }
@@ -54,14 +57,19 @@ fn backed<'a>(facts: &Facts<'a>, claim: &Claim, backing: Backing) -> Option<Foun
         Backing::PAboveAlpha => {
             let all = !p.is_empty() && p.iter().all(|p| is_effect(p) && alpha.below(p));
             let margin = sentence.contains("margin") || facts.context.non_inferiority.is_some();
-            all && !in_sentence().any(|p| elsewhere(&p)) && !(interval.is_some() && margin) && !excepted(&sentence)
+            let judged = interval.is_some() && margin;
+            all && !judged && !in_sentence().any(|p| elsewhere(&p)) && !excepted(&sentence)
         }
         Backing::NoPBelowAlpha => {
             let trend = p.iter().any(|p| matches!(p.role, Role::TrendOrJoint | Role::Interaction));
-            !trend && p.iter().all(|p| alpha.below(p))
+            // Without a p only the plain wording is asked about: "opposite trends" may be of another kind.
+            let quote = facts.quote(claim.span).to_lowercase();
+            let plain = !p.is_empty() || quote.contains("toward") || quote.contains("significan");
+            plain && !trend && p.iter().all(|p| alpha.below(p))
         }
         Backing::Nothing => {
-            let bare = interval.is_none() && !facts.figures_in_block(claim.span);
+            let text = matches!(facts.manuscript.block(claim.span).kind, BlockKind::Paragraph | BlockKind::ListItem);
+            let bare = text && interval.is_none() && !facts.figures_in_block(claim.span);
             let told = facts.reports_results(claim.span) || facts.drives_message(claim.span);
             let points = ["table", "fig", "appendix", "supplement", "see ", "described", "previous", "elsewhere"];
             bare && told && !points.iter().any(|w| sentence.contains(w)) && !excepted(&sentence)
@@ -89,7 +97,8 @@ fn excepted(sentence: &str) -> bool {
 fn finding(facts: &Facts, claim: &Claim, found: &Found) -> Finding {
     let quote = wording::one_line(facts.quote(claim.span));
     let alpha = facts.alpha();
-    let p: Vec<String> = found.p.iter().map(|p| p_words(facts, p)).collect();
+    let mut p: Vec<String> = found.p.iter().map(|p| p_words(facts, p)).collect();
+    p.dedup();
     let says = match (&p[..], found.interval) {
         ([], None) => format!("“{quote}” stands without a p-value or an interval in its sentence."),
         ([], Some(i)) => format!("“{quote}” stands beside {}.", wording::one_line(facts.quote(i))),
@@ -135,17 +144,21 @@ fn results_of(facts: &Facts, p: &[&PValue]) -> Vec<usize> {
     facts.results.iter().enumerate().filter(|(_, r)| with(r)).map(|(i, _)| i).collect()
 }
 
-/// "no difference" → "no significant difference", and blanks for what lets readers judge.
+/// "no difference" → "no significant difference", with blanks for what lets readers judge.
 fn repair(facts: &Facts, claim: &Claim, found: &Found) -> Option<Draft> {
     if kind_of(claim) != ClaimKind::NoDifference {
         return None;
     }
     let quote = facts.quote(claim.span);
-    // Only where the phrase is the plain one: elsewhere a new wording is the author's to find.
-    let noun = ["no differences", "no difference"].into_iter().find(|n| quote.eq_ignore_ascii_case(n))?;
-    let start = if quote.starts_with('N') { "No" } else { "no" };
+    // Only where the phrase is a plain one: elsewhere a new wording is the author's to find.
+    let plain = [
+        ("no differences", "no significant differences"),
+        ("no difference", "no significant difference"),
+        ("did not differ", "did not differ significantly"),
+    ];
+    let (phrase, careful) = plain.into_iter().find(|(phrase, _)| quote.contains(phrase))?;
     let blanks = if found.interval.is_some() { "" } else { " (difference …, 95 % CI … to …)" };
-    let text = format!("{start} significant {}{blanks}", &noun[3..]);
+    let text = format!("{}{blanks}", quote.replacen(phrase, careful, 1));
     Some(Draft { kind: RepairKind::Replace, at: claim.span, text, needs_confirmation: true })
 }
 
@@ -185,7 +198,9 @@ pub fn against_p(facts: &Facts, says: Says) -> Vec<Finding> {
             Says::Significant => claim.kind == ClaimKind::Difference && claim.says_significant,
             Says::NotSignificant => kind_of(claim) == ClaimKind::NotSignificant,
         };
-        if !kind || claim.attribution == crate::reading::Attribution::Plan {
+        let told = facts.manuscript.section(claim.span).kind == SectionKind::Introduction
+            || matches!(claim.attribution, Attribution::Plan | Attribution::OtherAuthors);
+        if !kind || told || excepted(&facts.sentence(claim.sentence)) {
             continue;
         }
         let p = facts.p_of(claim);
@@ -199,7 +214,8 @@ pub fn against_p(facts: &Facts, says: Says) -> Vec<Finding> {
             continue;
         }
         let quote = wording::one_line(facts.quote(claim.span));
-        let words: Vec<String> = p.iter().map(|p| p_words(facts, p)).collect();
+        let mut words: Vec<String> = p.iter().map(|p| p_words(facts, p)).collect();
+        words.dedup();
         let side = if says == Says::Significant { "above" } else { "below" };
         let text = format!("“{quote}” stands beside {}, {side} alpha = {}.", words.join(" and "), alpha.words());
         let weight = Weight { drives_message: facts.drives_message(claim.span), ..Weight::reporting() };

@@ -73,7 +73,8 @@ fn two_figures(facts: &Facts, claim: &Claim, direction: Direction) -> Option<Fin
     }
     // The order is plain when "than" stands once, between the claim and both figures, and only a
     // comparing word stands between the figures.
-    let before = facts.between(claim.span, first.span);
+    let begin = Span { end: claim.span.start, ..claim.span };
+    let before = facts.between(begin, first.span);
     let thans = before.split(|c: char| !c.is_alphabetic()).filter(|w| *w == "than").count();
     let between = facts.between(first.span, second.span);
     let joined = between.split(|c: char| !c.is_alphabetic()).any(|w| ["v", "vs", "versus", "compared"].contains(&w));
@@ -140,7 +141,5 @@ fn finding(facts: &Facts, claim: &Claim, printed: String, says: String) -> Findi
     let weight = Weight { drives_message: facts.drives_message(claim.span), ..Weight::reporting() };
     let mut f = Finding::at(claim.span, weight, says);
     f.fills.push(("printed", printed));
-    let spans: Vec<Span> = vec![claim.span];
-    f.figures = spans;
     f
 }

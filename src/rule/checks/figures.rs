@@ -1,8 +1,9 @@
 //! Figures that their own definition rules out, whatever was analysed.
 
 use crate::printed::Printed;
-use crate::query::{Ground, RepairKind};
+use crate::query::{Ground, RepairKind, Verdict};
 use crate::reading::{Measure, Relation, Scale, Symbol};
+use crate::recompute::Quantity;
 use crate::rule::Facts;
 use crate::rule::check::{Bounded, Pair};
 use crate::rule::checks::recomputed::with_p;
@@ -78,13 +79,9 @@ pub fn order(facts: &Facts, of: Pair) -> Vec<Finding> {
                     r.interval.is_some_and(|k| readings.intervals[k].span == i.span)
                         && r.estimate.is_some_and(|k| readings.estimates[k].scale == Scale::Reciprocal)
                 });
-                if i.lower.value() > i.upper.value() && !reciprocal {
-                    let says = format!(
-                        "Printed {}; the lower limit {} is above the upper limit {}.",
-                        wording::one_line(facts.quote(i.span)),
-                        i.lower,
-                        i.upper
-                    );
+                if (i.reversed || i.lower.value() > i.upper.value()) && !reciprocal {
+                    let quote = wording::one_line(facts.quote(i.span));
+                    let says = format!("Printed {quote}; the larger limit stands first.");
                     findings.push(about(facts, i.span, says));
                 }
             }
@@ -116,44 +113,39 @@ pub fn order(facts: &Facts, of: Pair) -> Vec<Finding> {
     findings
 }
 
-/// The estimate lies outside the interval printed for it, rounding allowed for.
+/// The estimate lies outside the interval printed for it, as the recomputation found.
 pub fn estimate_outside_interval(facts: &Facts) -> Vec<Finding> {
     let readings = facts.readings;
     let mut findings = Vec::new();
-    for (number, result) in facts.results.iter().enumerate() {
+    for checked in facts.checked {
+        let result = &facts.results[checked.result];
         let (Some(e), Some(i)) = (result.estimate, result.interval) else { continue };
         let (e, i) = (&readings.estimates[e], &readings.intervals[i]);
-        // The pair must be beyond doubt: same sentence, estimate first, no other estimate or interval between.
-        let between = |s: Span| {
-            s != e.span && s != i.span && s.block == e.span.block && s.start >= e.span.start && s.end <= i.span.end
-        };
+        let outside = checked
+            .recomputations
+            .iter()
+            .find(|r| r.of == Quantity::Interval && r.ground == Ground::ByDefinition && r.verdict == Verdict::Differs);
+        let Some(r) = outside else { continue };
+        // The pair must be beyond doubt: the estimate first, and no other estimate or interval between.
+        let (from, to) = (e.span, i.span);
+        let between = |s: Span| s.block == from.block && from.end <= s.start && s.end <= to.start;
         let apart =
             readings.estimates.iter().any(|x| between(x.span)) || readings.intervals.iter().any(|x| between(x.span));
-        let alike = e.percent == i.percent || e.measure != Measure::Other;
-        if e.sentence != i.sentence
-            || e.span.start > i.span.start
-            || apart
-            || !alike
-            || i.lower.value() > i.upper.value()
-        {
+        // `OR0.5`: the figure read begins inside a printed one.
+        let before = &facts.manuscript.block(from).text[..from.start as usize];
+        let torn = before.ends_with(|c: char| c == '.' || c == ',' || c.is_ascii_digit());
+        if from.block != to.block || from.start > to.start || apart || torn {
             continue;
         }
-        let held = i.lower.rounded().hull(i.upper.rounded());
-        if e.scale == Scale::Reciprocal || held.meets(e.value.rounded()) {
-            continue;
-        }
-        let interval = wording::one_line(facts.quote(i.span));
-        let estimate = wording::one_line(facts.quote(e.span));
+        let (estimate, interval) = (wording::one_line(facts.quote(from)), wording::one_line(facts.quote(to)));
         let says = format!("Printed {estimate} with {interval}, which does not hold {}.", e.value);
-        let mut f = about(facts, e.span, says);
+        let mut f = about(facts, to, says);
         f.fills = vec![("printed", estimate), ("computed", interval)];
-        f.related.push((i.span, "the interval".to_owned()));
-        f.figures.push(i.span);
-        if !e.value.negative && (i.lower.negative || i.upper.negative) || held.meets(e.value.negated().rounded()) {
-            let says = "A minus sign may have been lost from the estimate or from a limit.".to_owned();
-            f.explanations.push(crate::query::Explanation { kind: "sign-lost".to_owned(), says });
-        }
-        f.results = vec![number];
+        f.working = Some(r.working.clone());
+        f.related.push((from, "the estimate".to_owned()));
+        f.figures.push(from);
+        f.explanations.extend(r.slip.as_ref().map(wording::slip));
+        f.results = vec![checked.result];
         findings.push(f);
     }
     findings
@@ -165,7 +157,7 @@ pub fn printed_zero(facts: &Facts) -> Vec<Finding> {
         let relations = [Relation::Equal, Relation::Less, Relation::AtMost];
         p.value.is_some_and(|v| v.digits == 0) && relations.contains(&p.relation)
     };
-    facts
+    let found = facts
         .readings
         .p
         .iter()
@@ -175,15 +167,32 @@ pub fn printed_zero(facts: &Facts) -> Vec<Finding> {
             let says = format!("Printed {}; a p-value can be very small, but not zero.", wording::one_line(quote));
             let mut f = Finding { weight: Weight::reporting(), ..about(facts, p.span, says) };
             let number = wording::last_number(quote);
-            // `0.000` stands for less than 0.0005; with two places nothing smaller than 0.01 is sure.
-            let bound = if p.value.is_some_and(|v| v.places >= 3) { "< 0.001" } else { "< 0.01" };
-            f.repair = number.map(|(at, _)| Draft {
+            // `0.000` stands for less than 0.0005, so that `< 0.001` is safe; and so on for other places.
+            f.repair = number.filter(|(_, places)| *places >= 2).map(|(at, places)| Draft {
                 kind: RepairKind::Replace,
                 at: p.span,
-                text: with_p(quote, at, bound),
+                text: with_p(quote, at, &format!("< 0.{:0>places$}", 1)),
                 needs_confirmation: p.relation != Relation::Equal,
             });
             f
         })
-        .collect()
+        .collect();
+    one_per_table(facts, found)
+}
+
+/// A table full of `0.000` is one question, with all its places.
+fn one_per_table(facts: &Facts, found: Vec<Finding>) -> Vec<Finding> {
+    let mut kept: Vec<Finding> = Vec::new();
+    for f in found {
+        let span = f.at[0];
+        let first = kept.iter_mut().find(|k| facts.in_table(span) && k.at[0].block == span.block);
+        match first {
+            Some(first) => {
+                first.related.push((span, "printed likewise".to_owned()));
+                first.results.extend(f.results);
+            }
+            None => kept.push(f),
+        }
+    }
+    kept
 }

@@ -38,7 +38,8 @@ pub fn unstated(facts: &Facts, what: Statement) -> Vec<Finding> {
         }
         Statement::Power => {
             let stated = context.power.is_some() || reads(&[PlanningKind::Power]) || facts.mentions(&["power"]);
-            (reads(&[PlanningKind::SampleSize]) && !stated, "the power for which the sample size was planned")
+            let planned = reads(&[PlanningKind::SampleSize]) || in_methods(facts, "sample size of");
+            (planned && !stated, "the power for which the sample size was planned")
         }
     };
     let at = methods(facts);
@@ -49,6 +50,15 @@ pub fn unstated(facts: &Facts, what: Statement) -> Vec<Finding> {
             vec![Finding::wide(vec![at], Weight::reporting(), says, vec![name.to_owned()])]
         }
     }
+}
+
+/// A phrase (lower case) in the Methods, the abstract's apart.
+fn in_methods(facts: &Facts, phrase: &str) -> bool {
+    let m = facts.manuscript;
+    m.blocks.iter().any(|b| {
+        let section = &m.sections[b.section as usize];
+        section.kind == SectionKind::Methods && !section.in_abstract && b.text.to_lowercase().contains(phrase)
+    })
 }
 
 /// Words by which a level of significance may be stated in a form that was not read.

@@ -1,5 +1,6 @@
 //! Figures that were recomputed and differ.
 
+use crate::manuscript::SectionKind;
 use crate::query::{Explanation, Ground, RepairKind, Verdict};
 use crate::reading::{Relation, Role};
 use crate::recompute::{Checked, Quantity, Recomputation};
@@ -42,13 +43,12 @@ fn candidates<'a>(
     of: Of,
     from: &'a [Basis],
 ) -> impl Iterator<Item = &'a Recomputation> {
-    let tallies = |r: &Recomputation| {
-        // A definition stands by itself; elsewhere one candidate that tallies clears the figure.
-        r.ground != Ground::ByDefinition
-            && checked
-                .recomputations
-                .iter()
-                .any(|o| o.verdict == Verdict::Tallies && o.of == r.of && o.figure == r.figure)
+    // A definition stands by itself, and clears nothing else; otherwise one candidate that tallies clears the figure.
+    let clears = |o: &Recomputation, r: &Recomputation| {
+        o.verdict == Verdict::Tallies && o.ground != Ground::ByDefinition && o.of == r.of && o.figure == r.figure
+    };
+    let tallies = move |r: &Recomputation| {
+        r.ground != Ground::ByDefinition && checked.recomputations.iter().any(|o| clears(o, r))
     };
     checked.recomputations.iter().filter(move |r| {
         r.verdict == Verdict::Differs
@@ -56,8 +56,29 @@ fn candidates<'a>(
             && of.is(r.of)
             && r.computed.is_some()
             && from.contains(&basis(facts, checked, r))
+            && !within_group(facts, checked, r)
+            && !small_total_elsewhere(facts, checked, r)
             && !tallies(r)
     })
+}
+
+/// An "estimate" that is really the summary of one of the groups: a reading too doubtful to ask about.
+fn within_group(facts: &Facts, checked: &Checked, r: &Recomputation) -> bool {
+    let groups = &facts.results[checked.result].groups;
+    r.of == Quantity::Estimate && groups.iter().any(|&i| facts.readings.groups[i].span.overlaps(r.figure))
+}
+
+/// A percentage of a handful that stands elsewhere: "two strategies … in 2 (18 %) measures" is of other things.
+fn small_total_elsewhere(facts: &Facts, checked: &Checked, r: &Recomputation) -> bool {
+    const HANDFUL: u64 = 10;
+    let groups = facts.results[checked.result].groups.iter().map(|&i| &facts.readings.groups[i]);
+    let mut totals = groups.filter_map(|g| g.total.and_then(|t| t.printed.count()));
+    elsewhere(r) && totals.any(|t| t < HANDFUL)
+}
+
+/// Count, total and percentage are not printed in one expression.
+fn elsewhere(r: &Recomputation) -> bool {
+    matches!(r.of, Quantity::Percent | Quantity::Events | Quantity::Total) && r.ground != Ground::ByDefinition
 }
 
 /// What a figure was recomputed from: the reading nearest to a test's own arithmetic that is among its inputs.
@@ -95,12 +116,18 @@ fn basis(facts: &Facts, checked: &Checked, r: &Recomputation) -> Basis {
 
 fn finding(facts: &Facts, checked: &Checked, r: &Recomputation, all: &[&Recomputation]) -> Finding {
     let quote = facts.quote(r.figure);
-    let printed = wording::one_line(quote);
+    let percent = (r.of == Quantity::Percent).then(|| wording::percent_number(quote)).flatten();
+    let sign = if percent.is_some() { "%" } else { "" };
+    let printed = percent.map_or_else(|| wording::one_line(quote), |(at, _)| format!("{}%", &quote[at]));
     let computed = r.computed.map_or(String::new(), |range| match r.of {
         Quantity::P => wording::p_range(range),
-        _ => wording::figure_range(range, wording::last_number(quote).map_or(0, |(_, places)| places)),
+        of => wording::figure_range(range, number(of, quote).map_or(0, |(_, places)| places)) + sign,
     });
-    let from = inputs(facts, r);
+    let mut from = inputs(facts, r);
+    let estimate = facts.results[checked.result].estimate.map(|i| &facts.readings.estimates[i]);
+    if let (Basis::Estimate, Some(se)) = (basis(facts, checked, r), estimate.and_then(|e| e.se)) {
+        from = format!("{from} with its standard error {se}");
+    }
     let says = match r.of {
         Quantity::P if is_bare(quote) => format!("Printed P {printed}; from {from} we get {computed}."),
         Quantity::P => format!("Printed {printed}; from {from} we get {computed}."),
@@ -113,7 +140,7 @@ fn finding(facts: &Facts, checked: &Checked, r: &Recomputation, all: &[&Recomput
     f.labels = facts.results[checked.result].groups.iter().map(|&i| facts.readings.groups[i].label.clone()).collect();
     f.fills = vec![("printed", printed), ("computed", computed), ("method", r.method.name.to_owned())];
     if let Some(slip) = all.iter().find_map(|r| r.slip.as_ref()) {
-        f.explanations.push(Explanation { kind: slip.kind.to_owned(), says: sentence(&slip.says) });
+        f.explanations.push(wording::slip(slip));
     }
     f.explanations.extend(r.assumptions.iter().map(|&a| wording::assumption(a)));
     let mut others: Vec<&str> = all.iter().map(|o| o.method.name).filter(|n| *n != r.method.name).collect();
@@ -126,16 +153,32 @@ fn finding(facts: &Facts, checked: &Checked, r: &Recomputation, all: &[&Recomput
     f
 }
 
-/// The inputs as a phrase: "the interval 0.94–1.61".
+/// The inputs as a phrase: "4.1 (SD 1.2) and 5.3 (SD 1.4) with n = 40 and 40".
 fn inputs(facts: &Facts, r: &Recomputation) -> String {
     const MOST: usize = 4;
-    let mut spans: Vec<Span> = r.inputs.iter().map(|&(s, _)| s).filter(|&s| s != r.figure).collect();
-    spans.sort();
-    spans.dedup();
-    match spans.len() {
-        0 => "the other figures".to_owned(),
-        1..=MOST => spans.iter().map(|&s| wording::one_line(facts.quote(s))).collect::<Vec<_>>().join(" and "),
-        n => format!("the {n} figures beside it"),
+    let part = |name: &str| r.inputs.iter().find(|(_, part)| *part == name).map(|&(s, _)| facts.quote(s));
+    if let (Some(count), Some(total)) = (part("the count"), part("the total")) {
+        return wording::one_line(&format!("{count} of {total}"));
+    }
+    let others = || r.inputs.iter().filter(|(s, _)| *s != r.figure);
+    let words = |sizes: bool| {
+        let mut spans: Vec<Span> = Vec::new();
+        for &(span, _) in others().filter(|(_, part)| (*part == "the group size") == sizes) {
+            // The degrees of freedom of `t(28) = 2.20` are told by the statistic itself.
+            if !spans.iter().any(|s| s.contains(span)) {
+                spans.push(span);
+            }
+        }
+        spans.sort();
+        spans.iter().map(|&s| wording::one_line(facts.quote(s))).collect::<Vec<_>>()
+    };
+    let (figures, sizes) = (words(false), words(true));
+    match (figures.len(), sizes.len()) {
+        (0, 0) => "the other figures".to_owned(),
+        (0, _) => format!("n = {}", sizes.join(" and ")),
+        (1..=MOST, 0) => figures.join(" and "),
+        (1..=MOST, 1..=MOST) => format!("{} with n = {}", figures.join(" and "), sizes.join(" and ")),
+        (n, _) => format!("the {n} figures beside it"),
     }
 }
 
@@ -153,7 +196,10 @@ fn weight(facts: &Facts, checked: &Checked, r: &Recomputation) -> Weight {
         ground: r.ground,
         distance,
         drives_message: false,
-        peripheral: p.is_some_and(|p| matches!(p.role, Role::Baseline | Role::AssumptionOrFit)),
+        // What an introduction reports is mostly the work of others; a percentage may be of another total.
+        peripheral: p.is_some_and(|p| matches!(p.role, Role::Baseline | Role::AssumptionOrFit))
+            || facts.manuscript.section(r.figure).kind == SectionKind::Introduction
+            || elsewhere(r),
         table_vouches: r.ground == Ground::IfUnadjusted && table_vouches(facts, checked, r),
     }
 }
@@ -188,7 +234,7 @@ fn repair(r: &Recomputation, quote: &str) -> Option<Draft> {
         return None;
     }
     let range = r.computed?;
-    let (at, places) = wording::last_number(quote)?;
+    let (at, places) = number(r.of, quote)?;
     let text = match r.of {
         Quantity::P => with_p(quote, at, &wording::journal_p(range)?),
         Quantity::Percent => {
@@ -206,6 +252,12 @@ fn repair(r: &Recomputation, quote: &str) -> Option<Draft> {
     Some(Draft { kind: RepairKind::Replace, at: r.figure, text, needs_confirmation: true })
 }
 
+/// The figure in question within its quote, with its decimal places.
+fn number(of: Quantity, quote: &str) -> Option<(std::ops::Range<usize>, usize)> {
+    let percent = (of == Quantity::Percent).then(|| wording::percent_number(quote)).flatten();
+    if of == Quantity::Percent && quote.contains('%') { percent } else { wording::last_number(quote) }
+}
+
 /// Puts `= 0.13` for the relation and figure of a printed p; in a table cell, without the sign.
 pub fn with_p(quote: &str, at: std::ops::Range<usize>, p: &str) -> String {
     let signs = ['=', '<', '>', '≤', '≥', '⩽', '⩾', '‹', '›'];
@@ -217,13 +269,6 @@ pub fn with_p(quote: &str, at: std::ops::Range<usize>, p: &str) -> String {
 /// Printed without the letter P, as in a table cell.
 fn is_bare(quote: &str) -> bool {
     !quote.contains(['p', 'P'])
-}
-
-fn sentence(clause: &str) -> String {
-    let mut chars = clause.chars();
-    let first: String = chars.next().into_iter().flat_map(char::to_uppercase).collect();
-    let end = if clause.ends_with('.') { "" } else { "." };
-    format!("{first}{}{end}", chars.as_str())
 }
 
 #[cfg(test)]

@@ -14,6 +14,9 @@ use crate::rule::wording;
 use crate::text::Span;
 use std::collections::BTreeMap;
 
+/// "difference in mean walking distance of 42" is an estimate; a longer phrase may name something else.
+const LONGEST_ESTIMATE: usize = 60;
+
 /// One finding for each part of the manuscript; `says` gets the number of occurrences and the first quote.
 fn per_part(facts: &Facts, mut spans: Vec<Span>, says: impl Fn(usize, &str) -> String) -> Vec<Finding> {
     spans.sort();
@@ -93,8 +96,14 @@ pub fn missing(facts: &Facts, what: Part) -> Vec<Finding> {
             let bare = facts.results.iter().filter_map(|r| {
                 let e = &readings.estimates[r.estimate?];
                 let has_precision = r.interval.is_some() || e.se.is_some() || interval_beside(e.sentence);
-                (!has_precision && wants_interval(e.measure) && due(e.span) && !facts.in_table(e.span))
-                    .then_some(e.span)
+                // Without a p, or at the far end of a phrase, the figure may be no tested effect at all.
+                let of_group = readings.groups.iter().any(|g| g.span.overlaps(e.span));
+                // "difference in falls (3 of 58" ends in a bracket that says something else.
+                let torn = facts.quote(e.span).contains('(') && !facts.quote(e.span).contains(')');
+                let sure =
+                    r.p.is_some() && !of_group && !torn && facts.quote(e.span).chars().count() <= LONGEST_ESTIMATE;
+                let wanted = !has_precision && sure && wants_interval(e.measure) && due(e.span);
+                (wanted && !facts.in_table(e.span)).then_some(e.span)
             });
             per_part(facts, bare.collect(), |count, first| {
                 format!("An effect is given without an interval or standard error {} (first: {first}).", places(count))
@@ -133,7 +142,11 @@ pub fn missing(facts: &Facts, what: Part) -> Vec<Finding> {
 fn effect_missing(facts: &Facts, r: &ReportedResult) -> Option<Span> {
     let readings = facts.readings;
     let p = r.p.map(|i| &readings.p[i]).filter(|p| is_effect(p))?;
-    let doubtful = [Feature::OtherGroups, Feature::Unclear, Feature::Paired];
+    // Rank tests and medians have no effect that guidance would have everyone print.
+    let doubtful = [Feature::OtherGroups, Feature::Unclear, Feature::Paired, Feature::Ranked, Feature::TimeToEvent];
+    if r.groups.iter().any(|&i| readings.groups[i].median.is_some()) {
+        return None;
+    }
     if r.groups.len() != 2 || r.estimate.is_some() || r.interval.is_some() || doubtful.iter().any(|&f| r.has(f)) {
         return None;
     }
@@ -196,22 +209,21 @@ pub fn spread_unnamed(facts: &Facts, sign: SpreadSign) -> Vec<Finding> {
         }
     };
     let at: Vec<Span> = unnamed.map(|g| g.span).filter(|&s| with_sign(s)).collect();
-    if at.is_empty() || facts.context.spread.is_some() || facts.mentions(&SPREAD_NAMES) {
+    // The name may stand in Methods that this text does not hold.
+    let fragment = !facts.context.has_methods;
+    if at.is_empty() || fragment || facts.context.spread.is_some() || facts.mentions(&SPREAD_NAMES) {
         return Vec::new();
     }
     let first = wording::one_line(facts.quote(at[0]));
-    let (figure, count) = match sign {
-        SpreadSign::PlusMinus => ("figure after ±", at.len()),
-        SpreadSign::Brackets => ("figure in brackets", at.len()),
+    let count = at.len();
+    let (figure, label) = match sign {
+        SpreadSign::PlusMinus => ("figure after ±", "plus-minus"),
+        SpreadSign::Brackets => ("figure in brackets", "brackets"),
     };
     let says = format!(
         "The {figure} is nowhere said to be a standard deviation or a standard error ({}, first in {first}).",
         places(count)
     );
-    let label = match sign {
-        SpreadSign::PlusMinus => "plus-minus",
-        SpreadSign::Brackets => "brackets",
-    };
     let mut f = Finding::wide(at, Weight::reporting(), says, vec![label.to_owned()]);
     f.fills.push(("count", count.to_string()));
     vec![f]

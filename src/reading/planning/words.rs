@@ -1,0 +1,87 @@
+//! Word lists of the planning recogniser.
+
+/// Verbs that make a p a limit: "was considered significant".
+pub(super) const DECLARES: &[&str] = &[
+    "considered", "regarded", "deemed", "defined", "set", "taken", "accepted", "declared", "judged", "assumed",
+    "established", "chosen", "used", "specified", "determined", "by", "fixed", "interpreted", "threshold", "cutoff",
+    "criterion", "adopted", "selected", "viewed", "treated", "classified", "designated", "stipulated", "thresholds",
+    "cut", "level", "levels", "limit", "applied", "rejected", "admitted", "assigned",
+];
+
+/// Verbs that make a p the subject of a definition: "P < 0.05 indicates …".
+pub(super) const STANDS_FOR: &[&str] = &[
+    "indicated", "indicates", "indicate", "denotes", "denoted", "denote", "represents", "represented", "represent",
+    "indicating", "as", "means", "signifies", "signified", "reflects",
+];
+
+/// Words between a mark and its p.
+pub(super) const LEGEND_WORDS: &[&str] = &[
+    "indicates", "indicate", "denotes", "represents", "significant", "significantly", "at", "statistically",
+    "means", "difference", "for", "the", "with", "signifies",
+];
+
+/// Words that may stand between "was set at" and the p.
+pub(super) const THRESHOLD_LINKS: &[&str] = &[
+    "at", "as", "to", "be", "if", "when", "the", "a", "an", "of", "for", "with", "was", "were", "is", "by", "p",
+    "value", "values", "level", "difference", "differences", "statistically", "than", "probability", "less", "on",
+    "all", "tests", "in", "statistical", "where", "analyses", "and", "below", "it", "corresponding", "under",
+    "their", "its", "two", "alpha", "any", "resulting", "associated", "highly", "only",
+];
+
+/// What an interval does to the null value.
+pub(super) const EXCLUDES_NULL: &[&str] = &[
+    "contain", "include", "exclude", "excluded", "excludes", "cross", "contained", "overlap", "crossed",
+    "overlapped",
+];
+
+/// Words between "alpha" and its figure.
+pub(super) const ALPHA_LINKS: &[&str] = &[
+    "level", "levels", "error", "rate", "was", "were", "is", "of", "at", "set", "the", "a", "an", "to", "as", "be",
+    "and", "value", "probability", "significance", "fixed", "equal", "chosen", "2", "1", "α", "β", "alpha", "used",
+    "being", "risk", "taken", "for", "assumed", "established", "accepted", "i", "type", "defined", "than", "less",
+    "statistical", "overall", "specified", "determined", "by", "adjusted", "assuming", "with",
+];
+
+/// Words between "power" and its figure.
+pub(super) const POWER_LINKS: &[&str] = &[
+    "of", "at", "was", "is", "set", "to", "β", "beta", "least", "level", "the", "be", "a", "approximately", "about",
+    "and", "equal", "greater", "than", "over", "fixed", "analysis", "desired",
+];
+
+/// Words of a sample-size calculation.
+pub(super) const CALCULATES: &[&str] = &[
+    "power", "detect", "calculated", "calculation", "estimated", "alpha", "α", "assuming", "sample", "powered",
+    "significance",
+];
+
+/// Units after a number that counts no people.
+pub(super) const MEASURES: &[&str] = &[
+    "years", "months", "weeks", "days", "mg", "kg", "mm", "cm", "points", "point", "minutes", "hours", "times",
+    "mmhg", "ml", "fold", "per",
+];
+
+/// Words within the name of a correction.
+pub(super) const CORRECTION_LINKS: &[&str] = &[
+    "keuls", "honestly", "significant", "difference", "honest", "kramer", "range", "s", "type", "for",
+    "comparisons", "and", "method",
+];
+
+/// Words.
+pub(super) const ADJUSTS: &[&str] = &[
+    "adjusted", "adjustment", "adjustments", "corrected", "correction", "corrections", "correct", "adjust",
+    "adjusting", "correcting", "accounting", "account", "controlled", "control",
+];
+
+/// Words.
+pub(super) const TEST_WORDS: &[&str] = &[
+    "test", "tests", "correction", "corrections", "adjustment", "adjusted", "corrected", "procedure", "method",
+    "post", "hoc", "posthoc", "comparison", "comparisons", "multiple", "range", "rate", "analysis",
+];
+
+/// Who or what is counted into a sample.
+pub(super) const PEOPLE: &[&str] = &[
+    "patients", "subjects", "participants", "volunteers", "women", "men", "children", "individuals", "people",
+    "infants", "animals", "rats", "mice", "clusters", "eyes", "students", "practices", "adults", "persons",
+    "completers", "cases", "events", "pairs", "families", "girls", "boys", "schools", "villages", "teeth", "babies",
+    "mothers", "evaluable", "households", "dogs", "pigs", "residents", "respondents",
+];
