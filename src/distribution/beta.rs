@@ -1,8 +1,6 @@
 //! The regularised incomplete beta function, both tails, and its inverse.
 
-use super::kernel::{
-    bracketed_root, deviance, difference_of_products, finite, open_unit, stirling,
-};
+use super::kernel::{bracketed_root, deviance, difference_of_products, finite, open_unit, stirling};
 use super::{DistributionError, Tails, normal_quantile};
 
 /// Bound on the steps of the continued fraction. It needs about the square root
@@ -44,22 +42,10 @@ pub fn beta(x: f64, y: f64, a: f64, b: f64) -> Result<Tails, DistributionError> 
 ///
 /// `lambda` is `a·y − b·x`, positive below the mean. Callers that know it better
 /// than the products give it pass their own.
-pub(super) fn evaluate(
-    x: f64,
-    y: f64,
-    a: f64,
-    b: f64,
-    lambda: f64,
-) -> Result<Evaluation, DistributionError> {
+pub(super) fn evaluate(x: f64, y: f64, a: f64, b: f64, lambda: f64) -> Result<Evaluation, DistributionError> {
     if x <= 0.0 || y <= 0.0 {
         let lower = if x <= 0.0 { 0.0 } else { 1.0 };
-        return Ok(Evaluation {
-            tails: Tails {
-                lower,
-                upper: 1.0 - lower,
-            },
-            slope: 0.0,
-        });
+        return Ok(Evaluation { tails: Tails { lower, upper: 1.0 - lower }, slope: 0.0 });
     }
     let slope = prefactor(x, y, a, b, lambda);
     let (direct, swapped) = if lambda >= 0.0 {
@@ -72,17 +58,7 @@ pub(super) fn evaluate(
     }
     let direct = direct.clamp(0.0, 1.0);
     let other = 1.0 - direct;
-    let tails = if swapped {
-        Tails {
-            lower: other,
-            upper: direct,
-        }
-    } else {
-        Tails {
-            lower: direct,
-            upper: other,
-        }
-    };
+    let tails = if swapped { Tails { lower: other, upper: direct } } else { Tails { lower: direct, upper: other } };
     Ok(Evaluation { tails, slope })
 }
 
@@ -145,23 +121,11 @@ pub(super) fn evaluate_ratio(
     }
     if odds > EXTREME_ODDS {
         let upper = leading_term(-log, b, a)?;
-        return Ok(Evaluation {
-            tails: Tails {
-                lower: 1.0 - upper,
-                upper,
-            },
-            slope: b * upper,
-        });
+        return Ok(Evaluation { tails: Tails { lower: 1.0 - upper, upper }, slope: b * upper });
     }
     if odds < 1.0 / EXTREME_ODDS {
         let lower = leading_term(log, a, b)?;
-        return Ok(Evaluation {
-            tails: Tails {
-                lower,
-                upper: 1.0 - lower,
-            },
-            slope: a * lower,
-        });
+        return Ok(Evaluation { tails: Tails { lower, upper: 1.0 - lower }, slope: a * lower });
     }
     let (x, y) = if odds > 1.0 {
         let inverse = 1.0 / odds;
@@ -170,11 +134,7 @@ pub(super) fn evaluate_ratio(
         (odds / (1.0 + odds), 1.0 / (1.0 + odds))
     };
     // a·y − b·x = −a·y·(ratio − 1), or with x: the factor below 1 is the better.
-    let lambda = if odds > 1.0 {
-        -b * x * (excess / ratio)
-    } else {
-        -a * y * excess
-    };
+    let lambda = if odds > 1.0 { -b * x * (excess / ratio) } else { -a * y * excess };
     evaluate(x, y, a, b, lambda)
 }
 
@@ -187,11 +147,7 @@ fn leading_term(log: f64, a: f64, b: f64) -> Result<f64, DistributionError> {
     let exponent = a * log + n * (a / b).ln_1p() + stirling(n) - stirling(a) - stirling(b) - a.ln()
         + 0.5 * (a / n * b / std::f64::consts::TAU).ln();
     let value = exponent.exp();
-    if value.is_nan() {
-        Err(DistributionError::NotConverged)
-    } else {
-        Ok(value.min(1.0))
-    }
+    if value.is_nan() { Err(DistributionError::NotConverged) } else { Ok(value.min(1.0)) }
 }
 
 /// `ln((x/y)/(a/b))` at which the tails of the beta distribution are those given:
@@ -199,11 +155,7 @@ fn leading_term(log: f64, a: f64, b: f64) -> Result<f64, DistributionError> {
 /// smaller tail is used, so that nothing is lost in either.
 pub(super) fn log_ratio(target: Tails, a: f64, b: f64) -> Result<f64, DistributionError> {
     let use_lower = target.lower <= target.upper;
-    let wanted = if use_lower {
-        target.lower
-    } else {
-        target.upper
-    };
+    let wanted = if use_lower { target.lower } else { target.upper };
     if wanted <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
@@ -214,11 +166,7 @@ pub(super) fn log_ratio(target: Tails, a: f64, b: f64) -> Result<f64, Distributi
     let log_wanted = wanted.ln();
     bracketed_root(start.clamp(-700.0, 700.0), use_lower, |w| {
         let at = evaluate_ratio(w.exp(), w.exp_m1(), w, a, b)?;
-        let (tail, slope) = if use_lower {
-            (at.tails.lower, at.slope)
-        } else {
-            (at.tails.upper, -at.slope)
-        };
+        let (tail, slope) = if use_lower { (at.tails.lower, at.slope) } else { (at.tails.upper, -at.slope) };
         Ok((tail.ln() - log_wanted, slope / tail))
     })
 }
@@ -246,9 +194,6 @@ pub fn beta_quantile(lower: f64, a: f64, b: f64) -> Result<f64, DistributionErro
     if a <= 0.0 || b <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
-    let target = Tails {
-        lower,
-        upper: 1.0 - lower,
-    };
+    let target = Tails { lower, upper: 1.0 - lower };
     Ok(pair_at(log_ratio(target, a, b)?, a, b).0)
 }

@@ -12,10 +12,7 @@ use super::{DistributionError, Tails};
 /// (FreeBSD msun); the argument's rounding is corrected to first order.
 #[must_use]
 pub fn normal(z: f64) -> Tails {
-    Tails {
-        lower: normal_upper(-z),
-        upper: normal_upper(z),
-    }
+    Tails { lower: normal_upper(-z), upper: normal_upper(z) }
 }
 
 /// The upper tail of the standard normal distribution.
@@ -54,17 +51,7 @@ pub fn student(t: f64, df: f64) -> Result<Tails, DistributionError> {
     let two_sided = student_two_sided(t, df)?;
     let small = 0.5 * two_sided;
     let large = 1.0 - small;
-    Ok(if t >= 0.0 {
-        Tails {
-            lower: large,
-            upper: small,
-        }
-    } else {
-        Tails {
-            lower: small,
-            upper: large,
-        }
-    })
+    Ok(if t >= 0.0 { Tails { lower: large, upper: small } } else { Tails { lower: small, upper: large } })
 }
 
 /// Two-sided p-value of Student's `t` with `df > 0`: P(|T| ≥ |t|).
@@ -112,10 +99,7 @@ pub fn student_quantile(upper: f64, df: f64) -> Result<f64, DistributionError> {
     }
     // For upper > 1/2 the reflection 1 − upper is exact.
     let small = upper.min(1.0 - upper);
-    let target = Tails {
-        lower: 1.0 - 2.0 * small,
-        upper: 2.0 * small,
-    };
+    let target = Tails { lower: 1.0 - 2.0 * small, upper: 2.0 * small };
     let t = (0.5 * log_ratio(target, 0.5, 0.5 * df)?).exp();
     if !t.is_finite() {
         return Err(DistributionError::OutOfDomain);
@@ -133,14 +117,7 @@ pub fn f_quantile(upper: f64, df1: f64, df2: f64) -> Result<f64, DistributionErr
     if df1 <= 0.0 || df2 <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
-    let target = Tails {
-        lower: 1.0 - upper,
-        upper,
-    };
+    let target = Tails { lower: 1.0 - upper, upper };
     let x = log_ratio(target, 0.5 * df1, 0.5 * df2)?.exp();
-    if x.is_finite() {
-        Ok(x)
-    } else {
-        Err(DistributionError::OutOfDomain)
-    }
+    if x.is_finite() { Ok(x) } else { Err(DistributionError::OutOfDomain) }
 }

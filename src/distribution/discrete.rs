@@ -10,11 +10,7 @@ const MOST_COUNT: u64 = 1 << 53;
 
 /// Refuses counts that an `f64` cannot hold exactly.
 fn count(k: u64) -> Result<f64, DistributionError> {
-    if k <= MOST_COUNT {
-        Ok(k as f64)
-    } else {
-        Err(DistributionError::TooLarge)
-    }
+    if k <= MOST_COUNT { Ok(k as f64) } else { Err(DistributionError::TooLarge) }
 }
 
 /// Binomial distribution: `lower` = P(X ≤ k), `upper` = P(X ≥ k) for `n` trials
@@ -34,24 +30,15 @@ pub fn binomial(k: u64, n: u64, p: f64) -> Result<Tails, DistributionError> {
     // P(X ≥ j) = I_p(j, n − j + 1), with λ = j − (n + 1) p taken in one rounding.
     let from = |j: f64| -> Result<Tails, DistributionError> {
         if j <= 0.0 {
-            Ok(Tails {
-                lower: 1.0,
-                upper: 0.0,
-            })
+            Ok(Tails { lower: 1.0, upper: 0.0 })
         } else if j > size {
-            Ok(Tails {
-                lower: 0.0,
-                upper: 1.0,
-            })
+            Ok(Tails { lower: 0.0, upper: 1.0 })
         } else {
             let lambda = (size + 1.0).mul_add(-p, j);
             Ok(evaluate(p, 1.0 - p, j, size - j + 1.0, lambda)?.tails)
         }
     };
-    Ok(Tails {
-        lower: from(at + 1.0)?.upper,
-        upper: from(at)?.lower,
-    })
+    Ok(Tails { lower: from(at + 1.0)?.upper, upper: from(at)?.lower })
 }
 
 /// Poisson distribution with the given `mean ≥ 0`: `lower` = P(X ≤ k), `upper` =
@@ -66,10 +53,7 @@ pub fn poisson(k: u64, mean: f64) -> Result<Tails, DistributionError> {
         return Err(DistributionError::OutOfDomain);
     }
     let at = count(k)?;
-    Ok(Tails {
-        lower: gamma(mean, at + 1.0)?.upper,
-        upper: if k == 0 { 1.0 } else { gamma(mean, at)?.lower },
-    })
+    Ok(Tails { lower: gamma(mean, at + 1.0)?.upper, upper: if k == 0 { 1.0 } else { gamma(mean, at)?.lower } })
 }
 
 /// Largest population of [`hypergeometric`] and of the exact tests built on it:
@@ -106,21 +90,17 @@ impl Margins {
 
     /// P(X = k + 1) / P(X = k).
     pub fn up(&self, k: f64) -> f64 {
-        (self.marked - k) * (self.drawn - k)
-            / ((k + 1.0) * (self.population - self.marked - self.drawn + k + 1.0))
+        (self.marked - k) * (self.drawn - k) / ((k + 1.0) * (self.population - self.marked - self.drawn + k + 1.0))
     }
 
     /// P(X = k − 1) / P(X = k).
     pub fn down(&self, k: f64) -> f64 {
-        k * (self.population - self.marked - self.drawn + k)
-            / ((self.marked - k + 1.0) * (self.drawn - k + 1.0))
+        k * (self.population - self.marked - self.drawn + k) / ((self.marked - k + 1.0) * (self.drawn - k + 1.0))
     }
 
     /// The most probable count.
     pub fn mode(&self) -> f64 {
-        ((self.marked + 1.0) * (self.drawn + 1.0) / (self.population + 2.0))
-            .floor()
-            .clamp(self.least, self.most)
+        ((self.marked + 1.0) * (self.drawn + 1.0) / (self.population + 2.0)).floor().clamp(self.least, self.most)
     }
 
     /// P(X = k), by Loader's quotient of three binomial probabilities.
@@ -186,10 +166,7 @@ fn log_binomial(k: f64, n: f64, drawn: f64, population: f64) -> f64 {
     let gap = (n * drawn - k * population) / population;
     let rest = n - k;
     let exponent = k * deviance(gap / k, n * p / k) + rest * deviance(-gap / rest, n * q / rest);
-    0.5 * (n / (std::f64::consts::TAU * k * rest)).ln() + stirling(n)
-        - stirling(k)
-        - stirling(rest)
-        - exponent
+    0.5 * (n / (std::f64::consts::TAU * k * rest)).ln() + stirling(n) - stirling(k) - stirling(rest) - exponent
 }
 
 /// Hypergeometric distribution: of `population` units `marked` are of the first
@@ -202,12 +179,7 @@ fn log_binomial(k: f64, n: f64, drawn: f64, population: f64) -> f64 {
 /// population or `k` is impossible, [`DistributionError::TooLarge`] beyond a
 /// population of 9e7. Source: probability after Loader (2000), summed by the
 /// ratio of neighbours away from the mode.
-pub fn hypergeometric(
-    k: u64,
-    population: u64,
-    marked: u64,
-    drawn: u64,
-) -> Result<Tails, DistributionError> {
+pub fn hypergeometric(k: u64, population: u64, marked: u64, drawn: u64) -> Result<Tails, DistributionError> {
     let margins = Margins::new(population, marked, drawn)?;
     let at = count(k)?;
     if at < margins.least || at > margins.most {
@@ -221,10 +193,7 @@ pub fn hypergeometric(
         let upper = own * margins.outward(at, true);
         (1.0 - (upper - own), upper)
     };
-    Ok(Tails {
-        lower: lower.clamp(0.0, 1.0),
-        upper: upper.clamp(0.0, 1.0),
-    })
+    Ok(Tails { lower: lower.clamp(0.0, 1.0), upper: upper.clamp(0.0, 1.0) })
 }
 
 /// McNemar's exact two-sided p-value for discordant counts `b` and `c`: twice the

@@ -150,30 +150,17 @@ pub fn fisher_exact_table(table: &[&[u64]]) -> Result<f64, DistributionError> {
             *sum += x as usize;
         }
     }
-    let constant: f64 = rows
-        .iter()
-        .chain(&column_totals)
-        .map(|&m| log_factorial[m])
-        .sum::<f64>()
-        - log_factorial[total as usize];
-    let observed: f64 = constant
-        - table
-            .iter()
-            .flat_map(|row| row.iter())
-            .map(|&x| log_factorial[x as usize])
-            .sum::<f64>();
+    let constant: f64 =
+        rows.iter().chain(&column_totals).map(|&m| log_factorial[m]).sum::<f64>() - log_factorial[total as usize];
+    let observed: f64 =
+        constant - table.iter().flat_map(|row| row.iter()).map(|&x| log_factorial[x as usize]).sum::<f64>();
     rows.retain(|&m| m > 0);
     column_totals.retain(|&m| m > 0);
     if rows.len() > column_totals.len() {
         std::mem::swap(&mut rows, &mut column_totals);
     }
-    let mut walk = Walk {
-        log_factorial: &log_factorial,
-        columns: &column_totals,
-        limit: observed + 1e-7,
-        work: 0,
-        sum: 0.0,
-    };
+    let mut walk =
+        Walk { log_factorial: &log_factorial, columns: &column_totals, limit: observed + 1e-7, work: 0, sum: 0.0 };
     walk.column(0, &mut rows.clone(), constant)?;
     Ok(walk.sum.min(1.0))
 }
@@ -199,12 +186,7 @@ struct Walk<'a> {
 
 impl Walk<'_> {
     /// Fills column `index` in every way that the rows' rests allow.
-    fn column(
-        &mut self,
-        index: usize,
-        rests: &mut Vec<usize>,
-        log: f64,
-    ) -> Result<(), DistributionError> {
+    fn column(&mut self, index: usize, rests: &mut Vec<usize>, log: f64) -> Result<(), DistributionError> {
         if index + 1 == self.columns.len() {
             // The last column is what is left.
             let log = log - rests.iter().map(|&x| self.log_factorial[x]).sum::<f64>();
@@ -297,14 +279,8 @@ pub fn mann_whitney_exact(u: u64, n1: u64, n2: u64) -> Result<Tails, Distributio
     let before_near: f64 = to_near - row[near];
     let (near_tail, far_tail) = (to_near.min(1.0), (1.0 - before_near).clamp(0.0, 1.0));
     Ok(if u <= pairs - u {
-        Tails {
-            lower: near_tail,
-            upper: far_tail,
-        }
+        Tails { lower: near_tail, upper: far_tail }
     } else {
-        Tails {
-            lower: far_tail,
-            upper: near_tail,
-        }
+        Tails { lower: far_tail, upper: near_tail }
     })
 }

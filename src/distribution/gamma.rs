@@ -35,16 +35,9 @@ pub fn gamma(x: f64, a: f64) -> Result<Tails, DistributionError> {
 /// `x/a − 1`, which the quantile knows better than the quotient gives it.
 fn evaluate(x: f64, excess: f64, a: f64) -> Result<Evaluation, DistributionError> {
     if x <= 0.0 {
-        return Ok(Evaluation {
-            tails: Tails {
-                lower: 0.0,
-                upper: 1.0,
-            },
-            slope: 0.0,
-        });
+        return Ok(Evaluation { tails: Tails { lower: 0.0, upper: 1.0 }, slope: 0.0 });
     }
-    let slope =
-        (a / std::f64::consts::TAU).sqrt() * (-stirling(a) - a * deviance(excess, x / a)).exp();
+    let slope = (a / std::f64::consts::TAU).sqrt() * (-stirling(a) - a * deviance(excess, x / a)).exp();
     if slope.is_nan() {
         return Err(DistributionError::NotConverged);
     }
@@ -52,16 +45,10 @@ fn evaluate(x: f64, excess: f64, a: f64) -> Result<Evaluation, DistributionError
     // continued fraction away from small x, where it crawls.
     let tails = if x < a.max(0.5) {
         let lower = (slope * series(x, a)?).clamp(0.0, 1.0);
-        Tails {
-            lower,
-            upper: 1.0 - lower,
-        }
+        Tails { lower, upper: 1.0 - lower }
     } else {
         let upper = (slope * fraction(x, a)?).clamp(0.0, 1.0);
-        Tails {
-            lower: 1.0 - upper,
-            upper,
-        }
+        Tails { lower: 1.0 - upper, upper }
     };
     Ok(Evaluation { tails, slope })
 }
@@ -112,11 +99,7 @@ fn fraction(x: f64, a: f64) -> Result<f64, DistributionError> {
 /// given; only the smaller one is used.
 fn log_ratio(target: Tails, a: f64) -> Result<f64, DistributionError> {
     let use_lower = target.lower <= target.upper;
-    let wanted = if use_lower {
-        target.lower
-    } else {
-        target.upper
-    };
+    let wanted = if use_lower { target.lower } else { target.upper };
     if wanted <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
@@ -134,11 +117,7 @@ fn log_ratio(target: Tails, a: f64) -> Result<f64, DistributionError> {
     let log_wanted = wanted.ln();
     bracketed_root(start.clamp(-700.0, 700.0), use_lower, |w| {
         let at = evaluate(a * w.exp(), w.exp_m1(), a)?;
-        let (tail, slope) = if use_lower {
-            (at.tails.lower, at.slope)
-        } else {
-            (at.tails.upper, -at.slope)
-        };
+        let (tail, slope) = if use_lower { (at.tails.lower, at.slope) } else { (at.tails.upper, -at.slope) };
         Ok((tail.ln() - log_wanted, slope / tail))
     })
 }
@@ -162,9 +141,6 @@ pub fn chi_squared_quantile(upper: f64, df: f64) -> Result<f64, DistributionErro
     if df <= 0.0 {
         return Err(DistributionError::OutOfDomain);
     }
-    let target = Tails {
-        lower: 1.0 - upper,
-        upper,
-    };
+    let target = Tails { lower: 1.0 - upper, upper };
     Ok(df * log_ratio(target, 0.5 * df)?.exp())
 }

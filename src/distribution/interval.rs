@@ -20,30 +20,14 @@ pub fn clopper_pearson(x: u64, n: u64, level: f64) -> Result<(f64, f64), Distrib
     let lower = if x == 0 {
         0.0
     } else {
-        let target = Tails {
-            lower: side,
-            upper: 1.0 - side,
-        };
-        pair_at(
-            log_ratio(target, events, others + 1.0)?,
-            events,
-            others + 1.0,
-        )
-        .0
+        let target = Tails { lower: side, upper: 1.0 - side };
+        pair_at(log_ratio(target, events, others + 1.0)?, events, others + 1.0).0
     };
     let upper = if x == n {
         1.0
     } else {
-        let target = Tails {
-            lower: 1.0 - side,
-            upper: side,
-        };
-        pair_at(
-            log_ratio(target, events + 1.0, others)?,
-            events + 1.0,
-            others,
-        )
-        .0
+        let target = Tails { lower: 1.0 - side, upper: side };
+        pair_at(log_ratio(target, events + 1.0, others)?, events + 1.0, others).0
     };
     Ok((lower, upper))
 }

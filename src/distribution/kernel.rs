@@ -17,21 +17,13 @@ pub(super) const SQRT_2PI: f64 = 2.506_628_274_631_000_7;
 
 /// Refuses what is not a finite number, before anything is computed with it.
 pub(super) fn finite(values: &[f64]) -> Result<(), DistributionError> {
-    if values.iter().all(|value| value.is_finite()) {
-        Ok(())
-    } else {
-        Err(DistributionError::NotFinite)
-    }
+    if values.iter().all(|value| value.is_finite()) { Ok(()) } else { Err(DistributionError::NotFinite) }
 }
 
 /// Accepts a probability strictly between 0 and 1.
 pub(super) fn open_unit(p: f64) -> Result<(), DistributionError> {
     finite(&[p])?;
-    if p > 0.0 && p < 1.0 {
-        Ok(())
-    } else {
-        Err(DistributionError::OutOfDomain)
-    }
+    if p > 0.0 && p < 1.0 { Ok(()) } else { Err(DistributionError::OutOfDomain) }
 }
 
 /// `u − ln(1 + u)` for `ratio = 1 + u`, without cancellation near `u = 0`.
@@ -77,8 +69,7 @@ pub(super) fn stirling(a: f64) -> f64 {
                     - s * (1.0 / 1260.0
                         - s * (1.0 / 1680.0
                             - s * (1.0 / 1188.0
-                                - s * (691.0 / 360_360.0
-                                    - s * (1.0 / 156.0 - s * (3617.0 / 122_400.0))))))))
+                                - s * (691.0 / 360_360.0 - s * (1.0 / 156.0 - s * (3617.0 / 122_400.0))))))))
     } else {
         libm::lgamma(a) - (a - 0.5) * a.ln() + a - LN_SQRT_2PI
     }

@@ -60,9 +60,7 @@ mod noncentral;
 mod range;
 
 pub use beta::{beta, beta_quantile};
-pub use continuous::{
-    f, f_quantile, normal, normal_quantile, student, student_quantile, student_two_sided,
-};
+pub use continuous::{f, f_quantile, normal, normal_quantile, student, student_quantile, student_two_sided};
 pub use discrete::{binomial, hypergeometric, mcnemar_exact, poisson};
 pub use exact::{Fisher, fisher_exact, fisher_exact_table, mann_whitney_exact};
 pub use gamma::{chi_squared, chi_squared_quantile, gamma};

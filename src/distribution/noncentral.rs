@@ -13,11 +13,7 @@ pub(super) fn ln_density_of_log_scale(v: f64, df: f64) -> f64 {
     // With a = df/2 and x = a·s²: 2·x^a e^−x/Γ(a), as a deviance from a.
     let u = (2.0 * v).exp_m1();
     let a = 0.5 * df;
-    let exponent = if u > -0.4 {
-        deviance(u, u + 1.0)
-    } else {
-        u - 2.0 * v
-    };
+    let exponent = if u > -0.4 { deviance(u, u + 1.0) } else { u - 2.0 * v };
     (2.0 * a.sqrt() / SQRT_2PI).ln() - stirling(a) - a * exponent
 }
 
@@ -37,10 +33,7 @@ pub fn noncentral_student(t: f64, df: f64, delta: f64) -> Result<Tails, Distribu
         return Err(DistributionError::OutOfDomain);
     }
     // T ≥ t exactly when Z ≥ t·s − δ.
-    Ok(Tails {
-        lower: integrate(-t, df, -delta)?,
-        upper: integrate(t, df, delta)?,
-    })
+    Ok(Tails { lower: integrate(-t, df, -delta)?, upper: integrate(t, df, delta)? })
 }
 
 /// ∫ Φ(δ − t·s) f(s) ds.

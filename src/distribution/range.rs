@@ -58,10 +58,7 @@ pub fn studentized_range(q: f64, k: u64, df: f64) -> Result<Tails, DistributionE
         }
     }
     let upper = (sum * step).clamp(0.0, 1.0);
-    Ok(Tails {
-        lower: 1.0 - upper,
-        upper,
-    })
+    Ok(Tails { lower: 1.0 - upper, upper })
 }
 
 /// Upper tail of the range of `k` standard normal variables, with everything

@@ -77,7 +77,7 @@ pub(super) fn is_p(head: &str) -> bool {
 }
 
 /// A P that compares the groups of the row, and says nothing else of itself than by what test.
-pub(super) fn is_plain_p(head: &str) -> bool {
+pub(super) fn is_plain_p(head: &str, groups: usize) -> bool {
     const OTHER: &[&str] = &[
         "trend",
         "interaction",
@@ -98,7 +98,8 @@ pub(super) fn is_plain_p(head: &str) -> bool {
         "noninferiority",
         "inferiority",
     ];
-    !words(head).any(|w| OTHER.contains(&w))
+    // Of two groups there is only one comparison, named or not.
+    !words(head).any(|w| OTHER.contains(&w) && !(groups == 2 && matches!(w, "vs" | "versus" | "v" | "and")))
 }
 
 /// A difference or ratio between groups.
@@ -271,5 +272,7 @@ pub(super) fn names_time(head: &str) -> bool {
         "discharge",
         "endpoint",
     ];
-    words(head).any(|w| TIMES.contains(&w))
+    // A dose is no time: `2,000 IU/day`.
+    let head = head.replace("/day", "").replace("/ day", "").replace("/week", "");
+    words(&head).any(|w| TIMES.contains(&w))
 }

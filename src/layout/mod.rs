@@ -135,7 +135,7 @@ impl Layout {
         {
             header_rows += 1;
         }
-        find_overall(&mut columns);
+        find_overall(&text, grid, &mut columns);
         let rows = rows(&text, grid, &runs, header_rows, stubs, &columns);
         let inner_header = rows.iter().skip(header_rows as usize).any(|r| r.role == RowRole::Header);
         let spans = grid.cells.iter().any(|c| c.column_span > 1 || c.row_span > 1);
@@ -237,12 +237,17 @@ fn sizes_below(text: &Text, grid: &Grid, run: Range<usize>, columns: &mut [Colum
 }
 
 /// Tells the column of all participants from the groups: by its name, or as the sum of at least two others.
-fn find_overall(columns: &mut [Column]) {
+fn find_overall(text: &Text, grid: &Grid, columns: &mut [Column]) {
     let sizes: Vec<(usize, u64)> =
         columns.iter().enumerate().filter_map(|(i, c)| Some((i, c.role.size()?.value))).collect();
     let sum: u64 = sizes.iter().map(|s| s.1).fold(0, u64::saturating_add);
     let whole = sizes.iter().find(|&&(_, n)| sizes.len() >= 3 && n == sum.saturating_sub(n)).map(|s| s.0);
     for (i, column) in columns.iter_mut().enumerate() {
+        if column.role == ColumnRole::Other
+            && let Some(head) = column.header.map(|h| text.folded(&grid.cells[h])).filter(|h| header::is_overall(h))
+        {
+            column.role = ColumnRole::Overall { label: head, n: None };
+        }
         if let ColumnRole::Group { label, n } = &column.role
             && (whole == Some(i) || header::is_overall(label))
         {
@@ -319,7 +324,7 @@ fn repeats_header(text: &Text, cells: &[Cell], columns: &[Column]) -> bool {
 fn plain_columns(text: &Text, grid: &Grid, columns: &[Column]) -> bool {
     let place = |role: &ColumnRole| match role {
         ColumnRole::Stub => Some(0),
-        ColumnRole::Group { n: Some(_), .. } | ColumnRole::Overall { n: Some(_), .. } => Some(1),
+        ColumnRole::Group { n: Some(_), .. } | ColumnRole::Overall { .. } => Some(1),
         ColumnRole::Estimate => Some(2),
         ColumnRole::P => Some(3),
         _ => None,
@@ -337,7 +342,7 @@ fn plain_columns(text: &Text, grid: &Grid, columns: &[Column]) -> bool {
     let repeated = columns.iter().enumerate().any(|(k, c)| c.role.size().is_some() && alike(&c.role, k));
     // Columns of one group at two times are no groups.
     let timed = columns.iter().zip(&heads).any(|(c, h)| c.role.size().is_some() && header::names_time(h));
-    let odd_p = columns.iter().zip(&heads).any(|(c, h)| c.role == ColumnRole::P && !header::is_plain_p(h));
+    let odd_p = columns.iter().zip(&heads).any(|(c, h)| c.role == ColumnRole::P && !header::is_plain_p(h, groups));
     places.is_sorted()
         && count(2) <= 1
         && count(3) <= 1
@@ -348,3 +353,6 @@ fn plain_columns(text: &Text, grid: &Grid, columns: &[Column]) -> bool {
         && !timed
         && !odd_p
 }
+
+#[cfg(test)]
+mod tests;
