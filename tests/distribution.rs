@@ -24,6 +24,9 @@ fn table(name: &str, inputs: usize) -> Vec<Row> {
         .map(|line| {
             let cells: Vec<&str> = line.split(',').collect();
             let number = |cell: &str| -> f64 {
+                if cell.is_empty() {
+                    return f64::NAN;
+                }
                 cell.parse().unwrap_or_else(|_| panic!("{path}: not a number: {cell} in {line}"))
             };
             let last = cells.len() - 2;
@@ -48,6 +51,10 @@ fn check(name: &str, inputs: usize, laxest: f64, compute: impl Fn(&[f64]) -> Vec
         let got = compute(&row.inputs);
         assert_eq!(got.len(), row.truths.len(), "{name}: {}", row.line);
         for (value, truth) in got.iter().zip(&row.truths) {
+            // An empty cell: this tail has no truth in the table.
+            if truth.is_nan() {
+                continue;
+            }
             let error = (value - truth).abs();
             if error.is_nan() || error > row.tolerance * truth.abs() {
                 failures.push(format!("{}: got {value:e} for {truth:e}", row.line));
@@ -127,8 +134,8 @@ fn intervals_agree_with_their_tables() {
 
 #[test]
 fn integrals_agree_with_their_tables() {
-    check("noncentral_student", 3, 1e-10, |x| both(d::noncentral_student(x[0], x[1], x[2])));
-    check("studentized_range", 3, 1e-9, |x| both(d::studentized_range(x[0], x[1] as u64, x[2])));
+    check("noncentral_student", 3, 1e-11, |x| both(d::noncentral_student(x[0], x[1], x[2])));
+    check("studentized_range", 3, 1e-11, |x| both(d::studentized_range(x[0], x[1] as u64, x[2])));
 }
 
 /// Asserts a value printed with a limited number of digits.
@@ -214,8 +221,13 @@ fn published_p_values() {
     // The same, pooled: t −12.62059, df 326; one tail 2.637e-30 (Boost.Math example).
     let p = d::student(-12.62059, 326.0).unwrap().lower;
     assert!((p / 2.637e-30 - 1.0).abs() < 1e-3, "{p:e}");
-    // NAG Library g07caf example: t 1.8403, df 10, p 0.0955.
-    printed(d::student_two_sided(1.8403, 10.0).unwrap(), "0.0955");
+    // NAG Library g07caf example: t 1.8403, df 10, p 0.0955, from the means and SDs
+    // 25.0 (0.8185), n 4 and 21.0 (4.2083), n 8.
+    let pooled = (3.0 * 0.8185_f64.powi(2) + 7.0 * 4.2083_f64.powi(2)) / 10.0;
+    let t = 4.0 / (pooled * (1.0 / 4.0 + 1.0 / 8.0)).sqrt();
+    printed(t, "1.8403");
+    let p = d::student_two_sided(t, 10.0).unwrap();
+    assert!((p - 0.0955).abs() < 1e-4, "{p}");
     // R cor.test reference output: t −0.8605, 41 df, p 0.3945.
     printed(d::student_two_sided(-0.8605, 41.0).unwrap(), "0.3945");
     // PlantGrowth, R aov / scipy f_oneway: F(2, 27) 4.846088, p 0.01590996.
@@ -395,6 +407,37 @@ proptest! {
     }
 
     #[test]
+    fn exact_tests_are_consistent(a in 0..60u64, b in 0..60u64, c in 0..60u64, e in 0..60u64) {
+        let p = d::fisher_exact(a, b, c, e).unwrap();
+        prop_assert!(p.two_sided <= 1.0 && p.two_sided >= p.less.min(p.greater) * (1.0 - 1e-12));
+        let swapped = d::fisher_exact(b, a, e, c).unwrap();
+        near(swapped.greater, p.less);
+        near(swapped.two_sided, p.two_sided);
+        let tails = d::hypergeometric(a, a + b + c + e, a + b, a + c).unwrap();
+        near(tails.lower, p.less);
+        near(tails.upper, p.greater);
+        let rows: [&[u64]; 2] = [&[a, b], &[c, e]];
+        if a + b + c + e > 0 {
+            near(d::fisher_exact_table(&rows).unwrap(), p.two_sided);
+        }
+        let n = a + b;
+        if n > 0 {
+            let (lower, upper) = d::clopper_pearson(a, n, 0.95).unwrap();
+            let (low, high) = d::wilson(a, n, 0.95).unwrap();
+            let share = a as f64 / n as f64;
+            prop_assert!(lower <= share && share <= upper && low <= share && share <= high);
+            // The limits of Clopper and Pearson have the tail 2.5 % exactly.
+            if a > 0 { near(d::binomial(a, n, lower).unwrap().upper, 0.025); }
+            if b > 0 && upper < 0.9 { near(d::binomial(a, n, upper).unwrap().lower, 0.025); }
+        }
+    }
+}
+
+proptest! {
+    // Fewer cases: wild arguments drive every loop to its bound.
+    #![proptest_config(ProptestConfig { cases: 60, failure_persistence: None, ..ProptestConfig::default() })]
+
+    #[test]
     fn anything_terminates(a in any::<f64>(), b in any::<f64>(), c in any::<f64>(), k in any::<u64>(), n in any::<u64>()) {
         let _ = d::normal(a);
         let _ = d::student(a, b);
@@ -438,31 +481,5 @@ proptest! {
         number(d::f_quantile(p, a, b));
         number(d::chi_squared_quantile(p, a));
         number(d::beta_quantile(p, a, b));
-    }
-
-    #[test]
-    fn exact_tests_are_consistent(a in 0..60u64, b in 0..60u64, c in 0..60u64, e in 0..60u64) {
-        let p = d::fisher_exact(a, b, c, e).unwrap();
-        prop_assert!(p.two_sided <= 1.0 && p.two_sided >= p.less.min(p.greater) * (1.0 - 1e-12));
-        let swapped = d::fisher_exact(b, a, e, c).unwrap();
-        near(swapped.greater, p.less);
-        near(swapped.two_sided, p.two_sided);
-        let tails = d::hypergeometric(a, a + b + c + e, a + b, a + c).unwrap();
-        near(tails.lower, p.less);
-        near(tails.upper, p.greater);
-        let rows: [&[u64]; 2] = [&[a, b], &[c, e]];
-        if a + b + c + e > 0 {
-            near(d::fisher_exact_table(&rows).unwrap(), p.two_sided);
-        }
-        let n = a + b;
-        if n > 0 {
-            let (lower, upper) = d::clopper_pearson(a, n, 0.95).unwrap();
-            let (low, high) = d::wilson(a, n, 0.95).unwrap();
-            let share = a as f64 / n as f64;
-            prop_assert!(lower <= share && share <= upper && low <= share && share <= high);
-            // The limits of Clopper and Pearson have the tail 2.5 % exactly.
-            if a > 0 { near(d::binomial(a, n, lower).unwrap().upper, 0.025); }
-            if b > 0 && upper < 0.9 { near(d::binomial(a, n, upper).unwrap().lower, 0.025); }
-        }
     }
 }

@@ -33,7 +33,7 @@
 //! | [`clopper_pearson`] | n ≤ 1e6, level 0.9 to 0.999 | 1e-12 | 2e-15 | | |
 //! | [`wilson`] | n ≤ 1e6, level 0.9 to 0.999 | 1e-13 | 4e-16 | | |
 //! | [`noncentral_student`] | df 1 to 1e6, \|δ\| ≤ 40, tails above 1e-9 | 1e-11 | 7e-14 | | |
-//! | [`studentized_range`] | RANGEREGION | RANGEBOUND | RANGEREACHED | | |
+//! | [`studentized_range`] | k ≤ 20, df 1 to 1000, upper above 1e-12, lower above 1e-10 | 1e-11 | 7e-14 | | |
 //!
 //! Parameters below 0.5 (less than one degree of freedom) lose up to the factor by
 //! which the smaller tail at the mean falls short of one half; they do not occur in

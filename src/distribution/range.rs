@@ -16,13 +16,12 @@ const MOST_POINTS: i32 = 3000;
 /// `k ≥ 2` group means with `df > 0` degrees of freedom for error: tails at
 /// `q ≥ 0`.
 ///
-/// `upper` is the adjusted p-value; relative error below 1e-9 for `upper` above
-/// 1e-12 and `df ≥ 1`; `lower` is accurate to 1e-12 absolutely. Errors:
+/// `upper` is the adjusted p-value. Accuracy: see the module's statement. Errors:
 /// [`DistributionError::NotFinite`], [`DistributionError::OutOfDomain`],
 /// [`DistributionError::TooLarge`] beyond 1000 groups. Method: the range of `k`
 /// normal variables, in its upper-tail form so that nothing cancels, integrated
 /// over the chi density; both by the trapezoidal rule (Trefethen & Weideman 2014).
-/// About a millisecond.
+/// About a quarter of a millisecond.
 pub fn studentized_range(q: f64, k: u64, df: f64) -> Result<Tails, DistributionError> {
     finite(&[q, df])?;
     if q < 0.0 || df <= 0.0 || k < 2 {
@@ -32,36 +31,42 @@ pub fn studentized_range(q: f64, k: u64, df: f64) -> Result<Tails, DistributionE
         return Err(DistributionError::TooLarge);
     }
     let inner = NormalRange::new(k);
-    let step = (0.6 / (2.0 * df + 0.5 * q * q).sqrt()).min(0.1);
-    let value = |v: f64| inner.upper(q * v.exp()) * ln_density_of_log_scale(v, df).exp();
-    let mut sum = value(0.0);
+    let step = (0.6 / (2.0 * (df + inner.others) + 0.5 * q * q).sqrt()).min(0.1);
+    let value = |v: f64| {
+        let density = ln_density_of_log_scale(v, df).exp();
+        let (lower, upper) = inner.tails(q * v.exp());
+        [lower * density, upper * density]
+    };
+    let mut sums = value(0.0);
     for direction in [1.0, -1.0] {
         let mut settled = false;
-        let mut largest = 0.0f64;
+        let mut last = value(0.0);
         for i in 1..MOST_POINTS {
-            let term = value(direction * step * f64::from(i));
-            sum += term;
-            largest = largest.max(term);
-            // The integrand may still rise on the way to its mode; it is over
-            // only once it has fallen far below its own largest value.
-            if term <= 1e-15 * sum && term < largest {
-                settled = true;
+            let terms = value(direction * step * f64::from(i));
+            // An integrand may still rise on the way to its mode; it is over once
+            // it falls and no longer counts.
+            settled = true;
+            for tail in 0..2 {
+                sums[tail] += terms[tail];
+                settled &= terms[tail] <= 1e-16 * sums[tail] && terms[tail] <= last[tail];
+            }
+            if settled {
                 break;
             }
-            if term == 0.0 {
-                settled = true;
-                break;
-            }
+            last = terms;
         }
         if !settled {
             return Err(DistributionError::NotConverged);
         }
     }
-    let upper = (sum * step).clamp(0.0, 1.0);
-    Ok(Tails { lower: 1.0 - upper, upper })
+    let [lower, upper] = sums.map(|sum| (sum * step).clamp(0.0, 1.0));
+    if lower.is_nan() || upper.is_nan() {
+        return Err(DistributionError::NotConverged);
+    }
+    Ok(Tails { lower, upper })
 }
 
-/// Upper tail of the range of `k` standard normal variables, with everything
+/// The range of `k` standard normal variables, with everything
 /// that does not depend on the range computed once.
 struct NormalRange {
     others: f64,
@@ -72,7 +77,8 @@ struct NormalRange {
 impl NormalRange {
     fn new(k: u64) -> Self {
         let others = (k - 1) as f64;
-        let step = if k <= 20 { 0.25 } else { 0.15 };
+        // For narrow ranges the integrand is φ^k: its width is 1/√k.
+        let step = (0.75 / (k as f64).sqrt()).min(0.25);
         let mut points = Vec::new();
         let mut z: f64 = -12.0;
         while z < 12.0 {
@@ -87,21 +93,20 @@ impl NormalRange {
         Self { others, points }
     }
 
-    /// P(range ≥ w) = k ∫ φ(z) [Φ(z)^(k−1) − (Φ(z) − Φ(z−w))^(k−1)] dz, the
-    /// largest value being at z.
-    fn upper(&self, w: f64) -> f64 {
-        if w <= 0.0 {
-            return 1.0;
-        }
-        let mut sum = 0.0;
+    /// P(range ≤ w) = k ∫ φ(z) (Φ(z) − Φ(z−w))^(k−1) dz, the largest value being at
+    /// z, and its complement with Φ(z)^(k−1) less that power under the integral.
+    fn tails(&self, w: f64) -> (f64, f64) {
+        let (mut lower, mut upper) = (0.0, 0.0);
         for &(z, below, weight) in &self.points {
             let ratio = normal_upper(w - z) / below;
             if ratio < 1.0 {
-                sum += weight * -(self.others * (-ratio).ln_1p()).exp_m1();
+                let log = self.others * (-ratio).ln_1p();
+                lower += weight * log.exp();
+                upper -= weight * log.exp_m1();
             } else {
-                sum += weight;
+                upper += weight;
             }
         }
-        sum.min(1.0)
+        (lower.min(1.0), upper.min(1.0))
     }
 }

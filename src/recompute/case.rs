@@ -189,6 +189,8 @@ impl<'a> Case<'a> {
                 return Some(reason::UNCLEAR);
             }
             match p.role {
+                // Where a margin is tested, a p may be against the margin and not against the null value.
+                Role::Effect if self.context.non_inferiority.is_some() => return Some(reason::ROLE),
                 Role::Effect => {}
                 Role::Interaction | Role::NonInferiority | Role::TrendOrJoint => return Some(reason::ROLE),
                 Role::Baseline | Role::WithinGroup => {}

@@ -1,7 +1,7 @@
 //! Questions that several checks put to the facts.
 
 use super::Facts;
-use crate::manuscript::{BlockKind, SectionKind};
+use crate::manuscript::{BlockKind, MarkKind, SectionKind};
 use crate::reading::{Claim, PValue, Relation, Role, Sides};
 use crate::text::Span;
 
@@ -74,6 +74,10 @@ impl<'a> Facts<'a> {
         if self.context.sides.is_some_and(|s| s.value == Sides::One) {
             levels.push(levels.iter().fold(0.0, |a: f64, &b| a.max(b)).max(0.05));
         }
+        // Several levels belong to several analyses, and the usual one may go without saying.
+        if levels.iter().any(|&a| a != levels[0]) {
+            levels.push(0.05);
+        }
         let lowest = levels.iter().copied().fold(f64::INFINITY, f64::min);
         let highest = levels.iter().copied().fold(0.0, f64::max);
         Alpha { lowest, highest, stated: true }
@@ -126,6 +130,19 @@ impl<'a> Facts<'a> {
     pub(super) fn interval_in_part(&self, span: Span) -> bool {
         let part = self.part(span);
         self.readings.intervals.iter().any(|i| self.part(i.span) == part)
+    }
+
+    /// The sentence cites others: it stands outside the results and holds a reference to the literature.
+    pub(super) fn cites_others(&self, span: Span, sentence: u32) -> bool {
+        if self.reports_results(span) {
+            return false;
+        }
+        let s = self.scan.sentences[sentence as usize];
+        let tokens = &self.scan.tokens[s.first as usize..s.last as usize];
+        let (Some(first), Some(last)) = (tokens.first(), tokens.last()) else { return false };
+        // References stand behind the last word, too.
+        let block = self.manuscript.block(span);
+        block.marked(MarkKind::Reference, first.start, last.end + 8) || self.sentence(sentence).contains("et al")
     }
 
     /// The text of a sentence, in lower case.

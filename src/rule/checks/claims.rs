@@ -23,9 +23,11 @@ struct Found<'a> {
 pub fn claim(facts: &Facts, kinds: &[Claimed], of: &[Whose], backing: Backing, per: Per) -> Vec<Finding> {
     let mut singles: Vec<Finding> = Vec::new();
     for claim in &facts.readings.claims {
-        let wanted = kinds.iter().any(|k| k.is(kind_of(claim))) && of.iter().any(|w| w.is(claim.attribution));
+        let wanted = kinds.iter().any(|k| k.is(kind_of(facts, claim))) && of.iter().any(|w| w.is(claim.attribution));
         // What an introduction tells is what others found.
-        let wanted = wanted && facts.manuscript.section(claim.span).kind != SectionKind::Introduction;
+        let wanted = wanted
+            && facts.manuscript.section(claim.span).kind != SectionKind::Introduction
+            && !facts.cites_others(claim.span, claim.sentence);
         if let Some(found) = wanted.then(|| backed(facts, claim, backing)).flatten() {
             singles.push(finding(facts, claim, &found));
         }
@@ -36,10 +38,12 @@ pub fn claim(facts: &Facts, kinds: &[Claimed], of: &[Whose], backing: Backing, p
     }
 }
 
-/// "No significant difference" says that significance is missing, not that there is no difference.
-fn kind_of(claim: &Claim) -> ClaimKind {
+/// "No significant difference" and "no evidence of a difference" say that something is missing, not that there is no
+/// difference.
+fn kind_of(facts: &Facts, claim: &Claim) -> ClaimKind {
+    let careful = claim.says_significant || facts.quote(claim.span).contains("evidence");
     match claim.kind {
-        ClaimKind::NoDifference if claim.says_significant => ClaimKind::NotSignificant,
+        ClaimKind::NoDifference if careful => ClaimKind::NotSignificant,
         kind => kind,
     }
 }
@@ -70,14 +74,17 @@ fn backed<'a>(facts: &Facts<'a>, claim: &Claim, backing: Backing) -> Option<Foun
         Backing::Nothing => {
             let text = matches!(facts.manuscript.block(claim.span).kind, BlockKind::Paragraph | BlockKind::ListItem);
             let bare = text && interval.is_none() && !facts.figures_in_block(claim.span);
-            let told = facts.reports_results(claim.span) || facts.drives_message(claim.span);
+            // A discussion or a conclusion sums up figures that stand in the results.
+            let told = facts.reports_results(claim.span) && !facts.drives_message(claim.span);
             let points = ["table", "fig", "appendix", "supplement", "see ", "described", "previous", "elsewhere"];
             bare && told && !points.iter().any(|w| sentence.contains(w)) && !excepted(&sentence)
         }
         Backing::NoMargin => {
             let margin = facts.context.non_inferiority.is_some()
                 || facts.mentions(&["margin", "two one-sided", "tost", "equivalence limit", "equivalence bound"]);
-            !margin
+            let methods =
+                ["method", "analysis", "analyses", "model", "results from"].iter().any(|w| sentence.contains(w));
+            !margin && !methods
         }
         Backing::NoBetweenGroupTest => {
             let words = ["interaction", "between group", "between-group", "between the", "between-arm"];
@@ -87,9 +94,21 @@ fn backed<'a>(facts: &Facts<'a>, claim: &Claim, backing: Backing) -> Option<Foun
     holds.then_some(Found { p, interval })
 }
 
-/// The sentence makes an exception or weighs its own claim; what is excepted cannot be told safely.
+/// The sentence makes an exception, weighs its own claim, or tells of the start; what is excepted cannot be told safely.
 fn excepted(sentence: &str) -> bool {
-    ["except", "other than", "apart from", "cannot be excluded", "could not be excluded", "underpowered", "too small"]
+    let start = (sentence.contains("before ") || sentence.contains("prior to ")) && !sentence.contains("after");
+    let judged = ["considered", "judged", "felt ", "opinion", "reported that"].iter().any(|w| sentence.contains(w));
+    start
+        || judged
+        || [
+            "except",
+            "other than",
+            "apart from",
+            "cannot be excluded",
+            "could not be excluded",
+            "underpowered",
+            "too small",
+        ]
         .iter()
         .any(|w| sentence.contains(w))
 }
@@ -146,7 +165,7 @@ fn results_of(facts: &Facts, p: &[&PValue]) -> Vec<usize> {
 
 /// "no difference" → "no significant difference", with blanks for what lets readers judge.
 fn repair(facts: &Facts, claim: &Claim, found: &Found) -> Option<Draft> {
-    if kind_of(claim) != ClaimKind::NoDifference {
+    if kind_of(facts, claim) != ClaimKind::NoDifference {
         return None;
     }
     let quote = facts.quote(claim.span);
@@ -196,7 +215,10 @@ pub fn against_p(facts: &Facts, says: Says) -> Vec<Finding> {
     for claim in &facts.readings.claims {
         let kind = match says {
             Says::Significant => claim.kind == ClaimKind::Difference && claim.says_significant,
-            Says::NotSignificant => kind_of(claim) == ClaimKind::NotSignificant,
+            // "A, but not B, significantly reduced": B's figure is not the one that stands there.
+            Says::NotSignificant => {
+                kind_of(facts, claim) == ClaimKind::NotSignificant && !facts.quote(claim.span).starts_with("not ")
+            }
         };
         let told = facts.manuscript.section(claim.span).kind == SectionKind::Introduction
             || matches!(claim.attribution, Attribution::Plan | Attribution::OtherAuthors);
