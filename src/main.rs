@@ -117,7 +117,7 @@ struct Job {
 
 enum Input {
     File(PathBuf),
-    StandardInput,
+    Stdin,
     Text(String),
     /// A folder without manuscripts, or one that cannot be listed.
     Nothing(String),
@@ -206,7 +206,7 @@ fn jobs(arguments: &Audit) -> Vec<Job> {
     let mut jobs = Vec::new();
     for path in &arguments.files {
         if path.as_os_str() == "-" {
-            jobs.push(Job { path: "-".to_owned(), input: Input::StandardInput });
+            jobs.push(Job { path: "-".to_owned(), input: Input::Stdin });
         } else if path.is_dir() {
             folder(path, &mut jobs);
         } else {
@@ -278,7 +278,7 @@ fn read(input: &Input) -> Result<Vec<u8>, String> {
     };
     match input {
         Input::File(path) => fs::read(path).map_err(in_words),
-        Input::StandardInput => {
+        Input::Stdin => {
             let mut bytes = Vec::new();
             io::stdin().lock().read_to_end(&mut bytes).map_err(in_words)?;
             Ok(bytes)

@@ -200,8 +200,8 @@ pub fn hypergeometric(k: u64, population: u64, marked: u64, drawn: u64) -> Resul
 /// smaller tail of the binomial distribution with probability one half, at most 1.
 ///
 /// Without discordant pairs the p-value is 1. Errors:
-/// [`DistributionError::TooLarge`] beyond 2^53 pairs. Source: McNemar (1947) in
-/// the exact form of Cochran (1950), see [`binomial`].
+/// [`DistributionError::TooLarge`] beyond 2^53 pairs. Source: McNemar (1947),
+/// in its exact binomial form; see [`binomial`].
 pub fn mcnemar_exact(b: u64, c: u64) -> Result<f64, DistributionError> {
     let n = b.checked_add(c).ok_or(DistributionError::TooLarge)?;
     if b == c {

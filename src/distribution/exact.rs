@@ -118,7 +118,9 @@ const MOST_WORK: u64 = 5_000_000;
 /// rows and columns, given row by row: the two-sided p-value that sums all
 /// tables with the same margins that are not more probable than the one given.
 ///
-/// Rows must be of equal length. Relative error below 1e-12. Errors:
+/// Rows must be of equal length. Checked only against [`fisher_exact`], to 1e-10 for
+/// 2×2 tables up to a total of 240; rounding grows with ln N!, to about 1e-10 at a
+/// total of 100,000, beyond which it is an error. Errors:
 /// [`DistributionError::OutOfDomain`] for an empty or ragged table or a total of
 /// 0, [`DistributionError::TooLarge`] where more than five million partial tables
 /// would have to be looked at.

@@ -8,7 +8,7 @@
 //! # Accuracy
 //!
 //! Largest relative error over the committed tables (`tests/reference/*.csv`; truth
-//! from Arb at 50 digits and more, written by `make.py` beside them).
+//! from Arb at 50 digits and more or in whole numbers, by `make.py` beside them).
 //! `tests/distribution.rs` asserts the bounds on every row; "reached" is what was
 //! measured when the tables were written.
 //!

@@ -20,8 +20,8 @@ pub(super) fn ln_density_of_log_scale(v: f64, df: f64) -> f64 {
 /// Noncentral t distribution with `df > 0` and noncentrality `delta`: both tails
 /// at `t`.
 ///
-/// Relative error below 1e-10 for tails above 1e-9, `|t|` and `|delta|` up to 100,
-/// `df` from 1 to 1e6. Errors: [`DistributionError::NotFinite`],
+/// Checked for tails above 1e-9, `|delta|` up to 40 and `df` from 1 to 1e6 (the
+/// module's statement); beyond that it is bounded but not checked. Errors: [`DistributionError::NotFinite`],
 /// [`DistributionError::OutOfDomain`] for `df ≤ 0`,
 /// [`DistributionError::TooLarge`] where the quadrature would need more points
 /// than its cap. Method: the normal tail integrated over the chi density, in

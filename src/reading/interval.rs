@@ -224,10 +224,12 @@ fn skip_words(view: &SentenceView, mut at: usize) -> usize {
             if !skipped {
                 break;
             }
-        } else if !view.signs(at, &[':', '=', ',', '(', '[', '{', '~', ';']) {
-            break;
-        } else if view.signs(at, &['(', '[']) && self::pair(view, at + 1).is_none() && at > start + 1 {
-            break;
+        } else {
+            let links = view.signs(at, &[':', '=', ',', '(', '[', '{', '~', ';']);
+            let opens_else = view.signs(at, &['(', '[']) && self::pair(view, at + 1).is_none() && at > start + 1;
+            if !links || opens_else {
+                break;
+            }
         }
         at += 1;
     }

@@ -137,11 +137,8 @@ impl<'a> Scanner<'a> {
             };
             let b = bytes[at];
             let from = at;
-            let kind = if b.is_ascii_digit() {
-                let (kind, next) = self.number(at, limit);
-                at = next;
-                kind
-            } else if b == b'.' && at + 1 < limit && bytes[at + 1].is_ascii_digit() && self.opens_decimal(at) {
+            let point = b == b'.' && at + 1 < limit && bytes[at + 1].is_ascii_digit() && self.opens_decimal(at);
+            let kind = if b.is_ascii_digit() || point {
                 let (kind, next) = self.number(at, limit);
                 at = next;
                 kind
@@ -237,9 +234,8 @@ impl<'a> Scanner<'a> {
         let mut at = start;
         while at < limit {
             let b = bytes[at];
-            if b.is_ascii_alphanumeric() {
-                at += 1;
-            } else if b == b'\'' && at + 1 < limit && bytes[at + 1].is_ascii_alphabetic() {
+            let apostrophe = b == b'\'' && at + 1 < limit && bytes[at + 1].is_ascii_alphabetic();
+            if b.is_ascii_alphanumeric() || apostrophe {
                 at += 1;
             } else if b >= 0x80 {
                 let Some(c) = self.text[at..].chars().next() else { break };
@@ -282,8 +278,7 @@ impl<'a> Scanner<'a> {
         let whole = at - start;
         // Thousands: 1–3 digits, then groups of three after a comma or a narrow space.
         if (1..=3).contains(&whole) && bytes[start] != b'0' {
-            loop {
-                let Some(c) = self.text[at..limit].chars().next() else { break };
+            while let Some(c) = self.text[at..limit].chars().next() {
                 let group = at + c.len_utf8();
                 let separates = match c {
                     ',' => !self.decimal_commas,

@@ -121,7 +121,7 @@ fn trailing(view: &SentenceView, members: &Members, readings: &Readings, mut end
                 view.signs(k, &[',', ';', ')', '(', '[', ']', '=', ':']) || view.any(k, &["with", "partial", "cohen"])
             });
         // In `(p = 0.02) and OR 1.2 (…), p = 0.4` the figures belong to the next p.
-        let own = limit == u32::MAX || !(view.token_at(limit).saturating_sub(view.token_at(span.end)) <= 3);
+        let own = limit == u32::MAX || (view.token_at(limit).saturating_sub(view.token_at(span.end)) > 3);
         if !close || !own {
             break;
         }

@@ -3,16 +3,31 @@
     python -m venv /tmp/venv && /tmp/venv/bin/pip install -r requirements.txt
     /tmp/venv/bin/python make.py [FUNCTION ...]
 
-Every truth is an Arb ball (python-flint) whose relative radius is below 1e-25,
-reached by raising the working precision until it is; series are summed with a
-rigorous bound on what is left out. A sample of the rows is recomputed with mpmath
-by a different route (its own hypergeometric code, or quadrature of the density)
-and must agree to 1e-15. Inputs are the doubles nearest to the printed decimals,
-and a truth is the value at that double. `tests/distribution.rs` reads the tables
-only; it never runs this.
+How the truths are made (`truth.py`, `discrete.py`):
 
-Nothing here shares code or method with the Rust module: no continued fraction, no
-saddle-point prefactor, no root search on the module's own functions.
+- Tails and quantiles of the classical distributions: Arb balls (python-flint) of
+  relative radius below 1e-25, the precision raised until they are. Series of
+  positive terms with a rigorous bound on what is left out; no continued fraction, no
+  saddle-point prefactor. A quantile is verified by a change of sign 1e-23 to either
+  side.
+- Fisher up to a total of 5000, McNemar up to 10,000 pairs, Mann-Whitney: whole
+  numbers.
+- Noncentral t: acb.integral, radius below 1e-22; the tails, integrated apart, must
+  add up to 1 within 1e-21.
+- Studentized range: k = 2 from Student's t; other k by nested trapezoidal sums at 30
+  digits with two pairs of steps, the same method as the Rust module and not
+  rigorous, hence the rows from scipy's own mpmath values beside them.
+- Wilson: mpmath, the closed form.
+
+A sample of the rows of normal, student, f, chi_squared, gamma, beta, binomial,
+poisson and hypergeometric is recomputed by another route (mpmath's own
+hypergeometric code, or direct sums) and must agree to 1e-15; of noncentral_student
+by mpmath quadrature to 1e-14; of fisher_exact by scipy to 1e-10. The normal
+quantile is made with mpmath and inverted in Arb. The other tables have no second
+route here.
+
+Inputs are the doubles nearest to the printed decimals, and a truth is the value at
+that double. `tests/distribution.rs` reads the tables only; it never runs this.
 """
 
 import math

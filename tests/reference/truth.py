@@ -83,7 +83,7 @@ def write(name, columns, rows, note):
     path = os.path.join(HERE, name + ".csv")
     with open(path, "w", newline="\n") as out:
         out.write(f"# {name}: {note}\n")
-        out.write("# script: tests/reference/make.py; truth to 20 digits, relative radius below 1e-25\n")
+        out.write("# script: tests/reference/make.py, which says how each truth is made; 20 significant digits\n")
         out.write(f"# date: {datetime.date.today().isoformat()}\n")
         out.write(
             f"# python {sys.version.split()[0]}, python-flint {flint.__version__}, mpmath {mpmath.__version__}, "

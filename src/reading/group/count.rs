@@ -174,9 +174,12 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
         // Without a percentage a slash may be a unit, a date or a score; "of" may be anything.
         let bracket = i > 0 && view.signs(i - 1, &['(', '[', ',']) && view.signs(end, &[')', ']', ',', ';']);
         let members = view.is(end, Classes::GROUP);
-        if by_slash && !(bracket || members)
-            || !by_slash && !(members || words > 0 || view.eq(at, "out") || view.signs(end, &[')', ',', '.']))
-        {
+        let told = if by_slash {
+            bracket || members
+        } else {
+            members || words > 0 || view.eq(at, "out") || view.signs(end, &[')', ',', '.'])
+        };
+        if !told {
             return None;
         }
         if by_slash && total < 8 {

@@ -207,7 +207,7 @@ fn plus_minus(view: &SentenceView, i: usize, centre: Printed, next: usize, setti
         {
             kind = Some(k);
         } else if let Some((k, after)) = spread_word(view, last + 1)
-            && !view.number(after).is_some_and(|p| p.places > 0)
+            && view.number(after).is_none_or(|p| p.places == 0)
             && matches!(k, SpreadKind::Sd | SpreadKind::Se)
         {
             kind = Some(k);
