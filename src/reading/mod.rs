@@ -360,6 +360,13 @@ pub struct Readings {
     pub planning: Vec<Planning>,
 }
 
+/// The members of a list of readings that stand in some sentences. Lists are in reading order.
+pub fn within<T>(list: &[T], sentence: impl Fn(&T) -> u32, sentences: std::ops::Range<u32>) -> &[T] {
+    let first = list.partition_point(|x| sentence(x) < sentences.start);
+    let count = list[first..].partition_point(|x| sentence(x) < sentences.end);
+    &list[first..first + count]
+}
+
 /// Reads a whole manuscript. Blocks of the reference list and of back matter are passed over.
 pub fn read(manuscript: &Manuscript, scan: &Scan) -> Readings {
     let mut readings = Readings::default();
