@@ -408,7 +408,8 @@ fn read_paragraph(
     for id in sentences {
         read_sentence(&scan.view(manuscript, id), &mut setting, &mut named, readings);
     }
-    let tested = |sentence| readings.p[first_p..].iter().any(|p| p.sentence == sentence);
+    let p = &readings.p[first_p..];
+    let tested = |sentence| !within(p, |p| p.sentence, sentence..sentence + 1).is_empty();
     group::total::fill(&mut readings.groups[first_group..], &mentions, tested);
 }
 

@@ -421,6 +421,9 @@ fn share_of(view: &SentenceView, of: usize) -> bool {
 /// Marks percentages that are said to be about so much or that no count over a total gives (survival, actuarial rates),
 /// and takes back a total from "Of the 26 patients, …" where several counts follow: they may be of parts of it.
 pub(super) fn soften(view: &SentenceView, drafts: &mut [Draft]) {
+    if drafts.is_empty() {
+        return;
+    }
     let estimated = (0..view.len()).any(|k| {
         view.any(k, &["actuarial", "kaplan", "survival", "cumulative", "weighted", "standardised", "standardized"])
     });
