@@ -313,9 +313,10 @@ fn repeats_header(text: &Text, cells: &[Cell], columns: &[Column]) -> bool {
         Some(ColumnRole::Stub) | None => false,
         Some(ColumnRole::P) => header::is_p(&text.folded(c)),
         Some(_) => {
-            let role = text.role(c);
-            !text.of(c).starts_with(|c: char| c.is_ascii_digit())
-                && (role == ColumnRole::P || role.size().is_some() && text.of(c).contains('='))
+            !text.of(c).starts_with(|c: char| c.is_ascii_digit()) && {
+                let role = text.role(c);
+                role == ColumnRole::P || role.size().is_some() && text.of(c).contains('=')
+            }
         }
     })
 }

@@ -247,16 +247,19 @@ fn means_slip(case: &Case, target: &Target) -> Option<Slip> {
     slip::in_p(p.value.filter(|_| p.relation == Relation::Equal), &as_printed)
 }
 
+/// Whether two names are one, case ignored.
+fn same_name(a: &str, b: &str) -> bool {
+    a.chars().flat_map(char::to_lowercase).eq(b.chars().flat_map(char::to_lowercase))
+}
+
 /// The sizes of the arms that bear the groups' names, where they are other ones.
 fn other_sizes(case: &Case) -> Vec<Option<f64>> {
-    if case.context.arms.is_empty() {
+    // Sizes that are not known for all groups are of no use.
+    let arms = &case.context.arms;
+    if arms.is_empty() || case.groups.iter().any(|g| g.label.is_empty()) {
         return Vec::new();
     }
-    let arm = |g: &&Group| {
-        let label = g.label.to_lowercase();
-        let arm = case.context.arms.iter().find(|a| !label.is_empty() && a.label.to_lowercase() == label)?;
-        Some(arm.n as f64)
-    };
+    let arm = |g: &&Group| arms.iter().find(|a| same_name(&a.label, &g.label)).map(|a| a.n as f64);
     let sizes: Vec<Option<f64>> = case.groups.iter().map(arm).collect();
     let differ =
         case.groups.iter().zip(&sizes).any(|(g, n)| n.is_some_and(|n| size(g).is_some_and(|f| f.printed.value() != n)));

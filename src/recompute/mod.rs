@@ -155,6 +155,8 @@ fn check(
         Verdict::Undecided => Some(undecided(&case, &found, why)),
         _ => None,
     };
+    // Mostly one, where a vector makes room for four.
+    found.shrink_to_fit();
     Checked { result: index, recomputations: found, verdict, reason }
 }
 

@@ -94,6 +94,7 @@ pub fn join(manuscript: &Manuscript, scan: &Scan, readings: &Readings, context: 
             sentence::join(&scan.view(manuscript, id), &from, readings, context, &mut results);
         }
     }
+    results.shrink_to_fit();
     results
 }
 

@@ -116,6 +116,7 @@ fn query(facts: &Look, raised: Raised, fingerprint: String) -> Query {
     for says in &rule.assumes {
         explanations.push(Explanation { kind: "assumption".to_owned(), says: says.clone() });
     }
+    explanations.shrink_to_fit();
     let related = finding.related.into_iter().map(|(span, part)| Related {
         location: facts.manuscript.locate(span),
         quote: wording::one_line(facts.quote(span)),

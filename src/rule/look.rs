@@ -75,7 +75,7 @@ pub struct Look<'a> {
     /// The parts of the manuscript in which an interval stands.
     with_interval: HashSet<u32>,
     settled: HashMap<(Quantity, u32), Settled>,
-    lower: OnceCell<String>,
+    margin: OnceCell<bool>,
 }
 
 /// How many recomputations of one quantity in one block tally sharply, and how many differ.
@@ -118,7 +118,7 @@ impl<'a> Look<'a> {
             estimates: sorted(&mut readings.estimates.iter().map(|e| e.span)),
             with_interval: HashSet::new(),
             settled,
-            lower: OnceCell::new(),
+            margin: OnceCell::new(),
         };
         look.with_interval = readings.intervals.iter().map(|i| look.part(i.span)).collect();
         look
@@ -254,12 +254,16 @@ impl<'a> Look<'a> {
 
     /// Any phrase of these anywhere in the manuscript (lower case).
     pub(super) fn mentions(&self, phrases: &[&str]) -> bool {
-        let text = self.lower.get_or_init(|| {
-            let blocks = self.manuscript.blocks.iter();
-            let lower = blocks.map(|b| b.text.to_lowercase());
-            lower.fold(String::new(), |all, text| all + &text + "\n")
-        });
-        phrases.iter().any(|p| text.contains(p))
+        self.manuscript.blocks.iter().any(|b| {
+            let text = b.text.to_lowercase();
+            phrases.iter().any(|p| text.contains(p))
+        })
+    }
+
+    /// A margin of equivalence is stated or spoken of.
+    pub(super) fn margin(&self) -> bool {
+        let words = ["margin", "two one-sided", "tost", "equivalence limit", "equivalence bound"];
+        self.context.non_inferiority.is_some() || *self.margin.get_or_init(|| self.mentions(&words))
     }
 
     /// Another sentence of the same paragraph prints a p, an interval, an estimate or groups.
