@@ -162,13 +162,18 @@ impl<'a> Case<'a> {
                 matches!(t, Test::ChiSquared | Test::YatesChiSquared | Test::FisherExact | Test::Z)
             }
         };
-        let proposed = || self.result.tests.iter().map(|t| t.test.value);
-        if proposed().any(fits) { None } else { proposed().find(|&t| !from_summaries(t)).map(why_not) }
+        if self.proposed().any(fits) { None } else { self.proposed().find(|&t| !from_summaries(t)).map(why_not) }
+    }
+
+    /// All tests that may be meant: those named for this result, then those of the Methods.
+    fn proposed(&self) -> impl Iterator<Item = Test> + '_ {
+        let methods = self.context.tests.iter().map(|t| t.value);
+        self.result.tests.iter().map(|t| t.test.value).chain(methods)
     }
 
     /// The Methods propose an ordinary test beside another one ("t test or Mann–Whitney as appropriate").
     pub fn rivals_proposed(&self) -> bool {
-        self.stated().is_none() && self.result.tests.iter().any(|t| !from_summaries(t.test.value))
+        self.stated().is_none() && self.proposed().any(|t| !from_summaries(t))
     }
 
     /// Why a difference between p and the estimate's own interval may not be objected to.

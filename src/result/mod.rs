@@ -34,11 +34,15 @@ pub enum Feature {
     Unclear,
 }
 
+/// More tests than a sentence or the notes of a table name. Text made to hurt names more, and every result beside them
+/// would take them all.
+const MOST_TESTS: usize = 40;
+
 /// Where the test of a result is named.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct StatedTest {
     pub test: Stated<Test>,
-    /// Named for this very result (its sentence, its row's mark); otherwise the Methods only propose it.
+    /// Named for this very result (its sentence, its row's mark); otherwise the table's notes only propose it.
     pub here: bool,
 }
 
@@ -51,7 +55,7 @@ pub struct ReportedResult {
     pub estimate: Option<usize>,
     /// In printed order; two or more when the result compares them.
     pub groups: Vec<usize>,
-    /// Candidates in order; those stated `here` first.
+    /// Candidates in order; those stated `here` first. What the Methods propose for all results stands in the context.
     pub tests: Vec<StatedTest>,
     /// With the place that says it.
     pub features: Vec<(Feature, Span)>,

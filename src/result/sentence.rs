@@ -1,6 +1,6 @@
 //! Joining inside one sentence: which figures belong to which p.
 
-use super::{Feature, ReportedResult, StatedTest, feature};
+use super::{Feature, MOST_TESTS, ReportedResult, StatedTest, feature};
 use crate::context::{Context, Stated, tests_in};
 use crate::reading::{Group, Readings, Relation, SentenceView};
 use crate::text::Span;
@@ -48,8 +48,11 @@ pub(super) fn join(
         return;
     }
     let words = feature::of_words(view);
-    let here: Vec<Stated<_>> =
-        tests_in(view).into_iter().map(|(value, first, last)| Stated { value, span: view.span(first, last) }).collect();
+    let here: Vec<Stated<_>> = tests_in(view)
+        .into_iter()
+        .take(MOST_TESTS)
+        .map(|(value, first, last)| Stated { value, span: view.span(first, last) })
+        .collect();
     for result in &mut out[start..] {
         describe(view, result, readings, context, &words, &here);
     }
@@ -320,7 +323,6 @@ fn describe(
         add(Feature::Unclear, readings.groups[g].span);
     }
     result.tests.extend(here.iter().map(|&test| StatedTest { test, here: true }));
-    result.tests.extend(context.tests.iter().map(|&test| StatedTest { test, here: false }));
 }
 
 /// An analysis that is named in the p's own bracket and that we do not know: `(P < 0.01, ridit analysis)`.

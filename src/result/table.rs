@@ -1,7 +1,7 @@
 //! Joining across the rows of a plain table: the P of a row with its groups, estimate and interval.
 
 use super::sentence::Members;
-use super::{Feature, ReportedResult, StatedTest, feature};
+use super::{Feature, MOST_TESTS, ReportedResult, StatedTest, feature};
 use crate::context::{Context, Stated, Test, tests_in};
 use crate::layout::{Around, ColumnRole, Layout, Row, RowRole, around};
 use crate::manuscript::{BlockKind, Grid, Manuscript};
@@ -220,7 +220,6 @@ impl<'a> Table<'a> {
         result.tests.extend(others.into_iter().map(|test| StatedTest { test, here: false }));
         let proposed = notes.tests.iter().filter(|(mark, _)| mark.is_none()).map(|&(_, test)| test);
         result.tests.extend(proposed.map(|test| StatedTest { test, here: false }));
-        result.tests.extend(context.tests.iter().map(|&test| StatedTest { test, here: false }));
     }
 
     /// Reads the caption and the notes once.
@@ -233,7 +232,7 @@ impl<'a> Table<'a> {
             for id in self.scan.of_block(block) {
                 let view = self.scan.view(self.manuscript, id);
                 let mut at = 0;
-                for test in tests_in(&view) {
+                for test in tests_in(&view).into_iter().take(MOST_TESTS.saturating_sub(notes.tests.len())) {
                     let (value, first, last) = test;
                     if !caption {
                         mark = (at..first).rev().find_map(|i| mark_at(&view, i)).or(mark);

@@ -17,7 +17,8 @@ struct Raised<'a> {
     /// Number of the rule in the catalogue, the last tie-breaker.
     order: usize,
     level: Level,
-    finding: Finding,
+    /// In a box: thousands wait here while the queries are made, and each is let go with its query.
+    finding: Box<Finding>,
 }
 
 impl Raised<'_> {
@@ -46,7 +47,7 @@ pub fn queries(facts: &Facts, catalogue: &Catalogue) -> Vec<Query> {
     for (order, rule) in catalogue.rules().iter().enumerate() {
         for finding in checks::run(&rule.check, look) {
             let level = level::level(rule.level, &finding.weight);
-            let raised = Raised { rule, order, level, finding };
+            let raised = Raised { rule, order, level, finding: Box::new(finding) };
             match raised.finding.scope {
                 _ if raised.finding.at.is_empty() => {}
                 Scope::Figure => figures.push(raised),
@@ -65,10 +66,10 @@ pub fn queries(facts: &Facts, catalogue: &Catalogue) -> Vec<Query> {
         kept.push(raised);
     }
     kept.sort_by_key(|r| (r.place(), r.order));
-    let mut seen: HashMap<(usize, Vec<String>, Vec<String>), usize> = HashMap::new();
+    let mut seen: HashMap<(usize, Vec<&str>, Vec<String>), usize> = HashMap::new();
     kept.into_iter()
         .map(|r| {
-            let figures: Vec<String> = r.finding.figures.iter().map(|s| look.quote(*s).to_owned()).collect();
+            let figures: Vec<&str> = r.finding.figures.iter().map(|s| look.quote(*s)).collect();
             let ordinal = seen.entry((r.order, figures.clone(), r.finding.labels.clone())).or_default();
             let first_name = r.rule.formerly.first().unwrap_or(&r.rule.id);
             let mark = fingerprint(first_name, &figures, &r.finding.labels, *ordinal);
@@ -107,6 +108,7 @@ fn strongest(mut raised: Vec<Raised>) -> (Vec<Raised>, Places) {
 
 fn query(facts: &Look, raised: Raised, fingerprint: String) -> Query {
     let Raised { rule, level, finding, .. } = raised;
+    let finding = *finding;
     let place = finding.at[0];
     let titles = facts.titles(place);
     let mut words = finding.fills;

@@ -31,14 +31,15 @@ pub(super) fn count_at(view: &SentenceView, i: usize) -> Option<(u64, usize)> {
         return None;
     }
     let (mut total, mut part, mut at, mut any) = (0u64, 0u64, i, false);
-    loop {
+    // No number is spelled in more words.
+    while at < i + 24 {
         if let Some(v) =
             view.get(at).filter(|t| t.is(Classes::NUMBER_WORD)).and_then(|_| lexicon::number_word(view.word(at)))
         {
             if v == 100 {
-                part = part.max(1) * 100;
+                part = part.max(1).saturating_mul(100);
             } else {
-                part += v;
+                part = part.saturating_add(v);
             }
             any = true;
             at += 1;
@@ -48,14 +49,14 @@ pub(super) fn count_at(view: &SentenceView, i: usize) -> Option<(u64, usize)> {
         {
             at += 1;
         } else if any && view.eq(at, "thousand") {
-            total = part * 1000;
+            total = part.saturating_mul(1000);
             part = 0;
             at += 1;
         } else {
             break;
         }
     }
-    any.then_some((total + part, at))
+    any.then_some((total.saturating_add(part), at))
 }
 
 /// "Table 2", "day 7", "type 2": the number is part of a name.
