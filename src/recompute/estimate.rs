@@ -172,7 +172,7 @@ pub(crate) fn p_from_interval(case: &Case) -> Result<Vec<Recomputation>, &'stati
             .iter()
             .map(|c| Candidate {
                 range: statistic::halved(c.range),
-                working: format!("{}, one-sided", c.working),
+                working: format!("{}, one-sided", c.working).into(),
                 ..c.clone()
             })
             .collect();

@@ -4,13 +4,14 @@ use super::case::{Case, own, place, size};
 use super::mean::{self, Summary, Tested};
 use super::proportion::{self, Cell};
 use super::target::{Fit, Target};
-use super::verdict::{Candidate, Inputs, Policy, judge};
+use super::verdict::{Candidate, Inputs, Line, Policy, judge};
 use super::{Quantity, Recomputation, Slip, method, reason, slip, statistic, tail, working};
 use crate::context::Test;
 use crate::distribution;
 use crate::printed::Range;
 use crate::query::Ground;
 use crate::reading::{Assumption, Group, Relation, SpreadKind, Symbol};
+use std::rc::Rc;
 
 /// An objection needs p to be off by at least this much as a normal deviate, where the group sizes are printed with
 /// the groups; more where they come from a header, whose n may shrink down a table.
@@ -138,15 +139,10 @@ fn means_candidates(case: &Case, groups: &[&Group]) -> Result<(Vec<Candidate>, V
             (_, Read::Sd) => "; ± read as SD",
             (_, _) => "; ± read as SE",
         };
-        let n = sizes_line(s.iter().map(|s| s.n));
-        let mut add = |tested: Option<Tested>, method, short: &'static str, symbol: &str, variants: &[Test]| {
+        let on: Rc<str> = format!("{}{named}", sizes_line(s.iter().map(|s| s.n))).into();
+        let mut add = |tested: Option<Tested>, method, short: &'static str, symbol: &'static str, variants: &[Test]| {
             let Some(t) = tested else { return };
-            let df = if symbol == "F" { format!("{} and {}", t.df.lo, t.df.hi) } else { working::range(t.df, 3) };
-            let line = format!(
-                "{n}{named}; {short}; {symbol} = {}, df {df}; {}",
-                working::range(t.statistic, 3),
-                working::p(t.p)
-            );
+            let line = Line::Test { on: on.clone(), short, symbol, tested: t };
             let mut c = Candidate::new(method, short, t.p, line).assuming(Assumption::Unadjusted);
             if ways.len() > 1 {
                 c = c.assuming(Assumption::SpreadUnnamed);
@@ -207,7 +203,7 @@ fn one_sided_too(case: &Case, candidates: &mut Vec<Candidate>) {
         .iter()
         .map(|c| Candidate {
             range: statistic::halved(c.range),
-            working: format!("{}, one-sided", c.working),
+            working: format!("{}, one-sided", c.working).into(),
             ..c.clone()
         })
         .collect();
@@ -249,6 +245,9 @@ fn means_slip(case: &Case, target: &Target) -> Option<Slip> {
 
 /// Whether two names are one, case ignored.
 fn same_name(a: &str, b: &str) -> bool {
+    if a.is_ascii() && b.is_ascii() {
+        return a.eq_ignore_ascii_case(b);
+    }
     a.chars().flat_map(char::to_lowercase).eq(b.chars().flat_map(char::to_lowercase))
 }
 

@@ -83,7 +83,7 @@ pub(crate) fn p_from_statistic(case: &Case) -> Result<Option<Recomputation>, &'s
     if case.one_sided() && one_sided {
         all.extend(candidates.iter().map(|c| Candidate {
             range: halved(c.range),
-            working: format!("{}, one-sided", c.working),
+            working: format!("{}, one-sided", c.working).into(),
             ..c.clone()
         }));
     }
@@ -105,7 +105,7 @@ pub(crate) fn p_from_statistic(case: &Case) -> Result<Option<Recomputation>, &'s
             r.verdict = Verdict::Tallies;
             r.sharp = target.sharp_against(c.range);
             r.reason = Some(reason::CUT.into());
-            (r.computed, r.working, r.distance, r.slip) = (Some(c.range), c.working, None, None);
+            (r.computed, r.working, r.distance, r.slip) = (Some(c.range), c.working.to_string(), None, None);
         }
     }
     Ok(out)

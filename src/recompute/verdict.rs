@@ -1,12 +1,50 @@
 //! From candidates to a verdict: what decides, what only agrees, and what holds an objection back.
 
+use super::mean::Tested;
 use super::target::{Fit, Target};
-use super::{Distance, Method, Quantity, Recomputation, Slip, reason};
+use super::{Distance, Method, Quantity, Recomputation, Slip, reason, working};
 use crate::context::Test;
 use crate::printed::Range;
 use crate::query::{Ground, Verdict};
 use crate::reading::Assumption;
 use crate::text::Span;
+use std::fmt;
+use std::rc::Rc;
+
+/// What was computed, for people. Few candidates are shown, so a test is put into words only when it is.
+#[derive(Clone, Debug)]
+pub(crate) enum Line {
+    Words(String),
+    /// A test of means: what it rests on, its name, its symbol and its figures.
+    Test {
+        on: Rc<str>,
+        short: &'static str,
+        symbol: &'static str,
+        tested: Tested,
+    },
+}
+
+impl From<String> for Line {
+    fn from(words: String) -> Line {
+        Line::Words(words)
+    }
+}
+
+impl fmt::Display for Line {
+    fn fmt(&self, f: &mut fmt::Formatter) -> fmt::Result {
+        match self {
+            Line::Words(words) => f.write_str(words),
+            Line::Test { on, short, symbol, tested: t } => {
+                let df = match *symbol {
+                    "F" => format!("{} and {}", t.df.lo, t.df.hi),
+                    _ => working::range(t.df, 3),
+                };
+                let statistic = working::range(t.statistic, 3);
+                write!(f, "{on}; {short}; {symbol} = {statistic}, df {df}; {}", working::p(t.p))
+            }
+        }
+    }
+}
 
 /// One way to compute a figure.
 #[derive(Clone, Debug)]
@@ -14,7 +52,7 @@ pub(crate) struct Candidate {
     pub method: &'static Method,
     /// Encloses the value at every point of the inputs' box.
     pub range: Range,
-    pub working: String,
+    pub working: Line,
     pub assumptions: Vec<Assumption>,
     /// What it is called beside a stated test: "Pearson".
     pub short: &'static str,
@@ -23,8 +61,8 @@ pub(crate) struct Candidate {
 }
 
 impl Candidate {
-    pub fn new(method: &'static Method, short: &'static str, range: Range, working: String) -> Candidate {
-        Candidate { method, range, working, assumptions: Vec::new(), short, decides: true }
+    pub fn new(method: &'static Method, short: &'static str, range: Range, working: impl Into<Line>) -> Candidate {
+        Candidate { method, range, working: working.into(), assumptions: Vec::new(), short, decides: true }
     }
 
     pub fn assuming(mut self, assumption: Assumption) -> Candidate {
@@ -65,9 +103,9 @@ pub(crate) fn judge(
     // The stated test first; then the fit; then the order given.
     let best = candidates.iter().enumerate().min_by_key(|(i, c)| (rank(c), *i)).map(|(i, _)| i)?;
     let (fit, other_test) = rank(&candidates[best]);
-    let mut out = blank(target, &candidates[best], policy, inputs);
     let sharp = candidates.iter().all(|c| target.sharp_against(c.range));
     if fit != Fit::Off {
+        let mut out = blank(target, &candidates[best], policy, inputs);
         out.sharp = sharp;
         out.reason = match fit {
             Fit::Cut => Some(reason::CUT.into()),
@@ -86,7 +124,7 @@ pub(crate) fn judge(
     }
     let deciding = || candidates.iter().filter(|c| c.decides || !any_decides);
     let nearest = deciding().min_by(|a, b| target.distance(a.range).total_cmp(&target.distance(b.range)))?;
-    out = Recomputation { inputs: out.inputs, ..blank(target, nearest, policy, Vec::new()) };
+    let mut out = blank(target, nearest, policy, inputs);
     out.computed = deciding().map(|c| c.range).reduce(Range::hull);
     let size = candidates.iter().map(|c| target.distance(c.range)).fold(f64::INFINITY, f64::min);
     let shift = candidates.iter().map(|c| target.shift(c.range)).fold(f64::INFINITY, f64::min);
@@ -114,7 +152,7 @@ fn blank(target: &Target, candidate: &Candidate, policy: &Policy, inputs: Inputs
         verdict: Verdict::Undecided,
         sharp: false,
         reason: None,
-        working: candidate.working.clone(),
+        working: candidate.working.to_string(),
         assumptions: candidate.assumptions.clone(),
         distance: None,
         slip: None,

@@ -8,7 +8,7 @@ use crate::reading::{Claim, PValue, PlanningKind, Readings, Relation, Role, Scan
 use crate::recompute::{Checked, Quantity};
 use crate::result::ReportedResult;
 use crate::text::Span;
-use std::cell::OnceCell;
+use std::cell::RefCell;
 use std::collections::{HashMap, HashSet};
 use std::ops::Range;
 
@@ -56,6 +56,9 @@ impl Alpha {
     }
 }
 
+/// Phrases in lower case.
+type Phrases = &'static [&'static str];
+
 /// The facts, and what checks look up in them again and again: made once, so that a check's time does not grow with the
 /// square of the manuscript.
 pub struct Look<'a> {
@@ -75,7 +78,8 @@ pub struct Look<'a> {
     /// The parts of the manuscript in which an interval stands.
     with_interval: HashSet<u32>,
     settled: HashMap<(Quantity, u32), Settled>,
-    margin: OnceCell<bool>,
+    /// Answers of [`Look::mentions`].
+    mentioned: RefCell<Vec<(Phrases, bool)>>,
 }
 
 /// How many recomputations of one quantity in one block tally sharply, and how many differ.
@@ -118,7 +122,7 @@ impl<'a> Look<'a> {
             estimates: sorted(&mut readings.estimates.iter().map(|e| e.span)),
             with_interval: HashSet::new(),
             settled,
-            margin: OnceCell::new(),
+            mentioned: RefCell::default(),
         };
         look.with_interval = readings.intervals.iter().map(|i| look.part(i.span)).collect();
         look
@@ -253,17 +257,16 @@ impl<'a> Look<'a> {
     }
 
     /// Any phrase of these anywhere in the manuscript (lower case).
-    pub(super) fn mentions(&self, phrases: &[&str]) -> bool {
-        self.manuscript.blocks.iter().any(|b| {
-            let text = b.text.to_lowercase();
-            phrases.iter().any(|p| text.contains(p))
+    pub(super) fn mentions(&self, phrases: Phrases) -> bool {
+        let known = self.mentioned.borrow().iter().find(|m| m.0 == phrases).map(|m| m.1);
+        known.unwrap_or_else(|| {
+            let answer = self.manuscript.blocks.iter().any(|b| {
+                let text = b.text.to_lowercase();
+                phrases.iter().any(|p| text.contains(p))
+            });
+            self.mentioned.borrow_mut().push((phrases, answer));
+            answer
         })
-    }
-
-    /// A margin of equivalence is stated or spoken of.
-    pub(super) fn margin(&self) -> bool {
-        let words = ["margin", "two one-sided", "tost", "equivalence limit", "equivalence bound"];
-        self.context.non_inferiority.is_some() || *self.margin.get_or_init(|| self.mentions(&words))
     }
 
     /// Another sentence of the same paragraph prints a p, an interval, an estimate or groups.

@@ -80,7 +80,8 @@ fn backed<'a>(facts: &Look<'a>, claim: &Claim, backing: Backing) -> Option<Found
             bare && told && !points.iter().any(|w| sentence.contains(w)) && !excepted(&sentence)
         }
         Backing::NoMargin => {
-            let margin = facts.margin();
+            let margin = facts.context.non_inferiority.is_some()
+                || facts.mentions(&["margin", "two one-sided", "tost", "equivalence limit", "equivalence bound"]);
             let methods =
                 ["method", "analysis", "analyses", "model", "results from"].iter().any(|w| sentence.contains(w));
             !margin && !methods

@@ -20,8 +20,10 @@ pub fn unstated(facts: &Look, what: Statement) -> Vec<Finding> {
     }
     let reads = |kinds: &[PlanningKind]| facts.readings.planning.iter().any(|p| kinds.contains(&p.what));
     let context = facts.context;
-    let sized = reads(&[PlanningKind::SampleSize, PlanningKind::Power])
-        || facts.mentions(&["sample size", "power calculation", "power analysis", "statistical power", "% power"]);
+    let sized = || {
+        reads(&[PlanningKind::SampleSize, PlanningKind::Power])
+            || facts.mentions(&["sample size", "power calculation", "power analysis", "statistical power", "% power"])
+    };
     let (absent, name) = match what {
         Statement::Alpha => {
             let stated = reads(&[PlanningKind::Alpha, PlanningKind::Threshold, PlanningKind::Legend]);
@@ -33,7 +35,7 @@ pub fn unstated(facts: &Look, what: Statement) -> Vec<Finding> {
         }
         Statement::SampleSize => {
             let trial = facts.mentions(&["randomised", "randomized", "randomly assigned", "randomly allocated"]);
-            (trial && !sized && context.power.is_none(), "how the sample size was determined")
+            (trial && !sized() && context.power.is_none(), "how the sample size was determined")
         }
         Statement::Power => {
             let stated = context.power.is_some() || reads(&[PlanningKind::Power]) || facts.mentions(&["power"]);
