@@ -231,7 +231,26 @@ fn markdown_parser_alone(bencher: Bencher, megabytes: usize) {
 
 #[divan::bench(sample_count = 3)]
 fn one_line_of_eight_megabytes(bencher: Bencher) {
-    time(bencher, &manuscript(8 << 20).replace('\n', " "));
+    // Without its signs, or the whole line would be one heading.
+    time(bencher, &manuscript(8 << 20).replace(['\n', '#'], " "));
+}
+
+/// Without full stops, so that it is one sentence.
+#[divan::bench(args = [1, 2], sample_count = 3)]
+fn one_sentence(bencher: Bencher, megabytes: usize) {
+    time(bencher, &"12 (30%) v 14 (35%), no difference (P = 0.03, OR 1.2 (0.8 to 1.9)), ".repeat(megabytes << 14));
+}
+
+#[divan::bench(sample_count = 3)]
+fn a_test_for_every_result(bencher: Bencher) {
+    let text =
+        format!("# Methods\n\n{}# Results\n\n{}", "We used the t test. ".repeat(10_000), "P = 0.03. ".repeat(10_000));
+    time(bencher, &text);
+}
+
+#[divan::bench(sample_count = 3)]
+fn a_table_of_zeros(bencher: Bencher) {
+    time(bencher, &format!("| a | P |\n|---|---|\n{}", "| x | 0.000 |\n".repeat(30_000)));
 }
 
 #[divan::bench(sample_count = 3)]

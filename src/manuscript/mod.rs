@@ -133,7 +133,12 @@ pub struct CellPlace {
 }
 
 impl Manuscript {
-    pub fn new(sections: Vec<Section>, blocks: Vec<Block>, source: Source) -> Manuscript {
+    pub fn new(sections: Vec<Section>, mut blocks: Vec<Block>, source: Source) -> Manuscript {
+        // They are held to the end, and grew by doubling.
+        for block in &mut blocks {
+            block.text.shrink_to_fit();
+            block.marks.shrink_to_fit();
+        }
         let tables = (0u32..).zip(&blocks).filter(|(_, b)| matches!(b.kind, BlockKind::Table(_))).map(|(i, _)| i);
         Manuscript { tables: tables.collect(), sections, blocks, source }
     }

@@ -385,6 +385,7 @@ pub fn read(manuscript: &Manuscript, scan: &Scan) -> Readings {
         read_paragraph(manuscript, scan, scan.of_block(number), section.kind, &mut readings);
     }
     readings.groups.shrink_to_fit();
+    readings.p.shrink_to_fit();
     readings
 }
 

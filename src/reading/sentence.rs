@@ -73,6 +73,7 @@ pub fn scan(manuscript: &Manuscript) -> Scan {
     scan.block_sentences.push(scan.sentences.len() as u32);
     // Tokens are most of what an audit holds.
     scan.tokens.shrink_to_fit();
+    scan.sentences.shrink_to_fit();
     scan
 }
 
