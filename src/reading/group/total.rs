@@ -63,12 +63,12 @@ pub fn fill(groups: &mut [Group], mentions: &[Mention], tested: impl Fn(u32) -> 
     categories(groups);
     let sizes = Sizes::of(mentions);
     for group in groups.iter_mut() {
-        if let (Some(events), Some(percent), None) = (group.events, group.percent, group.total) {
-            if let Some(first) = sizes.only(events.printed.value(), percent, group.span) {
-                let origin = Origin::Inferred(Inference::OtherSentence, first.span);
-                group.total = Some(Figure { printed: Printed::whole(first.size), origin });
-                group.n = group.total;
-            }
+        if let (Some(events), Some(percent), None) = (group.events, group.percent, group.total)
+            && let Some(first) = sizes.only(events.printed.value(), percent, group.span)
+        {
+            let origin = Origin::Inferred(Inference::OtherSentence, first.span);
+            group.total = Some(Figure { printed: Printed::whole(first.size), origin });
+            group.n = group.total;
         }
         if group.n.is_none() && group.events.is_none() && !tested(group.sentence) {
             // One group alone: the only size named before it.
@@ -171,5 +171,29 @@ fn siblings(groups: &mut [Group]) {
     if let Some(group) = odd {
         group.total = Some(Figure { printed: first.printed, origin: Origin::Inferred(Inference::Siblings, span) });
         group.n = group.total;
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn the_index_finds_the_size_that_a_walk_would() {
+        let mention =
+            |i: usize| Mention { size: (i as u64 * 37) % 90 + 5, span: Span::new(0, 10 * i, 10 * i + 2), sentence: 0 };
+        let mentions: Vec<Mention> = (0..60).map(mention).collect();
+        let sizes = Sizes::of(&mentions);
+        for (events, percent) in [(0, "0"), (3, "4.2"), (12, "30"), (12, "13.5"), (40, "100"), (7, "9.9"), (2, "100.0")]
+        {
+            let percent = Printed::parse(percent).expect("a number");
+            for own in [Span::new(0, 0, 1), Span::new(0, 100, 205)] {
+                let fits = |m: &&Mention| m.size >= events && fits(events, m.size, percent);
+                let mut walk = mentions.iter().filter(|m| !m.span.overlaps(own)).filter(fits);
+                let first = walk.next();
+                let only = first.filter(|f| walk.all(|m| m.size == f.size));
+                assert_eq!(sizes.only(events as f64, percent, own), only, "{events} {percent}");
+            }
+        }
     }
 }
