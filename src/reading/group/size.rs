@@ -34,10 +34,12 @@ pub(super) fn assign(view: &SentenceView, drafts: &mut [Draft]) {
             return;
         }
     }
+    // Sizes stand before their summaries or behind them; the first summary shows which.
+    let reach = if sizes[0].1 < drafts[open[0]].first { 6 } else { 14 };
     for &d in &open {
         let (first, last) = (drafts[d].first, drafts[d].last);
-        // right behind: `5.2 ± 1.1 (n = 24)`, `5.2 ± 1.1, n = 24`
-        let behind = sizes.iter().find(|s| s.1 > last && s.1 <= last + 6 && !crosses(view, last + 1, s.1));
+        // right behind: `5.2 ± 1.1 (n = 24)`, `5.2 ± 1.1, n = 24`, `5.2 ± 1.1 with the sling (n = 24)`
+        let behind = sizes.iter().find(|s| s.1 > last && s.1 <= last + reach && !crosses(view, last + 1, s.1));
         let before = sizes.iter().rev().find(|s| s.1 < first);
         if let Some(&(n, at)) = behind.or(before) {
             give(view, &mut drafts[d], n, at);
