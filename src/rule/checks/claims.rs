@@ -226,6 +226,11 @@ pub fn against_p(facts: &Facts, says: Says) -> Vec<Finding> {
             continue;
         }
         let p = facts.p_of(claim);
+        // A p inside the words of the claim may belong to what they begin with, not to what they conclude.
+        let inside = says == Says::NotSignificant && p.iter().any(|p| claim.span.contains(p.span));
+        if inside {
+            continue;
+        }
         let against = |p: &&PValue| match says {
             Says::Significant => alpha.below(p),
             Says::NotSignificant => alpha.above(p),
