@@ -2,6 +2,7 @@
 //! arms and group sizes, interval level, each with its place.
 
 mod arm;
+mod size;
 mod statement;
 pub mod test_name;
 // Word lists are easier to read in full lines.
@@ -13,6 +14,7 @@ use crate::printed::Printed;
 use crate::reading::{PlanningKind, Readings, Scan, Sides};
 use crate::text::Span;
 
+pub use size::fill_sizes;
 pub use test_name::{Test, tests_in};
 
 /// A statement with its place.
