@@ -9,6 +9,9 @@ use crate::reading::lexicon::{self, Classes};
 const GROUP: &[&str] =
     &["group", "groups", "arm", "arms", "controls", "control", "placebo", "condition", "cohort", "treatment"];
 
+/// More arms than any study has; text made to hurt has more.
+const MOST: usize = 100;
+
 /// Appends the arms that a sentence introduces (`the placebo group (n = 24)`), and the number randomised.
 pub(super) fn arms(view: &SentenceView, context: &mut Context) {
     let mut found: Vec<Arm> = Vec::new();
@@ -30,7 +33,7 @@ pub(super) fn arms(view: &SentenceView, context: &mut Context) {
     for arm in found {
         let worded = certain || says_group(view, arm.span.start);
         let known = context.arms.iter().any(|a| a.label.eq_ignore_ascii_case(&arm.label));
-        if worded && !known {
+        if worded && !known && context.arms.len() < MOST {
             context.arms.push(arm);
         }
     }
@@ -77,7 +80,7 @@ fn randomised(view: &SentenceView, context: &mut Context) {
         return;
     }
     for v in 0..view.len() {
-        if !view.any(v, &["randomised", "randomized", "randomly"]) {
+        if !view.is(v, Classes::RARE) || !view.any(v, &["randomised", "randomized", "randomly"]) {
             continue;
         }
         // "… patients were (randomly) randomised/assigned": back over the verb to a count of people.

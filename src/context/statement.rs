@@ -65,7 +65,7 @@ pub(super) fn anywhere(view: &SentenceView, context: &mut Context) {
         if !token.is_word() {
             continue;
         }
-        if context.crossover.is_none() {
+        if context.crossover.is_none() && token.is(Classes::RARE) {
             let cross = view.any(i, &["crossover"])
                 || view.any(i, &["cross"]) && view.sign(i + 1, '-') && view.any(i + 2, &["over"]);
             if cross
@@ -75,7 +75,7 @@ pub(super) fn anywhere(view: &SentenceView, context: &mut Context) {
                 context.crossover = Some(Stated { value: (), span: span(view, i, i) });
             }
         }
-        if context.non_inferiority.is_none() {
+        if context.non_inferiority.is_none() && token.is(Classes::RARE) {
             let one = view.any(i, &["noninferiority", "noninferior"]);
             let two = view.any(i, &["non"]) && view.any(i + 2, &["inferiority", "inferior"]);
             if (one || two)

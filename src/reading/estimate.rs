@@ -255,6 +255,10 @@ fn name(view: &SentenceView, i: usize) -> Option<Name> {
         return None;
     }
     let word = view.word(i);
+    // Greek letters are not in the lexicon.
+    if !token.is(super::lexicon::Classes::MEASURE) && word.as_bytes().first().is_some_and(u8::is_ascii) {
+        return None;
+    }
     let before = |words: &[&str]| i > 0 && view.any(i - 1, words);
     let adjusted_before = (i.saturating_sub(4)..i).any(|k| view.any(k, &["adjusted", "multivariable", "multivariate"]));
     let hit = |measure: Measure, scale: Scale, last: usize, adjusted: bool| {

@@ -1,6 +1,7 @@
 //! What single words mean to the recognisers: one table, one look-up per word during the scan.
 
 use std::collections::HashMap;
+use std::hash::{BuildHasherDefault, Hasher};
 use std::sync::OnceLock;
 
 /// A set of word classes.
@@ -71,6 +72,12 @@ impl Classes {
     pub const N: Classes = Classes(1 << 42);
     pub const OF: Classes = Classes(1 << 43);
     pub const TO: Classes = Classes(1 << 44);
+    /// Words with which the name of an effect's measure begins.
+    pub const MEASURE: Classes = Classes(1 << 45);
+    /// Words that show what a plain recomputation must respect, alone or as the first of a phrase.
+    pub const FEATURE: Classes = Classes(1 << 46);
+    /// Words that few sentences hold and that are looked for in all: one bit spares comparing every word with them.
+    pub const RARE: Classes = Classes(1 << 47);
     // Bits from 48 on belong to the claims recogniser.
 
     pub const fn or(self, other: Classes) -> Classes {
@@ -241,6 +248,130 @@ const WORDS: &[Entry] = &[
     ),
     (&["interaction", "interactions", "interacted", "moderation"], Classes::INTERACTION),
     (&["trend", "trends"], Classes::TREND),
+    (
+        &[
+            "hr",
+            "hrs",
+            "ahr",
+            "or",
+            "ors",
+            "aor",
+            "aors",
+            "oradj",
+            "rr",
+            "rrs",
+            "arr",
+            "arrs",
+            "arrr",
+            "pr",
+            "irr",
+            "irrs",
+            "airr",
+            "md",
+            "wmd",
+            "smd",
+            "rd",
+            "ard",
+            "nnt",
+            "nnh",
+            "nntb",
+            "nnth",
+            "rrr",
+            "ve",
+            "b",
+            "beta",
+            "d",
+            "g",
+            "auc",
+            "auroc",
+            "eta",
+            "hazard",
+            "hazards",
+            "odds",
+            "risk",
+            "relative",
+            "rate",
+            "prevalence",
+            "absolute",
+            "number",
+            "efficacy",
+            "effect",
+            "coefficient",
+            "slope",
+            "difference",
+            "differences",
+        ],
+        Classes::MEASURE,
+    ),
+    (
+        &[
+            "before",
+            "pre",
+            "within",
+            "mixed",
+            "three",
+            "four",
+            "five",
+            "six",
+            "all",
+            "paired",
+            "repeated",
+            "crossover",
+            "baseline",
+            "posttest",
+            "pretest",
+            "intragroup",
+            "adjusted",
+            "adjusting",
+            "adjustment",
+            "ancova",
+            "covariate",
+            "covariates",
+            "covariance",
+            "regression",
+            "multivariate",
+            "multivariable",
+            "multilevel",
+            "cluster",
+            "clusters",
+            "clustering",
+            "villages",
+            "controlling",
+            "controlled",
+            "stratified",
+            "weighted",
+            "imputed",
+            "imputation",
+            "geometric",
+            "log",
+            "transformed",
+            "median",
+            "medians",
+            "bonferroni",
+            "tukey",
+            "survival",
+            "kaplan",
+            "hazard",
+            "actuarial",
+        ],
+        Classes::FEATURE,
+    ),
+    (
+        &[
+            "crossover",
+            "cross",
+            "noninferiority",
+            "noninferior",
+            "non",
+            "randomised",
+            "randomized",
+            "randomly",
+            "probability",
+            "likelihood",
+            "chance",
+        ],
+        Classes::RARE,
+    ),
 ];
 
 /// Spelled-out numbers, 0 to 99 in parts ("twenty", "four").
@@ -278,10 +409,33 @@ const NUMBER_WORDS: &[(&str, u64)] = &[
     ("hundred", 100),
 ];
 
-fn table() -> &'static HashMap<&'static str, Classes> {
-    static TABLE: OnceLock<HashMap<&'static str, Classes>> = OnceLock::new();
+/// A quick hash for short words that nobody chooses: the keys are the table's own.
+#[derive(Default)]
+struct WordHasher(u64);
+
+impl Hasher for WordHasher {
+    fn write(&mut self, bytes: &[u8]) {
+        // The golden ratio in 64 bits: its multiples spread over all bits (Knuth, TAOCP 3, section 6.4).
+        const GOLDEN: u64 = 0x9E37_79B9_7F4A_7C15;
+        for chunk in bytes.chunks(8) {
+            let mut word = [0; 8];
+            word[..chunk.len()].copy_from_slice(chunk);
+            self.0 = (self.0.rotate_left(5) ^ u64::from_le_bytes(word)).wrapping_mul(GOLDEN);
+        }
+    }
+
+    fn finish(&self) -> u64 {
+        // The map takes its place from the low bits, the product is best in the high ones.
+        self.0 ^ self.0 >> 32
+    }
+}
+
+type Table = HashMap<&'static str, Classes, BuildHasherDefault<WordHasher>>;
+
+fn table() -> &'static Table {
+    static TABLE: OnceLock<Table> = OnceLock::new();
     TABLE.get_or_init(|| {
-        let mut map: HashMap<&'static str, Classes> = HashMap::new();
+        let mut map = Table::default();
         for (words, classes) in WORDS.iter().chain(super::claim_words::WORDS) {
             for word in *words {
                 let entry = map.entry(word).or_default();

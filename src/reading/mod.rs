@@ -360,6 +360,13 @@ pub struct Readings {
     pub planning: Vec<Planning>,
 }
 
+/// The members of a list of readings that stand in some sentences. Lists are in reading order.
+pub fn within<T>(list: &[T], sentence: impl Fn(&T) -> u32, sentences: std::ops::Range<u32>) -> &[T] {
+    let first = list.partition_point(|x| sentence(x) < sentences.start);
+    let count = list[first..].partition_point(|x| sentence(x) < sentences.end);
+    &list[first..first + count]
+}
+
 /// Reads a whole manuscript. Blocks of the reference list and of back matter are passed over.
 pub fn read(manuscript: &Manuscript, scan: &Scan) -> Readings {
     let mut readings = Readings::default();
@@ -401,7 +408,8 @@ fn read_paragraph(
     for id in sentences {
         read_sentence(&scan.view(manuscript, id), &mut setting, &mut named, readings);
     }
-    let tested = |sentence| readings.p[first_p..].iter().any(|p| p.sentence == sentence);
+    let p = &readings.p[first_p..];
+    let tested = |sentence| !within(p, |p| p.sentence, sentence..sentence + 1).is_empty();
     group::total::fill(&mut readings.groups[first_group..], &mentions, tested);
 }
 

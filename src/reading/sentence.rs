@@ -40,6 +40,10 @@ impl Scan {
     }
 }
 
+/// Tokens after which a sentence is cut, and a table's cell left. No real sentence is as long; text without full stops
+/// is, and what looks around within its sentence would take the square of its length.
+const LONGEST: usize = 600;
+
 /// Scans every block once.
 pub fn scan(manuscript: &Manuscript) -> Scan {
     let mut scan = Scan::default();
@@ -51,6 +55,7 @@ pub fn scan(manuscript: &Manuscript) -> Scan {
                 for cell in &grid.cells {
                     let first = scan.tokens.len();
                     scanner.run(cell.start as usize, cell.end as usize, &mut scan.tokens);
+                    scan.tokens.truncate(first + LONGEST);
                     scan.sentences.push(Sentence {
                         block: number as u32,
                         first: first as u32,
@@ -418,14 +423,28 @@ const ABBREVIATIONS: &[&str] = &[
     "pp", "s", "d", "n", "bros", "incl", "excl", "adj",
 ];
 
+/// Appends the sentence of tokens `first..last`, an endless one in parts, cut behind commas where there are any.
+fn push_sentence(block: u32, mut first: usize, last: usize, scan: &mut Scan) {
+    while last - first > LONGEST {
+        let tokens = &scan.tokens;
+        let part = (first + LONGEST / 2..first + LONGEST).rev();
+        let comma = |k: &usize| matches!(tokens[k - 1].kind, TokenKind::Sign(',' | ';')) && tokens[*k].spaced;
+        let cut = part.clone().find(comma).or_else(|| part.clone().find(|&k| tokens[k].spaced));
+        let cut = cut.unwrap_or(first + LONGEST);
+        scan.sentences.push(Sentence { block, first: first as u32, last: cut as u32 });
+        first = cut;
+    }
+    scan.sentences.push(Sentence { block, first: first as u32, last: last as u32 });
+}
+
 /// Ends a sentence after `.`, `!` or `?` (with closing brackets, quotes and raised reference marks) before a space and
 /// a capital, a digit or an opening bracket.
 fn split_sentences(block: &Block, number: u32, first: usize, scan: &mut Scan) {
-    let tokens = &scan.tokens;
-    let last = tokens.len();
+    let last = scan.tokens.len();
     let mut start = first;
     let mut i = first;
     while i < last {
+        let tokens = &scan.tokens;
         let t = &tokens[i];
         if !matches!(t.kind, TokenKind::Sign('.' | '!' | '?')) || t.style != Style::Plain {
             i += 1;
@@ -461,13 +480,13 @@ fn split_sentences(block: &Block, number: u32, first: usize, scan: &mut Scan) {
                     || ABBREVIATIONS.iter().any(|a| a.eq_ignore_ascii_case(word)))
         };
         if opens && !abbreviated {
-            scan.sentences.push(Sentence { block: number, first: start as u32, last: next as u32 });
+            push_sentence(number, start, next, scan);
             start = next;
         }
         i = next;
     }
     if start < last {
-        scan.sentences.push(Sentence { block: number, first: start as u32, last: last as u32 });
+        push_sentence(number, start, last, scan);
     }
 }
 
@@ -506,8 +525,13 @@ impl<'a> SentenceView<'a> {
     }
 
     pub fn any(&self, i: usize, words: &[&str]) -> bool {
-        let w = self.word(i);
-        words.iter().any(|x| w.eq_ignore_ascii_case(x))
+        let w = self.word(i).as_bytes();
+        let Some(first) = w.first().map(|b| b | 0x20) else { return false };
+        // Most words differ in length or first letter, which is cheaper to see.
+        words
+            .iter()
+            .map(|x| x.as_bytes())
+            .any(|x| x.len() == w.len() && x.first().is_some_and(|b| b | 0x20 == first) && x.eq_ignore_ascii_case(w))
     }
 
     /// Whether the tokens from `i` on are these words, case ignored.

@@ -249,6 +249,9 @@ fn means_slip(case: &Case, target: &Target) -> Option<Slip> {
 
 /// The sizes of the arms that bear the groups' names, where they are other ones.
 fn other_sizes(case: &Case) -> Vec<Option<f64>> {
+    if case.context.arms.is_empty() {
+        return Vec::new();
+    }
     let arm = |g: &&Group| {
         let label = g.label.to_lowercase();
         let arm = case.context.arms.iter().find(|a| !label.is_empty() && a.label.to_lowercase() == label)?;

@@ -2,6 +2,7 @@
 
 use super::Feature;
 use crate::context::Test;
+use crate::reading::lexicon::Classes;
 use crate::reading::{PValue, Role};
 use crate::reading::{Readings, SentenceView};
 use crate::text::Span;
@@ -53,6 +54,10 @@ const WORDS: &[(&str, Feature)] = &[
 pub(super) fn of_words(view: &SentenceView) -> Vec<(Feature, Span)> {
     let mut found: Vec<(Feature, Span)> = Vec::new();
     for i in 0..view.len() {
+        // The numbers are those of "3 groups".
+        if !view.is(i, Classes::FEATURE) && view.number(i).is_none() {
+            continue;
+        }
         let feature = WORDS.iter().find(|(w, _)| view.eq(i, w)).map(|&(_, f)| f).or_else(|| phrase(view, i));
         if let Some(feature) = feature
             && found.iter().all(|&(f, _)| f != feature)
@@ -130,4 +135,15 @@ pub(super) fn of_groups(view: &SentenceView, readings: &Readings, groups: &[usiz
     }
     found.dedup_by_key(|f| f.0);
     found
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::reading::lexicon::classes;
+
+    #[test]
+    fn the_lexicon_knows_every_word() {
+        assert!(WORDS.iter().all(|(word, _)| classes(word).meets(Classes::FEATURE)));
+    }
 }

@@ -108,9 +108,12 @@ fn segments(view: &SentenceView, members: &Members, readings: &Readings) -> Vec<
 /// Where a p's own figures end behind it.
 fn trailing(view: &SentenceView, members: &Members, readings: &Readings, mut end: u32, limit: u32) -> u32 {
     let next_of = |from: u32| {
-        let intervals = members.intervals.clone().map(|i| readings.intervals[i].span);
-        let estimates = members.estimates.clone().map(|i| readings.estimates[i].span);
-        intervals.chain(estimates).filter(|s| s.start >= from).min_by_key(|s| s.start)
+        // Both lists are in order of their starts.
+        let intervals = &readings.intervals[members.intervals.clone()];
+        let interval = intervals.get(intervals.partition_point(|i| i.span.start < from)).map(|i| i.span);
+        let estimates = &readings.estimates[members.estimates.clone()];
+        let estimate = estimates.get(estimates.partition_point(|e| e.span.start < from)).map(|e| e.span);
+        interval.into_iter().chain(estimate).min_by_key(|s| s.start)
     };
     while let Some(span) = next_of(end) {
         if span.end > limit {

@@ -4,6 +4,8 @@ use super::catalogue::{Catalogue, Rule};
 use super::checks;
 use super::finding::{Draft, Finding, Scope};
 use super::fingerprint::fingerprint;
+use super::look::Look;
+use super::places::Places;
 use super::{Facts, level, wording};
 use crate::query::{Explanation, Ground, Level, Query, Related, Repair};
 use crate::text::Span;
@@ -39,9 +41,10 @@ impl Raised<'_> {
 
 /// The queries of a catalogue, in reading order.
 pub fn queries(facts: &Facts, catalogue: &Catalogue) -> Vec<Query> {
+    let look = &Look::new(facts);
     let (mut figures, mut wide) = (Vec::new(), Vec::new());
     for (order, rule) in catalogue.rules().iter().enumerate() {
-        for finding in checks::run(&rule.check, facts) {
+        for finding in checks::run(&rule.check, look) {
             let level = level::level(rule.level, &finding.weight);
             let raised = Raised { rule, order, level, finding };
             match raised.finding.scope {
@@ -51,36 +54,45 @@ pub fn queries(facts: &Facts, catalogue: &Catalogue) -> Vec<Query> {
             }
         }
     }
-    let mut kept = strongest(figures);
+    let (mut kept, mut places) = strongest(figures);
     for mut raised in wide {
         // Begin where no figure is queried already, so that no figure carries two queries.
-        let free = raised.finding.at.iter().position(|s| !kept.iter().any(|k| k.place().overlaps(*s)));
+        let free = raised.finding.at.iter().position(|s| places.over(*s).next().is_none());
         if let Some(i) = free {
             raised.finding.at.swap(0, i);
         }
+        places.add(raised.place(), kept.len());
         kept.push(raised);
     }
     kept.sort_by_key(|r| (r.place(), r.order));
     let mut seen: HashMap<(usize, Vec<String>, Vec<String>), usize> = HashMap::new();
     kept.into_iter()
         .map(|r| {
-            let figures: Vec<String> = r.finding.figures.iter().map(|s| facts.quote(*s).to_owned()).collect();
+            let figures: Vec<String> = r.finding.figures.iter().map(|s| look.quote(*s).to_owned()).collect();
             let ordinal = seen.entry((r.order, figures.clone(), r.finding.labels.clone())).or_default();
             let first_name = r.rule.formerly.first().unwrap_or(&r.rule.id);
             let mark = fingerprint(first_name, &figures, &r.finding.labels, *ordinal);
             *ordinal += 1;
-            query(facts, r, mark)
+            query(look, r, mark)
         })
         .collect()
 }
 
-/// One query for each figure: the strongest; what the others asked is listed with it.
-fn strongest(mut raised: Vec<Raised>) -> Vec<Raised> {
+/// One query for each figure: the strongest; what the others asked is listed with it. Gives their
+/// places, too.
+fn strongest(mut raised: Vec<Raised>) -> (Vec<Raised>, Places) {
     raised.sort_by_key(Raised::strength);
     let mut kept: Vec<Raised> = Vec::new();
+    let mut places = Places::default();
     for r in raised {
-        match kept.iter_mut().find(|k| k.same_matter(&r)) {
-            None => kept.push(r),
+        // Whatever is the same matter lies at the same place or at one that this finding leans on.
+        let near = r.finding.related.iter().map(|&(s, _)| s).chain([r.place()]).flat_map(|s| places.over(s));
+        let same = near.filter(|&i| kept[i].same_matter(&r)).min();
+        match same.map(|i| &mut kept[i]) {
+            None => {
+                places.add(r.place(), kept.len());
+                kept.push(r);
+            }
             Some(k) if k.rule.id == r.rule.id && k.place() == r.place() => {}
             Some(k) => {
                 let results = r.finding.results.iter().filter(|i| !k.finding.results.contains(i));
@@ -90,10 +102,10 @@ fn strongest(mut raised: Vec<Raised>) -> Vec<Raised> {
             }
         }
     }
-    kept
+    (kept, places)
 }
 
-fn query(facts: &Facts, raised: Raised, fingerprint: String) -> Query {
+fn query(facts: &Look, raised: Raised, fingerprint: String) -> Query {
     let Raised { rule, level, finding, .. } = raised;
     let place = finding.at[0];
     let titles = facts.titles(place);

@@ -1,9 +1,16 @@
 //! Questions that several checks put to the facts.
 
 use super::Facts;
-use crate::manuscript::{BlockKind, MarkKind, SectionKind};
-use crate::reading::{Claim, PValue, Relation, Role, Sides};
+use crate::context::Context;
+use crate::manuscript::{BlockKind, Manuscript, MarkKind, SectionKind};
+use crate::query::Verdict;
+use crate::reading::{Claim, PValue, PlanningKind, Readings, Relation, Role, Scan, Sides, within};
+use crate::recompute::{Checked, Quantity};
+use crate::result::ReportedResult;
 use crate::text::Span;
+use std::cell::OnceCell;
+use std::collections::{HashMap, HashSet};
+use std::ops::Range;
 
 /// Numerical slack of comparisons with alpha: printed decimals are not exact doubles.
 const SLACK: f64 = 1e-12;
@@ -49,7 +56,74 @@ impl Alpha {
     }
 }
 
-impl<'a> Facts<'a> {
+/// The facts, and what checks look up in them again and again: made once, so that a check's time does not grow with the
+/// square of the manuscript.
+pub struct Look<'a> {
+    pub manuscript: &'a Manuscript,
+    pub scan: &'a Scan,
+    pub readings: &'a Readings,
+    pub context: &'a Context,
+    pub results: &'a [ReportedResult],
+    pub checked: &'a [Checked],
+    pub alpha: Alpha,
+    /// Readings of results, each with the result's number.
+    members: Vec<(Span, usize)>,
+    /// Where the claims, intervals and estimates stand, by place.
+    claims: Vec<Span>,
+    intervals: Vec<Span>,
+    estimates: Vec<Span>,
+    /// The parts of the manuscript in which an interval stands.
+    with_interval: HashSet<u32>,
+    settled: HashMap<(Quantity, u32), Settled>,
+    lower: OnceCell<String>,
+}
+
+/// How many recomputations of one quantity in one block tally sharply, and how many differ.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub struct Settled {
+    pub sharp: usize,
+    pub differ: usize,
+}
+
+impl Settled {
+    pub fn add(&mut self, verdict: Verdict, sharp: bool) {
+        self.sharp += usize::from(verdict == Verdict::Tallies && sharp);
+        self.differ += usize::from(verdict == Verdict::Differs);
+    }
+}
+
+impl<'a> Look<'a> {
+    pub fn new(facts: &Facts<'a>) -> Look<'a> {
+        let &Facts { manuscript, scan, readings, context, results, checked } = facts;
+        let sorted = |spans: &mut dyn Iterator<Item = Span>| {
+            let mut spans: Vec<Span> = spans.collect();
+            spans.sort_unstable();
+            spans
+        };
+        let mut settled: HashMap<(Quantity, u32), Settled> = HashMap::new();
+        for r in checked.iter().flat_map(|c| &c.recomputations) {
+            settled.entry((r.of, r.figure.block)).or_default().add(r.verdict, r.sharp);
+        }
+        let mut look = Look {
+            manuscript,
+            scan,
+            readings,
+            context,
+            results,
+            checked,
+            alpha: alpha(facts),
+            members: members(facts),
+            claims: sorted(&mut readings.claims.iter().map(|c| c.span)),
+            intervals: sorted(&mut readings.intervals.iter().map(|i| i.span)),
+            estimates: sorted(&mut readings.estimates.iter().map(|e| e.span)),
+            with_interval: HashSet::new(),
+            settled,
+            lower: OnceCell::new(),
+        };
+        look.with_interval = readings.intervals.iter().map(|i| look.part(i.span)).collect();
+        look
+    }
+
     pub(super) fn quote(&self, span: Span) -> &'a str {
         self.manuscript.quote(span)
     }
@@ -58,29 +132,24 @@ impl<'a> Facts<'a> {
         matches!(self.manuscript.block(span).kind, BlockKind::Table(_))
     }
 
-    /// The significance levels stated, those of thresholds included; 0.05 where there are none.
-    pub(super) fn alpha(&self) -> Alpha {
-        // "P < 0.20 entered the model" is no significance level.
-        const HIGHEST: f64 = 0.101;
-        let thresholds = self.readings.planning.iter().filter(|p| {
-            matches!(p.what, crate::reading::PlanningKind::Alpha | crate::reading::PlanningKind::Threshold)
-        });
-        let stated = self.context.alpha.iter().map(|a| a.value).chain(thresholds.filter_map(|p| p.value));
-        let mut levels: Vec<f64> = stated.map(|p| p.value()).filter(|a| (1e-9..HIGHEST).contains(a)).collect();
-        if levels.is_empty() {
-            return Alpha { lowest: 0.05, highest: 0.05, stated: false };
-        }
-        // A one-sided 0.025 is the same demand as a two-sided 0.05.
-        if self.context.sides.is_some_and(|s| s.value == Sides::One) {
-            levels.push(levels.iter().fold(0.0, |a: f64, &b| a.max(b)).max(0.05));
-        }
-        // Several levels belong to several analyses, and the usual one may go without saying.
-        if levels.iter().any(|&a| a != levels[0]) {
-            levels.push(0.05);
-        }
-        let lowest = levels.iter().copied().fold(f64::INFINITY, f64::min);
-        let highest = levels.iter().copied().fold(0.0, f64::max);
-        Alpha { lowest, highest, stated: true }
+    /// The numbers of the results that a reading belongs to, in order.
+    pub(super) fn results_with(&self, reading: Span) -> impl Iterator<Item = usize> {
+        let first = self.members.partition_point(|m| m.0 < reading);
+        self.members[first..].iter().take_while(move |m| m.0 == reading).map(|m| m.1)
+    }
+
+    /// How the recomputations of a quantity in one block came out.
+    pub(super) fn settled(&self, of: Quantity, block: u32) -> Settled {
+        self.settled.get(&(of, block)).copied().unwrap_or_default()
+    }
+
+    /// Whether an estimate or interval stands wholly between two places of one block.
+    pub(super) fn stands_between(&self, first: Span, second: Span) -> bool {
+        [&self.estimates, &self.intervals].into_iter().any(|spans| {
+            let from = spans.partition_point(|s| (s.block, s.start) < (first.block, first.end));
+            let mut near = spans[from..].iter().take_while(|s| (s.block, s.start) <= (first.block, second.start));
+            near.any(|s| s.end <= second.start)
+        })
     }
 
     /// The titles of the sections that a place stands in, from the top.
@@ -128,27 +197,37 @@ impl<'a> Facts<'a> {
 
     /// A confidence interval in the same part of the manuscript's message.
     pub(super) fn interval_in_part(&self, span: Span) -> bool {
-        let part = self.part(span);
-        self.readings.intervals.iter().any(|i| self.part(i.span) == part)
+        self.with_interval.contains(&self.part(span))
     }
 
-    /// The sentence cites others: it stands outside the results and holds a reference to the literature.
-    pub(super) fn cites_others(&self, span: Span, sentence: u32) -> bool {
-        if self.reports_results(span) {
+    /// The sentence of a claim cites others: it stands outside the results and holds a reference to the literature.
+    pub(super) fn cites_others(&self, claim: &Claim) -> bool {
+        if self.reports_results(claim.span) {
             return false;
         }
-        let s = self.scan.sentences[sentence as usize];
-        let tokens = &self.scan.tokens[s.first as usize..s.last as usize];
-        let (Some(first), Some(last)) = (tokens.first(), tokens.last()) else { return false };
+        let around = self.around(claim);
         // References stand behind the last word, too.
-        let block = self.manuscript.block(span);
-        block.marked(MarkKind::Reference, first.start, last.end + 8) || self.sentence(sentence).contains("et al")
+        let (start, end) = (around.start as u32, around.end as u32 + 8);
+        self.manuscript.block(claim.span).marked(MarkKind::Reference, start, end)
+            || self.sentence(claim).contains("et al")
     }
 
-    /// The text of a sentence, in lower case.
-    pub(super) fn sentence(&self, id: u32) -> String {
-        let view = self.scan.view(self.manuscript, id);
-        if view.is_empty() { String::new() } else { view.quote(0, view.len() - 1).to_lowercase() }
+    /// The text of a claim's sentence, in lower case; of an endless sentence, what stands near the claim.
+    pub(super) fn sentence(&self, claim: &Claim) -> String {
+        self.manuscript.block(claim.span).text[self.around(claim)].to_lowercase()
+    }
+
+    /// The bytes of a claim's sentence, or of what stands near the claim in it.
+    fn around(&self, claim: &Claim) -> Range<usize> {
+        // No real sentence is as long; text without full stops is, and would be read again for each of its claims.
+        const NEAR: usize = 4000;
+        let s = self.scan.sentences[claim.sentence as usize];
+        let tokens = &self.scan.tokens[s.first as usize..s.last as usize];
+        let (Some(first), Some(last)) = (tokens.first(), tokens.last()) else { return 0..0 };
+        let text = &self.manuscript.block(claim.span).text;
+        let start = text.floor_char_boundary(claim.span.range().start.saturating_sub(NEAR));
+        let end = text.floor_char_boundary(claim.span.range().end + NEAR);
+        start.max(first.start as usize)..end.min(last.end as usize)
     }
 
     /// Lower-case text between two places of one block; empty when they touch or cross.
@@ -161,33 +240,78 @@ impl<'a> Facts<'a> {
     /// The p-values that a claim speaks of: those after it and before the next claim of its sentence; when
     /// the sentence makes one claim only, all of them.
     pub(super) fn p_of(&self, claim: &Claim) -> Vec<&'a PValue> {
-        let claims = self.readings.claims.iter().filter(|c| c.sentence == claim.sentence);
-        let next = claims.clone().map(|c| c.span.start).filter(|&s| s >= claim.span.end).min();
-        let alone = claims.filter(|c| !c.span.overlaps(claim.span)).count() == 0;
-        let all = self.readings.p.iter().filter(|p| p.sentence == claim.sentence);
+        let own = claim.sentence..claim.sentence + 1;
+        let from = self.claims.partition_point(|s| (s.block, s.start) < (claim.span.block, claim.span.end));
+        let s = self.scan.sentences[claim.sentence as usize];
+        let end = self.scan.tokens[s.last as usize - 1].end;
+        let next = self.claims.get(from).filter(|s| s.block == claim.span.block && s.start < end).map(|s| s.start);
+        let mut claims = within(&self.readings.claims, |c| c.sentence, own.clone()).iter();
+        let all = within(&self.readings.p, |p| p.sentence, own).iter();
         let after = all.clone().filter(|p| p.span.start >= claim.span.start);
         let own: Vec<_> = after.filter(|p| next.is_none_or(|n| p.span.end <= n)).collect();
-        if own.is_empty() && alone { all.collect() } else { own }
+        if own.is_empty() && claims.all(|c| c.span.overlaps(claim.span)) { all.collect() } else { own }
     }
 
     /// Any phrase of these anywhere in the manuscript (lower case).
     pub(super) fn mentions(&self, phrases: &[&str]) -> bool {
-        self.manuscript.blocks.iter().any(|b| {
-            let text = b.text.to_lowercase();
-            phrases.iter().any(|p| text.contains(p))
-        })
+        let text = self.lower.get_or_init(|| {
+            let blocks = self.manuscript.blocks.iter();
+            let lower = blocks.map(|b| b.text.to_lowercase());
+            lower.fold(String::new(), |all, text| all + &text + "\n")
+        });
+        phrases.iter().any(|p| text.contains(p))
     }
 
     /// Another sentence of the same paragraph prints a p, an interval, an estimate or groups.
     pub(super) fn figures_in_block(&self, span: Span) -> bool {
-        let r = self.readings;
-        let mut spans = (r.p.iter().map(|x| x.span))
-            .chain(r.intervals.iter().map(|x| x.span))
-            .chain(r.estimates.iter().map(|x| x.span))
-            .chain(r.groups.iter().map(|x| x.span))
-            .chain(r.statistics.iter().map(|x| x.span));
-        spans.any(|s| s.block == span.block)
+        let (r, own) = (self.readings, self.scan.of_block(span.block as usize));
+        !within(&r.p, |x| x.sentence, own.clone()).is_empty()
+            || !within(&r.intervals, |x| x.sentence, own.clone()).is_empty()
+            || !within(&r.estimates, |x| x.sentence, own.clone()).is_empty()
+            || !within(&r.groups, |x| x.sentence, own.clone()).is_empty()
+            || !within(&r.statistics, |x| x.sentence, own).is_empty()
     }
+}
+
+/// The significance levels stated, those of thresholds included; 0.05 where there are none.
+fn alpha(facts: &Facts) -> Alpha {
+    // "P < 0.20 entered the model" is no significance level.
+    const HIGHEST: f64 = 0.101;
+    let thresholds =
+        facts.readings.planning.iter().filter(|p| matches!(p.what, PlanningKind::Alpha | PlanningKind::Threshold));
+    let stated = facts.context.alpha.iter().map(|a| a.value).chain(thresholds.filter_map(|p| p.value));
+    let mut levels: Vec<f64> = stated.map(|p| p.value()).filter(|a| (1e-9..HIGHEST).contains(a)).collect();
+    if levels.is_empty() {
+        return Alpha { lowest: 0.05, highest: 0.05, stated: false };
+    }
+    // A one-sided 0.025 is the same demand as a two-sided 0.05.
+    if facts.context.sides.is_some_and(|s| s.value == Sides::One) {
+        levels.push(levels.iter().fold(0.0, |a: f64, &b| a.max(b)).max(0.05));
+    }
+    // Several levels belong to several analyses, and the usual one may go without saying.
+    if levels.iter().any(|&a| a != levels[0]) {
+        levels.push(0.05);
+    }
+    let lowest = levels.iter().copied().fold(f64::INFINITY, f64::min);
+    let highest = levels.iter().copied().fold(0.0, f64::max);
+    Alpha { lowest, highest, stated: true }
+}
+
+/// Every reading of every result, by place.
+fn members(facts: &Facts) -> Vec<(Span, usize)> {
+    let r = facts.readings;
+    let mut members = Vec::with_capacity(2 * facts.results.len());
+    for (number, result) in facts.results.iter().enumerate() {
+        let mut add = |span: Span| members.push((span, number));
+        result.p.into_iter().for_each(|i| add(r.p[i].span));
+        result.interval.into_iter().for_each(|i| add(r.intervals[i].span));
+        result.estimate.into_iter().for_each(|i| add(r.estimates[i].span));
+        result.statistic.into_iter().for_each(|i| add(r.statistics[i].span));
+        result.groups.iter().for_each(|&i| add(r.groups[i].span));
+    }
+    members.sort_unstable();
+    members.dedup();
+    members
 }
 
 /// Whether a p stands for a comparison on which the paper's results hang.

@@ -13,6 +13,7 @@ mod finding;
 mod fingerprint;
 mod level;
 mod look;
+mod places;
 mod wording;
 
 use crate::context::Context;

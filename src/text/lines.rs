@@ -1,7 +1,7 @@
 //! Lines and columns of a source text.
 
 /// Bytes between two counts of characters.
-const STRIDE: usize = 1024;
+const STRIDE: usize = 128;
 
 /// Where each line of a text starts. Lines end at `\n`, `\r\n` or a lone `\r`.
 #[derive(Clone, Debug, Default)]

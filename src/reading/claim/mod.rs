@@ -98,10 +98,7 @@ fn contrast(view: &SentenceView, p: &[PExpression], start: usize, out: &mut [Cla
 fn misreading(view: &SentenceView, out: &mut Vec<Claim>) -> bool {
     let mut chance = None;
     for i in 0..view.len() {
-        if !view.tokens[i].is_word() {
-            continue;
-        }
-        if view.any(i, &["probability", "likelihood", "chance"]) {
+        if view.is(i, Classes::RARE) && view.any(i, &["probability", "likelihood", "chance"]) {
             // "a 3 % probability that the difference arose by chance", "the probability that the null hypothesis is true"
             if let Some(end) = (i + 1..(i + 25).min(view.len())).find(|&j| {
                 view.eq(j, "chance")

@@ -288,7 +288,26 @@ fn percent_first(view: &SentenceView, i: usize, setting: &Setting, taken: &[bool
             }
         }
     }
+    // `9%, 3/33`
+    if view.signs(next, &[',', ';'])
+        && let Some((events, after)) = count_at(view, next + 1)
+        && view.sign(after, '/')
+        && let Some((total, k, end)) = denominator(view, after).filter(|&(t, ..)| events <= t && t > 1)
+        && fits_share(events, total, percent)
+    {
+        let mut group = empty(view, i, end - 1);
+        (group.events, group.percent) = (Some(whole(view, events, next + 1, after - 1)), Some(percent));
+        group.total = Some(whole(view, total, k, end - 1));
+        group.n = group.total;
+        group.one_expression = true;
+        return Some(Draft { first: i, last: end - 1, group });
+    }
     alone(view, i, percent, next, setting, taken)
+}
+
+/// Whether a percentage is near enough to a fraction beside it that both tell of one count.
+fn fits_share(events: u64, total: u64, percent: Printed) -> bool {
+    (100.0 * events as f64 / total as f64 - percent.value()).abs() <= 10.0
 }
 
 /// Words before or after a percentage that show that it is no share of a group.
@@ -421,6 +440,9 @@ fn share_of(view: &SentenceView, of: usize) -> bool {
 /// Marks percentages that are said to be about so much or that no count over a total gives (survival, actuarial rates),
 /// and takes back a total from "Of the 26 patients, …" where several counts follow: they may be of parts of it.
 pub(super) fn soften(view: &SentenceView, drafts: &mut [Draft]) {
+    if drafts.is_empty() {
+        return;
+    }
     let estimated = (0..view.len()).any(|k| {
         view.any(k, &["actuarial", "kaplan", "survival", "cumulative", "weighted", "standardised", "standardized"])
     });

@@ -9,6 +9,7 @@ use super::super::{Figure, Group, Inference, Origin};
 use super::count::count_at;
 use crate::printed::Printed;
 use crate::text::Span;
+use std::collections::BTreeMap;
 
 /// A number of participants mentioned in running text.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -60,16 +61,10 @@ pub fn mentions(view: &SentenceView, out: &mut Vec<Mention>) {
 /// Fills totals and sizes of one paragraph's groups. `tested(sentence)` tells whether a sentence prints a p-value.
 pub fn fill(groups: &mut [Group], mentions: &[Mention], tested: impl Fn(u32) -> bool) {
     categories(groups);
+    let sizes = Sizes::of(mentions);
     for group in groups.iter_mut() {
         if let (Some(events), Some(percent), None) = (group.events, group.percent, group.total) {
-            let fits = |m: &&Mention| {
-                let share = 100.0 * events.printed.value() / m.size as f64;
-                m.size as f64 >= events.printed.value() && percent.rounded().widened(1e-12).contains(share)
-            };
-            let mut found = mentions.iter().filter(|m| !m.span.overlaps(group.span)).filter(fits);
-            if let Some(first) = found.next()
-                && found.all(|m| m.size == first.size)
-            {
+            if let Some(first) = sizes.only(events.printed.value(), percent, group.span) {
                 let origin = Origin::Inferred(Inference::OtherSentence, first.span);
                 group.total = Some(Figure { printed: Printed::whole(first.size), origin });
                 group.n = group.total;
@@ -77,14 +72,11 @@ pub fn fill(groups: &mut [Group], mentions: &[Mention], tested: impl Fn(u32) -> 
         }
         if group.n.is_none() && group.events.is_none() && !tested(group.sentence) {
             // One group alone: the only size named before it.
-            let mut before = mentions
-                .iter()
-                .filter(|m| m.span.start < group.span.start && m.sentence <= group.sentence)
-                .filter(|m| m.span.block == group.span.block);
-            let here: Vec<&Mention> = before.clone().filter(|m| m.sentence == group.sentence).collect();
-            let only = match (here.as_slice(), before.next()) {
-                ([one], _) => Some(**one),
-                ([], Some(first)) if before.all(|m| m.size == first.size) => Some(*first),
+            let before = &mentions[..mentions.partition_point(|m| m.span.start < group.span.start)];
+            let here = before.iter().rev().take_while(|m| m.sentence == group.sentence).take(2).count();
+            let only = match here {
+                1 => before.last(),
+                0 if before.len() <= sizes.alike => before.first(),
                 _ => None,
             };
             if let Some(first) = only {
@@ -94,6 +86,36 @@ pub fn fill(groups: &mut [Group], mentions: &[Mention], tested: impl Fn(u32) -> 
         }
     }
     siblings(groups);
+}
+
+/// The mentions of one paragraph by size.
+struct Sizes<'a> {
+    by_size: BTreeMap<u64, Vec<&'a Mention>>,
+    /// So many mentions from the first on have one and the same size.
+    alike: usize,
+}
+
+impl<'a> Sizes<'a> {
+    fn of(mentions: &'a [Mention]) -> Sizes<'a> {
+        let mut by_size: BTreeMap<u64, Vec<&Mention>> = BTreeMap::new();
+        for m in mentions {
+            by_size.entry(m.size).or_default().push(m);
+        }
+        Sizes { by_size, alike: mentions.iter().take_while(|m| m.size == mentions[0].size).count() }
+    }
+
+    /// The first mention of the one size, outside `own`, of which so many events are so many percent.
+    fn only(&self, events: f64, percent: Printed, own: Span) -> Option<&'a Mention> {
+        let range = percent.rounded().widened(1e-12);
+        // Sizes beyond these do not fit; a little room for rounding.
+        let least = (100.0 * events / range.hi).floor() - 1.0;
+        let most = if range.lo > 0.0 { (100.0 * events / range.lo).ceil() + 1.0 } else { f64::INFINITY };
+        let fits = |size: u64| size as f64 >= events && range.contains(100.0 * events / size as f64);
+        let near = self.by_size.range(least.max(events) as u64..).take_while(|&(&size, _)| size as f64 <= most);
+        let apart = |all: &Vec<&'a Mention>| all.iter().copied().find(|m| !m.span.overlaps(own));
+        let mut found = near.filter(|&(&size, _)| fits(size)).filter_map(|(_, all)| apart(all));
+        found.next().filter(|_| found.next().is_none())
+    }
 }
 
 /// A count with its percentage and no total.

@@ -2,12 +2,11 @@
 
 use crate::manuscript::{BlockKind, SectionKind};
 use crate::query::{Explanation, RepairKind};
-use crate::reading::{Attribution, Claim, ClaimKind, PValue, Role};
-use crate::rule::Facts;
+use crate::reading::{Attribution, Claim, ClaimKind, PValue, Role, within};
 use crate::rule::check::{Backing, Claimed, Per, Says, Whose};
 use crate::rule::finding::{Draft, Finding};
 use crate::rule::level::Weight;
-use crate::rule::look::is_effect;
+use crate::rule::look::{Look, is_effect};
 use crate::rule::wording;
 use crate::text::Span;
 use std::collections::BTreeMap;
@@ -20,14 +19,14 @@ struct Found<'a> {
 }
 
 /// Claims of some kinds, about some matters, on some ground.
-pub fn claim(facts: &Facts, kinds: &[Claimed], of: &[Whose], backing: Backing, per: Per) -> Vec<Finding> {
+pub fn claim(facts: &Look, kinds: &[Claimed], of: &[Whose], backing: Backing, per: Per) -> Vec<Finding> {
     let mut singles: Vec<Finding> = Vec::new();
     for claim in &facts.readings.claims {
         let wanted = kinds.iter().any(|k| k.is(kind_of(facts, claim))) && of.iter().any(|w| w.is(claim.attribution));
         // What an introduction tells is what others found.
         let wanted = wanted
             && facts.manuscript.section(claim.span).kind != SectionKind::Introduction
-            && !facts.cites_others(claim.span, claim.sentence);
+            && !facts.cites_others(claim);
         if let Some(found) = wanted.then(|| backed(facts, claim, backing)).flatten() {
             singles.push(finding(facts, claim, &found));
         }
@@ -40,7 +39,7 @@ pub fn claim(facts: &Facts, kinds: &[Claimed], of: &[Whose], backing: Backing, p
 
 /// "No significant difference" and "no evidence of a difference" say that something is missing, not that there is no
 /// difference.
-fn kind_of(facts: &Facts, claim: &Claim) -> ClaimKind {
+fn kind_of(facts: &Look, claim: &Claim) -> ClaimKind {
     let careful = claim.says_significant || facts.quote(claim.span).contains("evidence");
     match claim.kind {
         ClaimKind::NoDifference if careful => ClaimKind::NotSignificant,
@@ -48,14 +47,15 @@ fn kind_of(facts: &Facts, claim: &Claim) -> ClaimKind {
     }
 }
 
-fn backed<'a>(facts: &Facts<'a>, claim: &Claim, backing: Backing) -> Option<Found<'a>> {
+fn backed<'a>(facts: &Look<'a>, claim: &Claim, backing: Backing) -> Option<Found<'a>> {
     let r = facts.readings;
-    let sentence = facts.sentence(claim.sentence);
+    let sentence = facts.sentence(claim);
     let p = facts.p_of(claim);
-    let alpha = facts.alpha();
-    let interval = r.intervals.iter().find(|i| i.sentence == claim.sentence).map(|i| i.span);
+    let alpha = facts.alpha;
+    let own = claim.sentence..claim.sentence + 1;
+    let interval = within(&r.intervals, |i| i.sentence, own.clone()).first().map(|i| i.span);
     let elsewhere = |p: &&PValue| matches!(p.role, Role::Interaction | Role::AssumptionOrFit | Role::Baseline);
-    let in_sentence = || r.p.iter().filter(|p| p.sentence == claim.sentence);
+    let in_sentence = || within(&r.p, |p| p.sentence, own.clone()).iter();
     let holds = match backing {
         Backing::Any => true,
         Backing::PAboveAlpha => {
@@ -113,9 +113,9 @@ fn excepted(sentence: &str) -> bool {
         .any(|w| sentence.contains(w))
 }
 
-fn finding(facts: &Facts, claim: &Claim, found: &Found) -> Finding {
+fn finding(facts: &Look, claim: &Claim, found: &Found) -> Finding {
     let quote = wording::one_line(facts.quote(claim.span));
-    let alpha = facts.alpha();
+    let alpha = facts.alpha;
     let mut p: Vec<String> = found.p.iter().map(|p| p_words(facts, p)).collect();
     p.dedup();
     let says = match (&p[..], found.interval) {
@@ -146,25 +146,26 @@ fn finding(facts: &Facts, claim: &Claim, found: &Found) -> Finding {
     f
 }
 
-fn alpha_assumed(facts: &Facts) -> Option<Explanation> {
+fn alpha_assumed(facts: &Look) -> Option<Explanation> {
     let assumption = crate::reading::Assumption::Alpha05;
-    (!facts.alpha().stated).then(|| wording::assumption(assumption))
+    (!facts.alpha.stated).then(|| wording::assumption(assumption))
 }
 
 /// A bare cell or `NS` gets its letter, so that the sentence around it reads.
-fn p_words(facts: &Facts, p: &PValue) -> String {
+fn p_words(facts: &Look, p: &PValue) -> String {
     let quote = wording::one_line(facts.quote(p.span));
     if quote.contains(['p', 'P']) || p.value.is_none() { quote } else { format!("P {quote}") }
 }
 
-fn results_of(facts: &Facts, p: &[&PValue]) -> Vec<usize> {
-    let with =
-        |r: &crate::result::ReportedResult| r.p.is_some_and(|i| p.iter().any(|p| p.span == facts.readings.p[i].span));
-    facts.results.iter().enumerate().filter(|(_, r)| with(r)).map(|(i, _)| i).collect()
+fn results_of(facts: &Look, p: &[&PValue]) -> Vec<usize> {
+    let mut results: Vec<usize> = p.iter().flat_map(|p| facts.results_with(p.span)).collect();
+    results.sort_unstable();
+    results.dedup();
+    results
 }
 
 /// "no difference" → "no significant difference", with blanks for what lets readers judge.
-fn repair(facts: &Facts, claim: &Claim, found: &Found) -> Option<Draft> {
+fn repair(facts: &Look, claim: &Claim, found: &Found) -> Option<Draft> {
     if kind_of(facts, claim) != ClaimKind::NoDifference {
         return None;
     }
@@ -182,7 +183,7 @@ fn repair(facts: &Facts, claim: &Claim, found: &Found) -> Option<Draft> {
 }
 
 /// One finding for each part of the manuscript, beginning with its first claim.
-fn by_section(facts: &Facts, singles: Vec<Finding>) -> Vec<Finding> {
+fn by_section(facts: &Look, singles: Vec<Finding>) -> Vec<Finding> {
     let mut parts: BTreeMap<u32, Vec<Finding>> = BTreeMap::new();
     for f in singles {
         parts.entry(facts.part(f.at[0])).or_default().push(f);
@@ -209,8 +210,8 @@ fn by_section(facts: &Facts, singles: Vec<Finding>) -> Vec<Finding> {
 }
 
 /// "Significant" beside a p above alpha, or "not significant" beside one below.
-pub fn against_p(facts: &Facts, says: Says) -> Vec<Finding> {
-    let alpha = facts.alpha();
+pub fn against_p(facts: &Look, says: Says) -> Vec<Finding> {
+    let alpha = facts.alpha;
     let mut findings = Vec::new();
     for claim in &facts.readings.claims {
         let kind = match says {
@@ -222,7 +223,7 @@ pub fn against_p(facts: &Facts, says: Says) -> Vec<Finding> {
         };
         let told = facts.manuscript.section(claim.span).kind == SectionKind::Introduction
             || matches!(claim.attribution, Attribution::Plan | Attribution::OtherAuthors);
-        if !kind || told || excepted(&facts.sentence(claim.sentence)) {
+        if !kind || told || excepted(&facts.sentence(claim)) {
             continue;
         }
         let p = facts.p_of(claim);
@@ -258,7 +259,7 @@ pub fn against_p(facts: &Facts, says: Says) -> Vec<Finding> {
 }
 
 /// Nothing between the claim and its p turns to another comparison.
-fn direct(facts: &Facts, claim: &Claim, p: &PValue) -> bool {
+fn direct(facts: &Look, claim: &Claim, p: &PValue) -> bool {
     let between = match p.span.start >= claim.span.end {
         true => facts.between(claim.span, p.span),
         false => facts.between(p.span, claim.span),
@@ -271,8 +272,8 @@ fn direct(facts: &Facts, claim: &Claim, p: &PValue) -> bool {
 }
 
 /// A correction for several comparisons may rightly leave a small p "not significant".
-fn corrects(facts: &Facts, claim: &Claim) -> bool {
-    let sentence = facts.sentence(claim.sentence);
+fn corrects(facts: &Look, claim: &Claim) -> bool {
+    let sentence = facts.sentence(claim);
     let words = ["correct", "adjust", "bonferroni", "multiple", "holm", "threshold", "clinical", "non-inferior"];
     facts.context.multiplicity.is_some() || words.iter().any(|w| sentence.contains(w))
 }

@@ -2,19 +2,19 @@
 //! the sentence itself makes plain, or one ratio whose whole interval lies on the other side of 1.
 
 use crate::reading::lexicon::Classes;
-use crate::reading::{Attribution, Claim, Direction, Estimate, Group, Measure, Scale, SentenceView};
-use crate::rule::Facts;
+use crate::reading::{Attribution, Claim, Direction, Estimate, Group, Measure, Scale, SentenceView, within};
 use crate::rule::finding::Finding;
 use crate::rule::level::Weight;
+use crate::rule::look::Look;
 use crate::rule::wording;
 use crate::text::Span;
 
-pub fn against_figures(facts: &Facts) -> Vec<Finding> {
+pub fn against_figures(facts: &Look) -> Vec<Finding> {
     let mut findings = Vec::new();
     for claim in &facts.readings.claims {
         let (Some(direction), Attribution::ThisStudy) = (claim.direction, claim.attribution) else { continue };
         let view = facts.scan.view(facts.manuscript, claim.sentence);
-        let alone = facts.readings.claims.iter().filter(|c| c.sentence == claim.sentence).count() == 1;
+        let alone = within(&facts.readings.claims, |c| c.sentence, claim.sentence..claim.sentence + 1).len() == 1;
         if !alone || !one_direction(&view) {
             continue;
         }
@@ -58,10 +58,10 @@ const TURNS: [&str; 24] = [
 ];
 
 /// "lower in A than in B (8.1 v 7.4)".
-fn two_figures(facts: &Facts, claim: &Claim, direction: Direction) -> Option<Finding> {
+fn two_figures(facts: &Look, claim: &Claim, direction: Direction) -> Option<Finding> {
     let readings = facts.readings;
-    let groups: Vec<&Group> = readings.groups.iter().filter(|g| g.sentence == claim.sentence).collect();
-    let [first, second] = groups[..] else { return None };
+    let groups: &[Group] = within(&readings.groups, |g| g.sentence, claim.sentence..claim.sentence + 1);
+    let [first, second] = groups else { return None };
     if first.change || second.change || first.span.start < claim.span.end {
         return None;
     }
@@ -106,13 +106,16 @@ fn contradicted(before: &str, first: &str, second: &str) -> bool {
 }
 
 /// "reduced risk (HR 1.4, 95 % CI 1.1 to 1.8)".
-fn one_ratio(facts: &Facts, claim: &Claim, direction: Direction, view: &SentenceView) -> Option<Finding> {
+fn one_ratio(facts: &Look, claim: &Claim, direction: Direction, view: &SentenceView) -> Option<Finding> {
     let readings = facts.readings;
-    let estimates: Vec<&Estimate> = readings.estimates.iter().filter(|e| e.sentence == claim.sentence).collect();
-    let [e] = estimates[..] else { return None };
+    let estimates: &[Estimate] = within(&readings.estimates, |e| e.sentence, claim.sentence..claim.sentence + 1);
+    let [e] = estimates else { return None };
     let ratio =
         matches!(e.measure, Measure::RiskRatio | Measure::OddsRatio | Measure::HazardRatio | Measure::RateRatio);
-    let result = facts.results.iter().find(|r| r.estimate.is_some_and(|i| readings.estimates[i].span == e.span))?;
+    let result = facts
+        .results_with(e.span)
+        .map(|i| &facts.results[i])
+        .find(|r| r.estimate.is_some_and(|i| readings.estimates[i].span == e.span))?;
     let interval = &readings.intervals[result.interval?];
     if !ratio || e.scale != Scale::Ratio || interval.sentence != claim.sentence {
         return None;
@@ -137,7 +140,7 @@ fn one_ratio(facts: &Facts, claim: &Claim, direction: Direction, view: &Sentence
     Some(Finding { related, figures: vec![claim.span, e.span], ..f })
 }
 
-fn finding(facts: &Facts, claim: &Claim, printed: String, says: String) -> Finding {
+fn finding(facts: &Look, claim: &Claim, printed: String, says: String) -> Finding {
     let weight = Weight { drives_message: facts.drives_message(claim.span), ..Weight::reporting() };
     let mut f = Finding::at(claim.span, weight, says);
     f.fills.push(("printed", printed));

@@ -4,11 +4,11 @@ use crate::printed::Printed;
 use crate::query::{Ground, RepairKind, Verdict};
 use crate::reading::{Measure, Relation, Scale, Symbol};
 use crate::recompute::Quantity;
-use crate::rule::Facts;
 use crate::rule::check::{Bounded, Pair};
 use crate::rule::checks::recomputed::with_p;
 use crate::rule::finding::{Draft, Finding};
 use crate::rule::level::{Off, Weight};
+use crate::rule::look::Look;
 use crate::rule::wording;
 use crate::text::Span;
 
@@ -16,27 +16,15 @@ fn by_definition() -> Weight {
     Weight { ground: Ground::ByDefinition, distance: Off::Figure, ..Weight::reporting() }
 }
 
-fn about(facts: &Facts, span: Span, says: String) -> Finding {
+fn about(facts: &Look, span: Span, says: String) -> Finding {
     let mut f = Finding::at(span, by_definition(), says);
     f.fills.push(("printed", wording::one_line(facts.quote(span))));
-    f.results = facts
-        .results
-        .iter()
-        .enumerate()
-        .filter(|(_, r)| {
-            r.p.is_some_and(|i| facts.readings.p[i].span == span)
-                || r.interval.is_some_and(|i| facts.readings.intervals[i].span == span)
-                || r.estimate.is_some_and(|i| facts.readings.estimates[i].span == span)
-                || r.statistic.is_some_and(|i| facts.readings.statistics[i].span == span)
-                || r.groups.iter().any(|&i| facts.readings.groups[i].span == span)
-        })
-        .map(|(i, _)| i)
-        .collect();
+    f.results = facts.results_with(span).collect();
     f
 }
 
 /// Figures beyond what they can be; rounding is allowed for (1.0 may stand for 1.04, but not for 0.96).
-pub fn outside(facts: &Facts, field: Bounded, lowest: f64, highest: f64) -> Vec<Finding> {
+pub fn outside(facts: &Look, field: Bounded, lowest: f64, highest: f64) -> Vec<Finding> {
     let out = |p: Printed| p.value() > highest || p.value() < lowest;
     let readings = facts.readings;
     let estimates = |measure: Measure| {
@@ -68,18 +56,20 @@ pub fn outside(facts: &Facts, field: Bounded, lowest: f64, highest: f64) -> Vec<
 }
 
 /// Figures of a pair printed the wrong way round.
-pub fn order(facts: &Facts, of: Pair) -> Vec<Finding> {
+pub fn order(facts: &Look, of: Pair) -> Vec<Finding> {
     let readings = facts.readings;
     let mut findings = Vec::new();
     match of {
         Pair::IntervalLimits => {
             for i in &readings.intervals {
                 // An interval of a reciprocal may run through infinity, its limits in this order rightly.
-                let reciprocal = facts.results.iter().any(|r| {
-                    r.interval.is_some_and(|k| readings.intervals[k].span == i.span)
-                        && r.estimate.is_some_and(|k| readings.estimates[k].scale == Scale::Reciprocal)
-                });
-                if (i.reversed || i.lower.value() > i.upper.value()) && !reciprocal {
+                let reciprocal = || {
+                    facts.results_with(i.span).map(|k| &facts.results[k]).any(|r| {
+                        r.interval.is_some_and(|k| readings.intervals[k].span == i.span)
+                            && r.estimate.is_some_and(|k| readings.estimates[k].scale == Scale::Reciprocal)
+                    })
+                };
+                if (i.reversed || i.lower.value() > i.upper.value()) && !reciprocal() {
                     let quote = wording::one_line(facts.quote(i.span));
                     let says = format!("Printed {quote}; the larger limit stands first.");
                     findings.push(about(facts, i.span, says));
@@ -114,7 +104,7 @@ pub fn order(facts: &Facts, of: Pair) -> Vec<Finding> {
 }
 
 /// The estimate lies outside the interval printed for it, as the recomputation found.
-pub fn estimate_outside_interval(facts: &Facts) -> Vec<Finding> {
+pub fn estimate_outside_interval(facts: &Look) -> Vec<Finding> {
     let readings = facts.readings;
     let mut findings = Vec::new();
     for checked in facts.checked {
@@ -128,9 +118,7 @@ pub fn estimate_outside_interval(facts: &Facts) -> Vec<Finding> {
         let Some(r) = outside else { continue };
         // The pair must be beyond doubt: the estimate first, and no other estimate or interval between.
         let (from, to) = (e.span, i.span);
-        let between = |s: Span| s.block == from.block && from.end <= s.start && s.end <= to.start;
-        let apart =
-            readings.estimates.iter().any(|x| between(x.span)) || readings.intervals.iter().any(|x| between(x.span));
+        let apart = facts.stands_between(from, to);
         // `OR0.5`: the figure read begins inside a printed one.
         let before = &facts.manuscript.block(from).text[..from.start as usize];
         let torn = before.ends_with(|c: char| c == '.' || c == ',' || c.is_ascii_digit());
@@ -152,7 +140,7 @@ pub fn estimate_outside_interval(facts: &Facts) -> Vec<Finding> {
 }
 
 /// `P = 0.000`.
-pub fn printed_zero(facts: &Facts) -> Vec<Finding> {
+pub fn printed_zero(facts: &Look) -> Vec<Finding> {
     let zero = |p: &&crate::reading::PValue| {
         let relations = [Relation::Equal, Relation::Less, Relation::AtMost];
         p.value.is_some_and(|v| v.digits == 0) && relations.contains(&p.relation)
@@ -181,17 +169,17 @@ pub fn printed_zero(facts: &Facts) -> Vec<Finding> {
 }
 
 /// A table full of `0.000` is one question, with all its places.
-fn one_per_table(facts: &Facts, found: Vec<Finding>) -> Vec<Finding> {
+fn one_per_table(facts: &Look, found: Vec<Finding>) -> Vec<Finding> {
     let mut kept: Vec<Finding> = Vec::new();
     for f in found {
         let span = f.at[0];
-        let first = kept.iter_mut().find(|k| facts.in_table(span) && k.at[0].block == span.block);
-        match first {
-            Some(first) => {
+        // Findings are in reading order, so those of one table follow each other.
+        match kept.last_mut() {
+            Some(first) if facts.in_table(span) && first.at[0].block == span.block => {
                 first.related.push((span, "printed likewise".to_owned()));
                 first.results.extend(f.results);
             }
-            None => kept.push(f),
+            _ => kept.push(f),
         }
     }
     kept

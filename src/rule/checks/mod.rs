@@ -7,12 +7,12 @@ mod planning;
 mod recomputed;
 mod reporting;
 
-use super::Facts;
 use super::check::Check;
 use super::finding::Finding;
+use super::look::Look;
 
 /// Runs one check. Exhaustive: a new kind does not compile until it is answered here.
-pub fn run(check: &Check, facts: &Facts) -> Vec<Finding> {
+pub fn run(check: &Check, facts: &Look) -> Vec<Finding> {
     match check {
         Check::RecomputationDiffers { of, from } => recomputed::differs(facts, *of, from),
         Check::Outside { field, lowest, highest } => figures::outside(facts, *field, *lowest, *highest),

@@ -2,11 +2,10 @@
 
 use crate::manuscript::{BlockKind, SectionKind};
 use crate::reading::{PlanningKind, Sides};
-use crate::rule::Facts;
 use crate::rule::check::Statement;
 use crate::rule::finding::Finding;
 use crate::rule::level::Weight;
-use crate::rule::look::is_effect;
+use crate::rule::look::{Look, is_effect};
 use crate::rule::wording;
 use crate::text::Span;
 
@@ -14,7 +13,7 @@ use crate::text::Span;
 const ENOUGH_P: usize = 3;
 
 /// A statement that the Methods do not make.
-pub fn unstated(facts: &Facts, what: Statement) -> Vec<Finding> {
+pub fn unstated(facts: &Look, what: Statement) -> Vec<Finding> {
     let effects = facts.readings.p.iter().filter(|p| is_effect(p)).count();
     if !facts.context.has_methods || !facts.context.has_results || effects < ENOUGH_P {
         return Vec::new();
@@ -53,7 +52,7 @@ pub fn unstated(facts: &Facts, what: Statement) -> Vec<Finding> {
 }
 
 /// A phrase (lower case) in the Methods, the abstract's apart.
-fn in_methods(facts: &Facts, phrase: &str) -> bool {
+fn in_methods(facts: &Look, phrase: &str) -> bool {
     let m = facts.manuscript;
     m.blocks.iter().any(|b| {
         let section = &m.sections[b.section as usize];
@@ -78,7 +77,7 @@ const SIDED_WORDS: [&str; 10] = [
 ];
 
 /// The heading of the Methods, or their first block; "statistical analysis" within them where there is one.
-fn methods(facts: &Facts) -> Option<Span> {
+fn methods(facts: &Look) -> Option<Span> {
     let m = facts.manuscript;
     let of_methods = |b: &crate::manuscript::Block| {
         let section = &m.sections[b.section as usize];
@@ -123,7 +122,7 @@ const REASONS: [&str; 22] = [
 ];
 
 /// One-sided tests of which neither the sentence nor its neighbours give the direction or the reason.
-pub fn one_sided_unexplained(facts: &Facts) -> Vec<Finding> {
+pub fn one_sided_unexplained(facts: &Look) -> Vec<Finding> {
     let context = facts.context;
     let Some(sides) = context.sides.filter(|s| s.value == Sides::One) else { return Vec::new() };
     // A non-inferiority comparison has its direction by its nature.

@@ -4,10 +4,10 @@ use crate::manuscript::SectionKind;
 use crate::query::{Explanation, Ground, RepairKind, Verdict};
 use crate::reading::{Relation, Role};
 use crate::recompute::{Checked, Quantity, Recomputation};
-use crate::rule::Facts;
 use crate::rule::check::{Basis, Of};
 use crate::rule::finding::{Draft, Finding};
 use crate::rule::level::{Off, Weight};
+use crate::rule::look::{Look, Settled};
 use crate::rule::wording;
 use crate::text::Span;
 
@@ -15,7 +15,7 @@ use crate::text::Span;
 const VOUCHING_ROWS: usize = 3;
 
 /// Every figure of the kind that differs under all candidates, once, with the strongest of them.
-pub fn differs(facts: &Facts, of: Of, from: &[Basis]) -> Vec<Finding> {
+pub fn differs(facts: &Look, of: Of, from: &[Basis]) -> Vec<Finding> {
     let mut findings = Vec::new();
     for checked in facts.checked {
         let mut done: Vec<Span> = Vec::new();
@@ -38,7 +38,7 @@ pub fn differs(facts: &Facts, of: Of, from: &[Basis]) -> Vec<Finding> {
 
 /// The recomputations that a rule of this kind speaks of, where their result really differs.
 fn candidates<'a>(
-    facts: &'a Facts,
+    facts: &'a Look,
     checked: &'a Checked,
     of: Of,
     from: &'a [Basis],
@@ -63,13 +63,13 @@ fn candidates<'a>(
 }
 
 /// An "estimate" that is really the summary of one of the groups: a reading too doubtful to ask about.
-fn within_group(facts: &Facts, checked: &Checked, r: &Recomputation) -> bool {
+fn within_group(facts: &Look, checked: &Checked, r: &Recomputation) -> bool {
     let groups = &facts.results[checked.result].groups;
     r.of == Quantity::Estimate && groups.iter().any(|&i| facts.readings.groups[i].span.overlaps(r.figure))
 }
 
 /// A percentage of a handful that stands elsewhere: "two strategies … in 2 (18 %) measures" is of other things.
-fn small_total_elsewhere(facts: &Facts, checked: &Checked, r: &Recomputation) -> bool {
+fn small_total_elsewhere(facts: &Look, checked: &Checked, r: &Recomputation) -> bool {
     const HANDFUL: u64 = 10;
     let groups = facts.results[checked.result].groups.iter().map(|&i| &facts.readings.groups[i]);
     let mut totals = groups.filter_map(|g| g.total.and_then(|t| t.printed.count()));
@@ -82,7 +82,7 @@ fn elsewhere(r: &Recomputation) -> bool {
 }
 
 /// What a figure was recomputed from: the reading nearest to a test's own arithmetic that is among its inputs.
-fn basis(facts: &Facts, checked: &Checked, r: &Recomputation) -> Basis {
+fn basis(facts: &Look, checked: &Checked, r: &Recomputation) -> Basis {
     let (result, readings) = (&facts.results[checked.result], facts.readings);
     let used = |span: Span| !span.overlaps(r.figure) && r.inputs.iter().any(|&(s, _)| s.overlaps(span));
     let groups = || result.groups.iter().map(|&i| &readings.groups[i]);
@@ -114,7 +114,7 @@ fn basis(facts: &Facts, checked: &Checked, r: &Recomputation) -> Basis {
     }
 }
 
-fn finding(facts: &Facts, checked: &Checked, r: &Recomputation, all: &[&Recomputation]) -> Finding {
+fn finding(facts: &Look, checked: &Checked, r: &Recomputation, all: &[&Recomputation]) -> Finding {
     let quote = facts.quote(r.figure);
     let percent = (r.of == Quantity::Percent).then(|| wording::percent_number(quote)).flatten();
     let sign = if percent.is_some() { "%" } else { "" };
@@ -154,7 +154,7 @@ fn finding(facts: &Facts, checked: &Checked, r: &Recomputation, all: &[&Recomput
 }
 
 /// The inputs as a phrase: "4.1 (SD 1.2) and 5.3 (SD 1.4) with n = 40 and 40".
-fn inputs(facts: &Facts, r: &Recomputation) -> String {
+fn inputs(facts: &Look, r: &Recomputation) -> String {
     const MOST: usize = 4;
     let part = |name: &str| r.inputs.iter().find(|(_, part)| *part == name).map(|&(s, _)| facts.quote(s));
     if let (Some(count), Some(total)) = (part("the count"), part("the total")) {
@@ -182,7 +182,7 @@ fn inputs(facts: &Facts, r: &Recomputation) -> String {
     }
 }
 
-fn weight(facts: &Facts, checked: &Checked, r: &Recomputation) -> Weight {
+fn weight(facts: &Look, checked: &Checked, r: &Recomputation) -> Weight {
     let p = facts.results[checked.result].p.map(|i| &facts.readings.p[i]);
     let rounded = r.of != Quantity::P || p.is_some_and(|p| p.relation == Relation::Equal);
     let distance = match (r.of, r.distance) {
@@ -214,18 +214,16 @@ fn below_one_unit(r: &Recomputation) -> bool {
 }
 
 /// The other rows of the same table tally sharply, and none differs.
-fn table_vouches(facts: &Facts, checked: &Checked, r: &Recomputation) -> bool {
+fn table_vouches(facts: &Look, checked: &Checked, r: &Recomputation) -> bool {
     if !facts.in_table(r.figure) {
         return false;
     }
-    let others = facts.checked.iter().filter(|c| c.result != checked.result);
-    let here = others.flat_map(|c| &c.recomputations).filter(|o| o.of == r.of && o.figure.block == r.figure.block);
-    let (mut sharp, mut differs) = (0, 0);
-    for o in here {
-        sharp += usize::from(o.verdict == Verdict::Tallies && o.sharp);
-        differs += usize::from(o.verdict == Verdict::Differs);
+    let all = facts.settled(r.of, r.figure.block);
+    let mut own = Settled::default();
+    for o in checked.recomputations.iter().filter(|o| o.of == r.of && o.figure.block == r.figure.block) {
+        own.add(o.verdict, o.sharp);
     }
-    sharp >= VOUCHING_ROWS && differs == 0
+    all.sharp - own.sharp >= VOUCHING_ROWS && all.differ == own.differ
 }
 
 /// The recomputed figure as the author might print it, where the printed ones leave only one.

@@ -1,15 +1,14 @@
 //! What results lack: asked once for each section, or once for the manuscript.
 
 use crate::query::{RepairKind, Verdict};
-use crate::reading::{Measure, PValue, Relation, SpreadKind, Symbol};
+use crate::reading::{Measure, PValue, Relation, SpreadKind, Symbol, within};
 use crate::recompute::Quantity;
 use crate::result::{Feature, ReportedResult};
-use crate::rule::Facts;
 use crate::rule::check::{Part, SpreadSign};
 use crate::rule::checks::recomputed::with_p;
 use crate::rule::finding::{Draft, Finding};
 use crate::rule::level::Weight;
-use crate::rule::look::is_effect;
+use crate::rule::look::{Look, is_effect};
 use crate::rule::wording;
 use crate::text::Span;
 use std::collections::BTreeMap;
@@ -18,7 +17,7 @@ use std::collections::BTreeMap;
 const LONGEST_ESTIMATE: usize = 60;
 
 /// One finding for each part of the manuscript; `says` gets the number of occurrences and the first quote.
-fn per_part(facts: &Facts, mut spans: Vec<Span>, says: impl Fn(usize, &str) -> String) -> Vec<Finding> {
+fn per_part(facts: &Look, mut spans: Vec<Span>, says: impl Fn(usize, &str) -> String) -> Vec<Finding> {
     spans.sort();
     spans.dedup();
     let mut parts: BTreeMap<u32, Vec<Span>> = BTreeMap::new();
@@ -40,7 +39,7 @@ fn places(count: usize) -> String {
 }
 
 /// P only as `< 0.05`, `> 0.05` or `ns`.
-pub fn threshold_only(facts: &Facts, bounds: &[f64]) -> Vec<Finding> {
+pub fn threshold_only(facts: &Look, bounds: &[f64]) -> Vec<Finding> {
     let vague = |p: &&PValue| {
         let at_bound = p.value.is_some_and(|v| bounds.iter().any(|b| (v.value() - b).abs() < 1e-12));
         let vague = match p.relation {
@@ -68,8 +67,8 @@ pub fn threshold_only(facts: &Facts, bounds: &[f64]) -> Vec<Finding> {
 }
 
 /// The precise p for a bound that tallies with a sharp recomputation.
-fn precise(facts: &Facts, span: Span) -> Option<Draft> {
-    let all = facts.checked.iter().flat_map(|c| &c.recomputations);
+fn precise(facts: &Look, span: Span) -> Option<Draft> {
+    let all = facts.results_with(span).flat_map(|i| &facts.checked[i].recomputations);
     let r = all.filter(|r| r.of == Quantity::P && r.figure == span && r.verdict == Verdict::Tallies);
     let p = r.filter_map(|r| r.computed).find_map(wording::journal_p)?;
     let quote = facts.quote(span);
@@ -78,10 +77,11 @@ fn precise(facts: &Facts, span: Span) -> Option<Draft> {
 }
 
 /// A part that results lack, in sections that were recognised as reporting results.
-pub fn missing(facts: &Facts, what: Part) -> Vec<Finding> {
+pub fn missing(facts: &Look, what: Part) -> Vec<Finding> {
     let readings = facts.readings;
     let due = |span: Span| facts.reports_results(span);
-    let interval_beside = |sentence: u32| readings.intervals.iter().any(|i| i.sentence == sentence);
+    let interval_beside =
+        |sentence: u32| !within(&readings.intervals, |i| i.sentence, sentence..sentence + 1).is_empty();
     match what {
         Part::EffectEstimate => {
             let spans = facts.results.iter().filter_map(|r| effect_missing(facts, r)).filter(|&s| due(s)).collect();
@@ -97,7 +97,8 @@ pub fn missing(facts: &Facts, what: Part) -> Vec<Finding> {
                 let e = &readings.estimates[r.estimate?];
                 let has_precision = r.interval.is_some() || e.se.is_some() || interval_beside(e.sentence);
                 // Without a p, or at the far end of a phrase, the figure may be no tested effect at all.
-                let of_group = readings.groups.iter().any(|g| g.span.overlaps(e.span));
+                let groups = within(&readings.groups, |g| g.sentence, e.sentence..e.sentence + 1);
+                let of_group = groups.iter().any(|g| g.span.overlaps(e.span));
                 // "difference in falls (3 of 58" ends in a bracket that says something else.
                 let torn = facts.quote(e.span).contains('(') && !facts.quote(e.span).contains(')');
                 let sure =
@@ -139,7 +140,7 @@ pub fn missing(facts: &Facts, what: Part) -> Vec<Finding> {
 }
 
 /// The p of a plain comparison of two groups beside which no effect stands.
-fn effect_missing(facts: &Facts, r: &ReportedResult) -> Option<Span> {
+fn effect_missing(facts: &Look, r: &ReportedResult) -> Option<Span> {
     let readings = facts.readings;
     let p = r.p.map(|i| &readings.p[i]).filter(|p| is_effect(p))?;
     // Rank tests and medians have no effect that guidance would have everyone print.
@@ -151,9 +152,9 @@ fn effect_missing(facts: &Facts, r: &ReportedResult) -> Option<Span> {
         return None;
     }
     let beside =
-        |sentence: u32, span: Span| sentence == p.sentence || facts.in_table(p.span) && span.block == p.span.block;
-    let estimate = readings.estimates.iter().any(|e| beside(e.sentence, e.span));
-    let interval = readings.intervals.iter().any(|i| beside(i.sentence, i.span));
+        if facts.in_table(p.span) { facts.scan.of_block(p.span.block as usize) } else { p.sentence..p.sentence + 1 };
+    let estimate = !within(&readings.estimates, |e| e.sentence, beside.clone()).is_empty();
+    let interval = !within(&readings.intervals, |i| i.sentence, beside).is_empty();
     (!estimate && !interval).then_some(p.span)
 }
 
@@ -198,7 +199,7 @@ const SPREAD_NAMES: [&str; 16] = [
 ];
 
 /// Spreads that are named nowhere.
-pub fn spread_unnamed(facts: &Facts, sign: SpreadSign) -> Vec<Finding> {
+pub fn spread_unnamed(facts: &Look, sign: SpreadSign) -> Vec<Finding> {
     let groups = facts.readings.groups.iter();
     let unnamed = groups.filter(|g| g.spread_kind == Some(SpreadKind::Unstated) && g.mean.is_some());
     let with_sign = |span: Span| {
