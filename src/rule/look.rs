@@ -200,6 +200,16 @@ impl<'a> Look<'a> {
         self.with_interval.contains(&self.part(span))
     }
 
+    /// The paragraph or one beside it points to a table or a figure, where the numbers may stand.
+    pub(super) fn points_to_table(&self, span: Span) -> bool {
+        let blocks = &self.manuscript.blocks;
+        let at = span.block as usize;
+        let (from, to) = (at.saturating_sub(2), (at + 2).min(blocks.len()));
+        blocks[from..to].iter().any(|b| {
+            b.section == blocks[at].section && ["Table", "table ", "Fig", "figure "].iter().any(|w| b.text.contains(w))
+        })
+    }
+
     /// The sentence of a claim cites others: it stands outside the results and holds a reference to the literature.
     pub(super) fn cites_others(&self, claim: &Claim) -> bool {
         if self.reports_results(claim.span) {
