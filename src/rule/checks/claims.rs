@@ -105,10 +105,20 @@ fn backed<'a>(facts: &Look<'a>, claim: &Claim, backing: Backing) -> Option<Found
                 "but not between",
                 "but not with",
             ];
-            !in_sentence().any(|p| p.role == Role::Interaction) && !words.iter().any(|w| sentence.contains(w))
+            !in_sentence().any(|p| p.role == Role::Interaction)
+                && !words.iter().any(|w| sentence.contains(w))
+                && contrasts_arms(facts, &sentence)
         }
     };
     holds.then_some(Found { p, interval })
+}
+
+/// What stands behind "but not", "only" or "whereas" is an arm, not another outcome, muscle or time.
+fn contrasts_arms(facts: &Look, sentence: &str) -> bool {
+    let turn = ["but not", "only", "whereas", "while"].iter().filter_map(|w| sentence.find(w)).min();
+    let tail = &sentence[turn.unwrap_or(0)..];
+    let named = ["group", " arm", "control", "placebo", "usual care"].iter().any(|w| tail.contains(w));
+    named || facts.context.arms.iter().any(|a| a.label.len() > 1 && tail.contains(&a.label.to_lowercase()))
 }
 
 /// The sentence makes an exception, weighs its own claim, or tells of the start; what is excepted cannot be told safely.
