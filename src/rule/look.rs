@@ -216,10 +216,12 @@ impl<'a> Look<'a> {
             return false;
         }
         let around = self.around(claim);
-        // References stand behind the last word, too.
-        let (start, end) = (around.start as u32, around.end as u32 + 8);
-        self.manuscript.block(claim.span).marked(MarkKind::Reference, start, end)
-            || self.sentence(claim).contains("et al")
+        let block = self.manuscript.block(claim.span);
+        // References stand behind the last word, too; and what follows a citation goes on about it.
+        const BEFORE: usize = 250;
+        let from = block.text.floor_char_boundary(around.start.saturating_sub(BEFORE));
+        block.marked(MarkKind::Reference, from as u32, around.end as u32 + 8)
+            || block.text[from..around.end].contains("et al")
     }
 
     /// The text of a claim's sentence, in lower case; of an endless sentence, what stands near the claim.

@@ -116,16 +116,23 @@ fn backed<'a>(facts: &Look<'a>, claim: &Claim, backing: Backing) -> Option<Found
 /// What stands behind "but not", "only" or "whereas" is an arm, not another outcome, muscle or time.
 fn contrasts_arms(facts: &Look, sentence: &str) -> bool {
     let turn = ["but not", "only", "whereas", "while"].iter().filter_map(|w| sentence.find(w)).min();
-    let tail = &sentence[turn.unwrap_or(0)..];
+    // A few words on, the arm must be named.
+    const NEAR: usize = 90;
+    let from = turn.unwrap_or(0);
+    let tail = &sentence[from..sentence.floor_char_boundary(from + NEAR)];
     let named = ["group", " arm", "control", "placebo", "usual care"].iter().any(|w| tail.contains(w));
     named || facts.context.arms.iter().any(|a| a.label.len() > 1 && tail.contains(&a.label.to_lowercase()))
 }
 
 /// The sentence makes an exception, weighs its own claim, or tells of the start; what is excepted cannot be told safely.
 fn excepted(sentence: &str) -> bool {
-    let start = (sentence.contains("before ") || sentence.contains("prior to ")) && !sentence.contains("after");
+    let start = (sentence.contains("before ") || sentence.contains("prior to ")) && !sentence.contains("after")
+        || ["pre-treatment", "pretreatment", "at entry", "at the start", "no longer"]
+            .iter()
+            .any(|w| sentence.contains(w));
     // Agreement of centres or raters is a check of the trial, not a comparison of its arms.
-    let centres = ["study cent", "trial cent", "sites", "raters", "observers"].iter().any(|w| sentence.contains(w));
+    let centres =
+        ["study cent", "trial cent", "sites", "raters", "observers", "heterogen"].iter().any(|w| sentence.contains(w));
     let judged = ["considered", "judged", "felt ", "opinion", "reported that"].iter().any(|w| sentence.contains(w));
     start
         || centres
