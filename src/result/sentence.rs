@@ -343,7 +343,8 @@ fn describe(
     for (feature, span) in feature::of_groups(view, readings, &result.groups) {
         add(feature, span);
     }
-    if result.groups.len() > 2
+    // Three groups in one list are compared as three; more may be two by two, or before and after.
+    if (result.groups.len() > 3 || result.groups.len() == 3 && !one_list(view, readings, &result.groups))
         && let Some(&g) = result.groups.first()
     {
         add(Feature::Unclear, readings.groups[g].span);
@@ -362,4 +363,18 @@ fn names_other_analysis(view: &SentenceView, p: Span) -> bool {
     let Some(open) = open else { return false };
     let close = (at..(at + 14).min(view.len())).find(|&k| view.signs(k, &[')', ']'])).unwrap_or(at);
     (open..close).any(|k| view.any(k, &["analysis", "analyses", "test", "tests", "model", "regression", "statistic"]))
+}
+
+/// Groups that one list tells one after the other, each with spread and size.
+fn one_list(view: &SentenceView, readings: &Readings, groups: &[usize]) -> bool {
+    const GAP: usize = 8;
+    let complete = groups.iter().all(|&g| {
+        let g = &readings.groups[g];
+        g.n.is_some() && (!g.spread.is_empty() || g.events.is_some())
+    });
+    let close = groups.windows(2).all(|w| {
+        let (a, b) = (readings.groups[w[0]].span, readings.groups[w[1]].span);
+        view.token_at(b.start).saturating_sub(view.token_at(a.end)) <= GAP
+    });
+    complete && close
 }

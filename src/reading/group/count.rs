@@ -175,7 +175,7 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
         let bracket = i > 0 && view.signs(i - 1, &['(', '[', ',']) && view.signs(end, &[')', ']', ',', ';']);
         let members = view.is(end, Classes::GROUP);
         let told = if by_slash {
-            bracket || members
+            bracket || members || beside_fraction(view, i, end)
         } else {
             members || words > 0 || view.eq(at, "out") || view.signs(end, &[')', ',', '.'])
         };
@@ -200,6 +200,18 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
     group.percent = percent;
     group.one_expression = true;
     Some(Draft { first: i, last, group })
+}
+
+/// `27/122 v 44/487`, `30/204 and 21/205`: another fraction right before or behind.
+fn beside_fraction(view: &SentenceView, first: usize, end: usize) -> bool {
+    let joins = |k: usize| view.is(k, Classes::VERSUS) || view.is(k, Classes::AND);
+    let dot = usize::from(view.sign(end + 1, '.'));
+    let behind = joins(end) && view.number(end + 1 + dot).is_some() && view.sign(end + 2 + dot, '/');
+    let before = first > 1 && {
+        let k = if view.sign(first - 1, '.') { first - 2 } else { first - 1 };
+        joins(k) && k > 2 && view.number(k - 1).is_some() && view.sign(k - 2, '/')
+    };
+    behind || before
 }
 
 /// `12 (26.7%)`, `12 patients (26.7%)`, `Sixteen (76%) of the 21`, `n = 12 (26.7%)`.

@@ -56,6 +56,8 @@ fn give(view: &SentenceView, draft: &mut Draft, n: u64, at: usize) {
 
 /// A comma or another figure between a summary and the size behind it.
 fn crosses(view: &SentenceView, from: usize, to: usize) -> bool {
+    // `(SD 1.0; n = 25)`: the separator that leads to the size itself
+    let from = if view.signs(from, &[';', ',']) && view.is(from + 1, Classes::N) { from + 1 } else { from };
     (from..to).any(|k| {
         view.number(k).is_some() || view.signs(k, &[';']) || view.is(k, Classes::AND) || view.is(k, Classes::VERSUS)
     })
