@@ -459,6 +459,12 @@ pub(super) fn soften(view: &SentenceView, drafts: &mut [Draft]) {
         view.any(k, &["actuarial", "kaplan", "survival", "cumulative", "weighted", "standardised", "standardized"])
     });
     let counts = drafts.iter().filter(|d| d.group.events.is_some() && d.group.percent.is_some()).count();
+    // Another count of the sentence that fits a total confirms it for all.
+    let confirmed: Vec<Printed> = drafts
+        .iter()
+        .filter(|d| d.group.percent.is_some() && fits(&d.group))
+        .filter_map(|d| d.group.total.map(|t| t.printed))
+        .collect();
     for d in drafts {
         let about = d.first > 0
             && (view.any(
@@ -480,8 +486,9 @@ pub(super) fn soften(view: &SentenceView, drafts: &mut [Draft]) {
                 ],
             ) || view.signs(d.first - 1, &['~', '<', '>', '≥', '≤']));
         d.group.approximate = (about || estimated) && d.group.percent.is_some();
-        let total = d.group.total.map(|t| t.origin);
-        if counts > 1 && matches!(total, Some(Origin::Inferred(Inference::SameSentence, _))) && !fits(&d.group) {
+        let Some(total) = d.group.total else { continue };
+        let taken_over = matches!(total.origin, Origin::Inferred(Inference::SameSentence, _));
+        if counts > 1 && taken_over && !fits(&d.group) && !confirmed.contains(&total.printed) {
             (d.group.total, d.group.n) = (None, None);
         }
     }
