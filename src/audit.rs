@@ -18,8 +18,9 @@ pub fn is_manuscript(name: &str) -> bool {
 pub fn audit(bytes: &[u8], name: &str) -> Result<Audited, Unreadable> {
     let (manuscript, notices) = intake::read(bytes, name, None)?;
     let scan = reading::scan(&manuscript);
-    let readings = reading::read(&manuscript, &scan);
+    let mut readings = reading::read(&manuscript, &scan);
     let context = context::gather(&manuscript, &scan, &readings);
+    context::fill_sizes(&manuscript, &scan, &mut readings, &context);
     let results = result::join(&manuscript, &scan, &readings, &context);
     let checked = recompute::recompute(&readings, &context, &results);
     let facts = Facts {

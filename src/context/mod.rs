@@ -2,6 +2,7 @@
 //! arms and group sizes, interval level, each with its place.
 
 mod arm;
+mod size;
 mod statement;
 pub mod test_name;
 // Word lists are easier to read in full lines.
@@ -13,6 +14,7 @@ use crate::printed::Printed;
 use crate::reading::{PlanningKind, Readings, Scan, Sides};
 use crate::text::Span;
 
+pub use size::fill_sizes;
 pub use test_name::{Test, tests_in};
 
 /// A statement with its place.
@@ -66,7 +68,7 @@ pub fn gather(manuscript: &Manuscript, scan: &Scan, readings: &Readings) -> Cont
         has_results: manuscript.sections.iter().any(|s| s.kind == SectionKind::Results && s.level > 0),
         ..Context::default()
     };
-    planned(readings, &mut context);
+    planned(manuscript, readings, &mut context);
     for (number, block) in manuscript.blocks.iter().enumerate() {
         if matches!(block.kind, BlockKind::Table(_) | BlockKind::Heading) {
             continue;
@@ -103,7 +105,7 @@ pub fn gather(manuscript: &Manuscript, scan: &Scan, readings: &Readings) -> Cont
 }
 
 /// Alpha, sides, power and multiplicity, from the planning statements.
-fn planned(readings: &Readings, context: &mut Context) {
+fn planned(manuscript: &Manuscript, readings: &Readings, context: &mut Context) {
     for x in &readings.planning {
         match x.what {
             PlanningKind::Alpha | PlanningKind::Threshold => {
@@ -128,12 +130,24 @@ fn planned(readings: &Readings, context: &mut Context) {
                     context.sides = Some(Stated { value: sides, span: x.span });
                 }
             }
+            // "P-values were not corrected for multiple comparisons."
+            PlanningKind::Multiplicity if denied(manuscript, x.span) => {}
             PlanningKind::Multiplicity => {
                 context.multiplicity.get_or_insert(Stated { value: (), span: x.span });
             }
             PlanningKind::SampleSize | PlanningKind::Legend => {}
         }
     }
+}
+
+/// Whether "not", "no" or "without" stands within the few words before a statement.
+fn denied(manuscript: &Manuscript, span: Span) -> bool {
+    let before = &manuscript.block(span).text[..span.start as usize];
+    let sentence = before.rsplit(". ").next().unwrap_or("");
+    sentence
+        .rsplit(char::is_whitespace)
+        .take(6)
+        .any(|w| ["not", "no", "without", "nor"].contains(&w.to_lowercase().as_str()))
 }
 
 #[cfg(test)]

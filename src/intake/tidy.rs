@@ -121,12 +121,12 @@ fn script(text: &str, open: usize, close: usize, kind: MarkKind) -> Option<Range
     Some(start..start + body.len())
 }
 
-/// Marks set apart by spaces: `r & s`, `1, 2`, `a and b`, `i, ii, iv`.
+/// Marks set apart by spaces: `r & s`, `1, 2`, `(1, 38)`, `a and b`, `i, ii, iv`.
 fn is_list(body: &str) -> bool {
     body.split_whitespace().all(|t| {
-        let t = t.trim_matches([',', ';']);
+        let t = t.trim_matches([',', ';', '(', ')', '[', ']']);
         let roman = t.bytes().all(|b| matches!(b, b'i' | b'v' | b'x'));
-        let short = t.len() <= 2 && t.bytes().all(|b| b.is_ascii_digit());
+        let short = t.len() <= 4 && t.bytes().all(|b| b.is_ascii_digit());
         roman || short || matches!(t, "&" | "and") || t.chars().count() == 1
     })
 }

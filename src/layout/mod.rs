@@ -333,6 +333,10 @@ fn plain_columns(text: &Text, grid: &Grid, columns: &[Column]) -> bool {
     let Some(places) = columns.iter().map(|c| place(&c.role)).collect::<Option<Vec<_>>>() else { return false };
     let count = |x| places.iter().filter(|&&p| p == x).count();
     let groups = columns.iter().filter(|c| matches!(c.role, ColumnRole::Group { .. })).count();
+    // The few columns are compared with each other below; a table of more groups is no plain one anyway.
+    if groups > 8 || count(1) > 9 || count(0) > 2 {
+        return false;
+    }
     let heads: Vec<String> =
         columns.iter().map(|c| c.header.map_or(String::new(), |h| text.folded(&grid.cells[h]))).collect();
     let alike = |role: &ColumnRole, k: usize| {
@@ -349,7 +353,6 @@ fn plain_columns(text: &Text, grid: &Grid, columns: &[Column]) -> bool {
         && count(3) <= 1
         && count(1) >= 1
         && (groups >= 2 || count(3) + count(2) == 0)
-        && groups <= 8
         && !repeated
         && !timed
         && !odd_p

@@ -85,14 +85,17 @@ pub fn read(
             continue;
         }
         taken[at..next].fill(true);
+        let points = view.any(next, &["percentage", "percent"]);
+        // A difference in percent or in percentage points is one of risks.
+        let risk = n.measure == Measure::MeanDifference && (points || view.sign(next, '%'));
         out.push(Estimate {
             span: view.span(n.first, next - 1),
             sentence: view.id,
-            measure: n.measure,
+            measure: if risk { Measure::RiskDifference } else { n.measure },
             scale: n.scale,
             value,
             se: standard_error(view, next),
-            percent: view.sign(next, '%'),
+            percent: points || view.sign(next, '%'),
             adjusted: n.adjusted,
         });
     }

@@ -401,6 +401,16 @@ fn mended(view: &SentenceView, base: Printed, last: usize) -> (Printed, usize) {
             return (Printed { places: view.word(last + 2).len() as u8, ..p }, last + 2);
         }
     }
+    // `0, 0130`: a decimal comma with a space behind it
+    if text == "0" && view.sign(last + 1, ',') && !view.spaced(last + 1) {
+        let decimals = view.word(last + 2);
+        if decimals.len() >= 3
+            && decimals.bytes().all(|b| b.is_ascii_digit())
+            && let Some(p) = view.number(last + 2)
+        {
+            return (Printed { places: decimals.len() as u8, ..p }, last + 2);
+        }
+    }
     if text.len() >= 3 && text.starts_with('0') && text.bytes().all(|b| b.is_ascii_digit()) {
         return (Printed { places: text.len() as u8, digits: base.digits, ..base }, last);
     }

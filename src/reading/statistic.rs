@@ -251,7 +251,8 @@ fn df_list(view: &SentenceView, from: usize, to: usize) -> Option<Freedom> {
             }
             TokenKind::Word if view.is(k, Classes::N) => is_n = true,
             TokenKind::Word if view.any(k, &["df", "d", "f", "dfs"]) => {}
-            TokenKind::Sign('=' | ',' | ';' | '.' | ':') => {}
+            // brackets may be set low with their figures
+            TokenKind::Sign('=' | ',' | ';' | '.' | ':' | '(' | ')' | '[' | ']') => {}
             _ => return None,
         }
         k += 1;

@@ -136,6 +136,12 @@ impl<'a> Case<'a> {
         if self.groups.iter().any(|g| g.change) {
             return Some(reason::CHANGE);
         }
+        // Sizes from where the arms were introduced may not be those analysed.
+        let elsewhere =
+            |g: &&Group| size(g).is_some_and(|n| matches!(n.origin, Origin::Inferred(Inference::ArmSize, _)));
+        if self.groups.iter().any(elsewhere) {
+            return Some(reason::SIZES_DOUBTFUL);
+        }
         let context = self.context;
         if context.crossover.is_some() {
             return Some(reason::PAIRED);

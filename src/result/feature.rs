@@ -1,10 +1,10 @@
 //! What a sentence says about an analysis that a plain recomputation must respect.
 
 use super::Feature;
-use crate::context::{Context, Test};
+use crate::context::Test;
 use crate::reading::lexicon::Classes;
 use crate::reading::{PValue, Role};
-use crate::reading::{Readings, SentenceView, Sides};
+use crate::reading::{Readings, SentenceView};
 use crate::text::Span;
 
 /// Words and the feature they show, wherever they stand in the result's sentence.
@@ -114,22 +114,6 @@ pub(super) fn of_test(test: Test) -> Option<Feature> {
         AssumptionOrFit => Some(Feature::OtherGroups),
         T | WelchT | Anova | ChiSquared | YatesChiSquared | FisherExact | Z | Pearson => None,
     }
-}
-
-/// The features that the Methods state for the whole study.
-pub(super) fn of_context(context: &Context) -> Vec<(Feature, Span)> {
-    let mut found = Vec::new();
-    let mut add = |feature, stated: Option<Span>| {
-        if let Some(span) = stated {
-            found.push((feature, span));
-        }
-    };
-    add(Feature::Clustered, context.clustered.map(|s| s.span));
-    add(Feature::Paired, context.crossover.map(|s| s.span));
-    add(Feature::Adjusted, context.adjusted.map(|s| s.span));
-    add(Feature::Corrected, context.multiplicity.map(|s| s.span));
-    add(Feature::Unclear, context.sides.filter(|s| s.value == Sides::One).map(|s| s.span));
-    found
 }
 
 /// The features that the groups themselves show: changes, medians, "from 5.2 … to 4.1".

@@ -88,6 +88,7 @@ fn segments(view: &SentenceView, members: &Members, readings: &Readings) -> Vec<
     members.statistics.clone().for_each(|i| segments[number(readings.statistics[i].span)].statistics.push(i));
     members.groups.clone().for_each(|i| segments[number(readings.groups[i].span)].groups.push(i));
     members.estimates.clone().for_each(|i| segments[number(readings.estimates[i].span)].estimates.push(i));
+    hand_back(&mut segments, readings);
     // Figures behind the last p, where none stand before it: `p < 0.001 (5.2 ± 1.1 v 6.1 ± 1.0)`.
     if segments.len() >= 2 {
         let tail = segments.pop().unwrap_or_default();
@@ -122,10 +123,12 @@ fn trailing(view: &SentenceView, members: &Members, readings: &Readings, mut end
             break;
         }
         let (a, b) = (view.token_at(end), view.token_at(span.start));
-        let close = b.saturating_sub(a) <= 4
+        let linked = b.saturating_sub(a) <= 4
             && (a..b).all(|k| {
                 view.signs(k, &[',', ';', ')', '(', '[', ']', '=', ':']) || view.any(k, &["with", "partial", "cohen"])
             });
+        // `(difference 0.3, p = 0.04, bootstrap 95% CI 0.1 to 0.5)`: all in one bracket
+        let close = linked || b.saturating_sub(a) <= 9 && in_one_bracket(view, a, b);
         // In `(p = 0.02) and OR 1.2 (…), p = 0.4` the figures belong to the next p.
         let own = limit == u32::MAX || (view.token_at(limit).saturating_sub(view.token_at(span.end)) > 3);
         if !close || !own {
@@ -134,6 +137,35 @@ fn trailing(view: &SentenceView, members: &Members, readings: &Readings, mut end
         end = span.end;
     }
     end
+}
+
+/// Whether the tokens `from..to` stand in one open bracket.
+fn in_one_bracket(view: &SentenceView, from: usize, to: usize) -> bool {
+    let opened = (from.saturating_sub(40)..from)
+        .rev()
+        .find(|&k| view.signs(k, &['(', '[', ')', ']']))
+        .is_some_and(|k| view.signs(k, &['(', '[']));
+    opened && !(from..to).any(|k| view.signs(k, &['(', ')', '[', ']', ';']))
+}
+
+/// An interval that stands before a statistic belongs to the p before it, where that one has a statistic and no
+/// interval: `F = 0.2, p = 0.6, difference 0.1, 95% CI …, nor …, F = 0.3, p = 0.5`.
+fn hand_back(segments: &mut [Segment], readings: &Readings) {
+    for k in 1..segments.len() {
+        let (before, after) = segments.split_at_mut(k);
+        let (previous, next) = (&mut before[k - 1], &mut after[0]);
+        let Some(&statistic) = next.statistics.first() else { continue };
+        let at = readings.statistics[statistic].span.start;
+        let led = !previous.statistics.is_empty() && previous.intervals.is_empty() && !previous.p.is_empty();
+        if !led {
+            continue;
+        }
+        let early = |span: Span| span.end <= at;
+        previous.intervals.extend(next.intervals.iter().filter(|&&i| early(readings.intervals[i].span)));
+        previous.estimates.extend(next.estimates.iter().filter(|&&e| early(readings.estimates[e].span)));
+        next.intervals.retain(|&i| !early(readings.intervals[i].span));
+        next.estimates.retain(|&e| !early(readings.estimates[e].span));
+    }
 }
 
 /// The results of one segment.
@@ -314,10 +346,8 @@ fn describe(
     for (feature, span) in feature::of_groups(view, readings, &result.groups) {
         add(feature, span);
     }
-    for (feature, span) in feature::of_context(context) {
-        add(feature, span);
-    }
-    if result.groups.len() > 2
+    // Three groups in one list are compared as three; more may be two by two, or before and after.
+    if (result.groups.len() > 3 || result.groups.len() == 3 && !one_list(view, readings, &result.groups))
         && let Some(&g) = result.groups.first()
     {
         add(Feature::Unclear, readings.groups[g].span);
@@ -335,4 +365,18 @@ fn names_other_analysis(view: &SentenceView, p: Span) -> bool {
     let Some(open) = open else { return false };
     let close = (at..(at + 14).min(view.len())).find(|&k| view.signs(k, &[')', ']'])).unwrap_or(at);
     (open..close).any(|k| view.any(k, &["analysis", "analyses", "test", "tests", "model", "regression", "statistic"]))
+}
+
+/// Groups that one list tells one after the other, each with spread and size.
+fn one_list(view: &SentenceView, readings: &Readings, groups: &[usize]) -> bool {
+    const GAP: usize = 8;
+    let complete = groups.iter().all(|&g| {
+        let g = &readings.groups[g];
+        g.n.is_some() && (!g.spread.is_empty() || g.events.is_some())
+    });
+    let close = groups.windows(2).all(|w| {
+        let (a, b) = (readings.groups[w[0]].span, readings.groups[w[1]].span);
+        view.token_at(b.start).saturating_sub(view.token_at(a.end)) <= GAP
+    });
+    complete && close
 }

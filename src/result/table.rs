@@ -210,7 +210,6 @@ impl<'a> Table<'a> {
             features.push((Feature::Ranked, g.span));
         }
         features.extend(&notes.features);
-        features.extend(feature::of_context(context));
         for (feature, span) in features {
             if result.features.iter().all(|&(f, _)| f != feature) {
                 result.features.push((feature, span));

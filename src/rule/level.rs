@@ -8,6 +8,9 @@ use crate::query::{Ground, Level};
 /// How far a printed p lies from the recomputed one before that alone can be `major`.
 pub const MAJOR_FACTOR: f64 = 5.0;
 
+/// A p closer than this to the recomputed one, on the same side of alpha, changes nothing that hangs on it.
+pub const NOTE_FACTOR: f64 = 1.25;
+
 /// What the policy weighs, beside the rule's ceiling.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Weight {
@@ -56,6 +59,7 @@ pub fn level(ceiling: Level, weight: &Weight) -> Level {
     };
     let reached = match weight.distance {
         Off::BelowOneUnit => Level::Note,
+        Off::P { factor, across_alpha: false } if factor < NOTE_FACTOR => Level::Note,
         Off::P { factor, across_alpha } if sound && (across_alpha || factor >= MAJOR_FACTOR) => Level::Major,
         Off::NotMeasured if weight.drives_message => Level::Major,
         Off::P { .. } | Off::Figure | Off::NotMeasured => Level::Minor,
@@ -85,6 +89,7 @@ mod tests {
             assert_eq!(level(Level::Major, &p(ground, 1.4, true)), Level::Major);
             assert_eq!(level(Level::Major, &p(ground, 5.0, false)), Level::Major);
             assert_eq!(level(Level::Major, &p(ground, 4.9, false)), Level::Minor);
+            assert_eq!(level(Level::Major, &p(ground, 1.2, false)), Level::Note);
         }
         assert_eq!(level(Level::Major, &p(Ground::IfUnadjusted, 50.0, true)), Level::Minor);
     }

@@ -204,16 +204,28 @@ impl<'a> Look<'a> {
         self.with_interval.contains(&self.part(span))
     }
 
+    /// The paragraph or one beside it points to a table or a figure, where the numbers may stand.
+    pub(super) fn points_to_table(&self, span: Span) -> bool {
+        let blocks = &self.manuscript.blocks;
+        let at = span.block as usize;
+        let (from, to) = (at.saturating_sub(2), (at + 2).min(blocks.len()));
+        blocks[from..to].iter().any(|b| {
+            b.section == blocks[at].section && ["Table", "table ", "Fig", "figure "].iter().any(|w| b.text.contains(w))
+        })
+    }
+
     /// The sentence of a claim cites others: it stands outside the results and holds a reference to the literature.
     pub(super) fn cites_others(&self, claim: &Claim) -> bool {
         if self.reports_results(claim.span) {
             return false;
         }
         let around = self.around(claim);
-        // References stand behind the last word, too.
-        let (start, end) = (around.start as u32, around.end as u32 + 8);
-        self.manuscript.block(claim.span).marked(MarkKind::Reference, start, end)
-            || self.sentence(claim).contains("et al")
+        let block = self.manuscript.block(claim.span);
+        // References stand behind the last word, too; and what follows a citation goes on about it.
+        const BEFORE: usize = 250;
+        let from = block.text.floor_char_boundary(around.start.saturating_sub(BEFORE));
+        block.marked(MarkKind::Reference, from as u32, around.end as u32 + 8)
+            || block.text[from..around.end].contains("et al")
     }
 
     /// The text of a claim's sentence, in lower case; of an endless sentence, what stands near the claim.

@@ -267,6 +267,7 @@ impl Scope<'_> {
             && !(k.saturating_sub(5).max(self.clause.first)..k).any(|j| flat.any(j, REACHES))
             && !(k + 1..(k + 6).min(end)).any(|j| flat.any(j, REACHES))
             && self.negation(k, 2).is_none()
+            && !(k.saturating_sub(2).max(self.clause.first)..k).any(|j| flat.is(j, HEDGE))
         {
             return None;
         }

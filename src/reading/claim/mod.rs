@@ -16,7 +16,7 @@ use super::claim_words::{CHANGED, COMPARATIVE, DIFFER, EXTREME, FINITE, FIT, HED
 use super::lexicon::Classes;
 use super::p::PExpression;
 use super::sentence::SentenceView;
-use super::{Attribution, Claim, ClaimKind};
+use super::{Attribution, Claim, ClaimKind, Relation};
 
 /// Only a sentence with one of these words can make a claim.
 const CUES: Classes = Classes(
@@ -45,6 +45,7 @@ pub fn read(view: &SentenceView, p: &[PExpression], out: &mut Vec<Claim>) {
     if misreading(view, out) {
         return;
     }
+    let start = out.len();
     let flat = Flat::new(view);
     let facts = Facts::of(&flat, p, Classes(union));
     for clause in clauses(&flat) {
@@ -62,6 +63,34 @@ pub fn read(view: &SentenceView, p: &[PExpression], out: &mut Vec<Claim>) {
             direction: found.direction,
             says_significant: found.says_significant,
         });
+    }
+    contrast(view, p, start, out);
+}
+
+/// "improved in A (P = 0.03) but not in B (P = 0.12)": what the two p's say is read as a difference between arms.
+fn contrast(view: &SentenceView, p: &[PExpression], start: usize, out: &mut [Claim]) {
+    // The usual level, as common practice has it: a stated one is not known here.
+    const ALPHA: f64 = 0.05;
+    for pair in p.windows(2) {
+        let (a, b) = (&pair[0], &pair[1]);
+        let value = |x: &PExpression| x.value.map_or(1.0, |v| v.value());
+        let low = value(a) < ALPHA && matches!(a.relation, Relation::Equal | Relation::Less | Relation::AtMost)
+            || value(a) == ALPHA && a.relation == Relation::Less;
+        let high = matches!(b.relation, Relation::NotSignificant | Relation::Greater | Relation::AtLeast)
+            || b.relation == Relation::Equal && value(b) > ALPHA;
+        let between = a.last + 1..b.first;
+        let not_so = between.len() <= 16
+            && between.clone().any(|k| {
+                view.any(k, &["but", "whereas", "while"])
+                    && view.eq(k + 1, "not")
+                    && view.any(k + 2, &["in", "for", "with", "within"])
+            });
+        let Some(claim) = out[start..].iter_mut().find(|c| c.kind == ClaimKind::Difference && not_so) else { continue };
+        if low && high && claim.span.end <= view.tokens[a.first].start {
+            claim.kind = ClaimKind::WithinGroupContrast;
+            let bracket = view.signs(b.first - 1, &['(', '[', ',']) && b.first >= 2;
+            claim.span.end = view.tokens[b.first - 1 - usize::from(bracket)].end;
+        }
     }
 }
 

@@ -176,7 +176,7 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
         let bracket = i > 0 && view.signs(i - 1, &['(', '[', ',']) && view.signs(end, &[')', ']', ',', ';']);
         let members = view.is(end, Classes::GROUP);
         let told = if by_slash {
-            bracket || members
+            bracket || members || beside_fraction(view, i, end)
         } else {
             members || words > 0 || view.eq(at, "out") || view.signs(end, &[')', ',', '.'])
         };
@@ -201,6 +201,18 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
     group.percent = percent;
     group.one_expression = true;
     Some(Draft { first: i, last, group })
+}
+
+/// `27/122 v 44/487`, `30/204 and 21/205`: another fraction right before or behind.
+fn beside_fraction(view: &SentenceView, first: usize, end: usize) -> bool {
+    let joins = |k: usize| view.is(k, Classes::VERSUS) || view.is(k, Classes::AND);
+    let dot = usize::from(view.sign(end + 1, '.'));
+    let behind = joins(end) && view.number(end + 1 + dot).is_some() && view.sign(end + 2 + dot, '/');
+    let before = first > 1 && {
+        let k = if view.sign(first - 1, '.') { first - 2 } else { first - 1 };
+        joins(k) && k > 2 && view.number(k - 1).is_some() && view.sign(k - 2, '/')
+    };
+    behind || before
 }
 
 /// `12 (26.7%)`, `12 patients (26.7%)`, `Sixteen (76%) of the 21`, `n = 12 (26.7%)`.
@@ -289,7 +301,26 @@ fn percent_first(view: &SentenceView, i: usize, setting: &Setting, taken: &[bool
             }
         }
     }
+    // `9%, 3/33`
+    if view.signs(next, &[',', ';'])
+        && let Some((events, after)) = count_at(view, next + 1)
+        && view.sign(after, '/')
+        && let Some((total, k, end)) = denominator(view, after).filter(|&(t, ..)| events <= t && t > 1)
+        && fits_share(events, total, percent)
+    {
+        let mut group = empty(view, i, end - 1);
+        (group.events, group.percent) = (Some(whole(view, events, next + 1, after - 1)), Some(percent));
+        group.total = Some(whole(view, total, k, end - 1));
+        group.n = group.total;
+        group.one_expression = true;
+        return Some(Draft { first: i, last: end - 1, group });
+    }
     alone(view, i, percent, next, setting, taken)
+}
+
+/// Whether a percentage is near enough to a fraction beside it that both tell of one count.
+fn fits_share(events: u64, total: u64, percent: Printed) -> bool {
+    (100.0 * events as f64 / total as f64 - percent.value()).abs() <= 10.0
 }
 
 /// Words before or after a percentage that show that it is no share of a group.
@@ -429,6 +460,12 @@ pub(super) fn soften(view: &SentenceView, drafts: &mut [Draft]) {
         view.any(k, &["actuarial", "kaplan", "survival", "cumulative", "weighted", "standardised", "standardized"])
     });
     let counts = drafts.iter().filter(|d| d.group.events.is_some() && d.group.percent.is_some()).count();
+    // Another count of the sentence that fits a total confirms it for all.
+    let confirmed: Vec<Printed> = drafts
+        .iter()
+        .filter(|d| d.group.percent.is_some() && fits(&d.group))
+        .filter_map(|d| d.group.total.map(|t| t.printed))
+        .collect();
     for d in drafts {
         let about = d.first > 0
             && (view.any(
@@ -450,8 +487,9 @@ pub(super) fn soften(view: &SentenceView, drafts: &mut [Draft]) {
                 ],
             ) || view.signs(d.first - 1, &['~', '<', '>', '≥', '≤']));
         d.group.approximate = (about || estimated) && d.group.percent.is_some();
-        let total = d.group.total.map(|t| t.origin);
-        if counts > 1 && matches!(total, Some(Origin::Inferred(Inference::SameSentence, _))) && !fits(&d.group) {
+        let Some(total) = d.group.total else { continue };
+        let taken_over = matches!(total.origin, Origin::Inferred(Inference::SameSentence, _));
+        if counts > 1 && taken_over && !fits(&d.group) && !confirmed.contains(&total.printed) {
             (d.group.total, d.group.n) = (None, None);
         }
     }

@@ -34,10 +34,12 @@ pub(super) fn assign(view: &SentenceView, drafts: &mut [Draft]) {
             return;
         }
     }
+    // Sizes stand before their summaries or behind them; the first summary shows which.
+    let reach = if sizes[0].1 < drafts[open[0]].first { 6 } else { 14 };
     for &d in &open {
         let (first, last) = (drafts[d].first, drafts[d].last);
-        // right behind: `5.2 ± 1.1 (n = 24)`, `5.2 ± 1.1, n = 24`
-        let behind = sizes.iter().find(|s| s.1 > last && s.1 <= last + 6 && !crosses(view, last + 1, s.1));
+        // right behind: `5.2 ± 1.1 (n = 24)`, `5.2 ± 1.1, n = 24`, `5.2 ± 1.1 with the sling (n = 24)`
+        let behind = sizes.iter().find(|s| s.1 > last && s.1 <= last + reach && !crosses(view, last + 1, s.1));
         let before = sizes.iter().rev().find(|s| s.1 < first);
         if let Some(&(n, at)) = behind.or(before) {
             give(view, &mut drafts[d], n, at);
@@ -54,6 +56,8 @@ fn give(view: &SentenceView, draft: &mut Draft, n: u64, at: usize) {
 
 /// A comma or another figure between a summary and the size behind it.
 fn crosses(view: &SentenceView, from: usize, to: usize) -> bool {
+    // `(SD 1.0; n = 25)`: the separator that leads to the size itself
+    let from = if view.signs(from, &[';', ',']) && view.is(from + 1, Classes::N) { from + 1 } else { from };
     (from..to).any(|k| {
         view.number(k).is_some() || view.signs(k, &[';']) || view.is(k, Classes::AND) || view.is(k, Classes::VERSUS)
     })

@@ -86,6 +86,31 @@ pub fn fill(groups: &mut [Group], mentions: &[Mention], tested: impl Fn(u32) -> 
         }
     }
     siblings(groups);
+    companions(groups, tested);
+}
+
+/// A summary without size beside counts that all have one total: "68.1% (111/163) were female, the mean age was 57 years".
+fn companions(groups: &mut [Group], tested: impl Fn(u32) -> bool) {
+    let mut from = 0;
+    while from < groups.len() {
+        let sentence = groups[from].sentence;
+        let to = from + groups[from..].iter().take_while(|g| g.sentence == sentence).count();
+        let sizes: Vec<Figure> = groups[from..to].iter().filter_map(|g| g.total).collect();
+        if let [first, rest @ ..] = &sizes[..]
+            && rest.iter().all(|n| n.printed == first.printed)
+            && !tested(sentence)
+        {
+            let span = match first.origin {
+                Origin::Printed(span) | Origin::Inferred(_, span) => span,
+                Origin::Assumed(_) => groups[from].span,
+            };
+            for group in groups[from..to].iter_mut().filter(|g| g.n.is_none() && g.events.is_none()) {
+                group.n =
+                    Some(Figure { printed: first.printed, origin: Origin::Inferred(Inference::SameSentence, span) });
+            }
+        }
+        from = to;
+    }
 }
 
 /// The mentions of one paragraph by size.

@@ -40,7 +40,7 @@ pub fn claim(facts: &Look, kinds: &[Claimed], of: &[Whose], backing: Backing, pe
 /// "No significant difference" and "no evidence of a difference" say that something is missing, not that there is no
 /// difference.
 fn kind_of(facts: &Look, claim: &Claim) -> ClaimKind {
-    let careful = claim.says_significant || facts.quote(claim.span).contains("evidence");
+    let careful = claim.says_significant || facts.sentence(claim).contains("evidence");
     match claim.kind {
         ClaimKind::NoDifference if careful => ClaimKind::NotSignificant,
         kind => kind,
@@ -76,8 +76,9 @@ fn backed<'a>(facts: &Look<'a>, claim: &Claim, backing: Backing) -> Option<Found
             let bare = text && interval.is_none() && !facts.figures_in_block(claim.span);
             // A discussion or a conclusion sums up figures that stand in the results.
             let told = facts.reports_results(claim.span) && !facts.drives_message(claim.span);
-            let points = ["table", "fig", "appendix", "supplement", "see ", "described", "previous", "elsewhere"];
-            bare && told && !points.iter().any(|w| sentence.contains(w)) && !excepted(&sentence)
+            let points = ["appendix", "supplement", "see ", "described", "previous", "elsewhere"];
+            let pointed = points.iter().any(|w| sentence.contains(w)) || facts.points_to_table(claim.span);
+            bare && told && !pointed && !excepted(&sentence)
         }
         Backing::NoMargin => {
             let margin = facts.context.non_inferiority.is_some()
@@ -87,18 +88,54 @@ fn backed<'a>(facts: &Look<'a>, claim: &Claim, backing: Backing) -> Option<Found
             !margin && !methods
         }
         Backing::NoBetweenGroupTest => {
-            let words = ["interaction", "between group", "between-group", "between the", "between-arm"];
-            !in_sentence().any(|p| p.role == Role::Interaction) && !words.iter().any(|w| sentence.contains(w))
+            // A contrast of times within one group, or of correlations, is another matter.
+            let words = [
+                "interaction",
+                "between group",
+                "between-group",
+                "between the",
+                "between-arm",
+                "correlat",
+                "associat",
+                "predict",
+                "but not from",
+                "but not at",
+                "but not after",
+                "but not during",
+                "but not between",
+                "but not with",
+            ];
+            !in_sentence().any(|p| p.role == Role::Interaction)
+                && !words.iter().any(|w| sentence.contains(w))
+                && contrasts_arms(facts, &sentence)
         }
     };
     holds.then_some(Found { p, interval })
 }
 
+/// What stands behind "but not", "only" or "whereas" is an arm, not another outcome, muscle or time.
+fn contrasts_arms(facts: &Look, sentence: &str) -> bool {
+    let turn = ["but not", "only", "whereas", "while"].iter().filter_map(|w| sentence.find(w)).min();
+    // A few words on, the arm must be named.
+    const NEAR: usize = 90;
+    let from = turn.unwrap_or(0);
+    let tail = &sentence[from..sentence.floor_char_boundary(from + NEAR)];
+    let named = ["group", " arm", "control", "placebo", "usual care"].iter().any(|w| tail.contains(w));
+    named || facts.context.arms.iter().any(|a| a.label.len() > 1 && tail.contains(&a.label.to_lowercase()))
+}
+
 /// The sentence makes an exception, weighs its own claim, or tells of the start; what is excepted cannot be told safely.
 fn excepted(sentence: &str) -> bool {
-    let start = (sentence.contains("before ") || sentence.contains("prior to ")) && !sentence.contains("after");
+    let start = (sentence.contains("before ") || sentence.contains("prior to ")) && !sentence.contains("after")
+        || ["pre-treatment", "pretreatment", "at entry", "at the start", "no longer"]
+            .iter()
+            .any(|w| sentence.contains(w));
+    // Agreement of centres or raters is a check of the trial, not a comparison of its arms.
+    let centres =
+        ["study cent", "trial cent", "sites", "raters", "observers", "heterogen"].iter().any(|w| sentence.contains(w));
     let judged = ["considered", "judged", "felt ", "opinion", "reported that"].iter().any(|w| sentence.contains(w));
     start
+        || centres
         || judged
         || [
             "except",
@@ -129,7 +166,8 @@ fn finding(facts: &Look, claim: &Claim, found: &Found) -> Finding {
     };
     let weight = Weight {
         drives_message: facts.drives_message(claim.span) && !facts.interval_in_part(claim.span),
-        peripheral: found.interval.is_some(),
+        // An estimate in the sentence lets readers judge something, an interval more.
+        peripheral: found.interval.is_some() || facts.readings.estimates.iter().any(|e| e.sentence == claim.sentence),
         ..Weight::reporting()
     };
     let mut f = Finding::at(claim.span, weight, says);
@@ -227,6 +265,11 @@ pub fn against_p(facts: &Look, says: Says) -> Vec<Finding> {
             continue;
         }
         let p = facts.p_of(claim);
+        // A p inside the words of the claim may belong to what they begin with, not to what they conclude.
+        let inside = says == Says::NotSignificant && p.iter().any(|p| claim.span.contains(p.span));
+        if inside {
+            continue;
+        }
         let against = |p: &&PValue| match says {
             Says::Significant => alpha.below(p),
             Says::NotSignificant => alpha.above(p),

@@ -15,7 +15,9 @@ pub fn against_figures(facts: &Look) -> Vec<Finding> {
         let (Some(direction), Attribution::ThisStudy) = (claim.direction, claim.attribution) else { continue };
         let view = facts.scan.view(facts.manuscript, claim.sentence);
         let alone = within(&facts.readings.claims, |c| c.sentence, claim.sentence..claim.sentence + 1).len() == 1;
-        if !alone || !one_direction(&view) {
+        // "Faster", "better" and "longer" may name either end of a scale.
+        let quote = facts.quote(claim.span).to_lowercase();
+        if !alone || !one_direction(&view) || !PLAIN.iter().any(|w| quote.contains(w)) {
             continue;
         }
         findings.extend(two_figures(facts, claim, direction).or_else(|| one_ratio(facts, claim, direction, &view)));
@@ -28,6 +30,22 @@ fn one_direction(view: &SentenceView) -> bool {
     let count = (0..view.len()).filter(|&i| view.is(i, Classes::UP.or(Classes::DOWN)) || view.any(i, &TURNS)).count();
     count <= 1
 }
+
+/// Words whose direction is that of the figure itself.
+const PLAIN: [&str; 12] = [
+    "higher",
+    "lower",
+    "greater",
+    "fewer",
+    "larger",
+    "smaller",
+    "increased",
+    "decreased",
+    "reduced",
+    "more ",
+    "less ",
+    "raised",
+];
 
 /// Words that turn a comparison round or make its figures something else than levels.
 const TURNS: [&str; 24] = [

@@ -72,7 +72,10 @@ pub fn order(facts: &Look, of: Pair) -> Vec<Finding> {
                 if (i.reversed || i.lower.value() > i.upper.value()) && !reciprocal() {
                     let quote = wording::one_line(facts.quote(i.span));
                     let says = format!("Printed {quote}; the larger limit stands first.");
-                    findings.push(about(facts, i.span, says));
+                    let mut f = about(facts, i.span, says);
+                    // `−2.5 to −12.9`: many print a reduction from the smaller to the larger.
+                    f.weight.peripheral = i.lower.negative && i.upper.negative;
+                    findings.push(f);
                 }
             }
         }
