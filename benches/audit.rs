@@ -82,7 +82,7 @@ fn passes() {
         pass("reading");
         let context = context::gather(&manuscript, &scan, &readings);
         pass("context");
-        let results = result::join(&manuscript, &scan, &readings, &context);
+        let results = result::join(&manuscript, &scan, &readings);
         pass("result");
         let checked = recompute::recompute(&readings, &context, &results);
         pass("recompute");

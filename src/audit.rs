@@ -21,7 +21,7 @@ pub fn audit(bytes: &[u8], name: &str) -> Result<Audited, Unreadable> {
     let mut readings = reading::read(&manuscript, &scan);
     let context = context::gather(&manuscript, &scan, &readings);
     context::fill_sizes(&manuscript, &scan, &mut readings, &context);
-    let results = result::join(&manuscript, &scan, &readings, &context);
+    let results = result::join(&manuscript, &scan, &readings);
     let checked = recompute::recompute(&readings, &context, &results);
     let facts = Facts {
         manuscript: &manuscript,

@@ -4,7 +4,7 @@ mod feature;
 mod sentence;
 mod table;
 
-use crate::context::{Context, Stated, Test};
+use crate::context::{Stated, Test};
 use crate::manuscript::{BlockKind, Manuscript};
 use crate::reading::{Readings, Scan};
 use crate::text::Span;
@@ -69,7 +69,7 @@ impl ReportedResult {
 
 /// Joins the readings of a manuscript to results, in reading order: inside a sentence or across a table's row,
 /// never by mere nearness.
-pub fn join(manuscript: &Manuscript, scan: &Scan, readings: &Readings, context: &Context) -> Vec<ReportedResult> {
+pub fn join(manuscript: &Manuscript, scan: &Scan, readings: &Readings) -> Vec<ReportedResult> {
     let mut results = Vec::new();
     let mut from = sentence::Members { p: 0..0, intervals: 0..0, statistics: 0..0, groups: 0..0, estimates: 0..0 };
     loop {
@@ -93,9 +93,9 @@ pub fn join(manuscript: &Manuscript, scan: &Scan, readings: &Readings, context: 
             estimates: run(&readings.estimates, from.estimates.end, |x| part.contains(&x.sentence)),
         };
         if in_table {
-            table::join(manuscript, scan, block, &from, readings, context, &mut results);
+            table::join(manuscript, scan, block, &from, readings, &mut results);
         } else {
-            sentence::join(&scan.view(manuscript, id), &from, readings, context, &mut results);
+            sentence::join(&scan.view(manuscript, id), &from, readings, &mut results);
         }
     }
     results.shrink_to_fit();

@@ -1,7 +1,7 @@
 //! Joining inside one sentence: which figures belong to which p.
 
 use super::{Feature, MOST_TESTS, ReportedResult, StatedTest, feature};
-use crate::context::{Context, Stated, tests_in};
+use crate::context::{Stated, tests_in};
 use crate::reading::{Group, Readings, Relation, SentenceView};
 use crate::text::Span;
 use std::ops::Range;
@@ -26,13 +26,7 @@ struct Segment {
     estimates: Vec<usize>,
 }
 
-pub(super) fn join(
-    view: &SentenceView,
-    members: &Members,
-    readings: &Readings,
-    context: &Context,
-    out: &mut Vec<ReportedResult>,
-) {
+pub(super) fn join(view: &SentenceView, members: &Members, readings: &Readings, out: &mut Vec<ReportedResult>) {
     let start = out.len();
     for segment in segments(view, members, readings) {
         results_of(view, &segment, readings, out);
@@ -54,7 +48,7 @@ pub(super) fn join(
         .map(|(value, first, last)| Stated { value, span: view.span(first, last) })
         .collect();
     for result in &mut out[start..] {
-        describe(view, result, readings, context, &words, &here);
+        describe(view, result, readings, &words, &here);
     }
 }
 
@@ -307,7 +301,6 @@ fn describe(
     view: &SentenceView,
     result: &mut ReportedResult,
     readings: &Readings,
-    context: &Context,
     words: &[(Feature, Span)],
     here: &[Stated<crate::context::Test>],
 ) {

@@ -2,7 +2,7 @@
 
 use super::sentence::Members;
 use super::{Feature, MOST_TESTS, ReportedResult, StatedTest, feature};
-use crate::context::{Context, Stated, Test, tests_in};
+use crate::context::{Stated, Test, tests_in};
 use crate::layout::{Around, ColumnRole, Layout, Row, RowRole, around};
 use crate::manuscript::{BlockKind, Grid, Manuscript};
 use crate::reading::{Figure, Group, Inference, Origin, Readings, Scan, SentenceView, Style};
@@ -16,7 +16,6 @@ pub(super) fn join(
     number: usize,
     members: &Members,
     readings: &Readings,
-    context: &Context,
     out: &mut Vec<ReportedResult>,
 ) {
     let block = &manuscript.blocks[number];
@@ -36,7 +35,7 @@ pub(super) fn join(
             intervals: take(&mut intervals, |i| readings.intervals[i].sentence < end),
             estimates: take(&mut estimates, |i| readings.estimates[i].sentence < end),
         };
-        table.results_of(index, &found, &notes, readings, context, out);
+        table.results_of(index, &found, &notes, readings, out);
     }
 }
 
@@ -89,7 +88,6 @@ impl<'a> Table<'a> {
         found: &Found,
         notes: &Notes,
         readings: &Readings,
-        context: &Context,
         out: &mut Vec<ReportedResult>,
     ) {
         let row = &self.layout.rows[index];
@@ -114,7 +112,7 @@ impl<'a> Table<'a> {
             if let Some(p) = p.filter(|_| self.shares_p(index, &result.groups, readings)) {
                 result.features.push((Feature::OtherGroups, readings.p[p].span));
             }
-            self.describe(row, &mut result, notes, readings, context);
+            self.describe(row, &mut result, notes, readings);
             out.push(result);
         }
         for p in found.p.clone().filter(|i| !joined || !in_p_column(i)) {
@@ -168,7 +166,7 @@ impl<'a> Table<'a> {
         groups.is_empty() || !groups.iter().all(|&g| other_half(g))
     }
 
-    fn describe(&self, row: &Row, result: &mut ReportedResult, notes: &Notes, readings: &Readings, context: &Context) {
+    fn describe(&self, row: &Row, result: &mut ReportedResult, notes: &Notes, readings: &Readings) {
         let mut features: Vec<(Feature, Span)> = Vec::new();
         let p_cell = result.p.map(|p| (readings.p[p].sentence - self.first) as usize);
         let header = |role: &ColumnRole| self.layout.columns.iter().find(|c| c.role == *role).and_then(|c| c.header);
