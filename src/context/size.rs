@@ -14,6 +14,13 @@ pub fn fill_sizes(manuscript: &Manuscript, scan: &Scan, readings: &mut Readings,
         return;
     }
     let groups = &mut readings.groups;
+    // A summary that the text gives to an arm by its full name.
+    for group in groups.iter_mut().filter(|g| g.n.is_none() && g.events.is_none()) {
+        let own = |arm: &&Arm| arm.label.len() > 1 && arm.label.eq_ignore_ascii_case(&group.label);
+        if let Some(arm) = context.arms.iter().find(own) {
+            group.n = Some(size(arm));
+        }
+    }
     let mut from = 0;
     while from < groups.len() {
         let sentence = groups[from].sentence;

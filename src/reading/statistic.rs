@@ -52,9 +52,14 @@ fn symbol(view: &SentenceView, i: usize) -> Option<(Symbol, Option<u64>, usize)>
         "t" | "T" => Symbol::T,
         "F" => Symbol::F,
         "z" | "Z" => {
-            if view.any(i + 1, &["score", "scores"]) || (view.sign(i + 1, '-') && view.any(i + 2, &["score", "scores"]))
-            {
-                return None;
+            let next = i + 1 + usize::from(view.sign(i + 1, '-'));
+            if view.any(next, &["score", "scores"]) {
+                // A z score is a measurement, unless its p stands right behind it: `z score 0.26, p = 0.79`.
+                let at = next + 1 + usize::from(view.signs(next + 1, &['=', ':']));
+                let tested = view
+                    .signed(at)
+                    .is_some_and(|(_, after)| view.signs(after, &[',', ';']) && view.is(after + 1, Classes::P));
+                return tested.then_some((Symbol::Z, None, next + 1));
             }
             Symbol::Z
         }
@@ -150,7 +155,19 @@ fn statistic(view: &SentenceView, i: usize, taken: &mut [bool], out: &mut Vec<St
     {
         return range_of(view, i, at, symbol, taken, out);
     }
+    // `rs. = 0.46`, `chi-square for trend = 11.3`
+    if symbol == Symbol::Rho && view.sign(at, '.') && !view.spaced(at) {
+        at += 1;
+    }
+    if symbol == Symbol::ChiSquared && view.eq(at, "for") {
+        at = (at..(at + 10).min(view.len())).find(|&k| view.sign(k, '='))?;
+    }
+    // `z score 0.26, p = 0.79`
+    if symbol == Symbol::Z && view.any(at - 1, &["score", "scores"]) && view.signed(at).is_some() {
+        at -= 1;
+    }
     let relation = match view.get(at)?.kind {
+        TokenKind::Word => Relation::Equal,
         TokenKind::Sign('=' | '~') => Relation::Equal,
         TokenKind::Sign('<') => Relation::Less,
         TokenKind::Sign('>') => Relation::Greater,

@@ -178,7 +178,22 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
         let told = if by_slash {
             bracket || members || beside_fraction(view, i, end)
         } else {
-            members || words > 0 || view.eq(at, "out") || view.signs(end, &[')', ',', '.'])
+            let verb = view.is(end, Classes::COPULA)
+                || view.any(
+                    end,
+                    &[
+                        "had",
+                        "achieved",
+                        "experienced",
+                        "reported",
+                        "showed",
+                        "completed",
+                        "received",
+                        "responded",
+                        "died",
+                    ],
+                );
+            members || words > 0 || view.eq(at, "out") || view.signs(end, &[')', ',', '.']) || verb && total >= 8
         };
         if !told {
             return None;
@@ -220,7 +235,9 @@ fn count_and_percent(view: &SentenceView, i: usize, taken: &[bool]) -> Option<Dr
     let (events, next) = count_at(view, i)?;
     let (percent, last) = percent_in_brackets(view, next, 0).or_else(|| percent_in_brackets(view, next, 4))?;
     // `1.2 (26%)` and a percent after a comma are taken only where a count can be meant.
-    if view.signs(next, &[',', ';', '=']) && !(i > 0 && view.sign(i - 1, '=')) {
+    let in_bracket =
+        i > 0 && view.signs(i - 1, &['(', '[']) && view.signs(last + 1, &[')', ']']) && view.sign(next, ';');
+    if view.signs(next, &[',', ';', '=']) && !(i > 0 && view.sign(i - 1, '=')) && !in_bracket {
         return None;
     }
     if taken[next..=last].iter().any(|&t| t) || percent.value() > 100.0 {
@@ -421,7 +438,11 @@ fn alone(
     taken: &[bool],
 ) -> Option<Draft> {
     use SectionKind::*;
-    if !matches!(setting.section, Results | Abstract | Discussion | Unknown) || percent.value() > 100.0 {
+    // Of the participants themselves the Methods tell as well.
+    let described = setting.section == Methods
+        && (next..next + 4).any(|k| view.is(k, Classes::GROUP))
+        && (next..next + 8).any(|k| view.any(k, &["were", "was", "had", "completed"]));
+    if !(matches!(setting.section, Results | Abstract | Discussion | Unknown) || described) || percent.value() > 100.0 {
         return None;
     }
     let before = i.checked_sub(1);

@@ -8,6 +8,11 @@ use super::{Draft, empty};
 
 /// Appends pairs of bare figures on both sides of "versus".
 pub(super) fn read(view: &SentenceView, taken: &mut [bool], drafts: &mut Vec<Draft>) {
+    for from in 0..view.len() {
+        if view.eq(from, "from") {
+            before_after(view, from, taken, drafts);
+        }
+    }
     for v in 1..view.len() {
         if !view.is(v, Classes::VERSUS) || view.style(v) != Style::Plain {
             continue;
@@ -54,5 +59,27 @@ pub(super) fn read(view: &SentenceView, taken: &mut [bool], drafts: &mut Vec<Dra
             }
             drafts.push(Draft { first: from, last: to, group });
         }
+    }
+}
+
+/// `decreased from 84.6 to 77.6 mmHg (p = 0.001)`: two means without spread, where their p stands behind them.
+fn before_after(view: &SentenceView, from: usize, taken: &mut [bool], drafts: &mut Vec<Draft>) {
+    let Some((first, after)) = view.signed(from + 1) else { return };
+    let unit = usize::from(view.get(after).is_some_and(|t| t.is_word()) && !view.eq(after, "to"));
+    if !view.eq(after + unit, "to") {
+        return;
+    }
+    let start = after + unit + 1;
+    let Some((second, end)) = view.signed(start) else { return };
+    let tested = (end..end + 8).any(|k| view.is(k, Classes::P));
+    let free = !taken[from + 1..end].iter().any(|&t| t) && !view.sign(end, '%') && !view.sign(end, '±');
+    if !tested || !free || (first.places == 0 && second.places == 0) {
+        return;
+    }
+    for (value, a, b) in [(first, from + 1, after - 1), (second, start, end - 1)] {
+        taken[a..=b].fill(true);
+        let mut group = empty(view, a, b);
+        group.mean = Some(value);
+        drafts.push(Draft { first: a, last: b, group });
     }
 }
