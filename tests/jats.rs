@@ -127,13 +127,10 @@ fn an_article_has_its_parts() {
         <abstract abstract-type=\"teaser\"><p>Geese!</p></abstract><kwd-group><kwd>goose</kwd></kwd-group></article-meta></front>
         <body><sec sec-type=\"intro\"><title>Why geese</title><p>One.</p></sec>
         <sec><label>2.</label><title>Methods</title><sec><title>Beds</title><p>Two.</p></sec><p>After.</p></sec>
-        <sec sec-type=\"results\"><p>Three.<?note x?></p></sec></body>
+        <sec sec-type=\"results\"><p>Three.<?note x?></p><sec><title>Objective steps</title><p>Four.</p></sec></sec></body>
         <back><ack><title>Thanks</title><p>To all.</p></ack><sec><title>Interests</title><p>None.</p></sec>
         <ref-list><ref><mixed-citation>P = 0.001</mixed-citation></ref></ref-list></back>
-        <floats-group><fig><label>Figure 1</label><caption><p>Geese.</p></caption></fig></floats-group>
-        <sub-article><body><p>A review.</p></body></sub-article></article>"
-            .replace("<sub-article><body><p>A review.</p></body></sub-article>", "")
-            .as_str(),
+        <floats-group><fig><label>Figure 1</label><caption><p>Geese.</p></caption></fig></floats-group></article>",
     );
     assert_eq!(
         kinds(&m),
@@ -150,6 +147,8 @@ fn an_article_has_its_parts() {
             "Paragraph: Two.",
             "Paragraph: After.",
             "Paragraph: Three.",
+            "Heading: Objective steps",
+            "Paragraph: Four.",
             "Heading: Thanks",
             "Paragraph: To all.",
             "Heading: Interests",
@@ -167,6 +166,7 @@ fn an_article_has_its_parts() {
         ("Two.", Methods, false, 3),
         ("After.", Methods, false, 2),
         ("Three.", Results, false, 2),
+        ("Four.", Results, false, 3),
         ("To all.", Back, false, 3),
         ("None.", Back, false, 3),
         ("Figure 1 Geese.", Unknown, false, 2),

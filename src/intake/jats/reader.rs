@@ -318,7 +318,8 @@ impl<'a> Reader<'a> {
             Role::Section => {
                 self.flush();
                 let kind = tag.attribute("sec-type").and_then(|t| kind_of_type(&t));
-                self.outline.enter(self.outline.current(), self.allowed(kind), false);
+                let above = self.outline.current();
+                self.outline.enter(above, self.allowed(kind, above), false);
             }
             Role::ArticleTitle => {
                 if self.title > 0 || !self.outline.blocks.is_empty() {
@@ -350,7 +351,7 @@ impl<'a> Reader<'a> {
                     self.flow = Flow::Item;
                 }
             }
-            Role::Float | Role::Note if self.table.is_some() && role == Role::Float => {
+            Role::Float if self.table.is_some() => {
                 self.start_block(at);
                 return Role::Block;
             }
@@ -668,14 +669,19 @@ impl<'a> Reader<'a> {
         if self.outline.current() == self.title {
             self.outline.name(&title, None);
         } else if !title.is_empty() {
-            self.outline.name(&title, self.allowed(kind));
+            let current = self.outline.current() as usize;
+            let above = self.outline.sections[current].parent.unwrap_or(0);
+            self.outline.name(&title, self.allowed(kind, above));
         }
     }
 
     /// In the back matter a section is back matter, unless it is a part of the paper that stands there.
-    fn allowed(&self, kind: Option<SectionKind>) -> Option<SectionKind> {
+    /// "Objective measures" within the results introduces nothing.
+    fn allowed(&self, kind: Option<SectionKind>, above: u32) -> Option<SectionKind> {
         use SectionKind::*;
+        let above = self.outline.sections[above as usize].kind;
         kind.filter(|k| !self.back || matches!(k, Methods | Results | Discussion))
+            .filter(|k| *k != Introduction || !matches!(above, Methods | Results | Discussion))
     }
 
     fn end_label(&mut self, own: Range<usize>, at: usize) {
