@@ -6,7 +6,7 @@ use crate::rule::{self, Facts};
 use crate::{context, reading, recompute, result};
 
 /// Endings of the files that are taken from a folder.
-pub const EXTENSIONS: [&str; 4] = [".md", ".markdown", ".txt", ".text"];
+pub const EXTENSIONS: [&str; 6] = [".md", ".markdown", ".txt", ".text", ".xml", ".nxml"];
 
 /// Whether a file of a folder is taken for a manuscript, by the ending of its name.
 pub fn is_manuscript(name: &str) -> bool {

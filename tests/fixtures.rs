@@ -66,6 +66,7 @@ fn a_place_that_is_exact_holds_the_quote() {
 fn files_without_a_manuscript_are_told_apart() {
     assert_eq!(audit(&bytes("empty.md"), "empty.md").err(), Some(Unreadable::Empty));
     assert_eq!(audit(&bytes("binary.md"), "binary.md").err(), Some(Unreadable::Binary));
+    assert_eq!(audit(b"<?xml version='1.0'?><svg/>", "drawing.xml").err(), Some(Unreadable::OtherXml));
 }
 
 #[test]

@@ -12,7 +12,7 @@ use tallyproof::text::{Span, decode};
 fuzz_target!(|data: &[u8]| {
     let decoded = decode(data);
     assert!(decoded.original(decoded.text.len()) <= data.len());
-    for name in ["fuzz.md", "fuzz.txt"] {
+    for name in ["fuzz.md", "fuzz.txt", "fuzz.xml"] {
         let Ok(audited) = audit(data, name) else { continue };
         let r = &audited.readings;
         r.p.iter().for_each(|x| check(&audited.manuscript, x.span, data));

@@ -25,6 +25,37 @@ impl Outline {
         self.blocks.push(block);
     }
 
+    /// The section that blocks are added to.
+    pub fn current(&self) -> u32 {
+        self.current
+    }
+
+    /// Goes back to a section that was left.
+    pub fn go(&mut self, section: u32) {
+        self.current = section;
+    }
+
+    /// Opens a section under another, for formats that say where one begins and ends. Without a kind
+    /// of its own it has that of the section above.
+    pub fn enter(&mut self, parent: u32, kind: Option<SectionKind>, in_abstract: bool) {
+        let above = &self.sections[parent as usize];
+        let kind = kind.unwrap_or(match above.kind {
+            SectionKind::Title => SectionKind::Unknown,
+            kind => kind,
+        });
+        let level = (above.level + 1).min(6);
+        let in_abstract = above.in_abstract || in_abstract;
+        self.current = self.sections.len() as u32;
+        self.sections.push(Section { title: String::new(), level, parent: Some(parent), kind, in_abstract });
+    }
+
+    /// Names the current section; the title gives its kind if it tells one.
+    pub fn name(&mut self, title: &str, kind: Option<SectionKind>) {
+        let section = &mut self.sections[self.current as usize];
+        section.title = title.trim().to_owned();
+        section.kind = kind.unwrap_or(section.kind);
+    }
+
     fn open(&mut self, title: &str, level: u8) {
         let mut parent = self.current;
         while parent != 0 && self.sections[parent as usize].level >= level {

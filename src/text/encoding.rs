@@ -60,16 +60,24 @@ impl Decoded {
     }
 }
 
-/// Decodes UTF-8 (with or without BOM), UTF-16 with BOM, else Windows-1252.
+/// Decodes UTF-8 (with or without BOM), UTF-16 with BOM or with an XML declaration, else Windows-1252.
+/// What an XML declaration says counts where the bytes are not UTF-8 after all.
 ///
 /// Bytes that are not quite UTF-8 are taken for damaged UTF-8 when they hold at least as many good
 /// sequences of several bytes as bad ones: such sequences hardly occur in another encoding by chance.
 pub fn decode(bytes: &[u8]) -> Decoded {
     if let Some(rest) = bytes.strip_prefix(b"\xFF\xFE") {
-        return decode_utf16(rest, bytes.len(), EncodingName::Utf16Le, u16::from_le_bytes);
+        return decode_utf16(rest, 2, EncodingName::Utf16Le, u16::from_le_bytes);
     }
     if let Some(rest) = bytes.strip_prefix(b"\xFE\xFF") {
-        return decode_utf16(rest, bytes.len(), EncodingName::Utf16Be, u16::from_be_bytes);
+        return decode_utf16(rest, 2, EncodingName::Utf16Be, u16::from_be_bytes);
+    }
+    // XML 1.0, appendix F: without a mark, the declaration itself shows the width of the characters.
+    if bytes.starts_with(b"<\0?\0") {
+        return decode_utf16(bytes, 0, EncodingName::Utf16Le, u16::from_le_bytes);
+    }
+    if bytes.starts_with(b"\0<\0?") {
+        return decode_utf16(bytes, 0, EncodingName::Utf16Be, u16::from_be_bytes);
     }
     let body = bytes.strip_prefix(b"\xEF\xBB\xBF").unwrap_or(bytes);
     let bom = bytes.len() - body.len();
@@ -83,11 +91,27 @@ pub fn decode(bytes: &[u8]) -> Decoded {
             checkpoints: vec![(0, bom)],
         };
     }
-    if bom > 0 || is_damaged_utf8(body) {
+    let latin = declared(body).is_some_and(|name| is_latin(&name));
+    if bom > 0 || (!latin && is_damaged_utf8(body)) {
         decode_damaged_utf8(body, bom, bytes.len())
     } else {
         decode_windows_1252(body)
     }
+}
+
+/// The encoding that an XML declaration names, in lower case.
+pub fn declared(bytes: &[u8]) -> Option<String> {
+    let head = &bytes[..bytes.len().min(200)];
+    let head = head.strip_prefix(b"<?xml")?;
+    let head = String::from_utf8_lossy(&head[..head.windows(2).position(|w| w == b"?>")?]).to_lowercase();
+    let value = head.split_once("encoding")?.1.trim_start().strip_prefix('=')?.trim_start();
+    let quote = value.chars().next().filter(|c| matches!(c, '"' | '\''))?;
+    value[1..].split_once(quote).map(|(name, _)| name.to_owned())
+}
+
+/// Names of Windows-1252 and of the encodings that it contains (WHATWG Encoding Standard, section 4.2).
+pub fn is_latin(name: &str) -> bool {
+    encoding_rs::Encoding::for_label(name.as_bytes()) == Some(encoding_rs::WINDOWS_1252)
 }
 
 fn is_damaged_utf8(bytes: &[u8]) -> bool {
@@ -128,11 +152,13 @@ fn decode_windows_1252(bytes: &[u8]) -> Decoded {
     Decoded { text, encoding: EncodingName::Windows1252, bom: 0, replaced: 0, size: bytes.len(), checkpoints }
 }
 
-fn decode_utf16(body: &[u8], size: usize, encoding: EncodingName, unit: fn([u8; 2]) -> u16) -> Decoded {
+/// `bom` is how many bytes stand before `body`.
+fn decode_utf16(body: &[u8], bom: usize, encoding: EncodingName, unit: fn([u8; 2]) -> u16) -> Decoded {
+    let size = body.len() + bom;
     let (pairs, rest) = body.as_chunks::<2>();
     let mut text = String::with_capacity(body.len());
-    let mut checkpoints = vec![(0, 2)];
-    let (mut at, mut replaced) = (2, 0);
+    let mut checkpoints = vec![(0, bom)];
+    let (mut at, mut replaced) = (bom, 0);
     for c in char::decode_utf16(pairs.iter().map(|&p| unit(p))) {
         if text.len() >= checkpoints[checkpoints.len() - 1].0 + STRIDE {
             checkpoints.push((text.len(), at));
@@ -148,7 +174,7 @@ fn decode_utf16(body: &[u8], size: usize, encoding: EncodingName, unit: fn([u8; 
         replaced += 1;
         text.push(char::REPLACEMENT_CHARACTER);
     }
-    Decoded { text, encoding, bom: 2, replaced, size, checkpoints }
+    Decoded { text, encoding, bom, replaced, size, checkpoints }
 }
 
 #[cfg(test)]

@@ -7,7 +7,7 @@ pub mod encoding;
 pub mod lines;
 pub mod pieces;
 
-pub use encoding::{Decoded, EncodingName, decode};
+pub use encoding::{Decoded, EncodingName, declared, decode, is_latin};
 pub use lines::LineIndex;
 pub use pieces::{PieceTable, SourceRange};
 
