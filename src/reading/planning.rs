@@ -661,7 +661,9 @@ impl Reader<'_, '_> {
                 last = i + 1;
             } else if v.any(i, &["hierarchical", "closed", "sequential", "fixed"]) {
                 // An order of tests, not a model or a bottle.
-                let test = (i + 1..i + 4).find(|&j| v.any(j, &["testing", "test", "tests", "gatekeeping", "sequence"]));
+                let from = i + 1 + usize::from(v.sign(i + 1, '-'));
+                let test =
+                    (from..from + 1).find(|&j| v.any(j, &["testing", "test", "tests", "gatekeeping", "sequence"]));
                 let Some(test) = test.filter(|&t| {
                     v.any(
                         t + 1,

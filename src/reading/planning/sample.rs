@@ -35,7 +35,7 @@ const COMPUTED: &[&str] = &[
     "selected",
     "powered",
 ];
-const ASSUMES: &[&str] = &["detect", "assuming", "assumption", "assumptions", "power", "hypothesis", "difference"];
+const ASSUMES: &[&str] = &["detect", "assuming", "assumption", "assumptions", "hypothesis", "difference"];
 const AIMS: &[&str] = &[
     "aimed", "aim", "planned", "plan", "intended", "intend", "target", "goal", "aiming", "sought", "decided",
     "targeted",
@@ -195,7 +195,7 @@ impl Reader<'_, '_> {
             if !v.any(i, AIMS) {
                 continue;
             }
-            let verb = (i + 1..(i + 6).min(v.len())).find(|&j| v.any(j, TAKES_IN));
+            let verb = (i + 1..(i + 6).min(v.len())).find(|&j| v.any(j, TAKES_IN) || j == i + 1 && v.any(j, &["of"]));
             let number = verb.and_then(|w| {
                 (w + 1..(w + 8).min(v.len()))
                     .take_while(|&j| !v.signs(j, &[';', ',', '(']))
@@ -246,7 +246,7 @@ impl Reader<'_, '_> {
         let other = v.any(before, &["of"]) && v.any(j.wrapping_sub(2), &["power", "difference", "sd", "alpha"]);
         let year = (1990..2040).contains(&n) && !self.people_after(j)
             || (1900..2100).contains(&n) && v.any(before, &["in", "since", "until", "from"]);
-        let plain = v.style(j) == Style::Plain && !v.signs(before, &['[', '±', '/']);
+        let plain = v.style(j) == Style::Plain && !v.signs(before, &['[', '±', '/', '<', '>']);
         (4..1_000_000).contains(&n) && plain && !(span || measure || other || year)
     }
 
