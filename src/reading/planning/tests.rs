@@ -106,7 +106,7 @@ fn other_ways_to_print_a_plan() {
         ("All tests were considered significant at the 5% level.", Alpha, Some(0.05)),
         ("Gains were detectable at the 95% significance level.", Alpha, Some(0.05)),
         ("Gains were detectable with a two-sided significance of 5%.", Alpha, Some(0.05)),
-        ("Statistical significance was defined as a probability of less than 0.05.", Threshold, Some(0.05)),
+        ("Values below 0.05 were considered statistically significant.", Threshold, Some(0.05)),
         ("Asterisks indicate p < 0.05.", Legend, Some(0.05)),
         ("Means were compared by Fisher's least significant difference.", Multiplicity, None),
         ("Outcomes followed a hierarchical testing procedure.", Multiplicity, None),
