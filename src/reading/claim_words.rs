@@ -240,7 +240,8 @@ pub(super) const WORDS: &[Row] = &[
         &[
             "bonferroni", "holm", "tukey", "tukey's", "scheffe", "scheffe's", "dunnett", "dunnett's", "sidak",
             "hochberg", "benjamini", "fdr", "newman", "multiplicity", "hommel", "duncan", "duncan's", "multiple",
-            "discovery", "dunn", "dunn's", "hsd", "lsd", "familywise",
+            "discovery", "dunn", "dunn's", "hsd", "lsd", "familywise", "scheffé", "šidák", "sidák", "gatekeeping",
+            "hierarchical", "closed", "sequential", "howell", "keuls", "bonferroni's", "holm's",
         ],
         MULTIPLE,
     ),
@@ -265,7 +266,7 @@ pub(super) const WORDS: &[Row] = &[
     ),
     (
         &[
-            "power", "powered", "beta",
+            "power", "powered", "beta", "powers", "chance",
         ],
         Classes::POWER,
     ),
@@ -278,7 +279,8 @@ pub(super) const WORDS: &[Row] = &[
     (
         &[
             "sample", "required", "needed", "necessary", "sufficient", "recruit", "need", "needs", "enrolled",
-            "recruited", "enroll", "enrol",
+            "recruited", "enroll", "enrol", "aimed", "planned", "intended", "target", "require", "requires", "randomise",
+            "randomize", "include",
         ],
         Classes::SAMPLE,
     ),

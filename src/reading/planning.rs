@@ -1,12 +1,13 @@
 //! Planning statements: alpha, power, sides, sample size, thresholds, legends, multiplicity.
 
+mod sample;
 // Word lists are easier to read in full lines.
 #[rustfmt::skip]
 mod words;
 
 use self::words::*;
 use super::claim_words::MULTIPLE;
-use super::lexicon::{self, Classes};
+use super::lexicon::Classes;
 use super::p::PExpression;
 use super::sentence::SentenceView;
 use super::token::Style;
@@ -23,9 +24,10 @@ pub fn read(view: &SentenceView, p: &[PExpression], defines: &mut [bool], out: &
         .iter()
         .enumerate()
         .any(|(i, t)| t.is_word() && t.classes == Classes::NONE && view.any(i, &["α", "β"]));
-    if p.is_empty() && !greek && !union.meets(cues.or(Classes::CONSIDERED)) {
+    if p.is_empty() && !greek && !union.meets(cues.or(Classes::CONSIDERED).or(Classes::SIGNIFICANCE)) {
         return;
     }
+    let error = view.tokens.iter().enumerate().any(|(i, t)| t.is_word() && view.any(i, &["type"]));
     let from = out.len();
     let mut reader = Reader { view, p, defines, out };
     if !p.is_empty() {
@@ -38,17 +40,23 @@ pub fn read(view: &SentenceView, p: &[PExpression], defines: &mut [bool], out: &
     if union.meets(Classes::SIDED) {
         reader.sides();
     }
-    if greek || union.meets(Classes::ALPHA.or(Classes::SE)) {
+    if greek || union.meets(Classes::ALPHA.or(Classes::SE).or(Classes::SIGNIFICANCE)) || error {
         reader.alpha();
     }
     if greek || union.meets(Classes::POWER) {
         reader.power();
     }
-    if union.meets(Classes::SAMPLE) {
+    if union.meets(Classes::CONSIDERED) && union.meets(Classes::SIGNIFICANCE) && reader.out.len() == from {
+        reader.bare_threshold();
+    }
+    if union.meets(Classes::SAMPLE.or(Classes::POWER)) {
         reader.sample_size();
     }
     if union.meets(MULTIPLE) {
         reader.multiplicity();
+    }
+    if union.meets(Classes::SIGNIFICANCE) {
+        reader.least_significant();
     }
     out[from..].sort_by_key(|x| (x.span.start, x.span.end));
 }
@@ -103,6 +111,17 @@ impl Reader<'_, '_> {
             let last = self.until(x.last, self.p.get(n + 1).map(|next| next.first));
             self.add(PlanningKind::Legend, first, last, x.value, None);
         }
+        // "Asterisks indicate p < 0.05", "different letters differ at P < 0.05".
+        for (n, x) in self.p.iter().enumerate() {
+            if self.defines[n] || !customary(x) {
+                continue;
+            }
+            let sign = (x.first.saturating_sub(14)..x.first).find(|&i| v.any(i, SIGN_NAMES));
+            if let Some(first) = sign.filter(|&w| (w + 1..x.first).any(|i| v.any(i, SIGN_VERBS))) {
+                self.defines[n] = true;
+                self.add(PlanningKind::Legend, first, x.last, x.value, None);
+            }
+        }
         // "*Significantly different from controls (p < 0.05)": the mark opens the sentence. The mark may be lost:
         // "Statistically significant (p < 0.05)." has no subject that could be a result.
         let bare = v.len() < 12
@@ -113,9 +132,9 @@ impl Reader<'_, '_> {
             && self.p.len() == 1
             && !self.defines[0]
             && customary(&self.p[0])
-            && (0..6).any(|i| {
+            && (0..8).any(|i| {
                 v.is(i, Classes::SIGNIFICANCE.or(Classes::DIFFERENCE))
-                    || v.any(i, &["vs", "different", "versus", "compared"])
+                    || v.any(i, &["vs", "different", "versus", "compared", "higher", "lower", "than", "from"])
             })
         {
             self.defines[0] = true;
@@ -183,8 +202,14 @@ impl Reader<'_, '_> {
         let in_bracket = first > 0 && v.signs(first - 1, &['(', '[']);
         // p as the subject: "P < 0.05 was considered significant", "P values < 0.05 indicated significance".
         let after = last + 1..(last + 16).min(v.len());
-        let closed =
-            after.clone().find(|&i| v.signs(i, &[';', ')', ']']) || v.any(i, &["but", "whereas"])).unwrap_or(after.end);
+        let closed = after
+            .clone()
+            .find(|&i| {
+                v.signs(i, &[';'])
+                    || v.signs(i, &[')', ']']) && !(last + 1..i).any(|j| v.signs(j, &['(', '[']))
+                    || v.any(i, &["but", "whereas"])
+            })
+            .unwrap_or(after.end);
         let subject = !in_bracket && {
             let verb = (last + 1..closed.min(last + 12)).find(|&i| v.any(i, DECLARES) || v.any(i, STANDS_FOR));
             verb.is_some_and(|w| {
@@ -201,7 +226,7 @@ impl Reader<'_, '_> {
         let declared = (before..first).rev().find(|&i| v.any(i, DECLARES));
         // "significance was set at P < 0.05", "considered significant if p < 0.05", "threshold at P < 0.01".
         if let Some(w) = declared {
-            let near = first - w <= 9;
+            let near = first - w <= 12;
             let said = (0..first).any(significance) || v.any(w, &["threshold", "cutoff"]);
             let linked = (w + 1..first).all(|i| {
                 significance(i)
@@ -242,7 +267,18 @@ impl Reader<'_, '_> {
             && (first.saturating_sub(6)..first).any(|i| v.any(i, &["significance"]))
             && !exact;
         let threshold = (first.saturating_sub(3)..first).any(|i| v.any(i, &["threshold", "cutoff"]));
-        colon || level || condition || as_level || equated || threshold
+        // "p < 0.05 for statistical significance", "hypotheses were tested at p < 0.05".
+        let purpose = !in_bracket
+            && !exact
+            && v.any(last + 1, &["for", "as"])
+            && (last + 2..last + 5).any(|i| v.any(i, &["significance"]));
+        let tested = !in_bracket
+            && !exact
+            && (first.saturating_sub(4)..first).any(|i| {
+                v.any(i, &["tested", "performed", "conducted", "evaluated"])
+                    && (i + 1..first).all(|j| v.any(j, &["at", "using", "with", "a", "the", "level", "of"]))
+            });
+        purpose || tested || colon || level || condition || as_level || equated || threshold
     }
 
     /// From the subject to the end of the definition.
@@ -279,6 +315,40 @@ impl Reader<'_, '_> {
             }
         }
         (first, last)
+    }
+
+    /// "a probability below 0.05 was considered significant": the limit without a p.
+    fn bare_threshold(&mut self) {
+        let v = self.view;
+        for j in 1..v.len() {
+            let Some((x, end)) = self.share(j).filter(|x| limit(x.0)) else { continue };
+            let below = v.signs(j - 1, &['<', '≤']) || v.any(j - 1, &["than", "below", "under", "at"]);
+            if !below || self.taken(j) || self.p.iter().any(|p| p.first <= j && j <= p.last) {
+                continue;
+            }
+            let behind = (j.saturating_sub(10)..j).find(|&w| v.any(w, DECLARES) && !v.any(w, &["by", "used", "level"]));
+            let behind = behind.filter(|&w| {
+                (w.saturating_sub(5)..j).any(|i| v.is(i, Classes::SIGNIFICANCE))
+                    && (w + 1..j).all(|i| {
+                        !v.tokens[i].is_word()
+                            || v.is(i, Classes::SIGNIFICANCE.or(Classes::P))
+                            || v.any(i, THRESHOLD_LINKS)
+                    })
+            });
+            let ahead = (end..(end + 4).min(v.len()))
+                .find(|&w| v.any(w, DECLARES))
+                .and_then(|w| (w + 1..(w + 6).min(v.len())).rev().find(|&i| v.is(i, Classes::SIGNIFICANCE)));
+            if let Some(w) = behind {
+                let noun = (w.saturating_sub(5)..w).find(|&i| v.is(i, Classes::SIGNIFICANCE)).unwrap_or(w);
+                self.add(PlanningKind::Threshold, noun, end - 1, Some(x), None);
+                return;
+            }
+            if let Some(last) = ahead {
+                let noun = (j.saturating_sub(5)..j).find(|&i| v.any(i, &["probability", "values", "value", "level"]));
+                self.add(PlanningKind::Threshold, noun.unwrap_or(j - 1), last, Some(x), None);
+                return;
+            }
+        }
     }
 
     /// "considered significant if the 95 % CI did not contain 0": a threshold without p.
@@ -358,7 +428,7 @@ impl Reader<'_, '_> {
             if let Some(x) = self.share(j) {
                 return Some(x);
             }
-            let skip = v.signs(j, &['=', '(', ':', ')', '-', '<', '≤', ',', '[', ']', '~'])
+            let skip = v.signs(j, &['=', '(', ':', ')', '-', '<', '≤', ',', '[', ']', '~', '\''])
                 || v.is(j, Classes::P.or(Classes::SIDED).or(Classes::NUMBER_WORD))
                 || v.any(j, ALPHA_LINKS)
                 || v.number(j).is_some_and(|x| x.count().is_some_and(|n| n <= 2));
@@ -380,15 +450,23 @@ impl Reader<'_, '_> {
         let mut i = 0;
         while i < v.len() {
             let named = v.any(i, &["alpha", "α"]) && !v.sign(i.wrapping_sub(1), '(') || v.any(i, &["alpha", "α"]);
+            let one = i + 1 + usize::from(v.sign(i + 1, '-'));
+            let error = one + 1 + usize::from(v.sign(one + 1, '-'));
             let type_one = v.any(i, &["type"])
-                && (v.any(i + 1, &["i", "one"]) || v.number(i + 1).and_then(Printed::count) == Some(1))
-                && v.any(i + 2, &["error", "errors"]);
+                && (v.any(one, &["i", "one"]) || v.number(one).and_then(Printed::count) == Some(1))
+                && v.any(error, &["error", "errors"]);
+            let bare = v.any(i, &["significance"]) && self.states_significance(i)
+                || v.any(i, &["error"]) && v.any(i + 1, &["probability"]);
+            // "significant at the 5 % level".
+            let at_level = v.any(i, &["level", "levels"])
+                && (v.sign(i.wrapping_sub(1), '%') || v.is(i.wrapping_sub(1), Classes::PERCENT))
+                && (0..v.len()).any(|j| v.is(j, Classes::SIGNIFICANCE) || v.any(j, &["test", "tests", "tested"]));
             let level = v.any(i, &["significance"]) && v.any(i + 1, &["level", "levels", "threshold"])
                 || v.any(i, &["level"])
                     && v.any(i + 1, &["of"])
                     && (v.any(i + 2, &["significance"])
                         || v.any(i + 2, &["statistical"]) && v.any(i + 3, &["significance"]));
-            if !(named || type_one || level)
+            if !(named || type_one || level || bare || at_level)
                 || named
                     && v.any(i.wrapping_sub(1), &["cronbach", "cronbach's", "interferon", "cronbachs", "coefficient"])
             {
@@ -397,12 +475,17 @@ impl Reader<'_, '_> {
             }
             let start = if named {
                 i + 1
-            } else if type_one || v.any(i, &["level"]) {
+            } else if type_one {
+                error + 1
+            } else if bare || at_level {
+                i + 1
+            } else if v.any(i, &["level"]) {
                 i + 3
             } else {
                 i + 2
             };
             let ahead = self.share_after(start, 10).filter(|x| x.0.value() <= 0.2 && x.0.value() > 0.0);
+            let ahead = ahead.filter(|x| !at_level && (named || type_one || level || limit(x.0)));
             // "0.05 level of significance", "5 % significance level", "0.05 alpha".
             let behind = (i.saturating_sub(6)..i).rev().find_map(|j| {
                 let (x, end) = self.share(j)?;
@@ -411,7 +494,9 @@ impl Reader<'_, '_> {
                         || v.is(h, Classes::SIDED.or(Classes::NUMBER_WORD))
                         || v.any(h, &["level", "statistical", "alpha", "of", "two", "one", "a", "probability", "of"])
                 });
-                (linked && x.value() <= 0.2 && x.value() > 0.0).then_some((x, j))
+                // "the 95 % significance level" means 5 %.
+                let x = if x.value() >= 0.9 && x.value() < 1.0 && !named { complement(x)? } else { x };
+                (linked && x.value() <= 0.2 && x.value() > 0.0 && (!at_level || limit(x))).then_some((x, j))
             });
             let cronbach =
                 (i.saturating_sub(4)..i).any(|j| v.any(j, &["cronbach", "cronbach's", "consistency", "reliability"]));
@@ -424,6 +509,10 @@ impl Reader<'_, '_> {
                     i
                 } else if v.any(i, &["level"]) && v.any(i + 2, &["significance"]) {
                     i + 2
+                } else if type_one {
+                    error
+                } else if bare || at_level {
+                    i
                 } else {
                     (i + 1).min(v.len() - 1)
                 };
@@ -442,11 +531,21 @@ impl Reader<'_, '_> {
         }
     }
 
+    /// "significance of 5 %", "significance was set at 0.05", "5 % significance".
+    fn states_significance(&self, i: usize) -> bool {
+        let v = self.view;
+        let verb = |j: usize| v.any(j, &["of", "set", "at", "defined", "accepted", "fixed", "assumed"]);
+        verb(i + 1) && !(v.any(i + 1, &["of"]) && v.is(i + 2, Classes::P))
+            || v.any(i + 1, &["was", "is", "will", "being"]) && (i + 2..i + 4).any(verb)
+            || v.sign(i.wrapping_sub(1), '%')
+    }
+
     fn power(&mut self) {
         let v = self.view;
         let mut i = 0;
         while i < v.len() {
-            let power = v.any(i, &["power"]) && !v.any(i + 1, &["output", "doppler", "spectrum", "spectral"]);
+            let power = v.any(i, &["power", "powers", "powered"])
+                && !v.any(i + 1, &["output", "doppler", "spectrum", "spectral"]);
             let beta = v.any(i, &["beta", "β"]) && !v.sign(i.wrapping_sub(1), '-') && !(v.sign(i + 1, '-'));
             let type_two = v.any(i, &["type"]) && v.any(i + 1, &["ii", "two"]) && v.any(i + 2, &["error", "errors"]);
             if power {
@@ -460,7 +559,7 @@ impl Reader<'_, '_> {
                     } else {
                         j + 1
                     };
-                    let linked = (end..i).all(|h| v.any(h, &["statistical"]) || v.sign(h, '-'));
+                    let linked = (end..i).all(|h| v.any(h, &["statistical", "study", "a", "of"]) || v.sign(h, '-'));
                     (linked && plausible_power(x, percent)).then_some((x, j))
                 });
                 if let Some((x, first)) = behind {
@@ -498,6 +597,15 @@ impl Reader<'_, '_> {
                     }
                     j += 1;
                 }
+            } else if v.any(i, &["chance", "probability"])
+                && v.any(i + 1, &["of", "to"])
+                && (i + 2..i + 4).any(|j| v.any(j, &["detecting", "detect", "finding", "demonstrating"]))
+                && v.sign(i.wrapping_sub(1), '%')
+            {
+                // "a 90 % chance of detecting".
+                if let Some(x) = i.checked_sub(2).and_then(|j| v.number(j)).filter(|&x| plausible_power(x, true)) {
+                    self.add(PlanningKind::Power, i - 2, i, Some(x), None);
+                }
             } else if beta || type_two {
                 let at = if beta { i + 1 } else { i + 3 };
                 let planned = type_two || (0..v.len()).any(|j| v.any(j, &["alpha", "α", "power", "sample"]));
@@ -518,123 +626,6 @@ impl Reader<'_, '_> {
         }
     }
 
-    /// "a sample size of 320", "17 volunteers per group were needed to detect …".
-    fn sample_size(&mut self) {
-        let v = self.view;
-        let planning_words = || (0..v.len()).any(|i| v.any(i, CALCULATES));
-        for i in 0..v.len() {
-            let size = v.any(i, &["sample"])
-                && (v.any(i + 1, &["size", "sizes"]) || v.sign(i + 1, '-') && v.any(i + 2, &["size"]));
-            if size {
-                // A number close behind: "sample size of 320 subjects", "sample size was calculated to be 60".
-                let number = (i + 2..(i + 14).min(v.len()))
-                    .take_while(|&j| !v.signs(j, &[';', '.']))
-                    .find(|&j| self.headcount(j));
-                let Some(number) = number else {
-                    let achieved =
-                        (i + 2..(i + 6).min(v.len())).find(|&j| v.any(j, &["achieved", "reached", "obtained"]));
-                    if let Some(last) = achieved {
-                        let first = (i.saturating_sub(2)..i)
-                            .find(|&j| v.any(j, &["our", "planned", "the", "required", "target"]))
-                            .unwrap_or(i);
-                        self.add(PlanningKind::SampleSize, first, last, None, None);
-                        return;
-                    }
-                    continue;
-                };
-                let mut last = number;
-                while last + 1 < v.len()
-                    && last < number + 4
-                    && v.tokens[last + 1].is_word()
-                    && !v.any(last + 1, &["and", "to", "with", "was", "were", "in", "at", "would", "for", "as"])
-                {
-                    last += 1;
-                }
-                let first = if i > 0 && v.any(i - 1, &["a", "the", "total", "required"]) { i - 1 } else { i };
-                let value = self.count(number);
-                self.add(PlanningKind::SampleSize, first, last, value, None);
-                return;
-            }
-        }
-        // "N … were needed": the clause with its assumption.
-        if !planning_words() {
-            return;
-        }
-        for w in 0..v.len() {
-            let needed = v.any(w, NEEDED)
-                || v.any(w, &["randomised", "randomized", "included", "enrolled", "recruited"])
-                    && v.any(w.wrapping_sub(1), &["be"])
-                    && (w.saturating_sub(4)..w)
-                        .any(|j| v.any(j, &["need", "needed", "had", "will", "required", "needs"]));
-            if !needed {
-                continue;
-            }
-            let behind = (w.saturating_sub(16)..w).rev().find(|&j| self.headcount(j) && self.people_after(j));
-            let ahead = (w + 1..(w + 9).min(v.len())).find(|&j| self.headcount(j) && self.people_after(j));
-            let active = v.any(w, &["recruit", "enroll", "enrol", "require", "need", "needs"]);
-            let Some(number) = (if active { ahead.or(behind) } else { behind.or(ahead) }) else { continue };
-            let (mut first, mut last) = (number.min(w), number.max(w));
-            if v.any(w, &["recruit", "enroll", "enrol", "require"]) && ahead.is_none() {
-                continue;
-            }
-            if first > 1 && v.any(first - 1, &["least"]) && v.any(first - 2, &["at"]) {
-                first -= 2;
-            } else if first > 0 && v.any(first - 1, &["approximately", "about"]) {
-                first -= 1;
-            }
-            // With its assumption: "to detect a 30 % difference between treatments".
-            if v.any(last + 1, &["to"])
-                && v.any(last + 2, &["detect", "show", "demonstrate", "find", "achieve", "provide", "obtain"])
-            {
-                last = (last + 2..(last + 14).min(v.len()))
-                    .take_while(|&j| !v.signs(j, &[',', ';', '.', '(']) && !v.any(j, &["with", "at"]))
-                    .last()
-                    .unwrap_or(last);
-            } else if number > w {
-                while last + 1 < v.len()
-                    && last < number + 6
-                    && v.tokens[last + 1].is_word()
-                    && !v.any(last + 1, &["and", "to", "with", "was", "were", "at"])
-                {
-                    last += 1;
-                }
-            }
-            if let Some(assuming) = (first.saturating_sub(40)..first).find(|&j| v.any(j, &["assuming"])) {
-                first = assuming;
-            }
-            self.add(PlanningKind::SampleSize, first, last, self.count(number), None);
-            return;
-        }
-    }
-
-    /// A whole number that may count people, not a percent, year or measure.
-    fn headcount(&self, j: usize) -> bool {
-        let v = self.view;
-        let Some(n) = v.number(j).and_then(Printed::count) else {
-            return v.is(j, Classes::NUMBER_WORD) && lexicon::number_word(v.word(j)).is_some_and(|n| n > 5);
-        };
-        let span = v.sign(j + 1, '-') && v.any(j + 2, &["sided", "tailed", "week", "month", "day", "year"]);
-        let measure = v.signs(j + 1, &['%', '/', '.'])
-            || v.is(j + 1, Classes::PERCENT.or(Classes::UNIT))
-            || v.any(j + 1, MEASURES);
-        let before = j.wrapping_sub(1);
-        let other = v.any(before, &["of"]) && v.any(j.wrapping_sub(2), &["power", "difference", "sd", "alpha"]);
-        let year = (1990..2040).contains(&n) && !self.people_after(j)
-            || (1900..2100).contains(&n) && v.any(before, &["in", "since", "until", "from"]);
-        let plain = v.style(j) == Style::Plain && !v.signs(before, &['[', '±', '/']);
-        (4..1_000_000).contains(&n) && plain && !(span || measure || other || year)
-    }
-
-    /// The count in digits or in one word.
-    fn count(&self, j: usize) -> Option<Printed> {
-        self.view.number(j).or_else(|| lexicon::number_word(self.view.word(j)).map(Printed::whole))
-    }
-
-    fn people_after(&self, j: usize) -> bool {
-        let v = self.view;
-        (j + 1..(j + 6).min(v.len())).any(|h| v.is(h, Classes::GROUP) || v.any(h, PEOPLE))
-    }
-
     /// "Bonferroni correction", "Tukey post hoc tests", "adjusted for multiple comparisons".
     fn multiplicity(&mut self) {
         let v = self.view;
@@ -652,7 +643,7 @@ impl Reader<'_, '_> {
             if multiple {
                 let about = v.any(i, &["multiplicity"])
                     || v.any(i + 1, &["comparisons", "comparison", "testing", "tests", "hypotheses", "hypothesis"]);
-                let adjust = (i.saturating_sub(5)..i).find(|&j| v.any(j, ADJUSTS));
+                let adjust = (i.saturating_sub(7)..i).find(|&j| v.any(j, ADJUSTS));
                 let after =
                     (i + 1..(i + 5).min(v.len())).find(|&j| v.any(j, ADJUSTS) || v.any(j, &["procedure", "test"]));
                 if !about || adjust.is_none() && after.is_none() {
@@ -668,6 +659,27 @@ impl Reader<'_, '_> {
                 }
                 first = i - 1;
                 last = i + 1;
+            } else if v.any(i, &["hierarchical", "closed", "sequential", "fixed"]) {
+                // An order of tests, not a model or a bottle.
+                let from = i + 1 + usize::from(v.sign(i + 1, '-'));
+                let test =
+                    (from..from + 1).find(|&j| v.any(j, &["testing", "test", "tests", "gatekeeping", "sequence"]));
+                let Some(test) = test.filter(|&t| {
+                    v.any(
+                        t + 1,
+                        &["procedure", "strategy", "sequence", "approach", "procedures", "principle", "scheme"],
+                    ) || v.any(t, &["testing", "gatekeeping"])
+                }) else {
+                    i += 1;
+                    continue;
+                };
+                let procedure = &["procedure", "strategy", "sequence", "approach", "procedures", "principle", "scheme"];
+                last = if v.any(test + 1, procedure) { test + 1 } else { test };
+            } else if v.any(i, &["lsd"])
+                && capitals(i)
+                && (0..v.len()).any(|j| v.any(j, &["anova", "post", "means", "comparisons", "difference"]))
+            {
+                // "separated by LSD".
             } else if v.any(i, &["fdr", "hsd", "lsd"]) && !capitals(i)
                 || v.any(i, &["newman", "multiple", "dunn", "duncan", "holm", "hommel", "dunn's", "lsd"])
                     && !(i + 1..i + 7).any(|j| v.any(j, TEST_WORDS) || v.is(j, MULTIPLE))
@@ -694,11 +706,23 @@ impl Reader<'_, '_> {
             i = last + 1;
         }
     }
-}
 
-/// Words that say how many it takes.
-const NEEDED: &[&str] =
-    &["required", "needed", "necessary", "sufficient", "require", "recruit", "enroll", "enrol", "need", "needs"];
+    /// "Fisher's least significant difference".
+    fn least_significant(&mut self) {
+        let v = self.view;
+        for i in 0..v.len() {
+            if v.any(i, &["least"])
+                && v.any(i + 1, &["significant", "significance"])
+                && v.any(i + 2, &["difference", "differences"])
+                && !self.out.iter().rev().take(4).any(|o| {
+                    o.sentence == v.id && o.what == PlanningKind::Multiplicity && o.span.end >= v.span(i, i + 2).start
+                })
+            {
+                self.add(PlanningKind::Multiplicity, i, i + 2, None, None);
+            }
+        }
+    }
+}
 
 /// A letter that marks figures: `a`, `b`; `p` itself is none.
 fn is_mark_letter(v: &SentenceView, i: usize) -> bool {
@@ -719,7 +743,15 @@ fn opens(v: &SentenceView, mark: usize) -> bool {
     while i > 0 && v.signs(i - 1, MARKS) {
         i -= 1;
     }
-    i == 0 || v.signs(i - 1, &[',', ';', '.', ':', ')']) || v.spaced(i) && !v.spaced(i + 1) && v.number(i - 1).is_none()
+    i == 0
+        || v.signs(i - 1, &[',', ';', '.', ':', ')', '(', '['])
+        || v.spaced(i) && !v.spaced(i + 1) && v.number(i - 1).is_none()
+}
+
+/// One of the limits that levels of significance are set at.
+fn limit(x: Printed) -> bool {
+    const LIMITS: [f64; 9] = [0.1, 0.05, 0.025, 0.02, 0.01, 0.005, 0.0125, 0.001, 0.0001];
+    LIMITS.iter().any(|l| (l - x.value()).abs() < 1e-9)
 }
 
 fn plausible_power(x: Printed, percent: bool) -> bool {

@@ -90,3 +90,35 @@ fn legends_and_corrections() {
     let (found, _) = planning("No correction for multiple comparisons was made.");
     assert_eq!(found.len(), 1);
 }
+
+#[test]
+fn other_ways_to_print_a_plan() {
+    use PlanningKind::{Alpha, Legend, Multiplicity, Power, SampleSize, Threshold};
+    for (text, kind, value) in [
+        ("We aimed to recruit 120 hives.", SampleSize, Some(120.0)),
+        ("A total of 60 hives would give enough power to detect a gain of 4 kg.", SampleSize, Some(60.0)),
+        ("A sample size of 48 per group was required.", SampleSize, Some(48.0)),
+        ("The design required a sample size of 24.", SampleSize, Some(24.0)),
+        ("The sample size was calculated to detect a gain of 4 kg.", SampleSize, None),
+        ("The trial had a statistical power higher than 90%.", Power, Some(90.0)),
+        ("There was a 90% chance of detecting a gain of 4 kg.", Power, Some(90.0)),
+        ("Hives were compared with a type 1 error threshold of 0.05.", Alpha, Some(0.05)),
+        ("All tests were considered significant at the 5% level.", Alpha, Some(0.05)),
+        ("Gains were detectable at the 95% significance level.", Alpha, Some(0.05)),
+        ("Gains were detectable with a two-sided significance of 5%.", Alpha, Some(0.05)),
+        ("Values below 0.05 were considered statistically significant.", Threshold, Some(0.05)),
+        ("Asterisks indicate p < 0.05.", Legend, Some(0.05)),
+        ("Means were compared by Fisher's least significant difference.", Multiplicity, None),
+        ("Outcomes followed a hierarchical testing procedure.", Multiplicity, None),
+    ] {
+        let (found, _) = planning(text);
+        assert!(found.iter().any(|x| x.0 == kind && x.2 == value), "{text}: {found:?}");
+    }
+    for text in [
+        "Our sample size was very small (12 hives).",
+        "A hierarchical linear model was fitted.",
+        "Lambs reached 5% of the significance of their dams.",
+    ] {
+        assert!(planning(text).0.is_empty(), "{text}: {:?}", planning(text).0);
+    }
+}
