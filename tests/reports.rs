@@ -67,9 +67,24 @@ fn leaves_on_one_line(json: &str) -> String {
             other => *out += &format!("{name} {other}\n"),
         }
     }
+    let mut value = serde_json::from_str(json).expect("the report is JSON");
+    to_ten_digits(&mut value);
     let mut out = String::new();
-    write("", &serde_json::from_str(json).expect("the report is JSON"), &mut out);
+    write("", &value, &mut out);
     out
+}
+
+/// The last digits of a double may change with the mathematical library of the machine.
+fn to_ten_digits(value: &mut serde_json::Value) {
+    match value {
+        serde_json::Value::Array(items) => items.iter_mut().for_each(to_ten_digits),
+        serde_json::Value::Object(fields) => fields.values_mut().for_each(to_ten_digits),
+        serde_json::Value::Number(n) if n.is_f64() => {
+            let rounded: f64 = format!("{:.9e}", n.as_f64().unwrap_or(0.0)).parse().expect("a number");
+            *value = serde_json::json!(rounded);
+        }
+        _ => {}
+    }
 }
 
 const MADE_UP: &str = "# Results\n\n## Sleep\n\nNights were longer with the footbath (mean difference 3.1, 95 % CI \
