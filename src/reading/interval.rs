@@ -80,9 +80,13 @@ fn emit(
     taken: &mut [bool],
     out: &mut Vec<IntervalReading>,
 ) {
-    taken[first..=pair.last].fill(true);
+    // A bracket that opens within the quote closes within it.
+    let opened = (first..pair.first).filter(|&k| view.signs(k, &['(', '['])).count();
+    let closed = (first..pair.first).filter(|&k| view.signs(k, &[')', ']'])).count();
+    let last = pair.last + usize::from(opened > closed && view.signs(pair.last + 1, &[')', ']']));
+    taken[first..=last].fill(true);
     out.push(IntervalReading {
-        span: view.span(first, pair.last),
+        span: view.span(first, last),
         sentence: view.id,
         level,
         lower: pair.lower,
