@@ -37,7 +37,7 @@ pub fn read(view: &SentenceView, taken: &mut [bool], out: &mut Vec<IntervalReadi
             continue;
         };
         let Anchor { level, credible, last, first } = anchor;
-        let mut at = skip_words(view, last + 1);
+        let at = skip_words(view, last + 1);
         if let Some(pair) = pair(view, at) {
             let estimate = estimate_before(view, first);
             emit(view, pair, first, level, credible, estimate, taken, out);
@@ -60,11 +60,8 @@ pub fn read(view: &SentenceView, taken: &mut [bool], out: &mut Vec<IntervalReadi
             continue;
         }
         declared = Some((level, credible));
-        // `95% CI: 1.2 (0.8–1.9)`
-        if view.signs(at, &[')', ']', ':', '=', ',']) {
-            at += 1;
-        }
-        i = (last + 1).max(at.min(last + 1));
+        // `95% CI: 1.2 (0.8–1.9)`: the limits follow a figure
+        i = last + 1;
     }
     declared.and_then(|(level, _)| level)
 }
@@ -258,10 +255,7 @@ fn pair(view: &SentenceView, at: usize) -> Option<Pair> {
         }
     };
     unit(&mut next, &mut percent);
-    let mut separator = next;
-    let TokenSeparator { next: after } = separates(view, separator)?;
-    separator = after;
-    let (b, mut end) = view.signed(separator)?;
+    let (b, mut end) = view.signed(after_separator(view, next)?)?;
     if view.sign(end, '%') {
         percent = true;
         end += 1;
@@ -270,21 +264,15 @@ fn pair(view: &SentenceView, at: usize) -> Option<Pair> {
     Some(Pair { lower, upper, percent, reversed, first: at, last: end - 1 })
 }
 
-struct TokenSeparator {
-    next: usize,
-}
-
-fn separates(view: &SentenceView, at: usize) -> Option<TokenSeparator> {
+/// The token after what separates two limits.
+fn after_separator(view: &SentenceView, at: usize) -> Option<usize> {
     if view.signs(at, &['-', ',', ';', ':', '/', '÷', '~']) || view.any(at, &["to", "through", "and"]) {
         // `, to`, `; to`
         let next = if view.signs(at, &[',', ';']) && view.any(at + 1, &["to", "and"]) { at + 2 } else { at + 1 };
-        return Some(TokenSeparator { next });
+        return Some(next);
     }
     // `..` and `…`
-    if view.sign(at, '…') {
-        return Some(TokenSeparator { next: at + 1 });
-    }
-    None
+    view.sign(at, '…').then_some(at + 1)
 }
 
 /// `1.2 (0.8–1.9)`: a number with a bracketed pair around it, starting at the number.

@@ -430,15 +430,7 @@ fn read_sentence(
         if defines {
             continue;
         }
-        readings.p.push(PValue {
-            span: view.span(x.first, x.last),
-            sentence: view.id,
-            relation: x.relation,
-            value: x.value,
-            role: x.role,
-            corrected: x.corrected,
-            shared: x.shared,
-        });
+        readings.p.push(x.reading(view));
     }
     let first_interval = readings.intervals.len();
     named.level = interval::read(view, &mut taken, &mut readings.intervals).or(named.level);

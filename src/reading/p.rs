@@ -4,7 +4,7 @@
 use super::lexicon::Classes;
 use super::sentence::SentenceView;
 use super::token::{Style, TokenKind};
-use super::{Relation, Role};
+use super::{PValue, Relation, Role};
 use crate::printed::Printed;
 
 /// A printed p with its relation, before it is known whether it reports a result or defines a threshold.
@@ -18,6 +18,21 @@ pub struct PExpression {
     pub role: Role,
     pub corrected: bool,
     pub shared: bool,
+}
+
+impl PExpression {
+    /// As a reading: it reports a result.
+    pub fn reading(&self, view: &SentenceView) -> PValue {
+        PValue {
+            span: view.span(self.first, self.last),
+            sentence: view.id,
+            relation: self.relation,
+            value: self.value,
+            role: self.role,
+            corrected: self.corrected,
+            shared: self.shared,
+        }
+    }
 }
 
 /// What stands between the letter P and its relation.
@@ -195,7 +210,7 @@ fn after_letter(
         found.push(expression(first, end, Relation::AtLeast, Some(value), q));
         return Some(end + 1);
     }
-    if view.any(first_word_after(view, first, q), &["between", "from"])
+    if view.any(first_word_after(view, first), &["between", "from"])
         && (view.is(separator, Classes::AND) || view.eq(separator, "to"))
         && let Some((_, end)) = self::value(view, separator + 1)
     {
@@ -207,7 +222,7 @@ fn after_letter(
 }
 
 /// The word right after the letter and its "value": for "p-values between 0.1 and 0.8".
-fn first_word_after(view: &SentenceView, first: usize, _q: Qualifiers) -> usize {
+fn first_word_after(view: &SentenceView, first: usize) -> usize {
     (first + 1..(first + 6).min(view.len())).find(|&k| view.any(k, &["between", "from"])).unwrap_or(view.len())
 }
 

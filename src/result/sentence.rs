@@ -173,7 +173,7 @@ fn results_of(view: &SentenceView, s: &Segment, readings: &Readings, out: &mut V
     let compared = compared_groups(view, s, readings);
     let many = s.intervals.len().max(s.statistics.len());
     if many == 0 {
-        lists_of_groups(view, s, &compared, readings, out);
+        lists_of_groups(s, &compared, readings, out);
     }
     // One result for each interval, with its statistic by order where there are as many.
     for (k, &interval) in s.intervals.iter().enumerate() {
@@ -229,13 +229,7 @@ fn p_for(s: &Segment, k: usize, count: usize, readings: &Readings) -> bool {
 }
 
 /// Results of groups without interval or statistic: a list of p's shares the groups by order.
-fn lists_of_groups(
-    view: &SentenceView,
-    s: &Segment,
-    compared: &[usize],
-    readings: &Readings,
-    out: &mut Vec<ReportedResult>,
-) {
+fn lists_of_groups(s: &Segment, compared: &[usize], readings: &Readings, out: &mut Vec<ReportedResult>) {
     if s.p.is_empty() {
         return;
     }
@@ -257,7 +251,6 @@ fn lists_of_groups(
             result.groups = compared.to_vec();
             result.features.push((Feature::Unclear, readings.p[p].span));
         }
-        let _ = view;
         out.push(result);
     }
 }

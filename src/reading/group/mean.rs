@@ -292,7 +292,7 @@ fn bracketed(
                 return None;
             }
             match (setting.declared.bracket, near_mean(view, i)) {
-                (Some(k), _) if setting.declared.bracket.is_some() && (centre.places > 0 || a.places > 0) => k,
+                (Some(k), _) if centre.places > 0 || a.places > 0 => k,
                 (Some(k), true) => k,
                 (None, true) if a.places > 0 || centre.places > 0 => SpreadKind::Unstated,
                 _ => return None,

@@ -81,17 +81,7 @@ impl<'a> Table<'a> {
             let in_p_column = *role == ColumnRole::P;
             if !in_p_column && row.role != RowRole::P {
                 // `12.4 (3.1), P = 0.03` says itself what it is.
-                for x in p::find(&view) {
-                    out.push(PValue {
-                        span: view.span(x.first, x.last),
-                        sentence: view.id,
-                        relation: x.relation,
-                        value: x.value,
-                        role: x.role,
-                        corrected: x.corrected,
-                        shared: x.shared,
-                    });
-                }
+                out.extend(p::find(&view).iter().map(|x| x.reading(&view)));
                 continue;
             }
             let header = self.layout.columns.get(self.grid.cells[cell].column as usize).and_then(|c| c.header);
