@@ -99,9 +99,51 @@ pub fn read(
             adjusted: n.adjusted,
         });
     }
+    signed_with_error(view, taken, out);
     out[start..].sort_by_key(|e| e.span.start);
     if let Some(n) = names.iter().rev().find(|n| n.scale == Scale::Ratio) {
         named.measure = Some((n.measure, n.scale));
+    }
+}
+
+/// `(−2.72 cm, SE = 1.34; p = 0.04)`: a figure with its sign, its standard error and its p in one bracket. The sign says
+/// that it is a difference or a change, which both are tested by their standard error. Where a neighbour has no p of its
+/// own, the p compares the two.
+fn signed_with_error(view: &SentenceView, taken: &mut [bool], out: &mut Vec<Estimate>) {
+    let mut found = Vec::new();
+    for i in 1..view.len() {
+        if !view.any(i, &["se", "sem"]) || view.style(i) != Style::Plain {
+            continue;
+        }
+        // Back from the error to the figure: over a comma or bracket and a unit.
+        let mut last = i - 1;
+        while last > 0 && i - last < 5 && (view.signs(last, &[',', ';', '(', '%']) || view.get(last).is_some_and(|t| t.is_word()))
+        {
+            last -= 1;
+        }
+        let signed = last > 0 && view.number(last).is_some() && view.signs(last - 1, &['-', '+']);
+        if !signed || taken[last] || !view.signs(last.wrapping_sub(2), &['(', '[', ',', ';']) {
+            continue;
+        }
+        let (Some((value, _)), Some(se)) = (view.signed(last - 1), standard_error(view, i)) else { continue };
+        let own_p = (i + 2..(i + 6).min(view.len())).any(|k| view.is(k, super::lexicon::Classes::P) && !view.signs(k - 1, &[')']));
+        found.push((own_p, last, value, se));
+    }
+    if found.iter().any(|f| !f.0) {
+        return;
+    }
+    for (_, last, value, se) in found {
+        taken[last - 1..=last].fill(true);
+        out.push(Estimate {
+            span: view.span(last - 1, last),
+            sentence: view.id,
+            measure: Measure::MeanDifference,
+            scale: Scale::Difference,
+            value,
+            se: Some(se),
+            percent: view.sign(last + 1, '%'),
+            adjusted: false,
+        });
     }
 }
 
@@ -165,6 +207,11 @@ fn value_after(view: &SentenceView, name: &Name) -> Option<usize> {
                 }
                 return (words <= 2 || verb).then_some(k);
             }
+            // "KT-1000": a hyphen within a name is no sign
+            TokenKind::Sign('-') if k > 0 && !view.spaced(k) && view.get(k - 1).is_some_and(|t| t.is_word()) => {
+                k += 1;
+                words += 1;
+            }
             TokenKind::Sign('-' | '+') if view.number(k + 1).is_some() => {
                 return (words <= 2 || verb || view.sign(k - 1, '=')).then_some(k);
             }
@@ -189,24 +236,8 @@ fn value_after(view: &SentenceView, name: &Name) -> Option<usize> {
                     }
                 } else if view.is(k, super::lexicon::Classes::CI)
                     || view.is(k, super::lexicon::Classes::CONFIDENCE)
-                    || view.any(
-                        k,
-                        &[
-                            "interval",
-                            "intervals",
-                            "with",
-                            "hr",
-                            "or",
-                            "rr",
-                            "irr",
-                            "ci",
-                            "md",
-                            "smd",
-                            "aor",
-                            "ahr",
-                            "arr",
-                        ],
-                    )
+                    || ratio_abbreviation(view.word(k)).is_some()
+                    || view.any(k, &["interval", "intervals", "with", "or", "ci", "md", "smd", "arr"])
                 {
                 } else {
                     words += 1;
@@ -251,6 +282,31 @@ fn names(view: &SentenceView) -> Vec<Name> {
     found
 }
 
+/// `HR`, `ORs`, `aOR`, `AdjOR`, `ORadj`, `cHR`: the measure, and whether it is marked as adjusted. Capitals are kept:
+/// `or` is a conjunction.
+fn ratio_abbreviation(word: &str) -> Option<(Measure, bool)> {
+    let word = word.strip_suffix('s').unwrap_or(word);
+    let measure = |base: &str| match base {
+        "HR" => Some(Measure::HazardRatio),
+        "OR" => Some(Measure::OddsRatio),
+        "RR" => Some(Measure::RiskRatio),
+        "IRR" => Some(Measure::RateRatio),
+        _ => None,
+    };
+    if let Some(m) = measure(word) {
+        return Some((m, false));
+    }
+    let marked = ["Adj", "adj", "ADJ", "a"].iter().find_map(|mark| word.strip_prefix(mark));
+    // A subdistribution or cause-specific hazard ratio comes from a model, with or without covariates.
+    let modelled = ["sd", "s", "cs"].iter().find_map(|mark| word.strip_prefix(mark)).filter(|&base| base == "HR");
+    let capital = word.strip_prefix('A').filter(|&base| base == "OR" || base == "HR");
+    let behind = ["adj", "a"].iter().find_map(|mark| word.strip_suffix(mark));
+    if let Some(m) = [marked, modelled, capital, behind].into_iter().flatten().find_map(measure) {
+        return Some((m, true));
+    }
+    ["c", "u"].iter().find_map(|mark| word.strip_prefix(mark)).and_then(measure).map(|m| (m, false))
+}
+
 fn name(view: &SentenceView, i: usize) -> Option<Name> {
     use Measure::*;
     let token = view.get(i)?;
@@ -267,17 +323,13 @@ fn name(view: &SentenceView, i: usize) -> Option<Name> {
     let hit = |measure: Measure, scale: Scale, last: usize, adjusted: bool| {
         Some(Name { measure, scale, first: i, last, adjusted: adjusted || adjusted_before })
     };
+    if let Some((measure, adjusted)) = ratio_abbreviation(word) {
+        return hit(measure, Scale::Ratio, i, adjusted);
+    }
     // abbreviations, case kept: `or` is a conjunction
     match word {
-        "HR" | "HRs" => return hit(HazardRatio, Scale::Ratio, i, false),
-        "aHR" | "AHR" => return hit(HazardRatio, Scale::Ratio, i, true),
-        "OR" | "ORs" => return hit(OddsRatio, Scale::Ratio, i, false),
-        "aOR" | "AOR" | "aORs" | "AORs" | "ORadj" => return hit(OddsRatio, Scale::Ratio, i, true),
-        "RR" | "RRs" => return hit(RiskRatio, Scale::Ratio, i, false),
-        "aRR" | "ARRs" => return hit(RiskRatio, Scale::Ratio, i, true),
+        "ARRs" => return hit(RiskRatio, Scale::Ratio, i, true),
         "aRRR" | "PR" if view.signs(i + 1, &['=', ':', '(']) => return hit(RiskRatio, Scale::Ratio, i, true),
-        "IRR" | "IRRs" => return hit(RateRatio, Scale::Ratio, i, false),
-        "aIRR" => return hit(RateRatio, Scale::Ratio, i, true),
         "MD" | "WMD" if view.signed(i + 1).is_some() || view.signs(i + 1, &['=', ':', ',']) => {
             return hit(MeanDifference, Scale::Difference, i, false);
         }

@@ -396,12 +396,17 @@ pub(crate) fn inside(case: &Case) -> Option<Recomputation> {
     }
     let unit = e.value.unit().max(lower.unit());
     let distance = if value.lo > whole.hi { value.lo - whole.hi } else { whole.lo - value.hi };
+    let at_limit = inside && at_a_limit(e, lower, upper);
     let slip = (!inside).then(|| inside_slip(e, lower, upper)).flatten();
-    let verdict = match (inside, case.has(crate::result::Feature::Unclear) || distance < unit) {
+    let unclear = case.has(crate::result::Feature::Unclear);
+    let verdict = match (inside && !at_limit, unclear || !inside && distance < unit) {
         (true, _) => Verdict::Tallies,
         (false, true) => Verdict::Undecided,
         (false, false) => Verdict::Differs,
     };
+    // Ten times the figure, away from 0, would have been noticed.
+    let tenfold = value * 10.0;
+    let noticed = !whole.meets(tenfold);
     Some(Recomputation {
         of: Quantity::Interval,
         method: &method::INSIDE,
@@ -409,7 +414,7 @@ pub(crate) fn inside(case: &Case) -> Option<Recomputation> {
         computed: Some(value),
         printed: Some(Range::new(i.lower.value(), i.upper.value())),
         verdict,
-        sharp: verdict == Verdict::Differs,
+        sharp: verdict == Verdict::Differs || verdict == Verdict::Tallies && noticed,
         reason: if reversed {
             Some(reason::REVERSED.into())
         } else if verdict == Verdict::Undecided {
@@ -417,13 +422,30 @@ pub(crate) fn inside(case: &Case) -> Option<Recomputation> {
         } else {
             None
         },
-        working: format!("{} {} {lower} to {upper}", e.value, if inside { "lies within" } else { "lies outside" }),
+        working: match (inside, at_limit) {
+            (true, false) => format!("{} lies within {lower} to {upper}", e.value),
+            (true, true) => format!("{} is itself a limit of {lower} to {upper}", e.value),
+            (false, _) => format!("{} lies outside {lower} to {upper}", e.value),
+        },
         assumptions: Vec::new(),
-        distance: (!inside).then_some(Distance { size: distance / unit, across_alpha: false }),
+        distance: (verdict == Verdict::Differs)
+            .then_some(Distance { size: if at_limit { 1.0 } else { distance / unit }, across_alpha: false }),
         slip,
         figure: i.span,
         inputs: vec![(e.span, "the estimate"), (i.span, "the interval")],
     })
+}
+
+/// Whether a ratio is printed as one of its own limits while the other lies far off: no usual interval of a ratio begins
+/// or ends at its estimate.
+fn at_a_limit(e: &Estimate, lower: Printed, upper: Printed) -> bool {
+    if e.scale != Scale::Ratio || lower.value() <= 0.0 || upper.value() < 1.5 * lower.value() {
+        return false;
+    }
+    // Few digits may put an estimate that lies well inside on its limit.
+    let coarse = |limit: Printed| limit.unit() > 0.05 * limit.value();
+    let same = |limit: Printed| e.value.value() == limit.value() && !coarse(limit);
+    same(lower) || same(upper)
 }
 
 fn inside_slip(e: &Estimate, lower: Printed, upper: Printed) -> Option<Slip> {

@@ -129,7 +129,9 @@ pub fn estimate_outside_interval(facts: &Look) -> Vec<Finding> {
             continue;
         }
         let (estimate, interval) = (wording::one_line(facts.quote(from)), wording::one_line(facts.quote(to)));
-        let says = format!("Printed {estimate} with {interval}, which does not hold {}.", e.value);
+        let at_limit = [i.lower, i.upper].iter().any(|limit| limit.value() == e.value.value());
+        let how = if at_limit { "one of whose limits is also" } else { "which does not hold" };
+        let says = format!("Printed {estimate} with {interval}, {how} {}.", e.value);
         let mut f = about(facts, to, says);
         f.fills = vec![("printed", estimate), ("computed", interval)];
         f.working = Some(r.working.clone());
