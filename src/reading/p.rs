@@ -134,7 +134,7 @@ fn after_letter(
         q = qualified(view, word, q)?;
         at = word + 1;
     }
-    if view.sign(at, '\'') && view.eq(at + 1, "s") {
+    if view.signs(at, &['\'', '’']) && view.eq(at + 1, "s") {
         at += 2;
     }
     // `p_adj`, `p_interaction`

@@ -239,6 +239,10 @@ impl<'a> Scanner<'a> {
 
     fn word_end(&self, start: usize, limit: usize) -> usize {
         let bytes = self.text.as_bytes();
+        // `p's`, `F’s`: the plural of a symbol is the symbol.
+        if bytes[start].is_ascii_alphabetic() && is_plural_of_a_symbol(&self.text[start + 1..limit]) {
+            return start + 1;
+        }
         let mut at = start;
         while at < limit {
             let b = bytes[at];
@@ -502,6 +506,13 @@ pub struct SentenceView<'a> {
     pub block: u32,
     /// Number of the sentence in the scan.
     pub id: u32,
+}
+
+/// Whether text goes on with an apostrophe, an s and no further letter.
+fn is_plural_of_a_symbol(rest: &str) -> bool {
+    let rest = rest.strip_prefix('\'').or_else(|| rest.strip_prefix('\u{2019}'));
+    let rest = rest.and_then(|rest| rest.strip_prefix('s'));
+    rest.is_some_and(|rest| !rest.starts_with(char::is_alphabetic))
 }
 
 impl<'a> SentenceView<'a> {

@@ -35,6 +35,10 @@ fn symbol(view: &SentenceView, i: usize) -> Option<(Symbol, Option<u64>, usize)>
     let two = |at: usize| view.number(at) == Some(Printed::whole(2));
     let squared = |at: usize| two(at) && view.style(at) == Style::Superscript;
     let after_value_word = |mut at: usize| {
+        // `χ²’s`, `t's`
+        if view.signs(at, &['\'', '’']) && view.eq(at + 1, "s") {
+            at += 2;
+        }
         if view.sign(at, '-') && view.any(at + 1, &["value", "values", "test", "statistic", "ratio", "tests"]) {
             at += 2;
         } else if view.any(at, &["value", "statistic", "test", "statistics"]) {
