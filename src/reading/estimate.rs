@@ -41,15 +41,22 @@ pub fn read(
     // Where the paragraph has named its intervals, a verb before the figure is enough.
     let level = named.level;
     let told = |i: usize| level.is_some() && i > 0 && view.any(i - 1, &["was", "were", "is", "of"]);
-    interval::read_unnamed(view, |i| told(i) || names.iter().any(|n| leads_to(view, n, i)), level, taken, intervals);
+    let known = |i: usize| told(i) || names.iter().any(|n| leads_to(view, n, i));
+    interval::read_unnamed(view, known, |i| told_as_change(view, i, i), level, taken, intervals);
     intervals[first_interval..].sort_by_key(|x| x.span.start);
     for interval in &mut intervals[first_interval..] {
-        let Some((value, span)) = interval.estimate else { continue };
+        let Some((mut value, span)) = interval.estimate else { continue };
         let at = view.token_at(span.start);
         let name = names.iter().rev().find(|n| n.last < at && at - n.last <= 24 && !another_between(&names, n, at));
         let last = view.token_at(span.end).saturating_sub(1);
         let near = name.is_some_and(|n| leads_to(view, n, at));
-        let inside = interval.lower.value() <= value.value() && value.value() <= interval.upper.value();
+        let within =
+            |value: Printed| interval.lower.value() <= value.value() && value.value() <= interval.upper.value();
+        // "fell by 8.8 (95% CI −14.2 to −3.4)": the sign stands in the verb.
+        if !within(value) && within(value.negated()) && told_as_change(view, at, last) {
+            value = value.negated();
+        }
+        let inside = within(value);
         let time = view.is(last + 1, super::lexicon::Classes::UNIT)
             && at > 0
             && view.any(at - 1, &["at", "after", "per", "in", "by", "to"]);
@@ -60,6 +67,12 @@ pub fn read(
         }
         let (measure, scale, adjusted) = match name {
             Some(n) if near || at - n.last <= 16 => (n.measure, n.scale, n.adjusted),
+            _ if told_as_change(view, at, last) => {
+                // A change in percent may be one of percentage points or a ratio.
+                let percent = view.sign(last + 1, '%') || interval.percent;
+                let scale = if percent { Scale::Unknown } else { Scale::Difference };
+                (if percent { Measure::Other } else { Measure::MeanDifference }, scale, false)
+            }
             _ if single(view, at, last) => (Measure::Other, Scale::Single, false),
             _ => {
                 let (measure, scale) = named.measure.filter(|_| inside).unwrap_or((Measure::Other, Scale::Unknown));
@@ -117,7 +130,9 @@ fn signed_with_error(view: &SentenceView, taken: &mut [bool], out: &mut Vec<Esti
         }
         // Back from the error to the figure: over a comma or bracket and a unit.
         let mut last = i - 1;
-        while last > 0 && i - last < 5 && (view.signs(last, &[',', ';', '(', '%']) || view.get(last).is_some_and(|t| t.is_word()))
+        while last > 0
+            && i - last < 5
+            && (view.signs(last, &[',', ';', '(', '%']) || view.get(last).is_some_and(|t| t.is_word()))
         {
             last -= 1;
         }
@@ -126,7 +141,8 @@ fn signed_with_error(view: &SentenceView, taken: &mut [bool], out: &mut Vec<Esti
             continue;
         }
         let (Some((value, _)), Some(se)) = (view.signed(last - 1), standard_error(view, i)) else { continue };
-        let own_p = (i + 2..(i + 6).min(view.len())).any(|k| view.is(k, super::lexicon::Classes::P) && !view.signs(k - 1, &[')']));
+        let own_p = (i + 2..(i + 6).min(view.len()))
+            .any(|k| view.is(k, super::lexicon::Classes::P) && !view.signs(k - 1, &[')']));
         found.push((own_p, last, value, se));
     }
     if found.iter().any(|f| !f.0) {
@@ -145,6 +161,50 @@ fn signed_with_error(view: &SentenceView, taken: &mut [bool], out: &mut Vec<Esti
             adjusted: false,
         });
     }
+}
+
+/// Whether the words around a figure tell it as a change: "fell by 8.8 mmHg", "a 14.5 mm reduction".
+fn told_as_change(view: &SentenceView, at: usize, last: usize) -> bool {
+    const VERBS: &[&str] = &[
+        "decreased",
+        "increased",
+        "reduced",
+        "improved",
+        "fell",
+        "rose",
+        "dropped",
+        "declined",
+        "decrease",
+        "increase",
+        "lowered",
+        "raised",
+        "gained",
+        "lost",
+        "grew",
+        "decreases",
+        "increases",
+        "higher",
+        "lower",
+        "longer",
+        "shorter",
+        "greater",
+        "more",
+        "less",
+        "fewer",
+    ];
+    let noun = (last + 1..last + 4).any(|k| interval::names_a_change(view, k));
+    let mut k = at;
+    while k > 0
+        && k + 4 > at
+        && (view.any(k - 1, &["by", "of", "a", "an", "about", "approximately", "mean"]) || view.sign(k - 1, '-'))
+    {
+        k -= 1;
+    }
+    let verb = k > 0
+        && (view.any(k - 1, VERBS)
+            && (k < at || view.any(k - 1, &["decreased", "increased", "fell", "rose", "dropped", "declined"]))
+            || interval::names_a_change(view, k - 1) && k < at);
+    noun || verb
 }
 
 /// A mean, a proportion or a rate of one group: nothing to test its interval against.

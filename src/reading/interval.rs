@@ -20,14 +20,14 @@ struct Pair {
 
 /// Appends the intervals of a sentence; marks the tokens they take in `taken`. Gives the level that the sentence names.
 pub fn read(view: &SentenceView, taken: &mut [bool], out: &mut Vec<IntervalReading>) -> Option<Figure> {
-    let mut declared: Option<(Option<Figure>, bool)> = None;
+    let mut declared: Option<(Option<Figure>, bool, usize)> = None;
     let mut i = 0;
     while i < view.len() {
         let Some(anchor) = anchor(view, i) else {
             // `OR (95% CI)` was named: every `1.2 (0.8–1.9)` after it is one.
-            if let Some((level, credible)) = declared
+            if let Some((level, credible, named_at)) = declared
                 && let Some((estimate, pair)) = bracketed_after_number(view, i)
-                && !spread_named(view, i)
+                && !spread_named(view, i, named_at)
             {
                 emit(view, pair, pair.first, level, credible, estimate, taken, out);
                 i = pair.last + 1;
@@ -39,7 +39,7 @@ pub fn read(view: &SentenceView, taken: &mut [bool], out: &mut Vec<IntervalReadi
         let Anchor { level, credible, last, first } = anchor;
         let at = skip_words(view, last + 1);
         if let Some(pair) = pair(view, at) {
-            let estimate = estimate_before(view, first);
+            let estimate = estimate_before(view, first).or_else(|| change_before(view, first, &pair));
             emit(view, pair, first, level, credible, estimate, taken, out);
             i = pair.last + 1;
             // A list of intervals under one name.
@@ -56,14 +56,14 @@ pub fn read(view: &SentenceView, taken: &mut [bool], out: &mut Vec<IntervalReadi
                 emit(view, more, more.first, level, credible, None, taken, out);
                 i = more.last + 1;
             }
-            declared = Some((level, credible));
+            declared = Some((level, credible, last));
             continue;
         }
-        declared = Some((level, credible));
+        declared = Some((level, credible, last));
         // `95% CI: 1.2 (0.8–1.9)`: the limits follow a figure
         i = last + 1;
     }
-    declared.and_then(|(level, _)| level)
+    declared.and_then(|(level, ..)| level)
 }
 
 #[allow(clippy::too_many_arguments)]
@@ -277,9 +277,16 @@ fn after_separator(view: &SentenceView, at: usize) -> Option<usize> {
 
 /// `1.2 (0.8–1.9)`: a number with a bracketed pair around it, starting at the number.
 fn bracketed_after_number(view: &SentenceView, i: usize) -> Option<(Option<(Printed, Span)>, Pair)> {
+    pair_after_number(view, i).filter(|(estimate, pair)| {
+        estimate.is_some_and(|(e, _)| pair.lower.value() <= e.value() && e.value() <= pair.upper.value())
+    })
+}
+
+/// `8.8 mmHg (−14.2, −3.4`: a figure, and two limits in the bracket behind it.
+fn pair_after_number(view: &SentenceView, i: usize) -> Option<(Option<(Printed, Span)>, Pair)> {
     let (estimate, mut next) = view.signed(i)?;
     let end = next - 1;
-    if view.sign(next, '%') {
+    if view.sign(next, '%') || view.is(next, Classes::UNIT) {
         next += 1;
     }
     if !view.signs(next, &['(', '[', '{']) {
@@ -289,8 +296,7 @@ fn bracketed_after_number(view: &SentenceView, i: usize) -> Option<(Option<(Prin
     if !view.signs(pair.last + 1, &[')', ']', '}', ';', ',']) {
         return None;
     }
-    let inside = pair.lower.value() <= estimate.value() && estimate.value() <= pair.upper.value();
-    inside.then(|| (Some((estimate, view.span(i, end))), pair))
+    Some((Some((estimate, view.span(i, end))), pair))
 }
 
 /// The figure right before the bracket or comma that opens `(95% CI …)`.
@@ -316,17 +322,65 @@ fn estimate_before(view: &SentenceView, first: usize) -> Option<(Printed, Span)>
     Some((p, view.span(k, k)))
 }
 
-/// Medians, quartiles and ranges named within the last few tokens: the pair is a spread.
-fn spread_named(view: &SentenceView, i: usize) -> bool {
-    (i.saturating_sub(8)..i)
+/// "a 14.5 mm reduction on the scale (95% CI 5.2 to 23.8)": the figure of a change whose noun stands between it and its
+/// interval. It must be the only figure there, and lie about midway between the limits.
+fn change_before(view: &SentenceView, first: usize, pair: &Pair) -> Option<(Printed, Span)> {
+    let bracket = first.checked_sub(1).filter(|&k| view.signs(k, &['(', '[']))?;
+    let k = (bracket.saturating_sub(16)..bracket)
+        .rev()
+        .take_while(|&k| !view.signs(k, &['(', ')', ';', ':']))
+        .find(|&k| view.number(k).is_some())?;
+    let noun = (k + 1..(k + 4).min(bracket)).any(|j| names_a_change(view, j));
+    let value = view.number(k)?;
+    let alone = k == 0 || !view.signs(k - 1, &['-', '±', '<', '>', '=']);
+    let (low, high) = (pair.lower.value().min(pair.upper.value()), pair.lower.value().max(pair.upper.value()));
+    (noun && alone && midway(value.value(), low, high)).then(|| (value, view.span(k, k)))
+}
+
+/// Nouns of a difference or change that has a size.
+pub(super) fn names_a_change(view: &SentenceView, k: usize) -> bool {
+    const NOUNS: &[&str] = &[
+        "reduction",
+        "increase",
+        "decrease",
+        "decline",
+        "improvement",
+        "difference",
+        "change",
+        "gain",
+        "drop",
+        "rise",
+        "fall",
+        "benefit",
+        "loss",
+        "reductions",
+        "increases",
+        "decreases",
+        "improvements",
+        "differences",
+    ];
+    view.any(k, NOUNS)
+}
+
+/// Whether a figure can be the middle of its limits, on the plain or the logarithmic scale, give or take a quarter.
+fn midway(value: f64, low: f64, high: f64) -> bool {
+    let near = |v: f64, l: f64, h: f64| (v - (l + h) / 2.0).abs() <= 0.125 * (h - l);
+    near(value, low, high) || low > 0.0 && value > 0.0 && near(value.ln(), low.ln(), high.ln())
+}
+
+/// Medians, quartiles and ranges named within the last few tokens (after token `from`): the pair is a spread.
+fn spread_named(view: &SentenceView, i: usize, from: usize) -> bool {
+    (i.saturating_sub(8).max(from)..i)
         .any(|k| view.is(k, Classes::IQR) || view.is(k, Classes::RANGE) || view.is(k, Classes::MEDIAN))
 }
 
 /// Bracketed pairs after a named estimate, where the text never says what they are: `HR 0.75 (0.60–0.93)`.
-/// `named` tells whether an estimate's name stands right before the figure at token `i`.
+/// `named` tells whether an estimate's name stands right before the figure at token `i`, `changed` whether that figure
+/// is told as a change: `fell by 8.8 mmHg (−14.2, −3.4, p = 0.002)`.
 pub fn read_unnamed(
     view: &SentenceView,
     named: impl Fn(usize) -> bool,
+    changed: impl Fn(usize) -> bool,
     level: Option<Figure>,
     taken: &mut [bool],
     out: &mut Vec<IntervalReading>,
@@ -336,9 +390,20 @@ pub fn read_unnamed(
         {
             continue;
         }
-        let Some((estimate, pair)) = bracketed_after_number(view, i) else { continue };
+        let Some((estimate, pair)) = pair_after_number(view, i) else { continue };
         let decimals = pair.lower.places > 0 && pair.upper.places > 0;
-        if taken[pair.first] || !decimals || spread_named(view, i) || !named(i) {
+        if taken[pair.first] || !decimals || spread_named(view, i, 0) {
+            continue;
+        }
+        let (value, low, high) = match estimate {
+            Some((value, _)) => (value.value(), pair.lower.value(), pair.upper.value()),
+            None => continue,
+        };
+        let inside = low <= value && value <= high;
+        // A pair about midway, on one side of 0 and with its p, can hardly be anything but limits.
+        let tested = view.signs(pair.last + 1, &[',', ';']) && view.is(pair.last + 2, Classes::P);
+        let change = || tested && (midway(value, low, high) || midway(-value, low, high)) && changed(i);
+        if !(inside && named(i) || change()) {
             continue;
         }
         emit(view, pair, pair.first, level, false, estimate, taken, out);
