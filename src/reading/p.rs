@@ -545,6 +545,10 @@ fn surroundings(view: &SentenceView, after: usize, p: &mut PExpression) {
             p.corrected = true;
         }
     }
+    // "The change from baseline did not differ between arms": the p compares arms all the same.
+    if p.role == Role::WithinGroup && (from..to).filter(|&k| near(k)).any(|k| between_groups(view, k)) {
+        p.role = Role::Effect;
+    }
     if p.role == Role::Effect
         && let Some(k) = baseline
         && k > 0
@@ -568,6 +572,15 @@ fn within_group(view: &SentenceView, k: usize) -> bool {
             && !view.any(k + 2, &["normal", "limits"]))
         || (view.any(k, &["intragroup", "pretreatment"]) && k > 0)
         || view.any(k, &["paired"])
+}
+
+/// "between the two groups", "differed between sling and usual care".
+fn between_groups(view: &SentenceView, k: usize) -> bool {
+    let groups = |k: usize| view.any(k, &["groups", "arms", "treatments", "conditions", "interventions"]);
+    let differs = |k: usize| view.any(k, &["differ", "differed", "different", "difference", "differences", "differs"]);
+    view.any(k, &["between"])
+        && ((k + 1..k + 5).any(groups) || (k.saturating_sub(3)..k).any(differs) && !view.is(k + 1, Classes::BASELINE))
+        || view.any(k, &["intergroup"])
 }
 
 /// After the last semicolon of `after..before` that stands outside brackets.

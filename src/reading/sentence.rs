@@ -481,10 +481,14 @@ fn split_sentences(block: &Block, number: u32, first: usize, scan: &mut Scan) {
             let capital = word.chars().count() == 1 && word.chars().all(char::is_uppercase);
             // `n.s.` and `s.d.` end sentences as often as not; `P.` and initials do not.
             let inner = i >= 2 && tokens[i - 2].is_sign('.') && !before.spaced && before.is_word();
-            before.is_word()
-                && !inner
-                && (capital && before.spaced && next < last && tokens[next].is_word()
-                    || ABBREVIATIONS.iter().any(|a| a.eq_ignore_ascii_case(word)))
+            let first = i.checked_sub(3).filter(|_| inner).map(|k| &tokens[k]);
+            let first = first.map(|t| &block.text[t.start as usize..t.end as usize]);
+            let latin = matches!((first, word), (Some("i"), "e") | (Some("e"), "g"));
+            latin
+                || before.is_word()
+                    && !inner
+                    && (capital && before.spaced && next < last && tokens[next].is_word()
+                        || ABBREVIATIONS.iter().any(|a| a.eq_ignore_ascii_case(word)))
         };
         if opens && !abbreviated {
             push_sentence(number, start, next, scan);
