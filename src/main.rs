@@ -13,7 +13,7 @@ use std::thread;
 use clap::{Args, Parser, Subcommand, ValueEnum};
 use tallyproof::audit::{self, is_manuscript};
 use tallyproof::query::Level;
-use tallyproof::report::{Audited, Entry, Json, Line, Report, Terminal};
+use tallyproof::report::{Audited, Entry, Json, Line, Report, Terminal, Worklist};
 use tallyproof::rule::catalogue;
 
 #[derive(Parser)]
@@ -64,6 +64,8 @@ enum Form {
     Json,
     /// One object a line
     JsonLines,
+    /// A table (CSV) of the manuscripts, what needs a human first
+    Worklist,
 }
 
 #[derive(Clone, Copy, PartialEq, Eq, ValueEnum)]
@@ -169,10 +171,10 @@ fn status(lines: &[Line], ask: AskLevel) -> u8 {
         AskLevel::Minor => Level::Minor,
         AskLevel::Major => Level::Major,
     } as usize;
-    if lines.iter().any(|l| l.queries.is_none()) {
+    if lines.iter().any(|l| l.outcome.is_err()) {
         2
     } else {
-        u8::from(lines.iter().flat_map(|l| l.queries).any(|q| q[from..].iter().any(|&n| n > 0)))
+        u8::from(lines.iter().flat_map(|l| &l.outcome).any(|d| d.queries[from..].iter().any(|&n| n > 0)))
     }
 }
 
@@ -184,6 +186,7 @@ fn form(arguments: &Audit, one: bool) -> Box<dyn Report> {
         Form::Json if one => Box::new(Json::Object),
         Form::Json => Box::new(Json::Array),
         Form::JsonLines => Box::new(Json::Lines),
+        Form::Worklist => Box::new(Worklist),
     }
 }
 
@@ -245,7 +248,7 @@ fn output(arguments: &Audit, jobs: &[Job]) -> Result<Box<dyn Write>, Stop> {
     let Some(path) = &arguments.out else {
         return Ok(match arguments.form {
             Form::Terminal => Box::new(BufWriter::new(anstream::stdout().lock())),
-            Form::Json | Form::JsonLines => Box::new(BufWriter::new(io::stdout().lock())),
+            Form::Json | Form::JsonLines | Form::Worklist => Box::new(BufWriter::new(io::stdout().lock())),
         });
     };
     let refuse = |why: &str| {

@@ -4,7 +4,7 @@ use tallyproof::audit::audit;
 use tallyproof::manuscript::Location;
 use tallyproof::query::{Explanation, Ground, Level, Query, Related, Repair, RepairKind, Verdict};
 use tallyproof::recompute::{Checked, Distance, Method, Quantity, Recomputation, Slip};
-use tallyproof::report::{Account, Audited, CAUTIONS, Entry, Json, Line, Report, Terminal};
+use tallyproof::report::{Account, Audited, CAUTIONS, Entry, Json, Line, Report, Terminal, Worklist};
 use tallyproof::result::ReportedResult;
 use tallyproof::text::Span;
 
@@ -214,10 +214,37 @@ fn every_format_carries_the_cautions_once() {
     let flat = |text: String| text.split_whitespace().collect::<Vec<_>>().join(" ");
     let text = flat(rendered(&TERMINAL, &entries)).replace("Bear in ", "").replace("mind ", "");
     let json = flat(rendered(&Json::Object, &entries[..1]));
+    let worklist = rendered(&Worklist, &entries);
     for caution in CAUTIONS {
+        assert_eq!(worklist.matches(caution).count(), 1, "{caution}");
         assert_eq!(text.matches(caution).count(), 1, "{caution}");
         assert_eq!(json.matches(caution).count(), 1, "{caution}");
     }
+}
+
+#[test]
+fn a_worklist_ranks_what_needs_a_human() {
+    let (sound, flawed) = (fixture("sound.md"), fixture("flawed.md"));
+    let entries = [
+        Entry { path: "sound.md", outcome: Ok(&sound) },
+        Entry { path: "gone.md", outcome: Err("there is no such file") },
+        Entry { path: "=1+1.md", outcome: Ok(&flawed) },
+    ];
+    let text = rendered(&Worklist, &entries);
+    let mut table = csv::Reader::from_reader(text.as_bytes());
+    let column = |name: &str, headers: &csv::StringRecord| headers.iter().position(|h| h == name).expect("a column");
+    let headers = table.headers().expect("a header").clone();
+    let rows: Vec<csv::StringRecord> = table.records().map(|r| r.expect("rows of one length")).collect();
+    let named: Vec<&str> = rows.iter().map(|r| &r[column("manuscript", &headers)]).collect();
+    // A name that a spreadsheet would compute is made plain text.
+    assert_eq!(named, ["'=1+1.md", "sound.md", "gone.md", "", "", ""]);
+    let count = |row: usize, level: &str| rows[row][column(level, &headers)].parse::<usize>().expect("a count");
+    assert_eq!([count(0, "note"), count(0, "minor"), count(0, "major")], flawed.by_level());
+    let rules = &rows[0][column("rules", &headers)];
+    let sum: usize =
+        rules.split("; ").map(|r| r.split(' ').next().and_then(|n| n.parse::<usize>().ok()).unwrap()).sum();
+    assert_eq!(sum, flawed.queries.len());
+    assert_eq!(&rows[2][column("remark", &headers)], "there is no such file");
 }
 
 #[test]

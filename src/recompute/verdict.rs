@@ -125,7 +125,10 @@ pub(crate) fn judge(
     let deciding = || candidates.iter().filter(|c| c.decides || !any_decides);
     let nearest = deciding().min_by(|a, b| target.distance(a.range).total_cmp(&target.distance(b.range)))?;
     let mut out = blank(target, nearest, policy, inputs);
-    out.computed = deciding().map(|c| c.range).reduce(Range::hull);
+    // Candidates on both sides of the printed figure have no common range that leaves it out: those on the nearest's side.
+    let above = nearest.range.lo > target.range.hi;
+    let beside = |c: &&Candidate| (c.range.lo > target.range.hi) == above;
+    out.computed = deciding().filter(beside).map(|c| c.range).reduce(Range::hull);
     let size = candidates.iter().map(|c| target.distance(c.range)).fold(f64::INFINITY, f64::min);
     let shift = candidates.iter().map(|c| target.shift(c.range)).fold(f64::INFINITY, f64::min);
     let across_alpha = candidates.iter().all(|c| target.across(c.range, policy.alpha));

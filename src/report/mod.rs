@@ -11,7 +11,10 @@ mod numbers;
 mod place;
 pub mod terminal;
 mod words;
+pub mod worklist;
 
+use std::cmp::Reverse;
+use std::collections::BTreeMap;
 use std::io::{self, Write};
 
 use crate::intake::Notice;
@@ -24,6 +27,7 @@ use crate::result::ReportedResult;
 pub use account::Account;
 pub use json::Json;
 pub use terminal::Terminal;
+pub use worklist::Worklist;
 
 /// A manuscript after the audit.
 #[derive(Clone, Debug)]
@@ -51,8 +55,23 @@ pub struct Entry<'a> {
 #[derive(Clone, Debug, PartialEq, Eq)]
 pub struct Line {
     pub path: String,
-    /// Queries by level, in the order of [`Level::ALL`]; `None` when it could not be read.
-    pub queries: Option<[usize; 3]>,
+    /// Or one sentence that says why it could not be read.
+    pub outcome: Result<Digest, String>,
+}
+
+/// What a list of manuscripts says of one of them.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct Digest {
+    /// Queries by level, in the order of [`Level::ALL`].
+    pub queries: [usize; 3],
+    /// Queries by level and rule, the gravest first, then by name.
+    pub rules: Vec<(Level, String, usize)>,
+    /// The gravest query, the first of them in the text: where it stands, and what it asks.
+    pub first: Option<(String, String)>,
+    /// p-values read, recomputed, tallying, and sharply so.
+    pub p: [usize; 4],
+    /// What the reader of the file had to say of it.
+    pub notices: Vec<String>,
 }
 
 /// An output format.
@@ -76,8 +95,38 @@ impl Audited {
 
 impl Line {
     pub fn of(entry: &Entry) -> Line {
-        Line { path: entry.path.to_owned(), queries: entry.outcome.ok().map(Audited::by_level) }
+        let outcome = entry.outcome.map(Digest::of).map_err(str::to_owned);
+        Line { path: entry.path.to_owned(), outcome }
     }
+}
+
+impl Digest {
+    fn of(audited: &Audited) -> Digest {
+        let mut rules: BTreeMap<(Reverse<Level>, &str), usize> = BTreeMap::new();
+        for q in &audited.queries {
+            *rules.entry((Reverse(q.level), &q.rule)).or_default() += 1;
+        }
+        let account = Account::of(audited);
+        // Of equals the last would be taken, so from the end.
+        let first = audited.queries.iter().rev().max_by_key(|q| q.level);
+        Digest {
+            queries: audited.by_level(),
+            rules: rules.into_iter().map(|((level, rule), n)| (level.0, rule.to_owned(), n)).collect(),
+            first: first.map(|q| (worklist::place(q), q.asks.clone())),
+            p: [account.read, account.checked, account.tallies, account.sharp],
+            notices: audited.notices.iter().map(|n| n.0.clone()).collect(),
+        }
+    }
+}
+
+/// The manuscripts that could be read, those with the most and gravest queries first, then in the order of the run.
+fn ranked(lines: &[Line]) -> Vec<(&Line, &Digest)> {
+    let mut ranked: Vec<_> = lines.iter().filter_map(|l| l.outcome.as_ref().ok().map(|d| (l, d))).collect();
+    ranked.sort_by_key(|(_, digest)| {
+        let [notes, minor, major] = digest.queries;
+        Reverse((major, minor, notes))
+    });
+    ranked
 }
 
 /// What every report says once, plainly.

@@ -11,7 +11,7 @@ use anstyle::{AnsiColor, Style};
 
 use super::galley::{Galley, Piece, clean, first_part, last_part};
 use super::place::{Context, Places};
-use super::{Account, Audited, CAUTIONS, Entry, Line, Report, numbers, words};
+use super::{Account, Audited, CAUTIONS, Entry, Line, Report, numbers, ranked, words};
 use crate::manuscript::Location;
 use crate::query::{Level, Query, Related, Repair, RepairKind, Verdict};
 use crate::reading::{Figure, Group};
@@ -63,7 +63,7 @@ impl Report for Terminal {
     }
 
     fn end(&self, lines: &[Line], out: &mut dyn Write) -> io::Result<()> {
-        if lines.iter().all(|l| l.queries.is_none()) {
+        if lines.iter().all(|l| l.outcome.is_err()) {
             return Ok(());
         }
         let mut galley = Galley::new(out, self.width);
@@ -402,19 +402,17 @@ const QUIET: usize = 10;
 fn worklist(galley: &mut Galley, lines: &[Line]) -> io::Result<()> {
     galley.gap()?;
     galley.across(&[(BOLD, "Worklist, the gravest first")])?;
-    let mut ranked: Vec<_> = lines.iter().filter_map(|l| l.queries.map(|q| (q, &l.path))).collect();
-    ranked.sort_by_key(|&([notes, minor, major], _)| std::cmp::Reverse((major, minor, notes)));
-    let quiet = ranked.partition_point(|(q, _)| q.iter().sum::<usize>() > 0);
+    let ranked = ranked(lines);
+    let quiet = ranked.partition_point(|(_, d)| d.queries.iter().sum::<usize>() > 0);
     galley.gap()?;
     let shown = if ranked.len() - quiet > QUIET { quiet } else { ranked.len() };
-    for (counts, path) in &ranked[..shown] {
-        galley.text(&[(PLAIN, &clean(path)), (FAINT, ": "), (FAINT, &by_level(counts))])?;
+    for (line, digest) in &ranked[..shown] {
+        galley.text(&[(PLAIN, &clean(&line.path)), (FAINT, ": "), (FAINT, &by_level(&digest.queries))])?;
     }
     if shown < ranked.len() {
         galley.text(&[(PLAIN, &format!("{} more raise no query", ranked.len() - shown))])?;
     }
-    let unread: Vec<_> = lines.iter().filter(|l| l.queries.is_none()).collect();
-    for line in unread {
+    for line in lines.iter().filter(|l| l.outcome.is_err()) {
         galley.text(&[(PLAIN, &clean(&line.path)), (FAINT, ": could not be read")])?;
     }
     galley.flush()
