@@ -31,6 +31,11 @@ pub fn read(view: &SentenceView, taken: &mut [bool], out: &mut Vec<IntervalReadi
             {
                 emit(view, pair, pair.first, level, credible, estimate, taken, out);
                 i = pair.last + 1;
+            } else if let Some((level, credible, _)) = declared
+                && let Some((estimate, pair)) = pair_in_bracket(view, i)
+            {
+                emit(view, pair, pair.first, level, credible, estimate, taken, out);
+                i = pair.last + 1;
             } else {
                 i += 1;
             }
@@ -282,6 +287,22 @@ fn bracketed_after_number(view: &SentenceView, i: usize) -> Option<(Option<(Prin
     })
 }
 
+/// `(1.2; 1.1–1.3)`: a figure and its limits in a bracket of their own, after an interval whose name showed the form.
+fn pair_in_bracket(view: &SentenceView, i: usize) -> Option<(Option<(Printed, Span)>, Pair)> {
+    if !(i > 0 && view.signs(i - 1, &['(', '['])) {
+        return None;
+    }
+    let (estimate, next) = view.signed(i)?;
+    let next = next + usize::from(view.sign(next, '%'));
+    if !view.signs(next, &[';', ',']) {
+        return None;
+    }
+    let pair = pair(view, next + 1)?;
+    let inside = pair.lower.value() <= estimate.value() && estimate.value() <= pair.upper.value();
+    let closes = view.signs(pair.last + 1, &[')', ']']);
+    (inside && closes && pair.upper.places > 0).then(|| (Some((estimate, view.span(i, next - 1))), pair))
+}
+
 /// `8.8 mmHg (−14.2, −3.4`: a figure, and two limits in the bracket behind it.
 fn pair_after_number(view: &SentenceView, i: usize) -> Option<(Option<(Printed, Span)>, Pair)> {
     let (estimate, mut next) = view.signed(i)?;
@@ -385,6 +406,8 @@ pub fn read_unnamed(
     taken: &mut [bool],
     out: &mut Vec<IntervalReading>,
 ) {
+    // "3.1 (2.4 to 4.4) at six and 3.0 (2.3 to 4.2) at eight hours": what the first pair is, the next are as well.
+    let mut list = false;
     for i in 0..view.len() {
         if taken[i] || (view.number(i).is_some() && i > 0 && view.sign(i - 1, '-') && !view.spaced(i) && !taken[i - 1])
         {
@@ -403,9 +426,10 @@ pub fn read_unnamed(
         // A pair about midway, on one side of 0 and with its p, can hardly be anything but limits.
         let tested = view.signs(pair.last + 1, &[',', ';']) && view.is(pair.last + 2, Classes::P);
         let change = || tested && (midway(value, low, high) || midway(-value, low, high)) && changed(i);
-        if !(inside && named(i) || change()) {
+        if !(inside && (list || named(i)) || change()) {
             continue;
         }
+        list |= inside;
         emit(view, pair, pair.first, level, false, estimate, taken, out);
     }
 }
