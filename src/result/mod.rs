@@ -1,6 +1,7 @@
 //! Readings that belong together: groups, estimate, interval, statistic, p.
 
 mod feature;
+pub mod repeat;
 mod sentence;
 mod table;
 

@@ -18,6 +18,8 @@ pub enum Check {
     Order { of: Pair },
     /// A confidence interval that does not hold the estimate printed right before it.
     EstimateOutsideInterval {},
+    /// One result printed in two places, all its figures alike but one.
+    SameResultDiffers {},
     /// P printed as exactly zero.
     PrintedZero {},
     /// P printed only as above or below one of `bounds`, or as not significant; once per section.
@@ -194,6 +196,7 @@ impl Check {
             Check::Outside { .. } => "outside",
             Check::Order { .. } => "order",
             Check::EstimateOutsideInterval {} => "estimate-outside-interval",
+            Check::SameResultDiffers {} => "same-result-differs",
             Check::PrintedZero {} => "printed-zero",
             Check::ThresholdOnly { .. } => "threshold-only",
             Check::Missing { .. } => "missing",

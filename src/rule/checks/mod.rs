@@ -5,6 +5,7 @@ mod direction;
 mod figures;
 mod planning;
 mod recomputed;
+mod repeated;
 mod reporting;
 
 use super::check::Check;
@@ -18,6 +19,7 @@ pub fn run(check: &Check, facts: &Look) -> Vec<Finding> {
         Check::Outside { field, lowest, highest } => figures::outside(facts, *field, *lowest, *highest),
         Check::Order { of } => figures::order(facts, *of),
         Check::EstimateOutsideInterval {} => figures::estimate_outside_interval(facts),
+        Check::SameResultDiffers {} => repeated::same_result_differs(facts),
         Check::PrintedZero {} => figures::printed_zero(facts),
         Check::ThresholdOnly { bounds } => reporting::threshold_only(facts, bounds),
         Check::Missing { what } => reporting::missing(facts, *what),
