@@ -125,7 +125,7 @@ pub fn read(
 fn signed_with_error(view: &SentenceView, taken: &mut [bool], out: &mut Vec<Estimate>) {
     let mut found = Vec::new();
     for i in 1..view.len() {
-        if !view.any(i, &["se", "sem"]) || view.style(i) != Style::Plain {
+        if !view.is(i, super::lexicon::Classes::SE) || !view.any(i, &["se", "sem"]) || view.style(i) != Style::Plain {
             continue;
         }
         // Back from the error to the figure: over a comma or bracket and a unit.

@@ -356,10 +356,14 @@ fn range_of(
 
 /// "the correlation coefficient was 0.40", "log rank 0.24 df 1".
 fn named_in_words(view: &SentenceView, i: usize, taken: &mut [bool], out: &mut Vec<Statistic>) -> Option<usize> {
-    let (symbol, mut at, limit) = if view.any(i, &["correlation"]) && view.any(i + 1, &["coefficient", "coefficients"])
-    {
+    // Both names begin with a word of a class, which is cheaper to see than the word.
+    let correlation = view.is(i, Classes::ASSOCIATION) && view.any(i, &["correlation"]);
+    let (symbol, mut at, limit) = if correlation && view.any(i + 1, &["coefficient", "coefficients"]) {
         (Symbol::R, i + 2, i + 26)
-    } else if view.eq(i, "log") && (view.eq(i + 1, "rank") || (view.sign(i + 1, '-') && view.eq(i + 2, "rank"))) {
+    } else if view.is(i, Classes::FEATURE)
+        && view.eq(i, "log")
+        && (view.eq(i + 1, "rank") || (view.sign(i + 1, '-') && view.eq(i + 2, "rank")))
+    {
         (Symbol::ChiSquared, i + 2 + usize::from(view.sign(i + 1, '-')), i + 6)
     } else {
         return None;
