@@ -94,3 +94,30 @@ fn the_same_bytes_give_the_same_report() {
     };
     assert!(report(&audited("flawed.md")) == report(&audited("flawed.md")));
 }
+
+/// What a manuscript says and is asked, places apart.
+fn told(audited: &Audited) -> (Vec<String>, Vec<String>) {
+    let quote = |span| audited.manuscript.quote(span).to_owned();
+    let r = &audited.readings;
+    let mut readings: Vec<String> = r.p.iter().map(|x| format!("p {}", quote(x.span))).collect();
+    readings.extend(r.intervals.iter().map(|x| format!("interval {}", quote(x.span))));
+    readings.extend(r.statistics.iter().map(|x| format!("statistic {}", quote(x.span))));
+    readings.extend(r.groups.iter().map(|x| format!("group {} of {}", quote(x.span), x.label)));
+    readings.extend(r.estimates.iter().map(|x| format!("estimate {}", quote(x.span))));
+    readings.extend(r.claims.iter().map(|x| format!("claim {}", quote(x.span))));
+    readings.extend(r.planning.iter().map(|x| format!("planning {}", quote(x.span))));
+    let queries = &audited.queries;
+    let queries =
+        queries.iter().map(|q| format!("{} {} {} {}", q.rule, q.level.name(), q.says, q.fingerprint)).collect();
+    (readings, queries)
+}
+
+/// The JATS forms are written from the Markdown by `fixtures/jats.py`.
+#[test]
+fn one_manuscript_in_two_formats_is_told_and_asked_the_same() {
+    for name in ["sound", "flawed"] {
+        let (markdown, jats) = (audited(&format!("{name}.md")), audited(&format!("{name}.xml")));
+        assert_eq!(told(&markdown), told(&jats), "{name}");
+        assert!(jats.notices.is_empty());
+    }
+}
