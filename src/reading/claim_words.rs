@@ -87,7 +87,7 @@ pub(super) const WORDS: &[Row] = &[
         &[
             "similar", "comparable", "identical", "unchanged", "unaffected", "unaltered", "indistinguishable",
             "equally", "evenly", "equal", "same", "stable", "constant", "balanced", "comparably", "alike",
-            "matched", "homogeneous", "equivalently", "undifferentiated",
+            "matched", "homogeneous", "equivalently", "undifferentiated", "similarity", "similarities", "ineffective",
         ],
         Classes::SIMILAR,
     ),
@@ -164,7 +164,7 @@ pub(super) const WORDS: &[Row] = &[
         &[
             "whether", "if", "would", "will", "hypothesized", "hypothesised", "hypothesize", "hypothesise",
             "hypothesis", "hypotheses", "aim", "aimed", "aims", "assuming", "assumed", "assumption", "should",
-            "powered", "anticipated", "objective", "shall", "assume", "predicted",
+            "powered", "anticipated", "objective", "shall", "assume", "predicted", "underpowered",
         ],
         PLAN,
     ),
@@ -190,7 +190,12 @@ pub(super) const WORDS: &[Row] = &[
             "decreased", "reduce", "reduced", "reduces", "correlate", "correlated", "associated", "related",
             "modify", "modified", "enhance", "enhanced", "impair", "impaired", "impact", "impacted", "predict",
             "predicted", "interact", "interacted", "benefit", "benefited", "prolong", "lower", "separate",
-            "decline", "worsen", "distinguish", "distinguishable", "predictive",
+            "decline", "worsen", "distinguish", "distinguishable", "predictive", "attenuate", "attenuated", "ameliorate",
+            "ameliorated", "alleviate", "alleviated", "prevent", "prevented", "modulate", "modulated", "potentiate",
+            "potentiated", "suppress", "suppressed", "inhibit", "inhibited", "promote", "promoted", "delay", "delayed",
+            "shorten", "shortened", "elevate", "elevated", "exceed", "exceeded", "augment", "augmented", "accelerate",
+            "accelerated", "diminish", "diminished", "lowered", "raise", "raised", "worsened", "deteriorate",
+            "deteriorated", "declined", "compromise", "compromised", "mitigate", "mitigated", "outperform", "outperformed", "prolonged",
         ],
         DIFFER,
     ),
@@ -266,13 +271,19 @@ pub(super) const WORDS: &[Row] = &[
     ),
     (
         &[
+            "study", "trial", "review",
+        ],
+        Classes::RARE,
+    ),
+    (
+        &[
             "power", "powered", "beta", "powers", "chance",
         ],
         Classes::POWER,
     ),
     (
         &[
-            "sided", "tailed", "tail", "side",
+            "sided", "tailed", "tail", "side", "bilateral", "unilateral",
         ],
         Classes::SIDED,
     ),
@@ -280,7 +291,7 @@ pub(super) const WORDS: &[Row] = &[
         &[
             "sample", "required", "needed", "necessary", "sufficient", "recruit", "need", "needs", "enrolled",
             "recruited", "enroll", "enrol", "aimed", "planned", "intended", "target", "require", "requires", "randomise",
-            "randomize", "include",
+            "randomize", "include", "goal", "randomised", "randomized", "included", "adequate", "targeted",
         ],
         Classes::SAMPLE,
     ),

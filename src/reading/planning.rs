@@ -1,5 +1,7 @@
 //! Planning statements: alpha, power, sides, sample size, thresholds, legends, multiplicity.
 
+mod levels;
+mod multiplicity;
 mod sample;
 // Word lists are easier to read in full lines.
 #[rustfmt::skip]
@@ -19,11 +21,11 @@ use crate::printed::Printed;
 pub fn read(view: &SentenceView, p: &[PExpression], defines: &mut [bool], out: &mut Vec<Planning>) {
     let union = Classes(view.tokens.iter().fold(0, |all, t| all | t.classes.0));
     let cues = Classes::SIDED.or(Classes::SAMPLE).or(Classes::POWER).or(Classes::ALPHA).or(MULTIPLE);
-    let greek = view
-        .tokens
-        .iter()
-        .enumerate()
-        .any(|(i, t)| t.is_word() && t.classes == Classes::NONE && view.any(i, &["α", "β"]));
+    // Two bytes of a letter that is no Latin one: the only words of two bytes looked for here.
+    let greek =
+        view.tokens.iter().enumerate().any(|(i, t)| {
+            t.is_word() && t.classes == Classes::NONE && view.word(i).len() == 2 && view.any(i, &["α", "β"])
+        });
     if p.is_empty() && !greek && !union.meets(cues.or(Classes::CONSIDERED).or(Classes::SIGNIFICANCE)) {
         return;
     }
@@ -75,6 +77,17 @@ const MARKS: &[char] =
 impl Reader<'_, '_> {
     fn add(&mut self, what: PlanningKind, first: usize, last: usize, value: Option<Printed>, sides: Option<Sides>) {
         let span = self.view.span(first, last);
+        // "at α = 0.05 type I error" names one level twice.
+        let twice = matches!(what, PlanningKind::Alpha | PlanningKind::Power)
+            && self
+                .out
+                .iter()
+                .rev()
+                .take_while(|x| x.sentence == self.view.id)
+                .any(|x| x.what == what && x.span.start < span.end && span.start < x.span.end);
+        if twice {
+            return;
+        }
         self.out.push(Planning { span, sentence: self.view.id, what, value, sides });
     }
 
@@ -164,12 +177,17 @@ impl Reader<'_, '_> {
     fn thresholds(&mut self) {
         let v = self.view;
         for n in 0..self.p.len() {
+            let x = &self.p[n];
+            if !self.defines[n] && self.plans_with(n) {
+                self.defines[n] = true;
+                self.add(PlanningKind::Alpha, x.first, x.last, x.value, None);
+                continue;
+            }
             if self.defines[n] || !self.is_threshold(n) {
                 continue;
             }
             self.defines[n] = true;
             let (first, last) = self.threshold_extent(n);
-            let x = &self.p[n];
             // "p < 0.05 significance level" within a sample-size sentence is alpha.
             let alpha = v.is(x.last + 1, Classes::SIGNIFICANCE)
                 && v.any(x.last + 2, &["level"])
@@ -180,6 +198,22 @@ impl Reader<'_, '_> {
                 self.add(PlanningKind::Threshold, first, last, x.value, None);
             }
         }
+    }
+
+    /// "with p = 0.05 and a power of 80 %, 40 per group": the level that a sample size was planned for.
+    fn plans_with(&self, n: usize) -> bool {
+        let (v, x) = (self.view, &self.p[n]);
+        let level = x.value.is_some_and(limit)
+            && matches!(x.relation, Relation::Less | Relation::AtMost | Relation::Equal)
+            && (x.first.saturating_sub(4)..x.first).any(|i| v.any(i, PLANS_LEVEL));
+        level
+            && (0..v.len()).any(|i| v.any(i, SIZES))
+            && !(0..v.len())
+                .any(|i| v.any(i, DECLARES) && !v.any(i, &["level", "required", "used", "by", "determined"]))
+            && (0..v.len()).any(|i| {
+                v.is(i, Classes::POWER)
+                    && (i.saturating_sub(3)..i + 4).any(|j| v.number(j).is_some_and(|x| x.value() >= 0.5))
+            })
     }
 
     fn is_threshold(&self, n: usize) -> bool {
@@ -227,7 +261,7 @@ impl Reader<'_, '_> {
         // "significance was set at P < 0.05", "considered significant if p < 0.05", "threshold at P < 0.01".
         if let Some(w) = declared {
             let near = first - w <= 12;
-            let said = (0..first).any(significance) || v.any(w, &["threshold", "cutoff"]);
+            let said = (0..first).any(significance) || (before..first).any(|i| v.any(i, &["threshold", "cutoff"]));
             let linked = (w + 1..first).all(|i| {
                 significance(i)
                     || v.is(i, Classes::P.or(Classes::SIDED).or(Classes::NUMBER_WORD))
@@ -278,7 +312,14 @@ impl Reader<'_, '_> {
                 v.any(i, &["tested", "performed", "conducted", "evaluated"])
                     && (i + 1..first).all(|j| v.any(j, &["at", "using", "with", "a", "the", "level", "of"]))
             });
-        purpose || tested || colon || level || condition || as_level || equated || threshold
+        // "Significance was conferred at p < 0.05", whatever the verb; "was reached at" reports.
+        let conferred = !in_bracket
+            && !exact
+            && v.any(first - usize::from(first > 0), &["at", "by"])
+            && (first.saturating_sub(6)..first).find(|&i| v.any(i, &["significance"])).is_some_and(|i| {
+                v.any(i + 1, &["was", "is", "were", "will"]) && !(i + 1..first).any(|j| v.any(j, GOT))
+            });
+        purpose || conferred || tested || colon || level || condition || as_level || equated || threshold
     }
 
     /// From the subject to the end of the definition.
@@ -292,6 +333,7 @@ impl Reader<'_, '_> {
             while first > 0
                 && x.first - first < 16
                 && !stops(first - 1)
+                && n.checked_sub(1).is_none_or(|before| first - 1 > self.p[before].last)
                 && !(v.sign(first - 1, ',') || v.any(first - 1, &["and"]) && v.is(first, Classes::P))
             {
                 first -= 1;
@@ -322,11 +364,13 @@ impl Reader<'_, '_> {
         let v = self.view;
         for j in 1..v.len() {
             let Some((x, end)) = self.share(j).filter(|x| limit(x.0)) else { continue };
-            let below = v.signs(j - 1, &['<', '≤']) || v.any(j - 1, &["than", "below", "under", "at"]);
+            let below = v.signs(j - 1, &['<', '≤'])
+                || v.any(j - 1, &["than", "below", "under", "at"])
+                || v.any(end, &["or"]) && v.any(end + 1, &["less", "below", "lower", "smaller"]);
             if !below || self.taken(j) || self.p.iter().any(|p| p.first <= j && j <= p.last) {
                 continue;
             }
-            let behind = (j.saturating_sub(10)..j).find(|&w| v.any(w, DECLARES) && !v.any(w, &["by", "used", "level"]));
+            let behind = (j.saturating_sub(18)..j).find(|&w| v.any(w, DECLARES) && !v.any(w, &["by", "used", "level"]));
             let behind = behind.filter(|&w| {
                 (w.saturating_sub(5)..j).any(|i| v.is(i, Classes::SIGNIFICANCE))
                     && (w + 1..j).all(|i| {
@@ -344,7 +388,8 @@ impl Reader<'_, '_> {
                 return;
             }
             if let Some(last) = ahead {
-                let noun = (j.saturating_sub(5)..j).find(|&i| v.any(i, &["probability", "values", "value", "level"]));
+                let noun = (j.saturating_sub(8)..j)
+                    .find(|&i| v.is(i, Classes::P) || v.any(i, &["probability", "values", "value", "level"]));
                 self.add(PlanningKind::Threshold, noun.unwrap_or(j - 1), last, Some(x), None);
                 return;
             }
@@ -381,8 +426,17 @@ impl Reader<'_, '_> {
     /// "two-sided", "2-tailed t test", "one tailed".
     fn sides(&mut self) {
         let v = self.view;
-        for i in 1..v.len() {
-            if !v.any(i, &["sided", "tailed", "tail", "side"]) {
+        for i in 0..v.len() {
+            // "a bilateral test", "bilateral α": said of limbs and lungs far more often.
+            if v.any(i, &["bilateral", "unilateral"]) {
+                let test = |j: usize| v.any(j, &["test", "tests", "testing", "hypothesis", "formulation"]);
+                if v.any(i + 1, &["α", "alpha"]) || v.any(i + 1, &["type"]) || (i + 1..i + 4).any(test) {
+                    let sides = if v.any(i, &["bilateral"]) { Sides::Two } else { Sides::One };
+                    self.add(PlanningKind::Sided, i, i, None, Some(sides));
+                }
+                continue;
+            }
+            if i == 0 || !v.any(i, &["sided", "tailed", "tail", "side"]) {
                 continue;
             }
             let dash = v.sign(i - 1, '-');
@@ -407,319 +461,6 @@ impl Reader<'_, '_> {
                 last = test;
             }
             self.add(PlanningKind::Sided, count, last, None, Some(sides));
-        }
-    }
-
-    /// A probability: `0.05`, `.05`, `5 %`; the token after it.
-    fn share(&self, i: usize) -> Option<(Printed, usize)> {
-        let v = self.view;
-        let x = v.number(i)?;
-        if v.sign(i + 1, '%') || v.is(i + 1, Classes::PERCENT) || v.any(i + 1, &["per"]) {
-            return Some((x.shifted(-2), i + if v.any(i + 1, &["per"]) { 3 } else { 2 }));
-        }
-        (x.value() < 1.0 && x.places > 0).then_some((x, i + 1))
-    }
-
-    /// Over "level", "was", "set", "at", "of", "=" … to a probability.
-    fn share_after(&self, i: usize, reach: usize) -> Option<(Printed, usize)> {
-        let v = self.view;
-        let mut j = i;
-        while j < (i + reach).min(v.len()) {
-            if let Some(x) = self.share(j) {
-                return Some(x);
-            }
-            let skip = v.signs(j, &['=', '(', ':', ')', '-', '<', '≤', ',', '[', ']', '~', '\''])
-                || v.is(j, Classes::P.or(Classes::SIDED).or(Classes::NUMBER_WORD))
-                || v.any(j, ALPHA_LINKS)
-                || v.number(j).is_some_and(|x| x.count().is_some_and(|n| n <= 2));
-            if !skip {
-                return None;
-            }
-            j += 1;
-        }
-        None
-    }
-
-    fn taken(&self, i: usize) -> bool {
-        // A number inside a p that was read as a threshold is not told twice.
-        self.p.iter().zip(self.defines.iter()).any(|(x, &d)| d && x.first <= i && i <= x.last)
-    }
-
-    fn alpha(&mut self) {
-        let v = self.view;
-        let mut i = 0;
-        while i < v.len() {
-            let named = v.any(i, &["alpha", "α"]) && !v.sign(i.wrapping_sub(1), '(') || v.any(i, &["alpha", "α"]);
-            let one = i + 1 + usize::from(v.sign(i + 1, '-'));
-            let error = one + 1 + usize::from(v.sign(one + 1, '-'));
-            let type_one = v.any(i, &["type"])
-                && (v.any(one, &["i", "one"]) || v.number(one).and_then(Printed::count) == Some(1))
-                && v.any(error, &["error", "errors"]);
-            let bare = v.any(i, &["significance"]) && self.states_significance(i)
-                || v.any(i, &["error"]) && v.any(i + 1, &["probability"]);
-            // "significant at the 5 % level".
-            let at_level = v.any(i, &["level", "levels"])
-                && (v.sign(i.wrapping_sub(1), '%') || v.is(i.wrapping_sub(1), Classes::PERCENT))
-                && (0..v.len()).any(|j| v.is(j, Classes::SIGNIFICANCE) || v.any(j, &["test", "tests", "tested"]));
-            let level = v.any(i, &["significance"]) && v.any(i + 1, &["level", "levels", "threshold"])
-                || v.any(i, &["level"])
-                    && v.any(i + 1, &["of"])
-                    && (v.any(i + 2, &["significance"])
-                        || v.any(i + 2, &["statistical"]) && v.any(i + 3, &["significance"]));
-            if !(named || type_one || level || bare || at_level)
-                || named
-                    && v.any(i.wrapping_sub(1), &["cronbach", "cronbach's", "interferon", "cronbachs", "coefficient"])
-            {
-                i += 1;
-                continue;
-            }
-            let start = if named {
-                i + 1
-            } else if type_one {
-                error + 1
-            } else if bare || at_level {
-                i + 1
-            } else if v.any(i, &["level"]) {
-                i + 3
-            } else {
-                i + 2
-            };
-            let ahead = self.share_after(start, 10).filter(|x| x.0.value() <= 0.2 && x.0.value() > 0.0);
-            let ahead = ahead.filter(|x| !at_level && (named || type_one || level || limit(x.0)));
-            // "0.05 level of significance", "5 % significance level", "0.05 alpha".
-            let behind = (i.saturating_sub(6)..i).rev().find_map(|j| {
-                let (x, end) = self.share(j)?;
-                let linked = (end..i).all(|h| {
-                    v.sign(h, '-')
-                        || v.is(h, Classes::SIDED.or(Classes::NUMBER_WORD))
-                        || v.any(h, &["level", "statistical", "alpha", "of", "two", "one", "a", "probability", "of"])
-                });
-                // "the 95 % significance level" means 5 %.
-                let x = if x.value() >= 0.9 && x.value() < 1.0 && !named { complement(x)? } else { x };
-                (linked && x.value() <= 0.2 && x.value() > 0.0 && (!at_level || limit(x))).then_some((x, j))
-            });
-            let cronbach =
-                (i.saturating_sub(4)..i).any(|j| v.any(j, &["cronbach", "cronbach's", "consistency", "reliability"]));
-            if cronbach {
-                i += 1;
-                continue;
-            }
-            if let Some((x, first)) = behind {
-                let last = if named {
-                    i
-                } else if v.any(i, &["level"]) && v.any(i + 2, &["significance"]) {
-                    i + 2
-                } else if type_one {
-                    error
-                } else if bare || at_level {
-                    i
-                } else {
-                    (i + 1).min(v.len() - 1)
-                };
-                if !self.taken(first) {
-                    self.add(PlanningKind::Alpha, first, last, Some(x), None);
-                }
-                i = last + 1;
-            } else if let Some((x, end)) = ahead {
-                if !self.taken(end - 1) && !self.taken(end.saturating_sub(2)) {
-                    self.add(PlanningKind::Alpha, i, end - 1, Some(x), None);
-                }
-                i = end;
-            } else {
-                i = start;
-            }
-        }
-    }
-
-    /// "significance of 5 %", "significance was set at 0.05", "5 % significance".
-    fn states_significance(&self, i: usize) -> bool {
-        let v = self.view;
-        let verb = |j: usize| v.any(j, &["of", "set", "at", "defined", "accepted", "fixed", "assumed"]);
-        verb(i + 1) && !(v.any(i + 1, &["of"]) && v.is(i + 2, Classes::P))
-            || v.any(i + 1, &["was", "is", "will", "being"]) && (i + 2..i + 4).any(verb)
-            || v.sign(i.wrapping_sub(1), '%')
-    }
-
-    fn power(&mut self) {
-        let v = self.view;
-        let mut i = 0;
-        while i < v.len() {
-            let power = v.any(i, &["power", "powers", "powered"])
-                && !v.any(i + 1, &["output", "doppler", "spectrum", "spectral"]);
-            let beta = v.any(i, &["beta", "β"]) && !v.sign(i.wrapping_sub(1), '-') && !(v.sign(i + 1, '-'));
-            let type_two = v.any(i, &["type"]) && v.any(i + 1, &["ii", "two"]) && v.any(i + 2, &["error", "errors"]);
-            if power {
-                let behind = (i.saturating_sub(4)..i).rev().find_map(|j| {
-                    let x = v.number(j)?;
-                    let percent = v.sign(j + 1, '%') || v.is(j + 1, Classes::PERCENT) || v.any(j + 1, &["per"]);
-                    let end = if v.any(j + 1, &["per"]) {
-                        j + 3
-                    } else if percent {
-                        j + 2
-                    } else {
-                        j + 1
-                    };
-                    let linked = (end..i).all(|h| v.any(h, &["statistical", "study", "a", "of"]) || v.sign(h, '-'));
-                    (linked && plausible_power(x, percent)).then_some((x, j))
-                });
-                if let Some((x, first)) = behind {
-                    self.add(PlanningKind::Power, first, i, Some(x), None);
-                    i += 1;
-                    continue;
-                }
-                // "power of 80 %", "power (1 − β) was set at 0.8".
-                let mut j = i + 1;
-                while j < (i + 12).min(v.len()) {
-                    if let Some(x) = v.number(j) {
-                        let percent = v.sign(j + 1, '%') || v.is(j + 1, Classes::PERCENT) || v.any(j + 1, &["per"]);
-                        if plausible_power(x, percent)
-                            && !(v.tokens.get(j + 1).is_some_and(|t| t.is_word())
-                                && v.any(j + 1, &["w", "kw", "watts"]))
-                        {
-                            let last = if v.any(j + 1, &["per"]) {
-                                j + 2
-                            } else if percent {
-                                j + 1
-                            } else {
-                                j
-                            };
-                            self.add(PlanningKind::Power, i, last, Some(x), None);
-                            i = last;
-                            break;
-                        }
-                        if x.count() != Some(1) {
-                            break;
-                        }
-                    } else if !(v.signs(j, &['=', '(', ')', ':', '-', ',', '≥', '>', '[', ']'])
-                        || v.any(j, POWER_LINKS))
-                    {
-                        break;
-                    }
-                    j += 1;
-                }
-            } else if v.any(i, &["chance", "probability"])
-                && v.any(i + 1, &["of", "to"])
-                && (i + 2..i + 4).any(|j| v.any(j, &["detecting", "detect", "finding", "demonstrating"]))
-                && v.sign(i.wrapping_sub(1), '%')
-            {
-                // "a 90 % chance of detecting".
-                if let Some(x) = i.checked_sub(2).and_then(|j| v.number(j)).filter(|&x| plausible_power(x, true)) {
-                    self.add(PlanningKind::Power, i - 2, i, Some(x), None);
-                }
-            } else if beta || type_two {
-                let at = if beta { i + 1 } else { i + 3 };
-                let planned = type_two || (0..v.len()).any(|j| v.any(j, &["alpha", "α", "power", "sample"]));
-                // Beta in sample-size sentences: the power is its complement, printed as beta.
-                if planned
-                    && !(beta && v.any(i.wrapping_sub(2), &["1"])
-                        || v.number(i.wrapping_sub(2)).is_some() && v.sign(i.wrapping_sub(1), '-'))
-                    && let Some((x, end)) =
-                        self.share_after(at, 8).filter(|x| x.0.value() <= 0.5 && x.0.value() >= 0.01)
-                {
-                    let complement = complement(x);
-                    self.add(PlanningKind::Power, i, end - 1, complement, None);
-                    i = end;
-                    continue;
-                }
-            }
-            i += 1;
-        }
-    }
-
-    /// "Bonferroni correction", "Tukey post hoc tests", "adjusted for multiple comparisons".
-    fn multiplicity(&mut self) {
-        let v = self.view;
-        let mut i = 0;
-        while i < v.len() {
-            if !v.is(i, MULTIPLE) {
-                i += 1;
-                continue;
-            }
-            let multiple = v.any(i, &["multiple", "multiplicity"]);
-            let discovery = v.any(i, &["discovery"]);
-            let capitals = |i: usize| v.word(i).bytes().all(|b| b.is_ascii_uppercase());
-            let mut first = i;
-            let mut last = i;
-            if multiple {
-                let about = v.any(i, &["multiplicity"])
-                    || v.any(i + 1, &["comparisons", "comparison", "testing", "tests", "hypotheses", "hypothesis"]);
-                let adjust = (i.saturating_sub(7)..i).find(|&j| v.any(j, ADJUSTS));
-                let after =
-                    (i + 1..(i + 5).min(v.len())).find(|&j| v.any(j, ADJUSTS) || v.any(j, &["procedure", "test"]));
-                if !about || adjust.is_none() && after.is_none() {
-                    i += 1;
-                    continue;
-                }
-                first = adjust.unwrap_or(i);
-                last = after.unwrap_or(i).max(if v.any(i, &["multiplicity"]) { i } else { i + 1 });
-            } else if discovery {
-                if !(v.any(i.wrapping_sub(1), &["false"]) && v.any(i + 1, &["rate", "rates"])) {
-                    i += 1;
-                    continue;
-                }
-                first = i - 1;
-                last = i + 1;
-            } else if v.any(i, &["hierarchical", "closed", "sequential", "fixed"]) {
-                // An order of tests, not a model or a bottle.
-                let from = i + 1 + usize::from(v.sign(i + 1, '-'));
-                let test =
-                    (from..from + 1).find(|&j| v.any(j, &["testing", "test", "tests", "gatekeeping", "sequence"]));
-                let Some(test) = test.filter(|&t| {
-                    v.any(
-                        t + 1,
-                        &["procedure", "strategy", "sequence", "approach", "procedures", "principle", "scheme"],
-                    ) || v.any(t, &["testing", "gatekeeping"])
-                }) else {
-                    i += 1;
-                    continue;
-                };
-                let procedure = &["procedure", "strategy", "sequence", "approach", "procedures", "principle", "scheme"];
-                last = if v.any(test + 1, procedure) { test + 1 } else { test };
-            } else if v.any(i, &["lsd"])
-                && capitals(i)
-                && (0..v.len()).any(|j| v.any(j, &["anova", "post", "means", "comparisons", "difference"]))
-            {
-                // "separated by LSD".
-            } else if v.any(i, &["fdr", "hsd", "lsd"]) && !capitals(i)
-                || v.any(i, &["newman", "multiple", "dunn", "duncan", "holm", "hommel", "dunn's", "lsd"])
-                    && !(i + 1..i + 7).any(|j| v.any(j, TEST_WORDS) || v.is(j, MULTIPLE))
-            {
-                i += 1;
-                continue;
-            } else {
-                while last + 1 < v.len()
-                    && last < i + 8
-                    && (v.sign(last + 1, '-')
-                        || v.is(last + 1, MULTIPLE)
-                        || v.any(last + 1, TEST_WORDS)
-                        || v.any(last + 1, CORRECTION_LINKS)
-                        || v.sign(last + 1, '\''))
-                {
-                    last += 1;
-                }
-                while last > i && (v.signs(last, &['-', '\'']) || v.any(last, &["for", "and"])) {
-                    last -= 1;
-                }
-                // A test named alone in a bracket after a result is its test, and still the correction.
-            }
-            self.add(PlanningKind::Multiplicity, first, last, None, None);
-            i = last + 1;
-        }
-    }
-
-    /// "Fisher's least significant difference".
-    fn least_significant(&mut self) {
-        let v = self.view;
-        for i in 0..v.len() {
-            if v.any(i, &["least"])
-                && v.any(i + 1, &["significant", "significance"])
-                && v.any(i + 2, &["difference", "differences"])
-                && !self.out.iter().rev().take(4).any(|o| {
-                    o.sentence == v.id && o.what == PlanningKind::Multiplicity && o.span.end >= v.span(i, i + 2).start
-                })
-            {
-                self.add(PlanningKind::Multiplicity, i, i + 2, None, None);
-            }
         }
     }
 }
@@ -752,18 +493,6 @@ fn opens(v: &SentenceView, mark: usize) -> bool {
 fn limit(x: Printed) -> bool {
     const LIMITS: [f64; 9] = [0.1, 0.05, 0.025, 0.02, 0.01, 0.005, 0.0125, 0.001, 0.0001];
     LIMITS.iter().any(|l| (l - x.value()).abs() < 1e-9)
-}
-
-fn plausible_power(x: Printed, percent: bool) -> bool {
-    if percent { (50.0..100.0).contains(&x.value()) } else { x.places > 0 && (0.5..1.0).contains(&x.value()) }
-}
-
-/// 1 − β with the digits that β is printed with.
-fn complement(beta: Printed) -> Option<Printed> {
-    let places = i32::from(beta.places) - i32::from(beta.exponent);
-    let places = u8::try_from(places).ok().filter(|&p| p <= 6)?;
-    let one = 10u64.pow(u32::from(places));
-    (beta.digits < one).then_some(Printed { negative: false, digits: one - beta.digits, places, exponent: 0 })
 }
 
 #[cfg(test)]

@@ -154,6 +154,13 @@ pub(super) fn clauses(flat: &Flat) -> Vec<Clause> {
                 left.introduces = true;
                 let range = now.first..k;
                 new.planned |= flat.find(range.clone(), PLAN).is_some();
+                // "we cannot exclude that": neither found nor denied.
+                new.planned |= flat.find(range.clone(), Classes::NEGATION).is_some()
+                    && range
+                        .clone()
+                        .any(|j| flat.any(j, &["exclude", "rule", "know", "known", "surprising", "certain"]));
+                new.planned |=
+                    range.clone().any(|j| flat.any(j, &["ensure", "ensures", "ensured", "ensuring", "possible"]));
                 new.denied = flat.find(range.clone(), Classes::NEGATION).is_some();
                 new.others |= flat.find(range, OTHERS).is_some();
             } else {
@@ -190,12 +197,7 @@ fn cut_at(flat: &Flat, first: usize, k: usize, finite: bool) -> Option<(usize, L
         if flat.any(k + 1, &["which", "who"]) {
             return Some((k + 1, Lead::Which));
         }
-        if flat.any(k + 1, &["with", "without"])
-            && finite
-            && flat
-                .find(k + 2..k + 10, Classes::SIGNIFICANCE.or(Classes::DIFFERENCE).or(COMPARATIVE).or(Classes::SIMILAR))
-                .is_some()
-        {
+        if flat.any(k + 1, &["with", "without"]) && finite && verbless(flat, k + 2) {
             return Some((k + 1, Lead::With));
         }
         if flat.any(k + 1, PARTICIPLES) {
@@ -211,7 +213,11 @@ fn cut_at(flat: &Flat, first: usize, k: usize, finite: bool) -> Option<(usize, L
         return None;
     }
     if flat.any(k, &["that"]) && k > first && flat.is(k - 1, REPORT.or(PLAN))
-        || flat.any(k, &["that"]) && flat.any(k.wrapping_sub(1), &["evidence", "fact", "conclusion", "finding"])
+        || flat.any(k, &["that"])
+            && flat.any(
+                k.wrapping_sub(1),
+                &["evidence", "fact", "conclusion", "finding", "possible", "ensures", "ensure", "ensured"],
+            )
     {
         return Some((k + 1, Lead::That));
     }
@@ -220,14 +226,22 @@ fn cut_at(flat: &Flat, first: usize, k: usize, finite: bool) -> Option<(usize, L
         if flat.any(k, &["but"]) && flat.any(k + 1, &["not"]) && !(k + 2..k + 12).any(|j| flat.finite(j)) {
             return None;
         }
-        return Some((k + 1, Lead::Main));
+        // "rose in both groups but with no difference between them"
+        // and "found an effect of time but a non-significant one of feeding".
+        let hangs = finite
+            && (flat.any(k + 1, &["with", "without"]) && verbless(flat, k + 2)
+                || flat.any(k, &["but"])
+                    && flat.any(k + 1, &["a", "an"])
+                    && flat.find(k + 2..k + 5, Classes::SIGNIFICANCE).is_some());
+        return Some((k + 1, if hangs { Lead::With } else { Lead::Main }));
     }
     if finite && flat.is(k, Classes::AND) {
         if flat.any(k + 1, &["there", "no"]) && (k + 1..k + 14).any(|j| flat.finite(j)) {
             return Some((k + 1, Lead::Main));
         }
-        // "a decrease in A and no change in B": the verb is left out.
-        if flat.any(k + 1, &["no"]) && flat.find(k + 2..k + 4, Classes::DIFFERENCE).is_some() {
+        // "a decrease in A and no change in B", "and no evidence for differences": the verb is left out.
+        let evidence = flat.any(k + 2, &["evidence"]) && flat.find(k + 3..k + 6, Classes::DIFFERENCE).is_some();
+        if flat.any(k + 1, &["no"]) && (evidence || flat.find(k + 2..k + 4, Classes::DIFFERENCE).is_some()) {
             return Some((k + 1, Lead::With));
         }
         // "was lower in A and did not differ in B": the second verb says something else.
@@ -242,6 +256,12 @@ fn cut_at(flat: &Flat, first: usize, k: usize, finite: bool) -> Option<(usize, L
         return Some((k, Lead::Main));
     }
     None
+}
+
+/// "with no differences …": what follows `k` claims something without a verb.
+fn verbless(flat: &Flat, k: usize) -> bool {
+    let cues = Classes::SIGNIFICANCE.or(Classes::DIFFERENCE).or(COMPARATIVE).or(Classes::SIMILAR);
+    flat.find(k..k + 8, cues).is_some()
 }
 
 /// Participles that open a finding after a comma.

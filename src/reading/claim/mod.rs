@@ -5,6 +5,9 @@
 
 mod clause;
 mod cue;
+mod difference;
+mod sameness;
+mod significance;
 // Word lists are easier to read in full lines.
 #[rustfmt::skip]
 mod words;
@@ -52,7 +55,8 @@ pub fn read(view: &SentenceView, p: &[PExpression], out: &mut Vec<Claim>) {
         if clause.planned || clause.introduces {
             continue;
         }
-        let Some(found) = find(&flat, &clause, &facts) else { continue };
+        let found = find(&flat, &clause, &facts).or_else(|| elliptical(&flat, &clause, out[start..].last()));
+        let Some(found) = found else { continue };
         let (first, last) = extent(&flat, &clause, &found);
         let span = view.span(flat.token(first), flat.token(last));
         out.push(Claim {
@@ -65,6 +69,23 @@ pub fn read(view: &SentenceView, p: &[PExpression], out: &mut Vec<Claim>) {
         });
     }
     contrast(view, p, start, out);
+}
+
+/// "…, nor did the weight of the brood": what the clause before denied, said of something else.
+fn elliptical(flat: &Flat, clause: &Clause, before: Option<&Claim>) -> Option<Found> {
+    let nor = clause.first + usize::from(flat.is(clause.first, Classes::AND));
+    let between = flat.any(nor + 1, &["between", "among"])
+        && flat.find(nor + 2..(nor + 6).min(clause.end), Classes::GROUP).is_some();
+    let verb = flat.any(nor, &["nor", "neither"]) && (between || flat.is(nor + 1, FINITE));
+    let before = before.filter(|_| verb && nor + 2 < clause.end)?;
+    let kind = before.kind;
+    matches!(kind, ClaimKind::NoDifference | ClaimKind::NotSignificant).then_some(Found {
+        kind,
+        first: nor,
+        last: nor + 1,
+        direction: None,
+        says_significant: before.says_significant,
+    })
 }
 
 /// "improved in A (P = 0.03) but not in B (P = 0.12)": what the two p's say is read as a difference between arms.
@@ -363,6 +384,84 @@ mod tests {
         assert_eq!(kinds(text), [Difference, NotSignificant]);
         let text = "Brood area increased in both groups (p = 0.01), with no differences between groups.";
         assert_eq!(kinds(text), [Difference, NoDifference]);
+    }
+
+    #[test]
+    fn sameness_in_running_text() {
+        for (text, kind) in [
+            ("The need for feeding was also not reduced (p = 0.4).", ClaimKind::NoDifference),
+            ("If admitted, the length of stay in the apiary was not increased (p = 0.4).", ClaimKind::NoDifference),
+            ("There was no evidence that fondant exerted an effect on swarming.", ClaimKind::NoDifference),
+            ("There was similarity between the yields of the two apiaries.", ClaimKind::NoDifference),
+            ("Yields of honey were almost equal up to the second week.", ClaimKind::NoDifference),
+            ("Smoke did not attenuate the alarm of the colony.", ClaimKind::NoDifference),
+            ("Fondant did not result in any reduction of swarming.", ClaimKind::NoDifference),
+            ("Fondant had little effect on swarming.", ClaimKind::NoDifference),
+            ("Fed hives survived at a rate comparable to the control group (23%).", ClaimKind::NoDifference),
+            ("Stings were rare, mild and similar between the fed and control groups.", ClaimKind::NoDifference),
+            ("The survey showed similar mite control in the two groups.", ClaimKind::NoDifference),
+            ("Changes in weight were observed neither in the fed nor in the control hives.", ClaimKind::NoDifference),
+            ("The objective weighing did not show significant improvements.", ClaimKind::NotSignificant),
+            ("Statistical significance was not reached.", ClaimKind::NotSignificant),
+            ("The gain was no longer significant after the summer.", ClaimKind::NotSignificant),
+            ("Relief with fondant was similar to that of plain syrup (p = 0.4).", ClaimKind::NoDifference),
+            ("There remained no effect when losses were expressed per hive.", ClaimKind::NoDifference),
+            (
+                "This trial, the first to test changes in wax, failed to show a significant effect.",
+                ClaimKind::NotSignificant,
+            ),
+            ("Fondant was not inferior to syrup (p = 0.3).", ClaimKind::Equivalence),
+            ("A trend was noticed for the decrease of mites.", ClaimKind::Trend),
+        ] {
+            assert_eq!(one(text).0, kind, "{text}");
+        }
+        use ClaimKind::*;
+        let text = "None of the five scores changed significantly between the hives over time, nor did general vigour.";
+        assert_eq!(kinds(text), [NotSignificant, NotSignificant]);
+        let text = "Weight increased (p = 0.01) in fed and control hives but with no differences between the groups.";
+        assert_eq!(kinds(text), [Difference, NoDifference]);
+        let text = "Weight increased after feeding, but no clear dose-response was observed.";
+        assert_eq!(kinds(text), [Difference, NoDifference]);
+        let text = "There were no associations between feeding and vigour in any group, and no evidence for \
+                    differences in swarming.";
+        assert_eq!(kinds(text), [NoDifference, NoDifference]);
+    }
+
+    #[test]
+    fn methods_limits_and_risks_are_no_claims() {
+        for text in [
+            "Smoke poses no significant risk to the keeper.",
+            "The elevations were not greater than 2 times the upper limit of normal.",
+            "The change was below 15%, confirming that the processed samples were stable.",
+            "This result was statistically very similar to the result from the second analysis.",
+            "The inclusion of the covariates did not change the results.",
+            "We did not determine the benefits of syrup.",
+            "Levels of mites in both groups were comparable to levels found in the Highland Study of Apiaries.",
+            "No previous study has evaluated the effect of fondant on swarming.",
+            "When a significant interaction was detected, hives were compared in pairs.",
+            "The trial was statistically underpowered to detect worthwhile differences.",
+            "There were no changes to the protocol.",
+            "We did not use a veil to exclude effects of smell.",
+            "This ensures that the two programmes are similar in length.",
+            "It is possible that we failed to detect any change in weight.",
+            "Capsules were indistinguishable from the placebo.",
+        ] {
+            assert!(kinds(text).is_empty(), "{text}: {:?}", claims(text));
+        }
+    }
+
+    #[test]
+    fn changes_need_no_p_beside_them() {
+        for text in [
+            "Mite counts increased after the summer.",
+            "Both groups reduced their losses from spring to autumn.",
+            "Fondant induced a decrease in mite counts from 15 to 12.",
+        ] {
+            assert_eq!(one(text).0, ClaimKind::Difference, "{text}");
+        }
+        for text in ["Keepers who improved from spring to autumn were thanked.", "Hives with reduced brood were fed."] {
+            assert!(kinds(text).is_empty(), "{text}: {:?}", claims(text));
+        }
     }
 
     #[test]

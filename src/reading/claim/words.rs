@@ -33,7 +33,8 @@ pub(super) const GAINS: &[&str] = &[
 
 /// Between "no" and its noun these show that another noun is denied.
 pub(super) const BOUNDARY: &[&str] = &[
-    "with", "in", "was", "were", "had", "who", "that", "at", "on", "during", "adverse", "side",
+    "with", "in", "was", "were", "had", "who", "that", "at", "on", "during", "adverse", "side", "study", "studies",
+    "trial", "trials", "report", "reports", "data",
 ];
 
 /// Words that compare with other studies.
@@ -44,7 +45,7 @@ pub(super) const ELSEWHERE: &[&str] = &[
 /// Words of inclusion and treatment, not of results.
 pub(super) const ELIGIBILITY: &[&str] = &[
     "eligible", "excluded", "included", "inclusion", "exclusion", "enrolled", "recruited", "administered",
-    "instructed", "asked", "randomized", "randomised", "allocated", "assigned",
+    "instructed", "asked", "advised", "told", "randomized", "randomised", "allocated", "assigned",
 ];
 
 /// Verbs of inquiry after "to".
@@ -95,6 +96,8 @@ pub(super) const CLINICAL_NOUNS: &[&str] = &[
     "medical", "stenosis", "toxicity", "events", "event", "problems", "illness", "infection", "pain", "complication",
     "disability", "discomfort", "symptoms", "toxicities", "reactions", "haemorrhage", "hemorrhage", "hypotension",
     "hypoglycaemia", "hypoglycemia", "psychiatric", "safety", "limitations", "abnormalities", "concerns",
+    "haematoma", "hematoma", "infections", "injury", "injuries", "damage", "thrombosis", "arrhythmia", "arrhythmias",
+    "regurgitation", "leak", "leakage", "deviations", "deviation", "violations", "deficits", "cytotoxicity",
 ];
 
 /// Verbs of which significance is the object or the subject.
@@ -107,4 +110,41 @@ pub(super) const REACHES: &[&str] = &[
 pub(super) const CONSIDERED: &[&str] = &[
     "considered", "regarded", "deemed", "defined", "taken", "accepted", "declared", "judged", "denotes", "indicates",
     "indicated", "denoted", "represents", "interpreted", "designated",
+];
+
+/// Verbs that link a subject with "similar".
+pub(super) const LINKING: &[&str] = &["was", "were", "remained", "is", "are", "appeared", "seemed", "been", "stayed", "be"];
+
+/// After a negation these turn it into something else: "not only", "no longer".
+pub(super) const NOT_DENYING: &[&str] = &["only", "longer", "surprisingly", "just", "least", "yet", "because", "due"];
+
+/// What was not done, rather than not found: "we did not assess changes in …".
+pub(super) const NOT_DONE: &[&str] = &[
+    "determine", "assess", "measure", "examine", "evaluate", "study", "investigate", "test", "compare", "collect",
+    "record", "analyse", "analyze", "consider", "adjust", "control", "address", "explore", "specify", "calculate",
+    "assessed", "measured", "evaluated", "attributable", "explained", "designed", "powered", "wish", "intend",
+    "use", "used", "perform", "performed", "conduct", "apply", "exclude", "reflect", "mean", "imply", "represent",
+    "constitute", "preclude", "expect", "expected", "estimate", "account", "include", "included", "aim", "likely",
+];
+
+/// What a further analysis leaves as it was.
+pub(super) const CONCLUSIONS: &[&str] = &[
+    "results", "result", "conclusions", "conclusion", "findings", "estimates", "interpretation", "inferences",
+];
+
+/// Another analysis or report that something resembles.
+pub(super) const ANOTHER: &[&str] = &[
+    "result", "results", "analysis", "analyses", "finding", "findings", "estimates", "literature",
+];
+
+/// Adverbs before "equal" and "identical".
+pub(super) const NEARLY: &[&str] = &[
+    "almost", "nearly", "approximately", "roughly", "about", "virtually", "essentially", "practically", "quite",
+    "largely", "closely",
+];
+
+/// Nouns of a change with its direction.
+pub(super) const MOVES: &[&str] = &[
+    "increase", "decrease", "reduction", "improvement", "rise", "decline", "drop", "fall", "gain", "deterioration",
+    "increases", "decreases", "reductions", "improvements",
 ];

@@ -22,7 +22,21 @@ const NEEDED: &[&str] = &[
     "adequate",
 ];
 /// Remarks on a size that was had, not planned.
-const REMARKS: &[&str] = &["small", "smaller", "limited", "large", "larger", "modest", "low"];
+const REMARKS: &[&str] = &[
+    "small",
+    "smaller",
+    "limited",
+    "large",
+    "larger",
+    "modest",
+    "low",
+    "convenience",
+    "random",
+    "representative",
+    "purposive",
+    "consecutive",
+    "unequal",
+];
 const COMPUTED: &[&str] = &[
     "calculated",
     "estimated",
@@ -35,11 +49,30 @@ const COMPUTED: &[&str] = &[
     "selected",
     "powered",
 ];
-const ASSUMES: &[&str] = &["detect", "assuming", "assumption", "assumptions", "hypothesis", "difference"];
+const ASSUMES: &[&str] = &["detect", "assuming", "assumption", "assumptions", "difference"];
 const AIMS: &[&str] = &[
     "aimed", "aim", "planned", "plan", "intended", "intend", "target", "goal", "aiming", "sought", "decided",
-    "targeted",
+    "targeted", "will",
 ];
+/// A sample "of 40" is planned where one of these stands.
+const PLANNED: &[&str] = &[
+    "needed",
+    "required",
+    "targeted",
+    "planned",
+    "will",
+    "would",
+    "sufficient",
+    "necessary",
+    "estimated",
+    "calculated",
+    "detect",
+    "power",
+    "calculation",
+    "aimed",
+];
+const TAKEN_IN: &[&str] =
+    &["randomised", "randomized", "included", "enrolled", "recruited", "studied", "allocated", "enlisted"];
 const TAKES_IN: &[&str] = &[
     "recruit",
     "enrol",
@@ -92,9 +125,14 @@ impl Reader<'_, '_> {
         let planning_words = || (0..v.len()).any(|i| v.any(i, CALCULATES));
         let mut without_number = None;
         for i in 0..v.len() {
-            let size = v.any(i, &["sample"])
-                && (v.any(i + 1, &["size", "sizes"]) || v.sign(i + 1, '-') && v.any(i + 2, &["size"]));
-            if size {
+            let sample = v.any(i, &["sample", "samples"]);
+            let size = sample && (v.any(i + 1, &["size", "sizes"]) || v.sign(i + 1, '-') && v.any(i + 2, &["size"]))
+                || sample
+                    && v.any(i + 1, &["of"])
+                    && self.counts_people(i + 2)
+                    && (0..v.len()).any(|j| v.any(j, PLANNED));
+            // "a small sample size (19 lambs)", "a convenience sample of 40": what was had.
+            if size && !(i.saturating_sub(2)..i).any(|j| v.any(j, REMARKS)) {
                 // A number close behind: "sample size of 320 subjects", "sample size was calculated to be 60".
                 let number = (i + 2..(i + 14).min(v.len()))
                     .take_while(|&j| !v.signs(j, &[';', '.']))
@@ -127,25 +165,47 @@ impl Reader<'_, '_> {
                 return;
             }
         }
-        // "N … were needed": the clause with its assumption.
-        if self.planned_target() || !planning_words() || self.gives_power() {
+        // Without a number only the size itself could be spoken of.
+        if !(0..v.len()).any(|i| v.number(i).is_some() || v.is(i, Classes::NUMBER_WORD)) {
             return;
         }
+        // "N … were needed": the clause with its assumption.
+        if self.planned_target() || planning_words() && self.gives_power() {
+            return;
+        }
+        let planning_words = planning_words();
         for w in 0..v.len() {
+            let be = v.any(w.wrapping_sub(1), &["be", "is", "are", "was", "were"]);
+            let taken_in = v.any(w, TAKEN_IN) && be;
             let needed = v.any(w, NEEDED)
-                || v.any(w, &["randomised", "randomized", "included", "enrolled", "recruited", "studied", "allocated"])
-                    && v.any(w.wrapping_sub(1), &["be"])
+                || taken_in
+                    && v.any(w - 1, &["be"])
                     && (w.saturating_sub(4)..w)
-                        .any(|j| v.any(j, &["need", "needed", "had", "will", "required", "needs"]));
-            if !needed {
+                        .any(|j| v.any(j, &["need", "needed", "had", "have", "will", "required", "needs", "should"]))
+                // "assuming 10 % in A …, with 80 % power, 60 per group were enrolled"
+                || taken_in && (0..v.len()).any(|j| v.any(j, &["power"])) && (0..v.len()).any(|j| v.any(j, ASSUMES) || v.any(j, &["based"]));
+            // "200 keepers will be needed" says it without the words of a calculation.
+            let plain = be && (v.any(w, &["required", "needed", "necessary", "sufficient"]) || v.any(w - 1, &["be"]));
+            if !needed || !(planning_words || plain) {
                 continue;
             }
-            let behind = (w.saturating_sub(16)..w).rev().find(|&j| self.headcount(j) && self.people_after(j));
+            let behind = (w.saturating_sub(16)..w)
+                .rev()
+                .find(|&j| self.headcount(j) && self.people_after(j))
+                .map(|j| self.outside(j));
             let ahead = (w + 1..(w + 9).min(v.len())).find(|&j| self.headcount(j) && self.people_after(j));
-            let active = v.any(w, &["recruit", "enroll", "enrol", "require", "requires", "need", "needs"]);
+            let active = v.any(w, &["recruit", "enroll", "enrol", "require", "requires", "need", "needs"])
+                || !be && v.any(w, &["needed", "required"]) && (w + 1..w + 4).any(|j| self.headcount(j));
             let Some(number) = (if active { ahead.or(behind) } else { behind.or(ahead) }) else { continue };
             let (mut first, mut last) = (number.min(w), number.max(w));
             if v.any(w, &["recruit", "enroll", "enrol", "require"]) && ahead.is_none() {
+                continue;
+            }
+            // Without the words of a calculation: not "nine forms, and then were required", "all were required to walk".
+            let loose = number > w
+                || (number..w).any(|j| v.signs(j, &[',', ';', ':']))
+                || v.any(w + 1, &["to"]) && !v.any(w + 2, &["detect", "show", "demonstrate", "achieve", "reach"]);
+            if !planning_words && loose {
                 continue;
             }
             if first > 1 && v.any(first - 1, &["least"]) && v.any(first - 2, &["at"]) {
@@ -180,11 +240,21 @@ impl Reader<'_, '_> {
         let Some(i) = without_number else { return };
         let said = (i + 2..(i + 8).min(v.len())).find(|&j| v.any(j, COMPUTED));
         if let Some(said) = said.filter(|&s| (s + 1..v.len()).any(|j| v.any(j, ASSUMES))) {
+            // "calculations were performed with a program … to detect a change of 30 %": the assumption alone.
+            let detect = (said + 5..v.len()).find(|&j| v.any(j, &["detect"]) && v.any(j - 1, &["to"]));
+            let near = (said + 1..(said + 5).min(v.len())).any(|j| v.any(j, ASSUMES));
+            let (i, said) = match detect {
+                Some(at) if !near => (at - 1, at),
+                _ => (i, said),
+            };
             let last = (said + 1..(said + 20).min(v.len()))
                 .take_while(|&j| !v.signs(j, &[';', '.', ',', '(']) && !v.any(j, &["with", "and"]))
                 .last()
                 .unwrap_or(said);
-            self.add(PlanningKind::SampleSize, i, last, None, None);
+            // An assumption without a figure assumes nothing that could be checked.
+            if (i..=last).any(|j| v.number(j).is_some()) {
+                self.add(PlanningKind::SampleSize, i, last, None, None);
+            }
         }
     }
 
@@ -195,12 +265,17 @@ impl Reader<'_, '_> {
             if !v.any(i, AIMS) {
                 continue;
             }
-            let verb = (i + 1..(i + 6).min(v.len())).find(|&j| v.any(j, TAKES_IN) || j == i + 1 && v.any(j, &["of"]));
-            let number = verb.and_then(|w| {
-                (w + 1..(w + 8).min(v.len()))
-                    .take_while(|&j| !v.signs(j, &[';', ',', '(']))
-                    .find(|&j| self.headcount(j) && self.people_after(j))
-            });
+            // "will include": a protocol's plan, where the number follows close.
+            let will = v.any(i, &["will"]);
+            let verb = (i + 1..(i + if will { 2 } else { 9 }).min(v.len()))
+                .find(|&j| v.any(j, TAKES_IN) || v.any(i, &["goal", "target"]) && v.any(j, &["be", "was", "is"]));
+            let number = verb
+                .filter(|&w| !v.any(w, &["of"]) || v.any(i, &["goal", "target"]) || w == i + 1 && !will)
+                .and_then(|w| {
+                    (w + 1..(w + if will { 5 } else { 8 }).min(v.len()))
+                        .take_while(|&j| !v.signs(j, &[';', ',', '(']))
+                        .find(|&j| self.headcount(j) && self.people_after(j))
+                });
             if let Some(number) = number {
                 let people = (number + 1..(number + 6).min(v.len())).find(|&j| v.any(j, PEOPLE));
                 let last = people.unwrap_or(number);
@@ -215,13 +290,23 @@ impl Reader<'_, '_> {
     fn gives_power(&mut self) -> bool {
         let v = self.view;
         for w in 1..v.len() {
-            let gives =
-                v.any(w, GIVES) && (w + 1..(w + 12).min(v.len())).any(|j| v.any(j, &["power", "detect", "detection"]));
+            // "with 60 per group there was an 80 % chance to detect"
+            let there = v.any(w, &["there"]) && v.any(w + 1, &["was", "is", "will", "would", "were"]);
+            let gives = (there || v.any(w, GIVES))
+                && (w + 1..(w + 12).min(v.len())).any(|j| v.any(j, &["power", "detect", "detection"]));
             if !gives {
                 continue;
             }
-            let number = (w.saturating_sub(14)..w).rev().find(|&j| self.headcount(j) && self.people_after(j));
-            let Some(number) = number else { continue };
+            let reach = if there { 22 } else { 14 };
+            let number = (w.saturating_sub(reach)..w).rev().find(|&j| self.headcount(j) && self.people_after(j));
+            let Some(number) = number.map(|j| self.outside(j)) else {
+                // "there was 80 % power to show it with 214 hives in A and 107 in B"
+                let ahead = (w + 1..(w + 20).min(v.len()))
+                    .find(|&j| v.any(j, &["with"]) && self.headcount(j + 1) && self.people_after(j + 1));
+                let Some(with) = ahead else { continue };
+                self.add(PlanningKind::SampleSize, w, (with + 2).min(v.len() - 1), self.count(with + 1), None);
+                return true;
+            };
             let last = (w + 1..(w + 30).min(v.len()))
                 .take_while(|&j| !v.signs(j, &[',', ';', '.', '(']) && !v.any(j, &["with", "at", "assuming"]))
                 .last()
@@ -232,9 +317,27 @@ impl Reader<'_, '_> {
         false
     }
 
+    /// The number that one in a bracket explains: 80 in "80 hives (40 per group)".
+    fn outside(&self, j: usize) -> usize {
+        let v = self.view;
+        let open = (j.saturating_sub(4)..j).rev().find(|&h| v.signs(h, &['(', ')']));
+        let Some(open) = open.filter(|&h| v.sign(h, '(')) else { return j };
+        (open.saturating_sub(4)..open).rev().find(|&h| self.headcount(h)).unwrap_or(j)
+    }
+
+    /// A number of people at `i` or a word or two later: "of n = 40", "of at least 40 hives".
+    fn counts_people(&self, i: usize) -> bool {
+        (i..i + 4).any(|j| self.headcount(j) && self.people_after(j))
+    }
+
     /// A whole number that may count people, not a percent, year or measure.
     fn headcount(&self, j: usize) -> bool {
         let v = self.view;
+        let ordinal = !v.spaced(j + 1) && v.any(j + 1, &["th", "st", "nd", "rd"])
+            || v.any(j.wrapping_sub(1), &["at", "first"]) && !v.any(j.wrapping_sub(2), &["size", "sizes"]);
+        if ordinal {
+            return false;
+        }
         let Some(n) = v.number(j).and_then(Printed::count) else {
             return v.is(j, Classes::NUMBER_WORD) && lexicon::number_word(v.word(j)).is_some_and(|n| n > 5);
         };
@@ -257,6 +360,8 @@ impl Reader<'_, '_> {
 
     fn people_after(&self, j: usize) -> bool {
         let v = self.view;
-        (j + 1..(j + 6).min(v.len())).any(|h| v.is(h, Classes::GROUP) || v.any(h, PEOPLE))
+        // "n = 64"
+        v.sign(j.wrapping_sub(1), '=') && v.any(j.wrapping_sub(2), &["n"])
+            || (j + 1..(j + 6).min(v.len())).any(|h| v.is(h, Classes::GROUP) || v.any(h, PEOPLE))
     }
 }

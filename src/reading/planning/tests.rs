@@ -122,3 +122,54 @@ fn other_ways_to_print_a_plan() {
         assert!(planning(text).0.is_empty(), "{text}: {:?}", planning(text).0);
     }
 }
+
+#[test]
+fn sample_sizes_in_further_words() {
+    use PlanningKind::{Alpha, Multiplicity, Power, SampleSize, Sided, Threshold};
+    for (text, kind, value) in [
+        ("This indicated that n = 180 per group (total 360) were required.", SampleSize, Some(180.0)),
+        ("Approximately 90 hives will be needed in each of the two groups.", SampleSize, Some(90.0)),
+        ("A total sample of 120 hives is targeted for recruitment.", SampleSize, Some(120.0)),
+        ("Allowing for losses, we will recruit a total of 40 hives.", SampleSize, Some(40.0)),
+        ("Our recruitment target of n = 64 allowed for losses.", SampleSize, Some(64.0)),
+        ("Assuming 10% losses, 80 hives (40 per group) should be sufficient.", SampleSize, Some(80.0)),
+        ("With 60 hives per group there was an 80% chance to detect a gain of 4 kg.", SampleSize, Some(60.0)),
+        ("With 60 hives per group there was an 80% chance to detect a gain of 4 kg.", Power, Some(80.0)),
+        ("We had 80% power to show a gain with 107 hives in either group.", SampleSize, Some(107.0)),
+        ("Sample size calculations were done with a program for bees to detect a gain of 30%.", SampleSize, None),
+        ("We calculated that we needed 77 hives per arm to detect a gain of 4 kg.", SampleSize, Some(77.0)),
+        ("Statistical power was reduced, but remained over 80%.", Power, Some(80.0)),
+        ("We set alpha to 5% and beta to 80%.", Power, Some(0.8)),
+        ("With p = 0.05 and a power of 90%, 30 hives per group were needed.", Alpha, Some(0.05)),
+        ("Using a power of 95%, detection of a difference (p < 0.05) required 24 hives.", Alpha, Some(0.05)),
+        ("The sample size allowed 80% power with a bilateral test.", Sided, None),
+        ("Statistical significance was declared at the 0.05 level.", Alpha, Some(0.05)),
+        ("Statistical significance was conferred at p < 0.05.", Threshold, Some(0.05)),
+        ("The threshold was set at p < 0.01, with a family-wise correction.", Threshold, Some(0.01)),
+        (
+            "Gains were considered statistically significant when the probability of error was 0.05 or less.",
+            Threshold,
+            Some(0.05),
+        ),
+        ("Means were compared with the Newman-Keuls test.", Multiplicity, None),
+    ] {
+        let (found, _) = planning(text);
+        assert!(found.iter().any(|x| x.0 == kind && x.2 == value), "{text}: {found:?}");
+    }
+    for text in [
+        "This trial had a very small sample size (19 hives).",
+        "A convenience sample of 40 hives was weighed.",
+        "The sample size in the 6th month was lower.",
+        "The correlation of peak power was 0.96.",
+        "All keepers were required to weigh 12 hives.",
+        "Statistical significance was reached at 12 weeks (p < 0.05).",
+        "Bilateral tests of hearing were done in 12 keepers.",
+        "The sample size calculation was based on repeated weights.",
+    ] {
+        let (found, defines) = planning(text);
+        assert!(found.iter().all(|x| x.0 == Sided) && !defines.contains(&true), "{text}: {found:?}");
+    }
+    // One level, printed once, is told once.
+    let (found, _) = planning("Two endpoints were controlled at the \u{3b1} = 0.05 type I error rate.");
+    assert_eq!(found.iter().filter(|x| x.0 == Alpha).count(), 1, "{found:?}");
+}

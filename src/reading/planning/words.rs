@@ -35,7 +35,7 @@ pub(super) const THRESHOLD_LINKS: &[&str] = &[
     "priori", "will", "are", "being", "using", "this", "these", "study", "threshold", "results", "result",
     "test", "comparisons", "comparison", "analysis", "throughout", "every", "each", "both", "conventional",
     "nominal", "criterion", "cutoff", "cut", "off", "had", "have", "that", "corrected", "adjusted", "obtained",
-    "calculated", "from", "then", "there", "greater", "equal", "or", "set",
+    "calculated", "from", "then", "there", "greater", "equal", "or", "set", "error", "chance",
 ];
 
 /// What an interval does to the null value.
@@ -59,6 +59,26 @@ pub(super) const POWER_LINKS: &[&str] = &[
     "and", "equal", "greater", "than", "over", "fixed", "analysis", "desired",
     "higher", "in", "excess", "were", "between", "would", "will", "study", "statistical", "minimum", "more",
     "calculated", "estimated", "assumed", "around", "from", "have", "having", "test", "powers", "powered",
+    "reduced", "remained", "but", "still", "only", "exceeded", "exceeding", "above", "fixed", "chosen", "had",
+    "increased", "thus", "therefore", "given", "being", "β",
+];
+
+/// Before "power" they make it a quantity of muscles, lamps and models.
+pub(super) const OTHER_POWERS: &[&str] = &[
+    "peak", "mean", "muscle", "aerobic", "anaerobic", "explosive", "average", "maximal", "maximum", "predictive",
+    "discriminatory", "discriminative", "explanatory", "output", "optical", "refractive", "laser", "leg", "relative",
+    "absolute", "spectral", "alpha", "theta", "delta", "gamma", "purchasing", "critical", "diagnostic", "resolving",
+];
+
+/// Words close before a level that a sample size is planned for.
+pub(super) const PLANS_LEVEL: &[&str] = &[
+    "difference", "differences", "alpha", "α", "level", "error", "significance", "with", "at", "and", "for", "using",
+    "significant", "assuming", "type", "i",
+];
+
+/// Words of a calculation of sample size.
+pub(super) const SIZES: &[&str] = &[
+    "sample", "detect", "detection", "required", "needed", "calculated", "calculation", "powered", "detecting",
 ];
 
 /// Words of a sample-size calculation.
@@ -84,7 +104,8 @@ pub(super) const ADJUSTS: &[&str] = &[
     "adjusted", "adjustment", "adjustments", "corrected", "correction", "corrections", "correct", "adjust",
     "adjusting", "correcting", "accounting", "account", "controlled", "control",
     "protect", "avoid", "inflation", "inflated", "guard", "minimize", "minimise", "compensate", "allow",
-    "allowance", "allowing", "reduce", "address", "preserve", "protecting", "avoiding",
+    "allowance", "allowing", "reduce", "address", "preserve", "protecting", "avoiding", "constrain", "limit",
+    "maintain", "limiting", "preserving", "controlling",
 ];
 
 /// Words.
@@ -115,4 +136,10 @@ pub(super) const SIGN_NAMES: &[&str] = &[
 pub(super) const SIGN_VERBS: &[&str] = &[
     "indicate", "indicates", "denote", "denotes", "represent", "represents", "differ", "different", "show", "mark",
     "marks", "mean", "means", "significant", "significantly", "signify",
+];
+
+/// What a result does with significance.
+pub(super) const GOT: &[&str] = &[
+    "reached", "achieved", "found", "observed", "seen", "attained", "noted", "obtained", "detected", "lost", "not",
+    "shown", "present", "evident",
 ];
