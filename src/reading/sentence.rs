@@ -477,10 +477,16 @@ fn split_sentences(block: &Block, number: u32, first: usize, scan: &mut Scan) {
             let capital = word.chars().count() == 1 && word.chars().all(char::is_uppercase);
             // `n.s.` and `s.d.` end sentences as often as not; `P.` and initials do not.
             let inner = i >= 2 && tokens[i - 2].is_sign('.') && !before.spaced && before.is_word();
-            before.is_word()
-                && !inner
-                && (capital && before.spaced && next < last && tokens[next].is_word()
-                    || ABBREVIATIONS.iter().any(|a| a.eq_ignore_ascii_case(word)))
+            // `i.e. 5.2` and `e.g. 5.2` go on.
+            let that_is = inner && matches!(word, "e" | "g") && i >= 3 && {
+                let first = &tokens[i - 3];
+                matches!(&block.text[first.start as usize..first.end as usize], "i" | "e" | "I" | "E")
+            };
+            that_is
+                || before.is_word()
+                    && !inner
+                    && (capital && before.spaced && next < last && tokens[next].is_word()
+                        || ABBREVIATIONS.iter().any(|a| a.eq_ignore_ascii_case(word)))
         };
         if opens && !abbreviated {
             push_sentence(number, start, next, scan);
