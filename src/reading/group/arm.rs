@@ -105,15 +105,16 @@ fn origin_span(origin: Origin) -> Option<Span> {
 
 /// The groups that a sentence names with their sizes, in order.
 pub fn find(view: &SentenceView) -> Vec<Named> {
-    let mut telling = false;
-    let mut counts = 0;
-    for k in 0..view.len() {
-        counts += usize::from(view.number(k).is_some() || view.is(k, Classes::NUMBER_WORD));
-        telling = telling || view.any(k, TELLING);
+    // Sizes come in twos, or with their sign.
+    let (mut counts, mut signed) = (0, false);
+    for (k, token) in view.tokens.iter().enumerate() {
+        counts += usize::from(token.number().is_some_and(|p| p.places == 0) || token.is(Classes::NUMBER_WORD));
+        signed = signed || token.is(Classes::N) && view.sign(k + 1, '=');
     }
-    if counts == 0 {
+    if counts < 2 && !signed {
         return Vec::new();
     }
+    let telling = (0..view.len()).any(|k| view.tokens[k].is_word() && view.any(k, TELLING));
     let mut found = Vec::new();
     if telling {
         found = with_n(view);
