@@ -118,13 +118,13 @@ pub fn find(view: &SentenceView) -> Vec<Named> {
     let mut found = Vec::new();
     if telling {
         found = with_n(view);
-        // `hives (n = 60) … to syrup (n = 31) or water (n = 29)`: the whole is no arm.
         // "n = 30 per group" is as often a plan.
         let planned =
             &["power", "required", "detect", "needed", "would", "will", "calculated", "calculation", "estimated"];
         if found.iter().any(|a| a.label == EACH) && (0..view.len()).any(|k| view.any(k, planned)) {
             found.retain(|a| a.label != EACH);
         }
+        // `hives (n = 60) … to syrup (n = 31) or water (n = 29)`: the whole is no arm.
         let sum: u64 = found.iter().skip(1).take(2).map(|a| a.n).sum();
         if found.len() >= 3 && found[0].n == sum {
             found.remove(0);
