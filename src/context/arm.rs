@@ -1,77 +1,26 @@
 //! Arms with their sizes, and how many took part in all.
 
-use super::words::{BEFORE, NO_ARM};
 use super::{Arm, Context, Stated};
 use crate::reading::SentenceView;
+use crate::reading::group::arm::{self, NO_ARM};
 use crate::reading::lexicon::{self, Classes};
-
-/// Words that name a group's members or the group itself, and end its name.
-const GROUP: &[&str] =
-    &["group", "groups", "arm", "arms", "controls", "control", "placebo", "condition", "cohort", "treatment"];
 
 /// More arms than any study has; text made to hurt has more.
 const MOST: usize = 100;
 
 /// Appends the arms that a sentence introduces (`the placebo group (n = 24)`), and the number randomised.
 pub(super) fn arms(view: &SentenceView, context: &mut Context) {
-    let mut found: Vec<Arm> = Vec::new();
-    for i in 0..view.len() {
-        // `n = 24` first thing within a bracket.
-        if !(view.is(i, Classes::N) && view.sign(i + 1, '=') && i > 1) {
-            continue;
-        }
-        let Some(n) = view.number(i + 2).and_then(|x| x.count()).filter(|&n| n > 1) else { continue };
-        let closes = view.signs(i + 3, &[')', ']', ';', ',']);
-        if !view.signs(i - 1, &['(', '[']) || !closes || view.signs(i + 4, &['/', '%']) {
-            continue;
-        }
-        let Some(label) = label_before(view, i - 1) else { continue };
-        found.push(Arm { label, n, span: view.span(i, i + 2) });
-    }
-    // One `(n = …)` by itself is as often a subgroup; two in a sentence, or a word for a group, name arms.
-    let certain = found.len() >= 2;
-    for arm in found {
-        let worded = certain || says_group(view, arm.span.start);
-        let known = context.arms.iter().any(|a| a.label.eq_ignore_ascii_case(&arm.label));
-        if worded && !known && context.arms.len() < MOST {
-            context.arms.push(arm);
+    let found: Vec<_> = arm::find(view).into_iter().filter(|a| a.label != arm::EACH).collect();
+    // Who left a study makes no arm of it.
+    let leaving = !found.is_empty() && arm::tells_of_leaving(view);
+    for named in found.into_iter().filter(|_| !leaving) {
+        let known = context.arms.iter().any(|a| a.label.eq_ignore_ascii_case(&named.label));
+        if !known && context.arms.len() < MOST {
+            let span = named.span(view);
+            context.arms.push(Arm { label: named.label, n: named.n, span });
         }
     }
     randomised(view, context);
-}
-
-/// A word for a group right before the bracket.
-fn says_group(view: &SentenceView, offset: u32) -> bool {
-    let i = view.token_at(offset);
-    (i.saturating_sub(3)..i).any(|j| view.any(j, GROUP))
-}
-
-/// The name before a bracket, without "group": at most six words back to an article, preposition or mark.
-fn label_before(view: &SentenceView, bracket: usize) -> Option<String> {
-    let mut end = bracket;
-    while end > 0 && view.any(end - 1, &["group", "groups", "arm", "arms", "condition", "cohort"]) {
-        end -= 1;
-    }
-    // "Group A (n = 12)" keeps its letter.
-    let mut first = end;
-    while first > 0 && end - first < 6 {
-        let j = first - 1;
-        let joins = view.signs(j, &['-', '+', '/']) && j > 0;
-        if !(view.tokens[j].is_word() || view.number(j).is_some() || joins) || view.any(j, BEFORE) {
-            break;
-        }
-        first = j;
-    }
-    while first < end && view.signs(first, &['-', '+', '/']) {
-        first += 1;
-    }
-    if first == end {
-        return None;
-    }
-    if (first..end).any(|j| view.any(j, NO_ARM)) || !view.tokens[first..end].iter().any(|t| t.is_word()) {
-        return None;
-    }
-    Some(view.quote(first, end - 1).to_string())
 }
 
 /// "60 patients were randomised": the total, said once and only of all.

@@ -5,9 +5,6 @@ mod arm;
 mod size;
 mod statement;
 pub mod test_name;
-// Word lists are easier to read in full lines.
-#[rustfmt::skip]
-mod words;
 
 use crate::manuscript::{BlockKind, Manuscript, SectionKind};
 use crate::printed::Printed;

@@ -1,81 +1,28 @@
 //! Group sizes that a sentence leaves to an earlier one: "pain was lower with the sling than without (5.2 ± 1.1 v 6.1 ± 1.0)",
 //! where the arms were introduced as `sling (n = 24)` and `usual care (n = 25)`.
 
-use super::{Arm, Context};
+use super::Context;
 use crate::manuscript::Manuscript;
-use crate::printed::Printed;
-use crate::reading::{Figure, Group, Inference, Origin, Readings, Scan, SentenceView};
+use crate::reading::group::named::{self, Known};
+use crate::reading::{Inference, Readings, Scan};
 
-/// Fills the sizes of two groups that a sentence sets side by side, where it names two arms of known size and the order
-/// of names and figures leaves no choice. Such a size is inferred: patients may have been lost since.
+/// Fills the sizes of groups that a sentence sets side by side, where it names arms of known size and the order of names
+/// and figures leaves no choice.
 pub fn fill_sizes(manuscript: &Manuscript, scan: &Scan, readings: &mut Readings, context: &Context) {
     // More arms than a handful are subgroups, which share their names with others.
     if !(2..=4).contains(&context.arms.len()) {
         return;
     }
     let groups = &mut readings.groups;
-    // A summary that the text gives to an arm by its full name.
-    for group in groups.iter_mut().filter(|g| g.n.is_none() && g.events.is_none()) {
-        let own = |arm: &&Arm| arm.label.len() > 1 && arm.label.eq_ignore_ascii_case(&group.label);
-        if let Some(arm) = context.arms.iter().find(own) {
-            group.n = Some(size(arm));
-        }
-    }
+    let known: Vec<Known> = context.arms.iter().map(|a| Known { label: &a.label, n: a.n, span: a.span }).collect();
     let mut from = 0;
     while from < groups.len() {
         let sentence = groups[from].sentence;
         let to = from + groups[from..].iter().take_while(|g| g.sentence == sentence).count();
-        if let [a, b] = &mut groups[from..to]
-            && a.n.is_none()
-            && b.n.is_none()
-            && a.mean.is_some() == b.mean.is_some()
-        {
-            let view = scan.view(manuscript, sentence);
-            if let Some((first, second)) = arms_in_order(&view, a, b, &context.arms) {
-                a.n = Some(size(first));
-                b.n = Some(size(second));
-            }
+        let here = &mut groups[from..to];
+        if here.iter().any(|g| g.n.is_none() && g.events.is_none() && g.has_figure()) {
+            named::assign(&scan.view(manuscript, sentence), here, &known, Inference::ArmSize);
         }
         from = to;
     }
-}
-
-fn size(arm: &Arm) -> Figure {
-    Figure { printed: Printed::whole(arm.n), origin: Origin::Inferred(Inference::ArmSize, arm.span) }
-}
-
-/// The arms of the two groups: both named before the figures, both after them, or each beside its own.
-fn arms_in_order<'a>(view: &SentenceView, a: &Group, b: &Group, arms: &'a [Arm]) -> Option<(&'a Arm, &'a Arm)> {
-    let mut named: Vec<(usize, &Arm)> = Vec::new();
-    for arm in arms {
-        let places: Vec<usize> = (0..view.len()).filter(|&i| stands_at(view, i, &arm.label)).collect();
-        match places[..] {
-            [] => {}
-            [at] => named.push((at, arm)),
-            // named twice: which mention goes with which figure is open
-            _ => return None,
-        }
-    }
-    named.sort_by_key(|n| n.0);
-    let [(one, first), (two, second)] = named[..] else { return None };
-    let (start_a, start_b) = (view.token_at(a.span.start), view.token_at(b.span.start));
-    let before = two < start_a;
-    let after = one > start_b;
-    let beside = one < start_a && start_a < two && two < start_b || start_a < one && one < start_b && start_b < two;
-    (before || after || beside).then_some((first, second))
-}
-
-/// Whether the words of a label stand at token `i`.
-fn stands_at(view: &SentenceView, i: usize, label: &str) -> bool {
-    let mut at = i;
-    for word in label.split(|c: char| c.is_whitespace() || c == '-').filter(|w| !w.is_empty()) {
-        if at > i && view.sign(at, '-') {
-            at += 1;
-        }
-        if !view.eq(at, word) {
-            return false;
-        }
-        at += 1;
-    }
-    at > i
 }

@@ -25,7 +25,9 @@ impl SectionKind {
             Some(SectionKind::Abstract)
         } else if starts(&["introduction", "background", "objective", "aim", "purpose", "rationale"]) {
             Some(SectionKind::Introduction)
-        } else if starts(&["reference", "bibliograph", "literature cited"]) {
+        } else if starts(&["references", "reference list", "bibliograph", "literature cited"])
+            || t.trim_end() == "reference"
+        {
             Some(SectionKind::References)
         } else if starts(&["method", "material", "patients and", "subjects and", "participants and", "experimental"])
             || holds(&["methods", "statistical analys", "sample size", "study design", "data analys", "statistics"])

@@ -222,6 +222,15 @@ impl Group {
             one_expression: false,
         }
     }
+
+    /// Whether anything is told of the group besides its name and size.
+    pub fn has_figure(&self) -> bool {
+        self.events.is_some()
+            || self.percent.is_some()
+            || self.mean.is_some()
+            || self.median.is_some()
+            || !self.spread.is_empty()
+    }
 }
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -404,7 +413,7 @@ fn read_paragraph(
         declared.note(&view);
         group::total::mentions(&view, &mut mentions);
     }
-    let mut setting = group::Setting { section, declared };
+    let mut setting = group::Setting { section, declared, limits: None };
     let mut named = estimate::Named::default();
     let (first_p, first_group) = (readings.p.len(), readings.groups.len());
     for id in sentences {
@@ -412,7 +421,10 @@ fn read_paragraph(
     }
     let p = &readings.p[first_p..];
     let tested = |sentence| !within(p, |p| p.sentence, sentence..sentence + 1).is_empty();
-    group::total::fill(&mut readings.groups[first_group..], &mentions, tested);
+    let groups = &mut readings.groups[first_group..];
+    group::named::fill(groups, |id| scan.view(manuscript, id));
+    let speaks_of_arms = |id| group::total::speaks_of_arms(&scan.view(manuscript, id));
+    group::total::fill(groups, &mentions, tested, speaks_of_arms);
 }
 
 fn read_sentence(
@@ -435,7 +447,9 @@ fn read_sentence(
     let first_interval = readings.intervals.len();
     named.level = interval::read(view, &mut taken, &mut readings.intervals).or(named.level);
     statistic::read(view, &mut taken, &mut readings.statistics);
+    let first_estimate = readings.estimates.len();
     estimate::read(view, named, &mut taken, &mut readings.intervals, first_interval, &mut readings.estimates);
-    group::read(view, setting, &mut taken, &mut readings.groups);
+    let (intervals, estimates) = (&readings.intervals[first_interval..], &readings.estimates[first_estimate..]);
+    group::read(view, setting, intervals, estimates, &mut taken, &mut readings.groups);
     claim::read(view, &p, &mut readings.claims);
 }

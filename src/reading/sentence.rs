@@ -481,10 +481,12 @@ fn split_sentences(block: &Block, number: u32, first: usize, scan: &mut Scan) {
             let capital = word.chars().count() == 1 && word.chars().all(char::is_uppercase);
             // `n.s.` and `s.d.` end sentences as often as not; `P.` and initials do not.
             let inner = i >= 2 && tokens[i - 2].is_sign('.') && !before.spaced && before.is_word();
-            let first = i.checked_sub(3).filter(|_| inner).map(|k| &tokens[k]);
-            let first = first.map(|t| &block.text[t.start as usize..t.end as usize]);
-            let latin = matches!((first, word), (Some("i"), "e") | (Some("e"), "g"));
-            latin
+            // `i.e. 5.2` and `e.g. 5.2` go on.
+            let that_is = inner && matches!(word, "e" | "g") && i >= 3 && {
+                let first = &tokens[i - 3];
+                matches!(&block.text[first.start as usize..first.end as usize], "i" | "e" | "I" | "E")
+            };
+            that_is
                 || before.is_word()
                     && !inner
                     && (capital && before.spaced && next < last && tokens[next].is_word()

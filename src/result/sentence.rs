@@ -80,7 +80,9 @@ fn segments(view: &SentenceView, members: &Members, readings: &Readings) -> Vec<
     let number = |span: Span| ends.partition_point(|&e| e <= span.start);
     members.intervals.clone().for_each(|i| segments[number(readings.intervals[i].span)].intervals.push(i));
     members.statistics.clone().for_each(|i| segments[number(readings.statistics[i].span)].statistics.push(i));
-    members.groups.clone().for_each(|i| segments[number(readings.groups[i].span)].groups.push(i));
+    // A group of which only the size is told is compared with none.
+    let groups = members.groups.clone().filter(|&i| readings.groups[i].has_figure());
+    groups.for_each(|i| segments[number(readings.groups[i].span)].groups.push(i));
     members.estimates.clone().for_each(|i| segments[number(readings.estimates[i].span)].estimates.push(i));
     hand_back(&mut segments, readings);
     // Figures behind the last p, where none stand before it: `p < 0.001 (5.2 ± 1.1 v 6.1 ± 1.0)`.

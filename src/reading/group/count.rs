@@ -3,10 +3,9 @@
 
 use super::super::lexicon::{self, Classes};
 use super::super::sentence::SentenceView;
-use super::super::token::{Style, TokenKind};
+use super::super::token::Style;
 use super::super::{Figure, Inference, Origin};
-use super::{Draft, Setting, empty, printed};
-use crate::manuscript::SectionKind;
+use super::{Draft, Setting, empty, printed, share};
 use crate::printed::Printed;
 
 /// A count or percentage summary starting at token `i`.
@@ -27,7 +26,9 @@ pub(super) fn count_at(view: &SentenceView, i: usize) -> Option<(u64, usize)> {
         let glued = glued && !(view.sign(i - 1, '-') && view.spaced(i - 1));
         return p.count().filter(|_| !glued && !after_label(view, i)).map(|c| (c, i + 1));
     }
-    if !token.is(Classes::NUMBER_WORD) {
+    // "under-five children"
+    let inner = i > 1 && view.sign(i - 1, '-') && !view.spaced(i) && view.tokens[i - 2].is_word();
+    if !token.is(Classes::NUMBER_WORD) || inner && !view.is(i - 2, Classes::NUMBER_WORD) {
         return None;
     }
     let (mut total, mut part, mut at, mut any) = (0u64, 0u64, i, false);
@@ -64,12 +65,12 @@ fn after_label(view: &SentenceView, i: usize) -> bool {
     i > 0 && view.is(i - 1, Classes::LABEL) && !view.any(i - 1, &["no", "number"])
 }
 
-fn whole(view: &SentenceView, value: u64, first: usize, last: usize) -> Figure {
+pub(super) fn whole(view: &SentenceView, value: u64, first: usize, last: usize) -> Figure {
     printed(view, Printed::whole(value), first, last)
 }
 
 /// A percentage with its sign at `at`; gives the token after the sign.
-fn percent_at(view: &SentenceView, at: usize) -> Option<(Printed, usize)> {
+pub(super) fn percent_at(view: &SentenceView, at: usize) -> Option<(Printed, usize)> {
     let p = view.number(at)?;
     if view.sign(at + 1, '%') {
         Some((p, at + 2))
@@ -78,6 +79,22 @@ fn percent_at(view: &SentenceView, at: usize) -> Option<(Printed, usize)> {
     } else {
         None
     }
+}
+
+/// "Thirty-four percent"; gives the token after it.
+fn percent_in_words(view: &SentenceView, i: usize) -> Option<(Printed, usize)> {
+    if !view.is(i, Classes::NUMBER_WORD) {
+        return None;
+    }
+    let (value, next) = count_at(view, i)?;
+    let after = if view.any(next, &["percent"]) {
+        next + 1
+    } else if view.eq(next, "per") && view.eq(next + 1, "cent") {
+        next + 2
+    } else {
+        return None;
+    };
+    (value <= 100).then(|| (Printed::whole(value), after))
 }
 
 /// A percentage in brackets at or a few plain words after `at`: `(44.6%)`, `; 44.6%`; gives its last token.
@@ -151,6 +168,10 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
     }
     let at = if by_slash { next } else { next + words };
     let (total, k, end) = denominator(view, at)?;
+    // "May 4 of 2021"
+    if i > 0 && view.is(i - 1, Classes::MONTH) {
+        return None;
+    }
     let plausible = total > 1 && events <= total && !(by_slash && view.sign(end, '/'));
     if !plausible {
         // 30/2 (males/females) and dates are no fractions; `50 of 45` would be a slip only with a percent beside it.
@@ -165,7 +186,7 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
         group.one_expression = true;
         return Some(Draft { first: i, last, group });
     }
-    let allowed = if by_slash { 8 } else { 3 };
+    let allowed = if by_slash { 8 } else { 6 };
     let found = percent_in_brackets(view, end, 0).or_else(|| percent_in_brackets(view, end, allowed));
     let (percent, last) = match found {
         Some((p, last)) => (Some(p), last),
@@ -174,26 +195,24 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
     if percent.is_none() {
         // Without a percentage a slash may be a unit, a date or a score; "of" may be anything.
         let bracket = i > 0 && view.signs(i - 1, &['(', '[', ',']) && view.signs(end, &[')', ']', ',', ';']);
-        let members = view.is(end, Classes::GROUP);
+        // "9 of 16 trained keepers": an adjective or two may stand before the members.
+        let members = (end..end + 3)
+            .take_while(|&k| view.get(k).is_some_and(|t| t.is_word()) && !view.is(k, Classes::AND))
+            .any(|k| view.is(k, Classes::GROUP) && !view.any(k, &["group", "groups", "arm", "arms"]));
         let told = if by_slash {
             bracket || members || beside_fraction(view, i, end)
         } else {
-            let verb = view.is(end, Classes::COPULA)
-                || view.any(
-                    end,
-                    &[
-                        "had",
-                        "achieved",
-                        "experienced",
-                        "reported",
-                        "showed",
-                        "completed",
-                        "received",
-                        "responded",
-                        "died",
-                    ],
-                );
-            members || words > 0 || view.eq(at, "out") || view.signs(end, &[')', ',', '.']) || verb && total >= 8
+            // "9 of the 12 still flew": an adverb may stand before the verb.
+            let verb = verb(view, end) || view.get(end).is_some_and(|t| t.is_word()) && verb(view, end + 1);
+            let beside = total >= 5 && of_beside(view, i, end);
+            let whole = view.eq(at, "of") && view.eq(at + 1, "the") && total >= 8 && view.number(k).is_some();
+            beside
+                || whole && !view.is(end, Classes::AND)
+                || members
+                || words > 0
+                || view.eq(at, "out")
+                || view.signs(end, &[')', ',', '.'])
+                || verb && total >= 8
         };
         if !told {
             return None;
@@ -202,9 +221,41 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
             return None;
         }
         if view.any(at, &["out"]) || view.any(at, &["of"]) {
-            let scale =
-                view.any(end, &["points", "items", "days", "weeks", "months", "years", "hours", "mg", "ml", "times"]);
-            if scale {
+            let scale = view.any(
+                end,
+                &[
+                    "points",
+                    "items",
+                    "days",
+                    "weeks",
+                    "months",
+                    "years",
+                    "hours",
+                    "mg",
+                    "ml",
+                    "times",
+                    "groups",
+                    "arms",
+                    "domains",
+                    "scales",
+                    "subscales",
+                    "measures",
+                    "questions",
+                    "outcomes",
+                    "tests",
+                    "sessions",
+                    "visits",
+                    "conditions",
+                    "studies",
+                    "trials",
+                    "interventions",
+                    "treatments",
+                    "components",
+                    "criteria",
+                    "following",
+                ],
+            );
+            if scale || view.any(end + 1, &["group", "groups", "arm", "arms", "conditions"]) {
                 return None;
             }
         }
@@ -216,6 +267,62 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
     group.percent = percent;
     group.one_expression = true;
     Some(Draft { first: i, last, group })
+}
+
+/// A verb that tells what became of the members of a group.
+fn verb(view: &SentenceView, k: usize) -> bool {
+    view.is(k, Classes::COPULA) && !view.eq(k, "of")
+        || view.any(
+            k,
+            &[
+                "had",
+                "has",
+                "have",
+                "did",
+                "achieved",
+                "experienced",
+                "reported",
+                "showed",
+                "completed",
+                "received",
+                "responded",
+                "died",
+                "developed",
+                "required",
+                "needed",
+                "withdrew",
+                "discontinued",
+                "failed",
+                "reached",
+                "remained",
+                "improved",
+                "used",
+                "survived",
+                "underwent",
+                "attended",
+                "returned",
+                "refused",
+                "agreed",
+                "dropped",
+                "met",
+                "relapsed",
+                "recovered",
+                "tested",
+                "became",
+            ],
+        )
+}
+
+/// "two of eleven and three of forty": another such fraction right behind or before.
+fn of_beside(view: &SentenceView, first: usize, end: usize) -> bool {
+    let joins = |k: usize| view.is(k, Classes::AND) || view.is(k, Classes::VERSUS);
+    let behind =
+        joins(end) && count_at(view, end + 1).is_some_and(|(_, k)| view.eq(k, "of") && count_at(view, k + 1).is_some());
+    let before = first > 3
+        && joins(first - 1)
+        && (view.number(first - 2).is_some() || view.is(first - 2, Classes::NUMBER_WORD))
+        && (first.saturating_sub(7)..first - 2).any(|k| view.eq(k, "of"));
+    behind || before
 }
 
 /// `27/122 v 44/487`, `30/204 and 21/205`: another fraction right before or behind.
@@ -233,6 +340,10 @@ fn beside_fraction(view: &SentenceView, first: usize, end: usize) -> bool {
 /// `12 (26.7%)`, `12 patients (26.7%)`, `Sixteen (76%) of the 21`, `n = 12 (26.7%)`.
 fn count_and_percent(view: &SentenceView, i: usize, taken: &[bool]) -> Option<Draft> {
     let (events, next) = count_at(view, i)?;
+    // "Twenty-four percent (24%)"
+    if view.is(next, Classes::PERCENT) || view.eq(next, "per") {
+        return None;
+    }
     let (percent, last) = percent_in_brackets(view, next, 0).or_else(|| percent_in_brackets(view, next, 4))?;
     // `1.2 (26%)` and a percent after a comma are taken only where a count can be meant.
     let in_bracket =
@@ -265,8 +376,12 @@ fn of_the(view: &SentenceView, i: usize) -> Option<(u64, crate::text::Span)> {
     let mut k = i;
     while k > 0 {
         k -= 1;
-        let opens = view.any(k, &["of", "among"])
-            && (k == 0 || view.signs(k - 1, &['.', ';', '(']) || (view.sign(k - 1, ',') && k < i));
+        let out = view.eq(k, "of")
+            && view.eq(k.wrapping_sub(1), "out")
+            && (k == 1 || view.signs(k - 2, &['.', ';', '(', ',']));
+        let opens = out
+            || view.any(k, &["of", "among"])
+                && (k == 0 || view.signs(k - 1, &['.', ';', '(']) || (view.sign(k - 1, ',') && k < i));
         if !opens {
             continue;
         }
@@ -286,13 +401,17 @@ fn percent_first(view: &SentenceView, i: usize, setting: &Setting, taken: &[bool
     if view.style(i) != Style::Plain {
         return None;
     }
-    let (percent, next) = percent_at(view, i)?;
+    let (percent, next) = percent_at(view, i).or_else(|| percent_in_words(view, i))?;
     // `60% of the sample (100/163)`
     let words =
         (next..next + 5).take_while(|&k| view.get(k).is_some_and(|t| t.is_word()) && !view.is(k, Classes::AND)).count();
     let open = if view.signs(next, &['(', '[']) { next } else { next + words };
     if view.signs(open, &['(', '[']) && !taken[open] {
         let mut at = open + 1;
+        // `n/n = 12/80`
+        if view.is(at, Classes::N) && view.sign(at + 1, '/') && view.is(at + 2, Classes::N) {
+            at += 2;
+        }
         if view.is(at, Classes::N) && view.sign(at + 1, '=') {
             at += 2;
         }
@@ -332,7 +451,7 @@ fn percent_first(view: &SentenceView, i: usize, setting: &Setting, taken: &[bool
         group.one_expression = true;
         return Some(Draft { first: i, last: end - 1, group });
     }
-    alone(view, i, percent, next, setting, taken)
+    share::read(view, i, percent, next, setting, taken)
 }
 
 /// Whether a percentage is near enough to a fraction beside it that both tell of one count.
@@ -340,135 +459,26 @@ fn fits_share(events: u64, total: u64, percent: Printed) -> bool {
     (100.0 * events as f64 / total as f64 - percent.value()).abs() <= 10.0
 }
 
-/// Words before or after a percentage that show that it is no share of a group.
-const NOT_SHARE_BEFORE: &[&str] = &[
-    "by",
-    "than",
-    "least",
-    "about",
-    "approximately",
-    "around",
-    "nearly",
-    "power",
-    "ci",
-    "level",
-    "of",
-    "additional",
-    "relative",
-    "absolute",
-    "difference",
-    "within",
-    "over",
-    "above",
-    "below",
-    "under",
-    "exceeding",
-    "exceeded",
-    "minus",
-    "plus",
-    "up",
-    "a",
-    "an",
-    "another",
-    "further",
-    "reduction",
-    "increase",
-    "decrease",
-    "attrition",
-    "dose",
-    "solution",
-    "assuming",
-    "confidence",
-];
-const NOT_SHARE_AFTER: &[&str] = &[
-    "ci",
-    "confidence",
-    "power",
-    "significance",
-    "level",
-    "reduction",
-    "increase",
-    "decrease",
-    "improvement",
-    "difference",
-    "lower",
-    "higher",
-    "greater",
-    "less",
-    "more",
-    "larger",
-    "smaller",
-    "reductions",
-    "increases",
-    "chance",
-    "probability",
-    "limits",
-    "credible",
-    "interval",
-    "solution",
-    "chlorhexidine",
-    "alcohol",
-    "ethanol",
-    "formalin",
-    "concentration",
-    "w",
-    "v",
-    "point",
-    "points",
-    "drop",
-    "dropout",
-    "attrition",
-    "relative",
-    "absolute",
-    "change",
-    "decline",
-    "loss",
-    "gain",
-    "cream",
-    "gel",
-    "ointment",
-];
-
-fn alone(
-    view: &SentenceView,
-    i: usize,
-    percent: Printed,
-    next: usize,
-    setting: &Setting,
-    taken: &[bool],
-) -> Option<Draft> {
-    use SectionKind::*;
-    // Of the participants themselves the Methods tell as well.
-    let described = setting.section == Methods
-        && (next..next + 4).any(|k| view.is(k, Classes::GROUP))
-        && (next..next + 8).any(|k| view.any(k, &["were", "was", "had", "completed"]));
-    if !(matches!(setting.section, Results | Abstract | Discussion | Unknown) || described) || percent.value() > 100.0 {
-        return None;
+/// "none in the control group" beside another count or percentage: a count of nought.
+pub(super) fn none_beside(view: &SentenceView, taken: &[bool], drafts: &mut Vec<Draft>) {
+    if !drafts.iter().any(|d| d.group.events.is_some() || d.group.percent.is_some()) {
+        return;
     }
-    let before = i.checked_sub(1);
-    if let Some(b) = before {
-        let sign = matches!(
-            view.get(b).map(|t| t.kind),
-            Some(TokenKind::Sign('-' | '+' | '±' | '<' | '>' | '≤' | '≥' | '~' | '/' | '=' | '×'))
-        );
-        if sign
-            || view.any(b, NOT_SHARE_BEFORE) && !(view.any(b, &["of"]) && share_of(view, b))
-            || taken[b] && view.signs(b, &['(', '['])
-        {
-            return None;
+    for (i, taken) in taken.iter().enumerate() {
+        if *taken || !view.eq(i, "none") || !view.any(i + 1, &["in", "of"]) {
+            continue;
         }
+        let Some(last) = (i + 2..i + 8).find(|&k| view.any(k, &["group", "arm", "controls", "placebo"])) else {
+            continue;
+        };
+        if (i + 2..last).any(|k| !view.get(k).is_some_and(|t| t.is_word()) || view.any(k, &["two", "three", "either"]))
+        {
+            continue;
+        }
+        let mut group = empty(view, i, last);
+        group.events = Some(whole(view, 0, i, i));
+        drafts.push(Draft { first: i, last: i, group });
     }
-    if view.signs(next, &['-', '/', '±']) || view.any(next, NOT_SHARE_AFTER) || view.any(next + 1, NOT_SHARE_AFTER) {
-        return None;
-    }
-    let mut group = empty(view, i, next - 1);
-    group.percent = Some(percent);
-    Some(Draft { first: i, last: next - 1, group })
-}
-
-/// "rate of 12%", "proportion of 45%".
-fn share_of(view: &SentenceView, of: usize) -> bool {
-    of > 0 && view.any(of - 1, &["rate", "rates", "proportion", "prevalence", "incidence", "frequency", "percentage"])
 }
 
 /// Marks percentages that are said to be about so much or that no count over a total gives (survival, actuarial rates),

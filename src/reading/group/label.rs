@@ -10,15 +10,36 @@ pub(super) fn assign(view: &SentenceView, drafts: &mut [Draft]) {
     for d in 0..drafts.len() {
         let limit = drafts.get(d + 1).map_or(view.len(), |n| n.first);
         let last = drafts[d].last;
-        drafts[d].group.label = behind(view, last + 1, limit).unwrap_or_default();
+        let first = drafts[d].first;
+        drafts[d].group.label =
+            bracketed(view, first, limit).or_else(|| behind(view, last + 1, limit)).unwrap_or_default();
         drafts[d].group.change = is_change(view, drafts[d].first);
     }
+}
+
+/// "in the syrup group (5.2 ± 1.1)": the name before the bracket in which the summary stands alone.
+fn bracketed(view: &SentenceView, first: usize, limit: usize) -> Option<String> {
+    let open = first.checked_sub(1).filter(|&k| view.signs(k, &['(', '[']))?;
+    let mut depth = 0i32;
+    (open..limit).find(|&k| {
+        depth += i32::from(view.signs(k, &['(', '['])) - i32::from(view.signs(k, &[')', ']']));
+        depth == 0
+    })?;
+    let group = open.checked_sub(1).filter(|&k| view.any(k, &["group", "arm", "condition"]))?;
+    let from = (group.saturating_sub(6)..group).rev().find(|&k| {
+        !view.get(k).is_some_and(|t| t.is_word() || t.is_sign('-') || t.number().is_some())
+            || view.any(k, &["the", "in", "than", "with", "for", "of", "a", "and", "to"])
+    })?;
+    (from + 1 < group).then(|| view.quote(from + 1, group - 1).to_string())
 }
 
 /// Up to five words after "in", "for", "with", "among" within a few tokens.
 fn behind(view: &SentenceView, from: usize, limit: usize) -> Option<String> {
     let stop = limit.min(from + 9);
-    let at = (from..stop).find(|&k| view.any(k, &["in", "for", "with", "among"]))?;
+    // What another figure is set against names the other one.
+    let stop =
+        (from..stop).find(|&k| view.any(k, &["than", "compared"]) || view.is(k, Classes::VERSUS)).unwrap_or(stop);
+    let at = (from..stop).find(|&k| view.any(k, &["in", "for", "with", "among", "receiving"]))?;
     let mut first = at + 1;
     while view.any(first, &["the", "a", "those", "patients", "participants", "subjects", "receiving", "treated", "of"])
     {

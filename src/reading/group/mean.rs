@@ -5,7 +5,7 @@ use super::super::SpreadKind;
 use super::super::lexicon::Classes;
 use super::super::sentence::SentenceView;
 use super::super::token::{Style, TokenKind};
-use super::{Draft, Setting, empty, with_spread};
+use super::{Draft, Setting, bare, empty, with_spread};
 use crate::printed::Printed;
 
 /// What a paragraph says its figures are, from "mean ± SD", "mean (SD)", "median (IQR)" on.
@@ -17,12 +17,15 @@ pub struct Declared {
     pub bracket: Option<SpreadKind>,
     /// What stands in brackets after a median.
     pub median: Option<SpreadKind>,
+    /// The sign ± stands somewhere in the paragraph: a plus between two figures may be one that lost its bar.
+    pub signs: bool,
 }
 
 impl Declared {
     /// Notes the declarations of one sentence; they hold until others follow.
     pub fn note(&mut self, view: &SentenceView) {
         for i in 0..view.len() {
+            self.signs |= view.sign(i, '±');
             let mean = view.is(i, Classes::MEAN) && !view.sign(i + 1, '=');
             let median = view.is(i, Classes::MEDIAN);
             if !mean && !median {
@@ -131,14 +134,20 @@ pub(super) fn spread_word(view: &SentenceView, mut at: usize) -> Option<(SpreadK
     None
 }
 
-/// A mean or median summary starting at token `i`.
-pub(super) fn read(view: &SentenceView, i: usize, setting: &Setting, taken: &[bool]) -> Option<Draft> {
+/// A mean or median summary starting at token `i`; `before` is the summary read last in the sentence.
+pub(super) fn read(
+    view: &SentenceView,
+    i: usize,
+    setting: &Setting,
+    taken: &[bool],
+    before: Option<&Draft>,
+) -> Option<Draft> {
     m_equals(view, i).or_else(|| {
         let (centre, next) = centre(view, i)?;
         plus_minus(view, i, centre, next, setting)
-            .or_else(|| bracketed(view, i, centre, next, setting, taken))
+            .or_else(|| bracketed(view, i, centre, next, setting, taken, before))
             .or_else(|| after_comma(view, i, centre, next))
-            .or_else(|| bare(view, i, centre, next))
+            .or_else(|| bare::read(view, i, centre, next, taken, before))
     })
 }
 
@@ -177,7 +186,7 @@ fn after_unit(view: &SentenceView, at: usize, stop: impl Fn(usize) -> bool) -> O
 
 /// `5.2 ± 1.1`, `5.2 mg ± 1.1 mg`, `45.2 ± SD 3.1`, `± 12.1 (SD)`.
 fn plus_minus(view: &SentenceView, i: usize, centre: Printed, next: usize, setting: &Setting) -> Option<Draft> {
-    let sign = if view.sign(next, '±') {
+    let sign = if view.sign(next, '±') || lost_bar(view, centre, next, setting) {
         next
     } else {
         let at = after_unit(view, next, |k| view.sign(k, '±'))?;
@@ -219,6 +228,16 @@ fn plus_minus(view: &SentenceView, i: usize, centre: Printed, next: usize, setti
     Some(Draft { first: i, last, group })
 }
 
+/// `7.3 +1.8` where the paragraph prints ± elsewhere and both figures are told alike: the sign lost its bar.
+fn lost_bar(view: &SentenceView, centre: Printed, at: usize, setting: &Setting) -> bool {
+    setting.declared.signs
+        && view.sign(at, '+')
+        && view.spaced(at)
+        && !view.spaced(at + 1)
+        && view.number(at + 1).is_some_and(|s| s.places == centre.places && s.places > 0)
+        && !view.signs(at + 2, &['+', '-', '/', '='])
+}
+
 /// `5.2 (SD 1.1)`, `5.2 years (±1.1)`, `mean (SD) 5.2 (1.1)`, `median 8 (IQR 7–10)`, `45 (range 20–70)`.
 fn bracketed(
     view: &SentenceView,
@@ -227,6 +246,7 @@ fn bracketed(
     next: usize,
     setting: &Setting,
     taken: &[bool],
+    before: Option<&Draft>,
 ) -> Option<Draft> {
     let open = after_unit(view, next, |k| view.signs(k, &['(', '[', '{']))?;
     if taken.get(open).copied().unwrap_or(false) || open > next + 4 {
@@ -252,16 +272,22 @@ fn bracketed(
         }
     }
     let (a, mut end) = view.signed(at)?;
-    let median_near = near(view, i, Classes::MEDIAN);
+    // In a list the first summary shows what the next ones are, however far back "median" stands.
+    let listed = before.is_some_and(|d| d.group.median.is_some() && d.group.spread.len() == 2);
+    let median_near = listed || near(view, i, Classes::MEDIAN);
     // a pair: quartiles or a range
     let pair = pair_after(view, end);
     if let Some((b, after)) = pair {
-        let declared = kind.or(if median_near { setting.declared.median } else { None });
-        let named_median = median_near && !near_mean_later(view, i);
+        let named_median = listed || median_near && !near_mean_later(view, i);
+        let declared = kind.or(if named_median { setting.declared.median } else { None });
         let kind = match declared {
             Some(k @ (SpreadKind::Iqr | SpreadKind::Range)) => k,
             Some(_) => return None,
             None if named_median => SpreadKind::Unstated,
+            // "a mean age of 45 years (21–70)"
+            None if a.value() < centre.value() && centre.value() < b.value() && bare::name(view, i).is_some() => {
+                SpreadKind::Unstated
+            }
             None => return None,
         };
         let close = after_unit(view, after, |k| view.signs(k, &[')', ']', '}', ';', ',']))?;
@@ -375,12 +401,25 @@ fn m_equals(view: &SentenceView, i: usize) -> Option<Draft> {
             group = with_spread(empty(view, i, last), kind, &spread);
         }
     }
+    // `2.1 to 4.4 (mean: 3.3)`
+    let mut first = i;
+    if group.spread.is_empty()
+        && i > 3
+        && view.signs(i - 1, &['(', '['])
+        && (view.eq(i - 3, "to") || view.sign(i - 3, '-'))
+        && let (Some(a), Some(b)) = (view.number(i - 4), view.number(i - 2))
+        && a.value() <= centre.value()
+        && centre.value() <= b.value()
+    {
+        first = i - 4;
+        group = with_spread(empty(view, first, last), SpreadKind::Range, &[a, b]);
+    }
     if median {
         group.median = Some(centre);
     } else {
         group.mean = Some(centre);
     }
-    Some(Draft { first: i, last, group })
+    Some(Draft { first, last, group })
 }
 
 /// Whether a word of a class stands within the dozen tokens before, after the last semicolon.
@@ -398,30 +437,4 @@ fn near_mean_later(view: &SentenceView, i: usize) -> bool {
         .rev()
         .find(|&k| view.is(k, Classes::MEAN) || view.is(k, Classes::MEDIAN))
         .is_some_and(|k| view.is(k, Classes::MEAN))
-}
-
-/// "the mean age of the participants was 57 years", "median days since diagnosis was 139": no spread is printed.
-fn bare(view: &SentenceView, i: usize, centre: Printed, next: usize) -> Option<Draft> {
-    if i == 0
-        || !view.any(i - 1, &["was", "were", "of", "is"])
-        || view.signs(next, &['%', '(', '[', '-', '/', '±', ','])
-    {
-        return None;
-    }
-    let k = (i.saturating_sub(9)..i).rev().find(|&k| view.is(k, Classes::MEAN) || view.is(k, Classes::MEDIAN))?;
-    let other = (k + 1..i).any(|j| {
-        view.number(j).is_some()
-            || view.any(j, &["difference", "change", "reduction", "increase", "decrease", "than", "score"])
-            || view.signs(j, &['(', ';'])
-    });
-    if other || view.any(next, &["to", "and", "or", "times", "of"]) || view.any(i - 1, &["of"]) && i - 1 != k + 1 {
-        return None;
-    }
-    let mut group = empty(view, i, next - 1);
-    if view.is(k, Classes::MEDIAN) {
-        group.median = Some(centre);
-    } else {
-        group.mean = Some(centre);
-    }
-    Some(Draft { first: i, last: next - 1, group })
 }

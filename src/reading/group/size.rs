@@ -11,7 +11,9 @@ pub(super) fn assign(view: &SentenceView, drafts: &mut [Draft]) {
     if drafts.is_empty() {
         return;
     }
-    let sizes = sizes(view);
+    let mut sizes = sizes(view);
+    // `8% (n = 4)`: the number is the count itself.
+    sizes.retain(|s| !drafts.iter().any(|d| d.group.events.is_some() && d.first <= s.1 && s.1 <= d.last));
     if sizes.is_empty() {
         return;
     }
@@ -39,7 +41,12 @@ pub(super) fn assign(view: &SentenceView, drafts: &mut [Draft]) {
     for &d in &open {
         let (first, last) = (drafts[d].first, drafts[d].last);
         // right behind: `5.2 ± 1.1 (n = 24)`, `5.2 ± 1.1, n = 24`, `5.2 ± 1.1 with the sling (n = 24)`
+        // `65% at the end (n = 52)`: as often the count itself.
+        let share = drafts[d].group.percent.is_some();
         let behind = sizes.iter().find(|s| s.1 > last && s.1 <= last + reach && !crosses(view, last + 1, s.1));
+        if share && behind.is_some_and(|s| !(last + 1..s.1).any(|k| view.is(k, Classes::GROUP))) {
+            continue;
+        }
         let before = sizes.iter().rev().find(|s| s.1 < first);
         if let Some(&(n, at)) = behind.or(before) {
             give(view, &mut drafts[d], n, at);

@@ -42,7 +42,8 @@ pub(super) fn read(view: &SentenceView, taken: &mut [bool], drafts: &mut Vec<Dra
             continue;
         }
         let mut first = left;
-        if left > 0 && view.sign(left - 1, '-') && !view.spaced(left) && view.spaced(left - 1) {
+        let opens = left > 1 && (view.spaced(left - 1) || view.signs(left - 2, &['(', '[', ':']));
+        if left > 0 && view.sign(left - 1, '-') && !view.spaced(left) && opens {
             value = value.negated();
             first = left - 1;
         }

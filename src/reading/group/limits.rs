@@ -1,0 +1,110 @@
+//! Means and medians with an interval in place of a spread: `a mean of 5.2 mm (95% CI 4.1–6.3)`, "median (95% CI) was
+//! 3.6 (1.9 to 5.4)". The interval keeps its own reading.
+
+use super::super::lexicon::Classes;
+use super::super::sentence::SentenceView;
+use super::super::token::TokenKind;
+use super::super::{Estimate, IntervalReading, Measure, SpreadKind};
+use super::{Draft, Setting, empty, with_spread};
+
+/// Words between "mean" and the figure, or anywhere in a list, that make it an effect.
+const EFFECT: &[&str] = &[
+    "difference",
+    "differences",
+    "ratio",
+    "ratios",
+    "odds",
+    "hazard",
+    "hr",
+    "or",
+    "rr",
+    "reduction",
+    "increase",
+    "decrease",
+    "improvement",
+    "effect",
+    "benefit",
+    "coefficient",
+    "slope",
+    "beta",
+    "md",
+    "smd",
+    "than",
+    "risk",
+    "correlation",
+];
+
+/// Appends a group for each interval whose figure the sentence calls a mean or a median.
+pub(super) fn read(
+    view: &SentenceView,
+    setting: &mut Setting,
+    intervals: &[IntervalReading],
+    estimates: &[Estimate],
+    drafts: &mut Vec<Draft>,
+) {
+    let mut before: Option<(usize, bool)> = None;
+    // "at the end it was 2.1 (95% CI …) and 1.9 (95% CI …)": the paragraph has told that its figures are means.
+    let carried = setting.limits.filter(|_| intervals.len() >= 2 && !(0..view.len()).any(|k| view.any(k, EFFECT)));
+    for interval in intervals {
+        let Some((value, span)) = interval.estimate else { continue };
+        let (first, last) = (view.token_at(span.start), view.token_at(interval.span.end));
+        let effect =
+            |e: &&Estimate| e.span.end == span.end && !matches!(e.measure, Measure::Other | Measure::MeanDifference);
+        if estimates.iter().any(|e| effect(&e)) || interval.credible {
+            continue;
+        }
+        let follows = before.filter(|&(end, _)| first - end.min(first) <= 14 && list(view, end, first)).map(|b| b.1);
+        let Some(median) = named(view, first).or(follows).or(carried) else { continue };
+        let inside = interval.lower.value() <= value.value() && value.value() <= interval.upper.value();
+        if !inside {
+            continue;
+        }
+        let spread = [interval.lower, interval.upper];
+        let mut group = with_spread(empty(view, first, last - 1), SpreadKind::Ci, &spread);
+        if median {
+            group.median = Some(value);
+        } else {
+            group.mean = Some(value);
+        }
+        drafts.push(Draft { first, last: last - 1, group });
+        before = Some((last, median));
+        setting.limits = Some(median);
+    }
+}
+
+/// Whether "mean" or "median" names the figure at token `at`, and which.
+fn named(view: &SentenceView, at: usize) -> Option<bool> {
+    let mut depth = 0usize;
+    for k in (at.saturating_sub(22)..at).rev() {
+        match view.get(k)?.kind {
+            TokenKind::Sign(')' | ']') => depth += 1,
+            TokenKind::Sign('(' | '[') => depth = depth.saturating_sub(1),
+            TokenKind::Sign(';' | '=') if depth == 0 => return None,
+            TokenKind::Number(_) if depth == 0 && !view.is(k.wrapping_sub(1), Classes::LABEL) => return None,
+            TokenKind::Word if depth == 0 => {
+                let symbol = view.word(k).len() < 2;
+                if (view.is(k, Classes::MEAN) || view.is(k, Classes::MEDIAN)) && !symbol {
+                    // "the difference in adjusted means was"
+                    let between = (k.saturating_sub(4)..k).any(|j| view.any(j, EFFECT));
+                    return (!between).then(|| view.is(k, Classes::MEDIAN));
+                }
+                if view.any(k, EFFECT) {
+                    return None;
+                }
+            }
+            _ => {}
+        }
+    }
+    None
+}
+
+/// Whether tokens `from..to` join two members of a list.
+fn list(view: &SentenceView, from: usize, to: usize) -> bool {
+    !(from..to).any(|k| view.any(k, EFFECT) || view.sign(k, ';') || view.is(k, Classes::P))
+        && (from..to).any(|k| {
+            view.is(k, Classes::AND)
+                || view.is(k, Classes::VERSUS)
+                || view.sign(k, ',')
+                || view.any(k, &["compared", "with"])
+        })
+}
