@@ -387,11 +387,14 @@ pub(crate) fn inside(case: &Case) -> Option<Recomputation> {
     let value = e.value.rounded();
     let reciprocal = e.scale == Scale::Reciprocal;
     let inside = whole.meets(value);
+    // A percentage whose limits stand without the sign: limits of the percentage, of the proportion, or of the ratio
+    // that it is a change of. None of them may hold it.
+    let apart = e.percent && !i.percent && !readings_of_percent(value).iter().any(|r| whole.meets(*r));
     // A figure of an unnamed kind before the limits may be another thing.
-    if !inside && e.measure == Measure::Other && e.scale == Scale::Unknown {
+    if !inside && e.measure == Measure::Other && e.scale == Scale::Unknown && !apart {
         return None;
     }
-    if !inside && (reciprocal || e.percent != i.percent) {
+    if !inside && (reciprocal || e.percent != i.percent && !apart) {
         return None;
     }
     let unit = e.value.unit().max(lower.unit());
@@ -434,6 +437,13 @@ pub(crate) fn inside(case: &Case) -> Option<Recomputation> {
         figure: i.span,
         inputs: vec![(e.span, "the estimate"), (i.span, "the interval")],
     })
+}
+
+/// What limits without a percent sign may be limits of, for an estimate printed in percent.
+fn readings_of_percent(value: Range) -> [Range; 6] {
+    let part = value * 0.01;
+    let from = |whole: f64, r: Range| Range::new(whole - r.hi, whole - r.lo);
+    [value, part, from(1.0, part), Range::new(1.0 + part.lo, 1.0 + part.hi), from(100.0, value), value * -1.0]
 }
 
 /// Whether a ratio is printed as one of its own limits while the other lies far off: no usual interval of a ratio begins
