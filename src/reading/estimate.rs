@@ -52,15 +52,20 @@ pub fn read(
         let near = name.is_some_and(|n| leads_to(view, n, at));
         let within =
             |value: Printed| interval.lower.value() <= value.value() && value.value() <= interval.upper.value();
-        // "fell by 8.8 (95% CI −14.2 to −3.4)": the sign stands in the verb.
-        if !within(value) && within(value.negated()) && told_as_change(view, at, last) {
+        // `63% (95% CI 7 to 17)`: right behind its sign the interval is that of the percentage, whatever it holds.
+        let adjoins = view.sign(last + 1, '%')
+            && view.signs(last + 2, &['(', '['])
+            && view.token_at(interval.span.start).saturating_sub(last) <= 3
+            && interval.level.is_some();
+        // "fell by 8.8 (95% CI −14.2 to −3.4)", "a lowering of 32% (95% CI −40% to −22%)": the sign stands in the words.
+        if !within(value) && within(value.negated()) && (adjoins || told_as_change(view, at, last)) {
             value = value.negated();
         }
         let inside = within(value);
         let time = view.is(last + 1, super::lexicon::Classes::UNIT)
             && at > 0
             && view.any(at - 1, &["at", "after", "per", "in", "by", "to"]);
-        if (!inside && !near) || time || taken[at] {
+        if (!inside && !near && !adjoins) || time || taken[at] {
             // Some other figure that happens to stand there.
             interval.estimate = None;
             continue;
@@ -79,7 +84,11 @@ pub fn read(
                 (measure, scale, false)
             }
         };
-        taken[at..=last].fill(true);
+        // A share of one group is a summary as well.
+        let share = scale == Scale::Single && view.sign(last + 1, '%');
+        if !share {
+            taken[at..=last].fill(true);
+        }
         out.push(Estimate {
             span: name.filter(|_| near).map_or(span, |n| view.span(n.first, n.first).to(span)),
             sentence: view.id,

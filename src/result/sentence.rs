@@ -2,7 +2,7 @@
 
 use super::{Feature, MOST_TESTS, ReportedResult, StatedTest, feature};
 use crate::context::{Stated, tests_in};
-use crate::reading::{Group, Readings, Relation, SentenceView};
+use crate::reading::{Group, Measure, Readings, Relation, Scale, SentenceView, within};
 use crate::text::Span;
 use std::ops::Range;
 
@@ -112,6 +112,12 @@ fn trailing(view: &SentenceView, members: &Members, readings: &Readings, mut end
         let interval = intervals.get(intervals.partition_point(|i| i.span.start < from)).map(|i| i.span);
         let estimates = &readings.estimates[members.estimates.clone()];
         let estimate = estimates.get(estimates.partition_point(|e| e.span.start < from)).map(|e| e.span);
+        // An estimate comes with the interval that is printed for it, or not at all.
+        let whole = |e: Span| {
+            let its = intervals.iter().find(|i| i.estimate.is_some_and(|(_, of)| of.end == e.end));
+            its.map_or(e, |i| if i.span.start > e.start { e.to(i.span) } else { e })
+        };
+        let estimate = estimate.map(whole);
         interval.into_iter().chain(estimate).min_by_key(|s| s.start)
     };
     while let Some(span) = next_of(end) {
@@ -172,28 +178,43 @@ fn results_of(view: &SentenceView, s: &Segment, readings: &Readings, out: &mut V
         let (_, span) = readings.intervals[interval].estimate?;
         s.estimates.iter().copied().find(|&e| readings.estimates[e].span.end == span.end)
     };
+    let beside = within(&readings.intervals, |i| i.sentence, view.id..view.id + 1);
+    let has_interval = |e: usize| {
+        let end = readings.estimates[e].span.end;
+        beside.iter().any(|i| i.estimate.is_some_and(|(_, of)| of.end == end))
+    };
+    // The interval of one group's mean or share stands by itself: the p beside it compares groups.
+    let own = |&i: &usize| {
+        estimate_of(i).is_some_and(|e| {
+            readings.estimates[e].scale == Scale::Single && readings.estimates[e].measure == Measure::Other
+        })
+    };
+    let (single, intervals): (Vec<usize>, Vec<usize>) = s.intervals.iter().copied().partition(own);
+    for &interval in &single {
+        out.push(ReportedResult { interval: Some(interval), estimate: estimate_of(interval), ..Default::default() });
+    }
     let compared = compared_groups(view, s, readings);
-    let many = s.intervals.len().max(s.statistics.len());
+    let many = intervals.len().max(s.statistics.len());
     if many == 0 {
         lists_of_groups(s, &compared, readings, out);
     }
     // One result for each interval, with its statistic by order where there are as many.
-    for (k, &interval) in s.intervals.iter().enumerate() {
-        let groups = share(&compared, k, s.intervals.len());
-        let statistic = if s.statistics.len() == s.intervals.len() { s.statistics.get(k).copied() } else { None };
+    for (k, &interval) in intervals.iter().enumerate() {
+        let groups = share(&compared, k, intervals.len());
+        let statistic = if s.statistics.len() == intervals.len() { s.statistics.get(k).copied() } else { None };
         out.push(ReportedResult {
-            p: p_for(s, k, s.intervals.len(), readings).then(|| p_at(k)).flatten(),
+            p: p_for(s, k, intervals.len(), readings).then(|| p_at(k)).flatten(),
             interval: Some(interval),
             statistic,
             estimate: estimate_of(interval)
-                .or_else(|| if s.intervals.len() == 1 { s.estimates.last().copied() } else { None }),
+                .or_else(|| s.estimates.last().copied().filter(|&e| intervals.len() == 1 && !has_interval(e))),
             groups,
             ..ReportedResult::default()
         });
     }
-    if s.intervals.is_empty() || s.statistics.len() != s.intervals.len() {
+    if intervals.is_empty() || s.statistics.len() != intervals.len() {
         for (k, &statistic) in s.statistics.iter().enumerate() {
-            let has_p = s.intervals.is_empty() || k + 1 == s.statistics.len();
+            let has_p = intervals.is_empty() || k + 1 == s.statistics.len();
             out.push(ReportedResult {
                 p: (has_p && p_for(s, k, s.statistics.len(), readings)).then(|| p_at(k)).flatten(),
                 statistic: Some(statistic),

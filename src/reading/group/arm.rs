@@ -416,7 +416,10 @@ fn parts(view: &SentenceView) -> Vec<Named> {
         if list.len() >= 2 && whole.contains(&sum) && list.iter().all(|a| a.n > 1) {
             return list;
         }
-        whole.push(n);
+        // The whole is one of people: "30 jumps, 20 of them …" is a session.
+        if (after..after + 4).any(|k| view.is(k, Classes::GROUP)) {
+            whole.push(n);
+        }
         i = after;
     }
     Vec::new()

@@ -72,6 +72,24 @@ pub(super) fn read(
     }
 }
 
+/// Gives a percentage that was read by itself the interval in the bracket right behind it: `63% (95% CI 58 to 68)`.
+pub(super) fn of_shares(view: &SentenceView, intervals: &[IntervalReading], drafts: &mut [Draft]) {
+    for d in drafts {
+        let alone = d.group.percent.is_some() && d.group.events.is_none() && d.group.spread.is_empty();
+        if !alone || !view.sign(d.last, '%') || !view.signs(d.last + 1, &['(', '[']) {
+            continue;
+        }
+        let behind = |i: &&IntervalReading| (d.last + 1..=d.last + 2).contains(&view.token_at(i.span.start));
+        if let Some(interval) = intervals.iter().find(behind) {
+            let last = view.token_at(interval.span.end) - 1;
+            let spread = [interval.lower, interval.upper];
+            d.group = with_spread(d.group.clone(), SpreadKind::Ci, &spread);
+            d.group.span = view.span(d.first, last);
+            d.last = last;
+        }
+    }
+}
+
 /// Whether "mean" or "median" names the figure at token `at`, and which.
 fn named(view: &SentenceView, at: usize) -> Option<bool> {
     let mut depth = 0usize;

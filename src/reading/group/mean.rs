@@ -345,13 +345,14 @@ fn pair_after(view: &SentenceView, mut at: usize) -> Option<(Printed, usize)> {
     view.signed(at + 1)
 }
 
-/// `mean 5.2, SD 1.1`, `5.2 years, SD = 1.1`, `12.0 months, IQR 8–16`.
+/// `mean 5.2, SD 1.1`, `5.2 years, SD = 1.1`, `12.0 months, IQR 8–16`, `a mean of 5.2 with a range of 3 to 8`.
 fn after_comma(view: &SentenceView, i: usize, centre: Printed, next: usize) -> Option<Draft> {
-    let comma = after_unit(view, next, |k| view.signs(k, &[',', ';']))?;
+    let joined = |k: usize| view.any(k, &["with", "and"]) && view.any(k + 1, &["a", "an"]);
+    let comma = after_unit(view, next, |k| view.signs(k, &[',', ';']) || joined(k))?;
     if comma > next + 3 {
         return None;
     }
-    let (kind, mut at) = spread_word(view, comma + 1)?;
+    let (kind, mut at) = spread_word(view, comma + 1 + usize::from(joined(comma)))?;
     if !near_mean(view, i) && !near(view, i, Classes::MEDIAN) {
         return None;
     }

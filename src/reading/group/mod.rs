@@ -76,6 +76,7 @@ pub fn read(
     }
     versus::read(view, taken, &mut drafts);
     limits::read(view, setting, intervals, estimates, &mut drafts);
+    limits::of_shares(view, intervals, &mut drafts);
     count::none_beside(view, taken, &mut drafts);
     drafts.sort_by_key(|d| d.first);
     count::soften(view, &mut drafts);

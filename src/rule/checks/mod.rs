@@ -11,16 +11,20 @@ mod reporting;
 use super::check::Check;
 use super::finding::Finding;
 use super::look::Look;
+use crate::manuscript::BlockKind;
+use std::collections::HashMap;
 
 /// Runs one check. Exhaustive: a new kind does not compile until it is answered here.
 pub fn run(check: &Check, facts: &Look) -> Vec<Finding> {
     match check {
-        Check::RecomputationDiffers { of, from } => recomputed::differs(facts, *of, from),
-        Check::Outside { field, lowest, highest } => figures::outside(facts, *field, *lowest, *highest),
-        Check::Order { of } => figures::order(facts, *of),
-        Check::EstimateOutsideInterval {} => figures::estimate_outside_interval(facts),
+        Check::RecomputationDiffers { of, from } => gathered(facts, recomputed::differs(facts, *of, from)),
+        Check::Outside { field, lowest, highest } => {
+            gathered(facts, figures::outside(facts, *field, *lowest, *highest))
+        }
+        Check::Order { of } => gathered(facts, figures::order(facts, *of)),
+        Check::EstimateOutsideInterval {} => gathered(facts, figures::estimate_outside_interval(facts)),
         Check::SameResultDiffers {} => repeated::same_result_differs(facts),
-        Check::PrintedZero {} => figures::printed_zero(facts),
+        Check::PrintedZero {} => gathered(facts, figures::printed_zero(facts)),
         Check::ThresholdOnly { bounds } => reporting::threshold_only(facts, bounds),
         Check::Missing { what } => reporting::missing(facts, *what),
         Check::SpreadUnnamed { sign } => reporting::spread_unnamed(facts, *sign),
@@ -30,4 +34,35 @@ pub fn run(check: &Check, facts: &Look) -> Vec<Finding> {
         Check::Unstated { what } => planning::unstated(facts, *what),
         Check::OneSidedUnexplained {} => planning::one_sided_unexplained(facts),
     }
+}
+
+/// Many rows of one table (or figures of one paragraph) that stand alike have one cause: one question, at the first of
+/// them, with the others beside it.
+fn gathered(facts: &Look, findings: Vec<Finding>) -> Vec<Finding> {
+    let is_table = |f: &Finding| matches!(facts.manuscript.block(f.at[0]).kind, BlockKind::Table(_));
+    let mut alike: HashMap<u32, usize> = HashMap::new();
+    for f in &findings {
+        *alike.entry(f.at[0].block).or_default() += 1;
+    }
+    let mut first: HashMap<u32, usize> = HashMap::new();
+    let mut kept: Vec<Finding> = Vec::new();
+    for f in findings {
+        let (at, count) = (f.at[0], alike[&f.at[0].block]);
+        let (many, whole, part) =
+            if is_table(&f) { (4, "rows of this table", "row") } else { (3, "in this paragraph", "place") };
+        if count < many {
+            kept.push(f);
+            continue;
+        }
+        if let Some(&k) = first.get(&at.block) {
+            kept[k].related.push((at, format!("another such {part}")));
+            kept[k].figures.push(at);
+            kept[k].results.extend(f.results);
+            continue;
+        }
+        first.insert(at.block, kept.len());
+        let says = format!("{} {} more {whole} stand likewise.", f.says, count - 1);
+        kept.push(Finding { says, ..f });
+    }
+    kept
 }

@@ -1,6 +1,6 @@
 //! Figures that were recomputed and differ.
 
-use crate::manuscript::{BlockKind, SectionKind};
+use crate::manuscript::SectionKind;
 use crate::query::{Explanation, Ground, RepairKind, Verdict};
 use crate::reading::{Relation, Role};
 use crate::recompute::{Checked, Quantity, Recomputation};
@@ -10,7 +10,6 @@ use crate::rule::level::{Off, Weight};
 use crate::rule::look::{Look, Settled};
 use crate::rule::wording;
 use crate::text::Span;
-use std::collections::HashMap;
 
 /// Rows of a table that must tally sharply before its plain method counts as known.
 const VOUCHING_ROWS: usize = 3;
@@ -34,35 +33,7 @@ pub fn differs(facts: &Look, of: Of, from: &[Basis]) -> Vec<Finding> {
             }
         }
     }
-    by_table(facts, findings)
-}
-
-/// Many rows of one table that differ alike have one cause: one question, at the first of them, with the others beside it.
-fn by_table(facts: &Look, findings: Vec<Finding>) -> Vec<Finding> {
-    const MANY: usize = 4;
-    let mut rows: HashMap<u32, usize> = HashMap::new();
-    for f in &findings {
-        *rows.entry(f.at[0].block).or_default() += 1;
-    }
-    let mut first: HashMap<u32, usize> = HashMap::new();
-    let mut kept: Vec<Finding> = Vec::new();
-    for f in findings {
-        let (at, count) = (f.at[0], rows[&f.at[0].block]);
-        if count < MANY || !matches!(facts.manuscript.block(at).kind, BlockKind::Table(_)) {
-            kept.push(f);
-            continue;
-        }
-        if let Some(&k) = first.get(&at.block) {
-            kept[k].related.push((at, "another such row".to_owned()));
-            kept[k].figures.push(at);
-            kept[k].results.extend(f.results);
-            continue;
-        }
-        first.insert(at.block, kept.len());
-        let says = format!("{} {} more rows of this table stand likewise.", f.says, count - 1);
-        kept.push(Finding { says, ..f });
-    }
-    kept
+    findings
 }
 
 /// The recomputations that a rule of this kind speaks of, where their result really differs.
