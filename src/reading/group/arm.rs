@@ -377,7 +377,7 @@ fn two_and_two(view: &SentenceView, verb: usize) -> Option<Vec<Named>> {
 /// names that add up to a count before them.
 fn parts(view: &SentenceView) -> Vec<Named> {
     let mut i = 0;
-    let mut whole: Vec<u64> = Vec::new();
+    let mut whole: Vec<(u64, usize)> = Vec::new();
     while i < view.len() {
         let Some((n, after)) = count_at(view, i) else {
             i += 1;
@@ -385,10 +385,12 @@ fn parts(view: &SentenceView) -> Vec<Named> {
         };
         let mut list: Vec<Named> = Vec::new();
         let (mut at, mut first, mut count) = (after, i, n);
+        let mut placed = false;
         loop {
             let number = at - 1;
             at += usize::from(view.is(at, Classes::GROUP) && !view.any(at, TRAITS) && !view.any(at, SAYS_GROUP));
             let preposition = view.any(at, &["in", "to", "for", "on", "received", "receiving"]);
+            placed |= preposition;
             let from = at + usize::from(preposition);
             let Some((a, b)) = label_behind(view, from) else { break };
             let b = b + usize::from(view.any(b + 1, GROUP));
@@ -413,13 +415,13 @@ fn parts(view: &SentenceView) -> Vec<Named> {
             (at, first, count) = (end, next, more);
         }
         let sum: u64 = list.iter().map(|a| a.n).sum();
-        if list.len() >= 2 && whole.contains(&sum) && list.iter().all(|a| a.n > 1) {
+        // "30 turns, 20 jumps, 10 rests" lists what was done: parts stand in brackets, behind a colon, or "in" something.
+        let parted = |end: usize| placed || (end..i).any(|k| view.signs(k, &['(', '[', ':']));
+        let of_whole = || whole.iter().any(|&(n, end)| n == sum && parted(end));
+        if list.len() >= 2 && list.iter().all(|a| a.n > 1) && of_whole() {
             return list;
         }
-        // The whole is one of people: "30 jumps, 20 of them …" is a session.
-        if (after..after + 4).any(|k| view.is(k, Classes::GROUP)) {
-            whole.push(n);
-        }
+        whole.push((n, after));
         i = after;
     }
     Vec::new()
