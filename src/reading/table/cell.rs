@@ -92,28 +92,72 @@ impl<'a> Line<'a> {
     }
 }
 
-/// The form of a cell.
-pub(super) fn read(view: &SentenceView) -> Option<Read> {
+/// The forms of a cell, where it is nothing but forms: `5.2 ± 1.1/4.8 ± 0.9`, `8 (7–10) 8.4 (SD 2.2)`; empty otherwise.
+pub(super) fn read(view: &SentenceView) -> Vec<Read> {
+    /// More forms than a cell holds side by side.
+    const MOST: usize = 4;
     let line = Line::of(view);
-    let (form, end) = form(&line)?;
-    let (n, after) = match own_size(&line, end) {
-        Some((n, after)) => (Some(n), after),
-        None => (None, end),
-    };
-    // A mark that lost its raised setting: `12.4 (3.1)a`.
-    let marks = |k: usize| {
-        let at = line.at(k);
-        view.get(at).is_some_and(|t| t.is_word() && view.word(at).len() == 1)
-    };
-    let mut rest = after;
-    while rest < line.kept.len() && (marks(rest) || rest > after && line.sign(rest, &[','])) {
-        rest += 1;
+    let mut found = Vec::new();
+    let mut k = 0;
+    while let Some((form, end)) = form(&line, k).filter(|_| found.len() < MOST) {
+        let (n, after) = match own_size(&line, end) {
+            Some((n, after)) => (Some(n), after),
+            None => (None, end),
+        };
+        found.push(Read { form, first: line.at(k), last: line.at(end - 1), n });
+        let rest = skip_marks(&line, after);
+        if rest >= line.kept.len() {
+            return found;
+        }
+        // Another form behind a sign, or right behind brackets.
+        let apart = line.sign(rest, &['/', ';']) || line.sign(rest, &[',']) && line.sign(rest - 1, &[')', ']']);
+        let glued = rest == after && line.sign(rest - 1, &[')', ']']) && line.number(rest).is_some();
+        if !apart && !glued {
+            return Vec::new();
+        }
+        k = rest + usize::from(apart);
     }
-    (rest == line.kept.len()).then(|| Read { form, first: line.at(0), last: line.at(end - 1), n })
+    Vec::new()
 }
 
-fn form(line: &Line) -> Option<(Form, usize)> {
-    let (centre, next) = line.number(0)?;
+/// Passes marks that lost their raised setting (`12.4 (3.1)a`) and units.
+fn skip_marks(line: &Line, after: usize) -> usize {
+    let mut rest = after;
+    loop {
+        let at = line.at(rest);
+        let token = line.view.get(at).filter(|t| t.is_word());
+        let short = |at: usize| line.view.word(at).chars().count() <= 2;
+        let mark = token.is_some_and(|t| t.is(Classes::UNIT) || short(at) && !t.is(Classes::CI) && !line.view.any(at, &["to", "or", "n"]));
+        let more = rest > after && (line.sign(rest, &[',']) && line.view.get(line.at(rest + 1)).is_some_and(|t| t.is_word()));
+        if !mark && !more {
+            return rest;
+        }
+        rest += 1;
+    }
+}
+
+/// `0.62 to 0.91`, `(−4.1; −1.0)`: two limits and nothing else.
+pub(super) fn limits(view: &SentenceView) -> Option<(At, At)> {
+    let line = Line::of(view);
+    let open = usize::from(line.sign(0, &['(', '[', '{']));
+    let (lower, next) = line.number(open)?;
+    let (_, next) = line.percent(next);
+    if !line.sign(next, &['-', ',', ';', ':', '~', '/']) && !line.view.any(line.at(next), &["to", "and"]) {
+        return None;
+    }
+    let (upper, next) = line.number(next + 1)?;
+    let (_, next) = line.percent(next);
+    let next = next + usize::from(open == 1 && line.sign(next, &[')', ']', '}']));
+    (skip_marks(&line, next) >= line.kept.len()).then_some((lower, upper))
+}
+
+fn form(line: &Line, start: usize) -> Option<(Form, usize)> {
+    // `(20/10)`: the whole in brackets.
+    if line.sign(start, &['(', '[']) {
+        let (inside, next) = form(line, start + 1)?;
+        return if matches!(inside, Form::Fraction { .. } | Form::Single { .. }) { closed(line, next, inside) } else { None };
+    }
+    let (centre, next) = line.number(start)?;
     let (centre_percent, next) = line.percent(next);
     if line.sign(next, &['±']) {
         let (spread, next) = line.number(next + 1)?;
@@ -121,11 +165,12 @@ fn form(line: &Line) -> Option<(Form, usize)> {
         return Some((Form::PlusMinus { centre: centre.printed, spread: spread.printed }, next));
     }
     if line.sign(next, &['/']) && !centre_percent {
-        let (total, next) = line.number(next + 1)?;
+        let (total, after) = line.number(next + 1)?;
         let whole = centre.printed.count().is_some() && total.printed.count().is_some();
         if !whole {
-            return None;
+            return Some((Form::Single { value: centre, percent: centre_percent }, next));
         }
+        let next = after;
         if line.sign(next, &['(', '[', ',', ';']) {
             let bracket = line.sign(next, &['(', '[']);
             let (percent, next) = line.number(next + 1)?;

@@ -1,16 +1,19 @@
 //! Reading in tables: with the roles that the layout gives columns and rows.
 //!
-//! Of a plain table every cell is read: group summaries with the sizes of the header, estimates with their
-//! intervals, p-values. Of any other table only the p-values under or beside a P are.
+//! A cell is read by the role of its column and row: group summaries with the sizes that header, row or label print,
+//! estimates with their intervals, test statistics, p-values. What says itself what it is (`P = 0.03`, `t = 2.1`) is
+//! read as in running text.
 
 mod cell;
 mod estimate;
 mod meaning;
+mod sizes;
+mod statistic;
 mod summary;
 
 use super::lexicon::Classes;
 use super::sentence::{Scan, SentenceView};
-use super::{PValue, Readings, Role, p};
+use super::{Figure, Origin, PValue, Readings, Role, p};
 use crate::layout::{Around, ColumnRole, Layout, Row, RowRole, around};
 use crate::manuscript::{Block, BlockKind, Grid, Manuscript};
 use meaning::Meaning;
@@ -22,16 +25,23 @@ pub fn read(manuscript: &Manuscript, scan: &Scan, number: usize, readings: &mut 
     let layout = Layout::of(block, number, grid);
     let table = Table { manuscript, scan, block, grid, first: scan.of_block(number).start, layout };
     let setting = Setting::of(&table, &around(manuscript, number));
+    let first_group = readings.groups.len();
     for row in table.layout.rows.iter().skip(table.layout.header_rows as usize) {
         match row.role {
-            RowRole::Header | RowRole::Blank => {}
-            RowRole::Section | RowRole::P | RowRole::Data => table.read_p(row, &setting, &mut readings.p),
+            RowRole::Header | RowRole::Blank | RowRole::Sizes => continue,
+            RowRole::Section | RowRole::P | RowRole::Data | RowRole::Statistic => {}
         }
-        if row.role == RowRole::Data && table.layout.plain {
+        table.read_p(row, &setting, readings);
+        table.read_statistics(row, readings);
+        if row.role == RowRole::Data {
             let counts = summary::read(&table, row, &setting, &mut readings.groups);
             estimate::read(&table, row, &setting, counts, readings);
         }
     }
+    // Cells are read by role, and readings are in reading order.
+    readings.p.sort_by_key(|p| p.sentence);
+    readings.statistics.sort_by_key(|s| s.sentence);
+    sizes::fill_totals(&table, &mut readings.groups[first_group..]);
 }
 
 /// A table with what is needed to look at its cells.
@@ -64,7 +74,19 @@ impl<'a> Table<'a> {
         (own, row.section.map_or(Meaning::default(), |s| Meaning::of(&self.view(s))))
     }
 
-    fn read_p(&self, row: &Row, setting: &Setting, out: &mut Vec<PValue>) {
+    /// The heads over a column, from the top.
+    fn heads(&self, column: usize) -> impl Iterator<Item = SentenceView<'a>> {
+        let path = self.layout.columns.get(column).map_or(&[][..], |c| &c.path);
+        path.iter().map(|&h| self.view(h))
+    }
+
+    /// Whether two columns of results are of one comparison.
+    fn same_bundle(&self, a: usize, b: usize) -> bool {
+        let of = |k: usize| self.layout.columns.get(k).map(|c| (c.panel, c.bundle));
+        of(a) == of(b)
+    }
+
+    fn read_p(&self, row: &Row, setting: &Setting, readings: &mut Readings) {
         let words = |cells: &[usize], class: Classes| {
             cells.iter().any(|&c| {
                 let view = self.view(c);
@@ -80,17 +102,29 @@ impl<'a> Table<'a> {
             }
             let in_p_column = *role == ColumnRole::P;
             if !in_p_column && row.role != RowRole::P {
-                // `12.4 (3.1), P = 0.03` says itself what it is.
-                out.extend(p::find(&view).iter().map(|x| x.reading(&view)));
+                // `12.4 (3.1), P = 0.03` says itself what it is; so does `z = 2.1, P = 0.03`.
+                let found = p::find(&view);
+                readings.p.extend(found.iter().map(|x| x.reading(&view)));
+                if *role == ColumnRole::Other || !found.is_empty() {
+                    let mut taken = vec![false; view.len()];
+                    found.iter().for_each(|x| taken[x.first..=x.last].fill(true));
+                    super::statistic::read(&view, &mut taken, &mut readings.statistics);
+                    super::interval::read(&view, &mut taken, &mut readings.intervals);
+                }
                 continue;
             }
-            let header = self.layout.columns.get(self.grid.cells[cell].column as usize).and_then(|c| c.header);
-            let named: Vec<usize> = headed.iter().copied().chain(header).collect();
+            let column = self.grid.cells[cell].column as usize;
+            let path = self.layout.columns.get(column).map_or(&[][..], |c| &c.path);
+            let named: Vec<usize> = headed.iter().copied().chain(path.iter().copied()).collect();
+            let times = self.layout.panel(column).is_some_and(|p| p.times);
             let p_role = if words(&named, Classes::INTERACTION) {
                 Role::Interaction
             } else if words(&named, Classes::TREND) {
                 Role::TrendOrJoint
-            } else if !in_p_column && role.size().is_some() || self.says(&named, &["within", "paired"]) {
+            } else if !in_p_column && role.summarises() && !self.layout.rows_are_groups
+                || in_p_column && times
+                || self.says(&named, &["within", "paired"])
+            {
                 // A row of p-values, one for each group: within the groups, over time.
                 Role::WithinGroup
             } else if self.says(&named, &["noninferiority", "inferiority"]) {
@@ -103,8 +137,12 @@ impl<'a> Table<'a> {
                 Role::Effect
             };
             let corrected = self.says(&named, &["corrected", "bonferroni", "tukey", "holm", "fdr"]);
-            for x in cell::bare_p(&view) {
-                out.push(PValue {
+            let bare = cell::bare_p(&view);
+            if bare.is_empty() {
+                readings.p.extend(p::find(&view).iter().map(|x| x.reading(&view)));
+            }
+            for x in bare {
+                readings.p.push(PValue {
                     span: view.span(x.first, x.last),
                     sentence: view.id,
                     relation: x.relation,
@@ -115,6 +153,56 @@ impl<'a> Table<'a> {
                 });
             }
         }
+    }
+
+    /// The statistics of a row, in columns or a row of their own.
+    fn read_statistics(&self, row: &Row, readings: &mut Readings) {
+        let of_row = (row.role == RowRole::Statistic)
+            .then(|| row.labels.last().map(|&l| statistic::Head::of(&self.view(l))))
+            .flatten();
+        let start = readings.statistics.len();
+        for cell in row.cells.clone() {
+            let role = self.role_of(cell);
+            let column = self.grid.cells[cell].column as usize;
+            let head = match (of_row, role) {
+                (_, ColumnRole::Stub) => continue,
+                (Some(head), _) => head,
+                (None, ColumnRole::Statistic) => {
+                    let mut head = statistic::Head::default();
+                    for view in self.heads(column) {
+                        let of = statistic::Head::of(&view);
+                        if of.symbol.is_some() {
+                            head = of;
+                        }
+                    }
+                    head
+                }
+                _ => continue,
+            };
+            let df = row
+                .cells
+                .clone()
+                .find(|&i| *self.role_of(i) == ColumnRole::Df && self.same_bundle(self.grid.cells[i].column as usize, column))
+                .map_or((None, None), |i| self.freedom(i));
+            let view = self.view(cell);
+            match statistic::read(&view, head, df) {
+                Some(s) => readings.statistics.push(s),
+                // `F(1, 46) = 3.2` in the cell itself.
+                None if readings.statistics[start..].iter().all(|s| s.sentence != view.id) => {
+                    super::statistic::read(&view, &mut vec![false; view.len()], &mut readings.statistics);
+                }
+                None => {}
+            }
+        }
+    }
+
+    /// One or two degrees of freedom in a cell.
+    fn freedom(&self, cell: usize) -> (Option<Figure>, Option<Figure>) {
+        let view = self.view(cell);
+        let mut found = (0..view.len()).filter_map(|i| {
+            Some(Figure { printed: view.number(i)?, origin: Origin::Printed(view.span(i, i)) })
+        });
+        (found.next(), found.next())
     }
 
     fn says(&self, cells: &[usize], words: &[&str]) -> bool {
@@ -129,20 +217,29 @@ impl<'a> Table<'a> {
 struct Setting {
     /// By the headers of its columns of groups and of labels.
     columns: Meaning,
+    /// By the headers of each column.
+    heads: Vec<Meaning>,
     /// By its caption and notes.
     around: Meaning,
     /// It shows the participants as they were at the start.
     baseline: bool,
+    /// Sizes that the figures of a column show, where no text does.
+    shown: Vec<Option<summary::Sized>>,
+    /// The one size that the caption or the notes give, for want of others.
+    noted: Option<summary::Sized>,
 }
 
 impl Setting {
     fn of(table: &Table, around: &Around) -> Setting {
         let mut columns = Meaning::default();
-        for column in &table.layout.columns {
-            if let Some(header) = column.header
-                && matches!(column.role, ColumnRole::Stub | ColumnRole::Group { .. } | ColumnRole::Overall { .. })
-            {
-                columns.add(&table.view(header));
+        let mut heads = vec![Meaning::default(); table.layout.columns.len()];
+        for (k, column) in table.layout.columns.iter().enumerate() {
+            for &header in &column.path {
+                let view = table.view(header);
+                heads[k].add(&view);
+                if column.role == ColumnRole::Stub || column.role.summarises() {
+                    columns.add(&view);
+                }
             }
         }
         let views = |blocks: std::ops::Range<usize>| {
@@ -156,6 +253,13 @@ impl Setting {
         let baseline = (caption_says(&["baseline", "demographic", "demographics", "characteristics"])
             || title.contains("baseline"))
             && !caption_says(&["change", "changes", "after", "outcome", "outcomes", "follow", "end", "during", "post"]);
-        Setting { columns, around: said, baseline }
+        let sized = table.layout.columns.iter().any(|c| c.role.size().is_some());
+        let shown = sizes::shown(table);
+        let noted = if sized || shown.iter().any(Option::is_some) {
+            None
+        } else {
+            sizes::noted(views(around.caption.clone()).chain(views(around.notes.clone())))
+        };
+        Setting { columns, heads, around: said, baseline, shown, noted }
     }
 }
