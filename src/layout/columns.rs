@@ -56,7 +56,7 @@ fn ends(text: &Text, cell: &Cell) -> bool {
 pub(super) fn columns(text: &Text, grid: &Grid, runs: &[Range<usize>], header_rows: u32) -> Vec<Column> {
     let count = grid.columns.min(2 * grid.cells.len() as u32 + 1) as usize;
     let mut columns: Vec<Column> = (0..count)
-        .map(|_| Column { role: ColumnRole::Other, header: None, path: Vec::new(), panel: None, bundle: 0 })
+        .map(|_| Column { role: ColumnRole::Other, header: None, path: Vec::new(), panel: None, bundle: 0, doubtful: false })
         .collect();
     let body = runs.get(header_rows as usize).map_or(grid.cells.len(), |r| r.start);
     for (index, cell) in grid.cells[..body].iter().enumerate() {
@@ -89,6 +89,7 @@ pub(super) fn columns(text: &Text, grid: &Grid, runs: &[Range<usize>], header_ro
 struct Looks {
     words: u32,
     summary: u32,
+    fraction: u32,
     range: u32,
     number: u32,
     bound: u32,
@@ -96,7 +97,7 @@ struct Looks {
 
 impl Looks {
     fn filled(&self) -> u32 {
-        self.words + self.summary + self.range + self.number + self.bound
+        self.words + self.summary + self.fraction + self.range + self.number + self.bound
     }
 }
 
@@ -108,6 +109,7 @@ fn looks(text: &Text, _: &Grid, body: &[Cell], count: usize) -> Vec<Looks> {
             Look::Empty => {}
             Look::Words => of.words += 1,
             Look::Summary => of.summary += 1,
+            Look::Fraction => of.fraction += 1,
             Look::Range => of.range += 1,
             Look::Number => of.number += 1,
             Look::Bound => of.bound += 1,
@@ -141,7 +143,7 @@ fn stub_columns(text: &Text, grid: &Grid, columns: &[Column], looks: &[Looks]) -
         let (column, of) = (&columns[stubs], looks[stubs]);
         let head = column.header.map_or(String::new(), |h| text.folded(&grid.cells[h]));
         let role = head_role(text, grid, column);
-        let figures = of.summary + of.number + of.bound;
+        let figures = of.summary + of.fraction + of.number + of.bound;
         let named = header::words(&head).any(|w| LABELS.contains(&w)) && of.summary == 0 && !head.contains('=');
         let labels = of.words > 0 && of.words >= 2 * figures || named && figures + of.range + of.words > 0 && of.bound == 0;
         let role_free = matches!(role, ColumnRole::Other) && !(header::is_size_label(&head));
@@ -175,7 +177,7 @@ fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
                 (Part::Percent, Some(left)) if !left.summarises() && *left != ColumnRole::Other => ColumnRole::Other,
                 (part, _) => ColumnRole::Part(*part),
             },
-            ColumnRole::Other if header::is_size_label(&heads[k]) && of.number > 0 && of.number == of.filled() => {
+            ColumnRole::Other if of.number > 0 && of.number == of.filled() && is_size(&heads[k], looks.get(k + 1)) => {
                 ColumnRole::Size
             }
             // The second limit of an interval whose head stands over the first only.
@@ -190,6 +192,8 @@ fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
                 ColumnRole::Interval
             }
             // `>0.05`, `<0.01`: bounds and nothing else.
+            // "Intervention − control": what the columns named in it differ by.
+            ColumnRole::Other if is_contrast(text, grid, columns, k, &heads[k]) => ColumnRole::Estimate,
             ColumnRole::Other if of.bound >= 2 && of.bound + 1 >= of.filled() && of.summary == 0 => ColumnRole::P,
             other => other.clone(),
         };
@@ -205,6 +209,31 @@ fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
         }
     }
     group_columns(text, grid, columns, looks, &heads);
+}
+
+/// A head of sizes: `N`, or `Drug arm No. households` in front of a column of summaries.
+fn is_size(head: &str, next: Option<&Looks>) -> bool {
+    let ends = |end: &str| head.ends_with(end);
+    header::is_size_label(head)
+        || next.is_some_and(|n| n.summary > 0 && 2 * n.summary >= n.filled())
+            && !head.contains('%')
+            && header::words(head).count() <= 8
+            && (ends(" n") || header::size_words_at_end(head))
+}
+
+/// Whether a head sets the names of two columns of figures against each other: `Tea − water (SE)`.
+fn is_contrast(text: &Text, grid: &Grid, columns: &[Column], k: usize, head: &str) -> bool {
+    let against = head.contains([' ', '-', '–', '−'])
+        && (header::words(head).any(|w| matches!(w, "vs" | "versus" | "minus"))
+            || head.split([' ', '(']).any(|w| matches!(w, "-" | "–" | "−") || w.ends_with(['-', '–', '−']) && w.len() > 3));
+    let left = columns[..k].iter().rev().take(4).filter(|c| !matches!(c.role, ColumnRole::Stub) && !c.role.compares());
+    let named = left.filter(|c| {
+        c.header.is_some_and(|h| {
+            let name = text.folded(&grid.cells[h]);
+            header::words(&name).next().is_some_and(|first| header::words(head).any(|w| w == first))
+        })
+    });
+    against && named.count() >= 1
 }
 
 /// Whether a lower limit stands to the left, with nothing but "to" between.
@@ -226,7 +255,8 @@ fn group_columns(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Look
     };
     let mut some = columns.iter().any(|c| c.role.summarises());
     for k in 0..columns.len() {
-        if columns[k].role == ColumnRole::Other && looks[k].summary > 0 && 2 * looks[k].summary >= looks[k].range {
+        let summaries = looks[k].summary + looks[k].fraction;
+        if columns[k].role == ColumnRole::Other && summaries > 0 && 2 * summaries >= looks[k].range {
             let label = name(&columns[k]);
             columns[k].role = ColumnRole::Group { label, n: None };
             some = true;
@@ -345,13 +375,17 @@ fn close(text: &Text, grid: &Grid, columns: &mut [Column], panel: &mut Panel, re
             seen.clear();
         }
     }
-    panel.doubtful |= p > 1;
     let groups = panel.groups.len();
-    let plain = |&k: &usize| {
-        columns[k].role != ColumnRole::P
-            || columns[k].path.iter().all(|&h| header::is_plain_p(&text.folded(&grid.cells[h]), groups))
-    };
-    panel.doubtful |= !results.iter().all(plain) || groups > MOST_GROUPS;
+    // A P right behind the groups is theirs, whatever the P of an estimate behind it is.
+    let first_bundle = columns[results[0]].bundle;
+    let estimate_behind =
+        results.iter().any(|&k| columns[k].role == ColumnRole::Estimate && columns[k].bundle != first_bundle);
+    for &k in results {
+        let plain = columns[k].role != ColumnRole::P
+            || columns[k].path.iter().all(|&h| header::is_plain_p(&text.folded(&grid.cells[h]), groups));
+        let own = p <= 1 || estimate_behind && columns[k].bundle == first_bundle;
+        columns[k].doubtful = panel.doubtful || !plain || !own || groups > MOST_GROUPS;
+    }
 }
 
 /// Tells groups from times, and groups of their own name from others.

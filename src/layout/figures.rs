@@ -8,8 +8,10 @@ pub(super) enum Look {
     /// Nothing, or a dash.
     Empty,
     Words,
-    /// `12.4 (3.1)`, `5.2 ± 1.1`, `12/40`
+    /// `12.4 (3.1)`, `5.2 ± 1.1`
     Summary,
+    /// `12/40`, `0.03/0.2`
+    Fraction,
     /// `8–12`, `(0.4, 1.2)`
     Range,
     /// `12`, `30%`
@@ -53,8 +55,9 @@ pub(super) fn look(text: &str) -> Look {
     let opens = text.starts_with(['(', '[', '{']);
     match numbers {
         0 | 1 => Look::Number,
-        2 if opens => Look::Range,
-        _ if !opens && text.contains(['(', '[', '{', '/']) => Look::Summary,
+        2 if opens && !text.contains('/') => Look::Range,
+        _ if !opens && text.contains(['(', '[', '{']) => Look::Summary,
+        _ if text.contains('/') => Look::Fraction,
         _ => Look::Range,
     }
 }
@@ -114,6 +117,8 @@ mod tests {
             ("5.2 ± 1.1*", Look::Summary),
             ("12/40 (30%)", Look::Summary),
             ("0·0 (−0.25 to 1.00)0.09 (SD 1.60)", Look::Summary),
+            ("12/40", Look::Fraction),
+            ("(20/10)", Look::Fraction),
             ("8–12", Look::Range),
             ("(0.4, 1.2)", Look::Range),
             ("0,145", Look::Number),

@@ -371,6 +371,12 @@ pub(super) fn is_size_label(head: &str) -> bool {
     number && !head.contains('%') && all.all(names)
 }
 
+/// `drug arm no. households`: a name, then the words of a size.
+pub(super) fn size_words_at_end(head: &str) -> bool {
+    let at = ["no. ", "no ", "number of ", "n of "].iter().filter_map(|w| head.rfind(w)).max();
+    at.is_some_and(|at| is_size_label(head[at..].trim()))
+}
+
 /// Words for all participants together.
 pub(super) fn is_overall(label: &str) -> bool {
     let label = label.to_lowercase();

@@ -46,6 +46,9 @@ pub struct Column {
     pub panel: Option<usize>,
     /// Result columns with one number are of one comparison.
     pub bundle: usize,
+    /// Of a result column: it is not certain that it compares just the groups of its panel. It is one of several, its
+    /// head says more of it, or the groups are doubtful.
+    pub doubtful: bool,
 }
 
 /// What a column is for.
@@ -104,8 +107,7 @@ pub struct Panel {
     pub groups: Vec<usize>,
     /// The columns are one group at several times.
     pub times: bool,
-    /// It is not certain that the results compare just these groups: several results, groups at several times,
-    /// groups without a name of their own.
+    /// Groups at several times, or without a name of their own.
     pub doubtful: bool,
 }
 

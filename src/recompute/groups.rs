@@ -387,7 +387,7 @@ fn fisher_table(cells: &[Cell], named: bool) -> Option<Range> {
     Some(Range::point(p).widened(distribution::RELATIVE_ERROR))
 }
 
-fn table_candidates(case: &Case, table: &[Vec<u64>]) -> Result<Vec<Candidate>, &'static str> {
+pub(crate) fn table_candidates(case: &Case, table: &[Vec<u64>]) -> Result<Vec<Candidate>, &'static str> {
     let (x, df) = proportion::pearson_table(table).ok_or(reason::NO_METHOD)?;
     let p = tail::chi_squared(Range::point(x).widened(1e-12), df).ok_or(reason::NO_METHOD)?;
     let rows: Vec<String> = table.iter().map(|r| r.iter().map(u64::to_string).collect::<Vec<_>>().join(", ")).collect();

@@ -13,8 +13,12 @@ use crate::text::Span;
 pub(super) fn read(table: &Table, row: &Row, setting: &Setting, counts: bool, readings: &mut Readings) {
     // The last estimate with its column, for an interval in cells of its own.
     let mut last: Option<(usize, Estimate)> = None;
+    let estimates = table.row_estimates(row);
     for index in row.cells.clone() {
-        let role = table.role_of(index);
+        let mut role = table.role_of(index);
+        if estimates && (role.summarises() || *role == ColumnRole::Other) {
+            role = &ColumnRole::Estimate;
+        }
         if !matches!(role, ColumnRole::Estimate | ColumnRole::Interval | ColumnRole::Lower) {
             continue;
         }
@@ -26,7 +30,7 @@ pub(super) fn read(table: &Table, row: &Row, setting: &Setting, counts: bool, re
         let heads: Vec<SentenceView> = table.heads(column).collect();
         match role {
             ColumnRole::Estimate => {
-                let labels: Vec<SentenceView> = row.labels.iter().map(|&l| table.view(l)).collect();
+                let labels: Vec<SentenceView> = row.labels.iter().chain(&row.section).map(|&l| table.view(l)).collect();
                 let reads = cell::read(&view);
                 if reads.is_empty() {
                     // An interval in a column headed for both, as in the second line of a cell.
@@ -43,8 +47,14 @@ pub(super) fn read(table: &Table, row: &Row, setting: &Setting, counts: bool, re
             }
             ColumnRole::Interval => {
                 let near = last.take().filter(|(k, _)| table.same_bundle(*k, column)).map(|(_, e)| e);
+                // The head may stand over the estimate alone.
+                let all: Vec<SentenceView> = if says_ci(&heads) {
+                    heads
+                } else {
+                    heads.into_iter().chain(table.heads(column.saturating_sub(1))).collect()
+                };
                 if let Some(pair) = cell::limits(&view) {
-                    push_interval(&view, pair, &heads, near.as_ref(), setting, readings);
+                    push_interval(&view, pair, &all, near.as_ref(), setting, readings);
                 }
             }
             _ => {
@@ -129,9 +139,10 @@ fn estimate(
         Estimate { span, sentence: view.id, measure, scale, value: value.printed, se, percent, adjusted };
     readings.estimates.push(estimate.clone());
     if let Some((a, b)) = limits
-        && (says_ci(heads) || setting.around.ci || setting.columns.ci)
+        && (says_ci(heads) || says_ci(labels) || setting.around.ci || setting.columns.ci)
     {
-        add_interval(view, view.span(read.first, read.last), (a, b), heads, Some(&estimate), readings);
+        let all: Vec<SentenceView> = heads.iter().chain(labels).copied().collect();
+        add_interval(view, view.span(read.first, read.last), (a, b), &all, Some(&estimate), readings);
     }
     Some(estimate)
 }
@@ -194,6 +205,8 @@ fn general(heads: &[SentenceView]) -> Option<(Measure, Scale)> {
         Some((Measure::RegressionCoefficient, Scale::Difference))
     } else if says(&["d", "ES"]) {
         Some((Measure::StandardizedDifference, Scale::Difference))
+    } else if heads.iter().any(|h| (1..h.len()).any(|i| h.sign(i, '-') && h.get(i + 1).is_some_and(|t| t.is_word()) && (h.spaced(i) || h.spaced(i + 1)) || h.any(i, &["minus"]))) {
+        Some((Measure::MeanDifference, Scale::Difference))
     } else {
         None
     }
@@ -203,7 +216,8 @@ fn general(heads: &[SentenceView]) -> Option<(Measure, Scale)> {
 fn level(head: &SentenceView) -> Option<Figure> {
     (0..head.len()).find_map(|i| {
         let printed = head.number(i).filter(|p: &Printed| (80.0..100.0).contains(&p.value()))?;
-        let named = (i + 1..i + 4).any(|k| head.is(k, Classes::CI) || head.is(k, Classes::CONFIDENCE))
+        let dotted = |k: usize| head.any(k, &["c"]) && head.sign(k + 1, '.') && head.any(k + 2, &["i"]);
+        let named = (i + 1..i + 4).any(|k| head.is(k, Classes::CI) || head.is(k, Classes::CONFIDENCE) || dotted(k))
             || i > 0 && head.is(i - 1, Classes::CI);
         named.then(|| Figure { printed, origin: Origin::Inferred(Inference::Header, head.span(i, i)) })
     })

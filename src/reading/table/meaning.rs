@@ -28,6 +28,10 @@ pub(super) struct Meaning {
     pub change: bool,
     /// "reduction", "gain", "difference": a change or a level, as the case may be.
     pub shift: bool,
+    /// "n", "no.", "number"
+    pub number: bool,
+    /// A measure that compares groups: "odds ratio", "difference".
+    pub measure: bool,
     /// A geometric mean: its spread is no SD.
     pub geometric: bool,
 }
@@ -67,6 +71,9 @@ impl Meaning {
             self.shift |= view.any(i, SHIFTS)
                 || view.any(i, &["loss"]) && !(i > 0 && view.any(i - 1, &["blood", "hearing", "hair"]));
             let number = view.is(i, Classes::N) || view.any(i, &["no", "number", "numbers", "num", "frequency"]);
+            self.number |= number;
+            self.measure |= matches!(view.word(i), "OR" | "RR" | "HR" | "NNT" | "aOR" | "IRR")
+                || view.any(i, &["ratio", "difference"]) && !view.any(i + 1, &["before", "between"]);
             if number && self.percent_after(view, i) {
                 self.count = true;
             }

@@ -14,7 +14,7 @@ mod summary;
 use super::lexicon::Classes;
 use super::sentence::{Scan, SentenceView};
 use super::{Figure, Origin, PValue, Readings, Role, p};
-use crate::layout::{Around, ColumnRole, Layout, Row, RowRole, around};
+use crate::layout::{Around, Column, ColumnRole, Layout, Row, RowRole, around};
 use crate::manuscript::{Block, BlockKind, Grid, Manuscript};
 use meaning::Meaning;
 
@@ -34,13 +34,14 @@ pub fn read(manuscript: &Manuscript, scan: &Scan, number: usize, readings: &mut 
         table.read_p(row, &setting, readings);
         table.read_statistics(row, readings);
         if row.role == RowRole::Data {
-            let counts = summary::read(&table, row, &setting, &mut readings.groups);
+            let counts = !table.row_estimates(row) && summary::read(&table, row, &setting, readings);
             estimate::read(&table, row, &setting, counts, readings);
         }
     }
     // Cells are read by role, and readings are in reading order.
     readings.p.sort_by_key(|p| p.sentence);
     readings.statistics.sort_by_key(|s| s.sentence);
+    readings.intervals.sort_by_key(|i| i.sentence);
     sizes::fill_totals(&table, &mut readings.groups[first_group..]);
 }
 
@@ -78,6 +79,12 @@ impl<'a> Table<'a> {
     fn heads(&self, column: usize) -> impl Iterator<Item = SentenceView<'a>> {
         let path = self.layout.columns.get(column).map_or(&[][..], |c| &c.path);
         path.iter().map(|&h| self.view(h))
+    }
+
+    /// Whether a row's cells are estimates with their intervals: its label or title names a measure and intervals.
+    fn row_estimates(&self, row: &Row) -> bool {
+        let (own, section) = self.said(row);
+        own.measure && own.ci || section.measure && section.ci && !own.speaks()
     }
 
     /// Whether two columns of results are of one comparison.
@@ -258,7 +265,11 @@ impl Setting {
         let noted = if sized || shown.iter().any(Option::is_some) {
             None
         } else {
-            sizes::noted(views(around.caption.clone()).chain(views(around.notes.clone())))
+            let compares = table.layout.columns.iter().any(|c| c.role.compares());
+            let named = |c: &&Column| c.role.label().is_some_and(|l| !l.is_empty()) && c.role.summarises();
+            let summaries = heads.iter().filter(|h| h.mean || h.median).count();
+            let single = !compares && table.layout.columns.iter().filter(named).count() <= summaries.max(1);
+            sizes::noted(views(around.caption.clone()).chain(views(around.notes.clone())), single)
         };
         Setting { columns, heads, around: said, baseline, shown, noted }
     }

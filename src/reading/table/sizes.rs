@@ -47,27 +47,46 @@ impl Table<'_> {
     }
 }
 
-/// The one `n = 12` of a caption and notes; several leave it open.
-pub(super) fn noted<'a>(views: impl Iterator<Item = SentenceView<'a>>) -> Option<Sized> {
+/// The one `n = 12` of a caption and notes, or the one number of people there; several leave it open.
+pub(super) fn noted<'a>(views: impl Iterator<Item = SentenceView<'a>>, single: bool) -> Option<Sized> {
     let mut found: Option<Sized> = None;
     for view in views {
         for i in 0..view.len() {
-            if !view.eq(i, "n") || !view.sign(i + 1, '=') {
+            let at = if view.eq(i, "n") && view.sign(i + 1, '=') {
+                i + 2
+            } else if single && view.number(i).is_some() && counts_people(&view, i) {
+                i
+            } else {
                 continue;
-            }
-            let value = view.number(i + 2)?.count().filter(|&n| n > 0)?;
+            };
+            let value = view.number(at)?.count().filter(|&n| n > 0)?;
             if found.is_some_and(|f| f.value != value) {
                 return None;
             }
-            found = Some(sized(Size { value, span: view.span(i + 2, i + 2) }, Inference::ArmSize));
+            found = Some(sized(Size { value, span: view.span(at, at) }, Inference::ArmSize));
         }
     }
     found
 }
 
+/// `15 healthy male subjects`
+fn counts_people(view: &SentenceView, i: usize) -> bool {
+    const PEOPLE: &[&str] = &["subjects", "patients", "participants", "volunteers", "individuals", "children", "adults"];
+    for k in i + 1..(i + 6).min(view.len()) {
+        if view.any(k, PEOPLE) {
+            return true;
+        }
+        if !view.get(k).is_some_and(|t| t.is_word()) {
+            return false;
+        }
+    }
+    false
+}
+
 /// The size that the counts and percentages of a column have in common, where its head gives none.
 pub(super) fn shown(table: &Table) -> Vec<Option<Sized>> {
     let mut ranges: Vec<Vec<(u64, u64, Span)>> = vec![Vec::new(); table.layout.columns.len()];
+    let mut sexes: Vec<Option<Sized>> = vec![None; ranges.len()];
     let wanted = |k: usize| table.layout.columns.get(k).is_some_and(|c| c.role.summarises() && c.role.size().is_none());
     if !(0..ranges.len()).any(wanted) {
         return vec![None; ranges.len()];
@@ -79,7 +98,17 @@ pub(super) fn shown(table: &Table) -> Vec<Option<Sized>> {
                 continue;
             }
             let view = table.view(index);
-            let (events, percent): (At, Printed) = match cell::read(&view)[..] {
+            let reads = cell::read(&view);
+            // Men and women make the group.
+            if let [cell::Read { form: Form::Fraction { events, total, percent: None }, .. }] = reads[..]
+                && row.labels.iter().any(|&l| super::summary::names_sexes(&table.view(l)))
+                && let (Some(a), Some(b)) = (events.printed.count(), total.printed.count())
+                && let Some(value) = a.checked_add(b).filter(|&n| n > 0)
+            {
+                let span = view.span(events.first, total.last);
+                sexes[column] = Some(sized(Size { value, span }, Inference::Categories));
+            }
+            let (events, percent): (At, Printed) = match reads[..] {
                 [cell::Read { form: Form::Bracket { centre, inner, named: None, .. }, .. }] => (centre, inner),
                 [cell::Read { form: Form::PercentFirst { percent, events }, .. }] => (events, percent),
                 _ => continue,
@@ -97,7 +126,7 @@ pub(super) fn shown(table: &Table) -> Vec<Option<Sized>> {
             }
         }
     }
-    ranges.iter().map(|r| common(r)).collect()
+    ranges.iter().zip(sexes).map(|(r, sexes)| common(r).or(sexes)).collect()
 }
 
 /// The one size that most ranges hold, where it is the only such.

@@ -3,6 +3,7 @@
 use super::super::sentence::SentenceView;
 use super::super::{Figure, Inference, Origin, Relation, Statistic, Symbol};
 use super::cell::{self, Form};
+use crate::printed::Printed;
 
 /// The symbol that a head names, with the degrees of freedom that stand with it: `F(1, 146)`, `t`, `χ²`.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
@@ -24,7 +25,18 @@ impl Head {
                 Some(Figure { printed, origin: Origin::Inferred(Inference::Header, view.span(at, at)) })
             };
             let open = (i + 1..i + 4).find(|&k| view.signs(k, &['(', '[']));
-            if let Some(open) = open
+            // `F(1,146)`: the comma may have been taken for that of thousands.
+            let both = open.and_then(|open| {
+                let (a, b) = view.word(open + 1).split_once(',')?;
+                let span = view.span(open + 1, open + 1);
+                let figure = |text: &str| {
+                    Some(Figure { printed: Printed::parse(text)?, origin: Origin::Inferred(Inference::Header, span) })
+                };
+                Some((figure(a)?, figure(b)?))
+            });
+            if let Some((df1, df2)) = both {
+                (found.df1, found.df2) = (Some(df1), Some(df2));
+            } else if let Some(open) = open
                 && let Some(df1) = figure(open + 1)
             {
                 found.df1 = Some(df1);

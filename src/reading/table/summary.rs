@@ -1,7 +1,7 @@
 //! The group summaries of one row.
 
 use super::super::sentence::SentenceView;
-use super::super::{Figure, Group, Inference, Origin, SpreadKind};
+use super::super::{Figure, Group, Inference, IntervalReading, Origin, Readings, SpreadKind};
 use super::cell::{self, At, Form, Read};
 use super::meaning::Meaning;
 use super::{Setting, Table};
@@ -37,7 +37,8 @@ struct Held<'a> {
 }
 
 /// Appends the groups of a row; tells whether they are counts.
-pub(super) fn read(table: &Table, row: &Row, setting: &Setting, out: &mut Vec<Group>) -> bool {
+pub(super) fn read(table: &Table, row: &Row, setting: &Setting, readings: &mut Readings) -> bool {
+    let out = &mut readings.groups;
     let (own, section) = table.said(row);
     let mut cells: Vec<Held> = Vec::new();
     for index in row.cells.clone().filter(|&i| table.role_of(i).summarises()) {
@@ -82,7 +83,45 @@ pub(super) fn read(table: &Table, row: &Row, setting: &Setting, out: &mut Vec<Gr
             }
         }
     }
-    out[start..].iter().any(|g| g.events.is_some())
+    row_shares(&mut out[start..]);
+    for g in out[start..].iter().filter(|g| g.spread_kind == Some(SpreadKind::Ci)) {
+        if let ([lower, upper], Some(centre)) = (&g.spread[..], g.mean.or(g.median)) {
+            readings.intervals.push(IntervalReading {
+                span: g.span,
+                sentence: g.sentence,
+                level: None,
+                lower: *lower,
+                upper: *upper,
+                percent: false,
+                credible: false,
+                reversed: false,
+                estimate: Some((centre, g.span)),
+            });
+        }
+    }
+    readings.groups[start..].iter().any(|g| g.events.is_some())
+}
+
+/// Counts whose percentages share out the row and not the column: they are of all groups together.
+fn row_shares(groups: &mut [Group]) {
+    let count = |g: &Group| g.events.and_then(|e| e.printed.count());
+    let Some(sum) = groups.iter().map(count).try_fold(0u64, |s, c| s.checked_add(c?)) else { return };
+    let fits = |g: &Group, total: u64| {
+        let events = Printed::whole(count(g).unwrap_or(0));
+        total > 0 && g.percent.is_some_and(|p| fits(events, p, total))
+    };
+    let own = |g: &Group| g.total.and_then(|t| t.printed.count()).is_some_and(|n| fits(g, n) && !inferred(g));
+    if groups.len() < 2 || !groups.iter().all(|g| fits(g, sum)) || groups.iter().all(own) {
+        return;
+    }
+    for g in groups {
+        let origin = Origin::Inferred(Inference::Categories, g.span);
+        g.total = Some(Figure { printed: Printed::whole(sum), origin });
+    }
+}
+
+fn inferred(g: &Group) -> bool {
+    g.total.is_some_and(|t| matches!(t.origin, Origin::Inferred(Inference::FromPercent, _)))
 }
 
 /// A summary whose other half stands in the next cell: `12 | 30`, `5.2 | 1.1`, `8 | 7–10`.
@@ -202,7 +241,8 @@ impl Evidence {
                 None
             };
         };
-        let summary = if let Some(kind) = nearest.spread.filter(|_| !nearest.geometric) {
+        // "Mean (SD) or geometric mean (IQR)": one figure is the SD.
+        let summary = if let Some(kind) = nearest.spread.filter(|_| !nearest.geometric || nearest.quantiles.is_some()) {
             Some(Bracket::Mean(kind))
         } else if nearest.median {
             Some(Bracket::Median(nearest.quantiles.unwrap_or(SpreadKind::Unstated)))
@@ -306,7 +346,7 @@ fn summary(
                 return Some(Group { events: Some(printed(view, events)), total, n: header.or(total), ..group });
             }
             let whole = header.is_some_and(|h| h.printed.count() == Some(t));
-            let stated = stated || whole || view.number(total.last).is_some() && said[0].count;
+            let stated = stated || whole || said[0].number || said[1].number;
             if t == 0 || e > t || (percent.is_none() && !stated) {
                 return None;
             }
@@ -314,7 +354,7 @@ fn summary(
             Some(Group {
                 events: Some(printed(view, events)),
                 total,
-                n: total,
+                n: header.or(total),
                 percent,
                 one_expression: true,
                 ..group.clone()
@@ -419,7 +459,7 @@ fn names_size(view: &SentenceView) -> bool {
 }
 
 /// `Males/Females`, `Sex (M:F)`
-fn names_sexes(view: &SentenceView) -> bool {
+pub(super) fn names_sexes(view: &SentenceView) -> bool {
     const MEN: &[&str] = &["m", "male", "males", "men", "boys"];
     const WOMEN: &[&str] = &["f", "female", "females", "women", "girls", "w"];
     let at = |words: &[&str]| (0..view.len()).find(|&i| view.any(i, words));

@@ -33,7 +33,19 @@ impl Table<'_> {
         let mut whole = title || !own.is_empty();
         let mut complete = None;
         for (k, below) in rows.clone().enumerate() {
-            let lists = self.compared(&self.layout.rows[below], panel);
+            let mut lists = self.compared(&self.layout.rows[below], panel);
+            // "Missing" has a count and no percentage.
+            let share = |g: &usize| self.readings.groups[*g].percent.is_some();
+            if groups.first().is_some_and(share) && lists.iter().flatten().any(|g| !share(g)) {
+                lists.clear();
+                let named = self.layout.rows[below].labels.iter().any(|&l| {
+                    let view = self.view(l);
+                    (0..view.len()).any(|i| view.any(i, &["missing", "unknown", "unclear", "lost", "unavailable"]))
+                });
+                if named {
+                    continue;
+                }
+            }
             let [list] = &lists[..] else {
                 // Rows without figures ("missing") end a block that is complete without them.
                 whole &= self.is_bare(below);

@@ -175,7 +175,7 @@ impl<'a> Table<'a> {
     fn of_bundle(&self, index: usize, bundle: &Bundle, notes: &Notes, out: &mut Vec<ReportedResult>) {
         let row = &self.layout.rows[index];
         let lists = self.compared(row, bundle.panel);
-        let alike = |list: &[usize]| list.windows(2).all(|w| alike(self.readings, w[0], w[1]));
+        let same = |list: &[usize]| list.windows(2).all(|w| alike(self.readings, w[0], w[1]));
         let results = bundle.p.len().max(bundle.estimates.len()).max(bundle.statistics.len()).max(bundle.intervals.len());
         for k in 0..results {
             let p = bundle.p.get(k).copied();
@@ -211,8 +211,13 @@ impl<'a> Table<'a> {
                     }
                 }
             }
-            if !alike(&groups) && lists.len() <= 1 {
-                groups.clear();
+            if !same(&groups) && lists.len() <= 1 {
+                // One group over time, and a change of another kind behind it.
+                let times = bundle.panel.and_then(|k| self.layout.panels.get(k)).is_some_and(|p| p.times || p.doubtful);
+                groups.retain(|&g| times && alike(self.readings, groups_first(&lists), g));
+                if groups.len() < 2 {
+                    groups.clear();
+                }
             }
             if let Some(panel) = bundle.panel.and_then(|k| self.layout.panels.get(k))
                 && !groups.is_empty()
@@ -220,7 +225,7 @@ impl<'a> Table<'a> {
                 if let Some(pair) = self.named_pair(bundle, &groups) {
                     groups = pair;
                 }
-                if panel.doubtful {
+                if panel.doubtful || bundle.columns.iter().any(|&k| self.layout.columns[k].doubtful) {
                     result.features.push((Feature::Unclear, span));
                 }
                 if panel.times {
@@ -402,6 +407,11 @@ impl<'a> Table<'a> {
         let proposed = notes.tests.iter().filter(|(mark, _)| mark.is_none()).map(|&(_, test)| test);
         result.tests.extend(proposed.map(|test| StatedTest { test, here: false }));
     }
+}
+
+/// The first group of the first list; only asked where there is one.
+fn groups_first(lists: &[Vec<usize>]) -> usize {
+    lists.first().and_then(|l| l.first()).copied().unwrap_or(0)
 }
 
 /// Whether two groups are summed up alike.
