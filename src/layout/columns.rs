@@ -23,7 +23,8 @@ pub(super) fn header_rows(text: &Text, grid: &Grid, runs: &[Range<usize>]) -> u3
         // A row without cells of its own under heads that span down, or with heads under heads that span across.
         let above = &grid.cells[runs[rows - 1].clone()];
         let under_span = above.iter().any(|c| c.column_span > 1 && c.column > 0 && c.column + c.column_span < grid.columns + 1);
-        let goes_on = others().count() >= 2 && words && (!labelled || under_span && stub.is_none_or(|c| !ends(text, c)));
+        let says = others().filter(|c| header::heads_column(&text.folded(c))).count();
+        let goes_on = others().count() >= 2 && words && (says >= 2 || !labelled || under_span && stub.is_none_or(|c| !ends(text, c)));
         // A label that spans down from the header proper leaves its first column free.
         let spanned = stub.is_none() && grid.header_rows == 0 && words;
         let empty = others().count() == 0 && !labelled;
@@ -177,7 +178,12 @@ fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
                 (Part::Percent, Some(left)) if !left.summarises() && *left != ColumnRole::Other => ColumnRole::Other,
                 (part, _) => ColumnRole::Part(*part),
             },
-            ColumnRole::Other if of.number > 0 && of.number == of.filled() && is_size(&heads[k], looks.get(k + 1)) => {
+            ColumnRole::Other
+                if of.number > 0
+                    && of.number == of.filled()
+                    && columns.get(k + 1).is_none_or(|c| c.role != ColumnRole::Part(Part::Percent))
+                    && is_size(&heads[k], looks.get(k + 1)) =>
+            {
                 ColumnRole::Size
             }
             // The second limit of an interval whose head stands over the first only.

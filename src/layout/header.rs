@@ -162,6 +162,9 @@ pub(super) fn is_statistic(head: &str) -> bool {
 fn part(head: &str) -> Option<ColumnRole> {
     let plain = head.trim_matches(|c: char| !c.is_alphanumeric() && c != '%' && c != '±');
     Some(match plain {
+        _ if plain.starts_with("s.d") && plain.contains("c.v") || plain.starts_with("sd") && plain.contains("cv") => {
+            ColumnRole::Part(Part::Sd)
+        }
         "sd" | "s.d" | "±sd" | "± sd" | "standard deviation" | "std" | "std. deviation" | "std. dev" => {
             ColumnRole::Part(Part::Sd)
         }
@@ -178,6 +181,12 @@ fn part(head: &str) -> Option<ColumnRole> {
         }
         _ => return None,
     })
+}
+
+/// Whether a cell of a second header row says what stands in its column.
+pub(super) fn heads_column(head: &str) -> bool {
+    role_of_words(head) != ColumnRole::Other
+        || matches!(head, "mean" | "median" | "n" | "n (%)" | "no. (%)" | "no." | "mean (sd)" | "mean ± sd" | "m")
 }
 
 /// Words of the head of an interval.
@@ -339,36 +348,43 @@ pub(super) fn size_alone(block: &Block, number: usize, cell: &Cell, labelled: bo
 
 /// The label of a row or column of sizes: `N`, `No. of patients`, `Number of women randomised`.
 pub(super) fn is_size_label(head: &str) -> bool {
-    const PEOPLE: &[&str] = &[
-        "patients",
-        "participants",
-        "subjects",
-        "cases",
-        "women",
-        "men",
-        "children",
-        "individuals",
-        "households",
-        "people",
-        "persons",
-        "infants",
-        "students",
-    ];
     let mut all = words(head).peekable();
     let number = match all.next() {
         Some("n" | "no" | "number" | "numbers") => true,
-        Some("total" | "sample" | "group") => matches!(all.next(), Some("n" | "number" | "size")),
+        Some("total") => return words(head).any(|w| matches!(w, "n" | "number")) && all.all(names_people),
+        Some("sample" | "group") => matches!(all.next(), Some("n" | "number" | "size")),
         Some("case") => return matches!(all.next(), Some("no" | "number")) && all.next().is_none(),
         // "Women" alone is a category.
         Some("patients" | "participants" | "subjects") => return all.all(|w| w == "n"),
         Some(_) => false,
         None => false,
     };
-    let names = |w: &str| {
-        PEOPLE.contains(&w)
-            || matches!(w, "of" | "n" | "in" | "per" | "group" | "sub" | "subgroup" | "arm" | "randomized" | "randomised" | "analysed" | "analyzed" | "evaluated" | "total" | "each" | "included" | "the")
-    };
-    number && !head.contains('%') && all.all(names)
+    number && !head.contains('%') && all.all(names_people)
+}
+
+/// People that a study counts.
+const PEOPLE: &[&str] = &[
+    "patients",
+    "participants",
+    "subjects",
+    "cases",
+    "women",
+    "men",
+    "children",
+    "individuals",
+    "households",
+    "people",
+    "persons",
+    "infants",
+    "students",
+];
+
+/// Words that may stand in the label of a size.
+fn names_people(word: &str) -> bool {
+    const OTHERS: &[&str] = &[
+        "of", "n", "in", "per", "group", "sub", "subgroup", "arm", "randomized", "randomised", "analysed", "analyzed", "evaluated", "total", "each", "included", "the", "number",
+    ];
+    PEOPLE.contains(&word) || OTHERS.contains(&word)
 }
 
 /// `drug arm no. households`: a name, then the words of a size.

@@ -100,7 +100,8 @@ pub(super) fn read(view: &SentenceView) -> Vec<Read> {
     let mut found = Vec::new();
     let mut k = 0;
     while let Some((form, end)) = form(&line, k).filter(|_| found.len() < MOST) {
-        let (n, after) = match own_size(&line, end) {
+        let behind = own_size(&line, end).or_else(|| bare_size(&line, &form, end));
+        let (n, after) = match behind {
             Some((n, after)) => (Some(n), after),
             None => (None, end),
         };
@@ -118,6 +119,17 @@ pub(super) fn read(view: &SentenceView) -> Vec<Read> {
         k = rest + usize::from(apart);
     }
     Vec::new()
+}
+
+/// The form that a cell begins with, whatever is said behind a comma: `1.57 [0.49, 2.65], d = 0.66`.
+pub(super) fn read_first(view: &SentenceView) -> Option<Read> {
+    if let [first, ..] = read(view)[..] {
+        return Some(first);
+    }
+    let line = Line::of(view);
+    let (form, end) = form(&line, 0)?;
+    let apart = line.sign(end, &[',', ';']);
+    apart.then(|| Read { form, first: line.at(0), last: line.at(end - 1), n: None })
 }
 
 /// Passes marks that lost their raised setting (`12.4 (3.1)a`) and units.
@@ -197,9 +209,18 @@ fn form(line: &Line, start: usize) -> Option<(Form, usize)> {
     let (inner, next) = line.number(at)?;
     if line.sign(next, &['/']) {
         let (total, next) = line.number(next + 1)?;
-        let whole = inner.printed.count().is_some() && total.printed.count().is_some() && named.is_none();
-        let form = Form::Fraction { events: inner, total, percent: Some(centre.printed) };
-        return if whole { closed(line, next, form) } else { None };
+        let (events, whole) = (inner.printed, total.printed);
+        // `180 (120/414)` holds two quartiles, `54.1 (166/307)` a fraction: the figure in front tells.
+        let counts = events.count().is_some() && whole.count().is_some() && named.is_none();
+        let share = 100.0 * events.value() / whole.value();
+        let near = (share - centre.printed.value()).abs() < 5.0;
+        let between = events.value() <= centre.printed.value() && centre.printed.value() <= whole.value();
+        let form = if counts && (near || centre_percent || !between) {
+            Form::Fraction { events: inner, total, percent: Some(centre.printed) }
+        } else {
+            Form::Pair { centre, lower: events, upper: whole }
+        };
+        return closed(line, next, form);
     }
     let (inner_percent, next) = line.percent(next);
     if line.sign(next, &[')', ']', '}']) {
@@ -241,6 +262,16 @@ fn named_spread(line: &Line, k: usize) -> Option<SpreadKind> {
     } else {
         None
     }
+}
+
+/// `5.2 ± 1.1 (12)`: the size behind a whole summary.
+fn bare_size(line: &Line, form: &Form, k: usize) -> Option<(At, usize)> {
+    if !matches!(form, Form::PlusMinus { .. }) || !line.sign(k, &['(', '[']) {
+        return None;
+    }
+    let (n, next) = line.number(k + 1)?;
+    n.printed.count().filter(|&n| n > 0)?;
+    line.sign(next, &[')', ']']).then_some((n, next + 1))
 }
 
 /// `(n = 20)`, `, n = 20`; gives the position after it.

@@ -31,7 +31,10 @@ pub(super) fn read(table: &Table, row: &Row, setting: &Setting, counts: bool, re
         match role {
             ColumnRole::Estimate => {
                 let labels: Vec<SentenceView> = row.labels.iter().chain(&row.section).map(|&l| table.view(l)).collect();
-                let reads = cell::read(&view);
+                let mut reads = cell::read(&view);
+                if reads.is_empty() {
+                    reads.extend(cell::read_first(&view));
+                }
                 if reads.is_empty() {
                     // An interval in a column headed for both, as in the second line of a cell.
                     if let (Some(pair), true) = (cell::limits(&view), says_ci(&heads)) {

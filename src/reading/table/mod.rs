@@ -16,6 +16,7 @@ use super::sentence::{Scan, SentenceView};
 use super::{Figure, Origin, PValue, Readings, Role, p};
 use crate::layout::{Around, Column, ColumnRole, Layout, Row, RowRole, around};
 use crate::manuscript::{Block, BlockKind, Grid, Manuscript};
+use crate::printed::Printed;
 use meaning::Meaning;
 
 /// Appends what a table says, row by row.
@@ -26,15 +27,16 @@ pub fn read(manuscript: &Manuscript, scan: &Scan, number: usize, readings: &mut 
     let table = Table { manuscript, scan, block, grid, first: scan.of_block(number).start, layout };
     let setting = Setting::of(&table, &around(manuscript, number));
     let first_group = readings.groups.len();
-    for row in table.layout.rows.iter().skip(table.layout.header_rows as usize) {
+    for (number, row) in table.layout.rows.iter().enumerate().skip(table.layout.header_rows as usize) {
         match row.role {
             RowRole::Header | RowRole::Blank | RowRole::Sizes => continue,
             RowRole::Section | RowRole::P | RowRole::Data | RowRole::Statistic => {}
         }
         table.read_p(row, &setting, readings);
         table.read_statistics(row, readings);
-        if row.role == RowRole::Data {
-            let counts = !table.row_estimates(row) && summary::read(&table, row, &setting, readings);
+        let continues = number > 0 && table.brackets_below(number - 1).is_some();
+        if row.role == RowRole::Data && !continues {
+            let counts = !table.row_estimates(row) && summary::read(&table, number, &setting, readings);
             estimate::read(&table, row, &setting, counts, readings);
         }
     }
@@ -85,6 +87,60 @@ impl<'a> Table<'a> {
     fn row_estimates(&self, row: &Row) -> bool {
         let (own, section) = self.said(row);
         own.measure && own.ci || section.measure && section.ci && !own.speaks()
+    }
+
+    /// The row below one, where it holds nothing but brackets under the figures of this one: `12.4` over `(3.1)`.
+    fn brackets_below(&self, number: usize) -> Option<&Row> {
+        let (row, below) = (self.layout.rows.get(number)?, self.layout.rows.get(number + 1)?);
+        if row.role != RowRole::Data || below.role != RowRole::Data {
+            return None;
+        }
+        let mut found = 0;
+        for cell in below.cells.clone().filter(|&c| *self.role_of(c) != ColumnRole::Stub) {
+            let view = self.view(cell);
+            if view.is_empty() {
+                continue;
+            }
+            if !view.signs(0, &['(', '[']) || !view.signs(view.len() - 1, &[')', ']']) {
+                return None;
+            }
+            found += usize::from(self.role_of(cell).summarises());
+        }
+        let bare = |&c: &usize| self.role_of(c).summarises() && !self.view(c).is_empty();
+        let above = row.cells.clone().filter(bare).all(|c| {
+            matches!(cell::read(&self.view(c))[..], [cell::Read { form: cell::Form::Single { percent: false, .. }, .. }])
+        });
+        (found >= 1 && above).then_some(below)
+    }
+
+    /// The one figure in brackets in a row's cell of a column.
+    fn bracketed(&self, row: &Row, column: usize) -> Option<Printed> {
+        let cell = row.cells.clone().find(|&c| self.grid.cells[c].column as usize == column)?;
+        match cell::read(&self.view(cell))[..] {
+            [cell::Read { form: cell::Form::Single { value, .. }, .. }] => Some(value.printed),
+            _ => None,
+        }
+    }
+
+    /// Whether bare figures in the columns of groups are counts: nearly all are whole, and none above its group's size.
+    fn has_bare_counts(&self) -> bool {
+        const LEAST: usize = 6;
+        let (mut whole, mut all) = (0, 0);
+        for row in self.layout.rows.iter().filter(|r| r.role == RowRole::Data) {
+            for cell in row.cells.clone() {
+                let column = self.grid.cells[cell].column as usize;
+                let Some(size) = self.layout.size(row, column).filter(|_| self.role_of(cell).summarises()) else {
+                    continue;
+                };
+                let [cell::Read { form: cell::Form::Single { value, percent: false }, .. }] = cell::read(&self.view(cell))[..]
+                else {
+                    continue;
+                };
+                all += 1;
+                whole += usize::from(value.printed.count().is_some_and(|v| v <= size.value));
+            }
+        }
+        all >= LEAST && 10 * whole >= 8 * all
     }
 
     /// Whether two columns of results are of one comparison.
@@ -234,6 +290,8 @@ struct Setting {
     shown: Vec<Option<summary::Sized>>,
     /// The one size that the caption or the notes give, for want of others.
     noted: Option<summary::Sized>,
+    /// Bare figures are counts.
+    bare_counts: bool,
 }
 
 impl Setting {
@@ -271,6 +329,7 @@ impl Setting {
             let single = !compares && table.layout.columns.iter().filter(named).count() <= summaries.max(1);
             sizes::noted(views(around.caption.clone()).chain(views(around.notes.clone())), single)
         };
-        Setting { columns, heads, around: said, baseline, shown, noted }
+        let bare_counts = table.has_bare_counts();
+        Setting { columns, heads, around: said, baseline, shown, noted, bare_counts }
     }
 }

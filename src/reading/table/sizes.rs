@@ -5,7 +5,7 @@ use super::super::{Figure, Group, Inference, Origin};
 use super::cell::{self, At, Form};
 use super::summary::Sized;
 use super::{Setting, Table};
-use crate::layout::{ColumnRole, Row, RowRole, Size};
+use crate::layout::{ColumnRole, Part, Row, RowRole, Size};
 use crate::printed::Printed;
 use crate::text::Span;
 use std::collections::HashMap;
@@ -34,6 +34,18 @@ impl Table<'_> {
         }
         let header = self.layout.size(row, column).map(|s| sized(s, Inference::Header));
         header.or_else(|| setting.shown.get(column).copied().flatten()).or(setting.noted)
+    }
+
+    /// The percentage in the next cell, where that is a column of percentages.
+    fn percent_beside(&self, index: usize) -> Option<Printed> {
+        let next = self.grid.cells.get(index + 1)?;
+        if *self.layout.role(next) != ColumnRole::Part(Part::Percent) {
+            return None;
+        }
+        match cell::read(&self.view(index + 1))[..] {
+            [cell::Read { form: Form::Single { value, .. }, .. }] => Some(value.printed),
+            _ => None,
+        }
     }
 
     fn printed_size(&self, cell: usize) -> Option<Sized> {
@@ -87,6 +99,7 @@ fn counts_people(view: &SentenceView, i: usize) -> bool {
 pub(super) fn shown(table: &Table) -> Vec<Option<Sized>> {
     let mut ranges: Vec<Vec<(u64, u64, Span)>> = vec![Vec::new(); table.layout.columns.len()];
     let mut sexes: Vec<Option<Sized>> = vec![None; ranges.len()];
+    let mut totals: Vec<Option<Sized>> = vec![None; ranges.len()];
     let wanted = |k: usize| table.layout.columns.get(k).is_some_and(|c| c.role.summarises() && c.role.size().is_none());
     if !(0..ranges.len()).any(wanted) {
         return vec![None; ranges.len()];
@@ -99,6 +112,14 @@ pub(super) fn shown(table: &Table) -> Vec<Option<Sized>> {
             }
             let view = table.view(index);
             let reads = cell::read(&view);
+            // A row of totals, borne out below by counts with their percentages.
+            if let [cell::Read { form: Form::Single { value, percent: false }, .. }] = reads[..]
+                && row.labels.last().is_some_and(|&l| says_total(&table.view(l)))
+                && let Some(n) = value.printed.count().filter(|&n| n > 0)
+            {
+                let span = view.span(value.first, value.last);
+                totals[column] = Some(sized(Size { value: n, span }, Inference::Header));
+            }
             // Men and women make the group.
             if let [cell::Read { form: Form::Fraction { events, total, percent: None }, .. }] = reads[..]
                 && row.labels.iter().any(|&l| super::summary::names_sexes(&table.view(l)))
@@ -111,6 +132,12 @@ pub(super) fn shown(table: &Table) -> Vec<Option<Sized>> {
             let (events, percent): (At, Printed) = match reads[..] {
                 [cell::Read { form: Form::Bracket { centre, inner, named: None, .. }, .. }] => (centre, inner),
                 [cell::Read { form: Form::PercentFirst { percent, events }, .. }] => (events, percent),
+                [cell::Read { form: Form::Single { value, percent: false }, .. }] => {
+                    match table.percent_beside(index) {
+                        Some(percent) => (value, percent),
+                        None => continue,
+                    }
+                }
                 _ => continue,
             };
             let Some(count) = events.printed.count().filter(|&e| e > 0 && e < 1_000_000) else { continue };
@@ -126,7 +153,19 @@ pub(super) fn shown(table: &Table) -> Vec<Option<Sized>> {
             }
         }
     }
-    ranges.iter().zip(sexes).map(|(r, sexes)| common(r).or(sexes)).collect()
+    let borne_out = |total: &Sized, r: &[(u64, u64, Span)]| {
+        let fit = r.iter().filter(|&&(a, b, _)| a <= total.value && total.value <= b).count();
+        fit >= 2 && 2 * fit >= r.len()
+    };
+    let known = |((r, sexes), total): ((&Vec<(u64, u64, Span)>, Option<Sized>), Option<Sized>)| {
+        total.filter(|t| borne_out(t, r)).or_else(|| common(r)).or(sexes)
+    };
+    ranges.iter().zip(sexes).zip(totals).map(known).collect()
+}
+
+/// "Total", "All patients"
+fn says_total(view: &SentenceView) -> bool {
+    view.len() <= 3 && view.any(0, &["total", "all", "overall"])
 }
 
 /// The one size that most ranges hold, where it is the only such.
@@ -157,13 +196,20 @@ pub(super) fn fill_totals(table: &Table, groups: &mut [Group]) {
     if !groups.iter().any(open) {
         return;
     }
-    let mut section_of: HashMap<u32, usize> = HashMap::new();
-    for row in &table.layout.rows {
-        if let (Some(section), RowRole::Data) = (row.section, row.role) {
+    // A block begins at a title, and at a P whose next rows have none.
+    let mut section_of: HashMap<u32, (usize, usize)> = HashMap::new();
+    let mut started = 0;
+    for (number, row) in table.layout.rows.iter().enumerate() {
+        let has_p = |&c: &usize| *table.role_of(c) == ColumnRole::P && !table.view(c).is_empty();
+        if row.cells.clone().any(|c| has_p(&c)) {
+            started = number;
+        }
+        if row.role == RowRole::Data {
+            let section = (row.section.unwrap_or(0), started);
             section_of.extend(row.cells.clone().map(|c| (table.first + c as u32, section)));
         }
     }
-    let mut blocks: HashMap<(usize, u32), Vec<usize>> = HashMap::new();
+    let mut blocks: HashMap<((usize, usize), u32), Vec<usize>> = HashMap::new();
     for (k, group) in groups.iter().enumerate().filter(|(_, g)| open(g)) {
         let cell = (group.sentence - table.first) as usize;
         let (Some(&section), Some(cell)) = (section_of.get(&group.sentence), table.grid.cells.get(cell)) else { continue };

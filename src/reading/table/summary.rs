@@ -2,10 +2,11 @@
 
 use super::super::sentence::SentenceView;
 use super::super::{Figure, Group, Inference, IntervalReading, Origin, Readings, SpreadKind};
+use super::super::lexicon::Classes;
 use super::cell::{self, At, Form, Read};
 use super::meaning::Meaning;
 use super::{Setting, Table};
-use crate::layout::{ColumnRole, Part, Row};
+use crate::layout::{ColumnRole, Part};
 use crate::printed::{Printed, Range};
 use crate::text::Span;
 
@@ -28,6 +29,15 @@ pub(super) struct Sized {
     pub figure: Figure,
 }
 
+/// What a row is by its label and all its figures.
+#[derive(Clone, Copy)]
+struct RowIs {
+    /// Men and women with a sign between.
+    sexes: bool,
+    /// Counts without percentages.
+    bare: bool,
+}
+
 /// One cell of a group column with what it holds.
 struct Held<'a> {
     index: usize,
@@ -37,7 +47,8 @@ struct Held<'a> {
 }
 
 /// Appends the groups of a row; tells whether they are counts.
-pub(super) fn read(table: &Table, row: &Row, setting: &Setting, readings: &mut Readings) -> bool {
+pub(super) fn read(table: &Table, number: usize, setting: &Setting, readings: &mut Readings) -> bool {
+    let row = &table.layout.rows[number];
     let out = &mut readings.groups;
     let (own, section) = table.said(row);
     let mut cells: Vec<Held> = Vec::new();
@@ -51,7 +62,17 @@ pub(super) fn read(table: &Table, row: &Row, setting: &Setting, readings: &mut R
     let evidence = Evidence::of(&cells);
     let own_size = row.labels.iter().any(|&l| names_size(&table.view(l))) && !table.layout.rows_are_groups;
     let start = out.len();
-    let sexes = row.labels.iter().any(|&l| names_sexes(&table.view(l)));
+    let labels: Vec<SentenceView> = row.labels.iter().map(|&l| table.view(l)).collect();
+    let sexes = labels.iter().any(names_sexes);
+    let whole = |h: &Held| match h.reads[..] {
+        [Read { form: Form::Single { value, percent: false }, .. }] => {
+            value.printed.count().zip(h.size).is_some_and(|(v, n)| v <= n.value)
+        }
+        _ => false,
+    };
+    let bare = setting.bare_counts && cells.len() > 1 && cells.iter().all(whole) && !labels.iter().any(names_measure);
+    let row_is = RowIs { sexes, bare };
+    let below = table.brackets_below(number);
     for held in &cells {
         let column = table.grid.cells[held.index].column as usize;
         let at = setting.heads.get(column).copied().unwrap_or_default();
@@ -71,19 +92,44 @@ pub(super) fn read(table: &Table, row: &Row, setting: &Setting, readings: &mut R
             }
             out.push(group);
         };
-        if let [Read { form: Form::Single { value, percent: false }, .. }] = held.reads[..]
+        if held.reads.is_empty()
+            && let Some(group) = limits_alone(held, &own)
+        {
+            add(group, None);
+            continue;
+        }
+        let mut reads = held.reads.clone();
+        // `12.4` over `(3.1)`: one summary on two lines.
+        if let ([Read { form, .. }], Some(below)) = (&mut reads[..], below)
+            && let Form::Single { value, percent: false } = *form
+            && let Some(inner) = table.bracketed(below, column)
+        {
+            *form = Form::Bracket { centre: value, inner, percent: false, named: None };
+        }
+        let bracket = if below.is_some() { evidence_below(&said).or(bracket) } else { bracket };
+        if let [Read { form: Form::Single { value, percent: false }, .. }] = reads[..]
             && let Some(group) = two_cells(table, held, value, &said)
         {
             add(group, None);
             continue;
         }
-        for read in &held.reads {
-            if let Some(group) = summary(&held.view, read, held.size, &said, bracket, sexes) {
+        for read in &reads {
+            if let Some(group) = summary(&held.view, read, held.size, &said, bracket, row_is) {
                 add(group, read.n);
             }
         }
     }
-    row_shares(&mut out[start..]);
+    let mut from = start;
+    while from < out.len() {
+        let panel = |g: &Group| {
+            let cell = table.grid.cells.get((g.sentence - table.first) as usize);
+            cell.and_then(|c| table.layout.columns.get(c.column as usize)).and_then(|c| c.panel)
+        };
+        let first = panel(&out[from]);
+        let to = from + out[from..].iter().take_while(|g| panel(g) == first).count();
+        row_shares(&mut out[from..to]);
+        from = to;
+    }
     for g in out[start..].iter().filter(|g| g.spread_kind == Some(SpreadKind::Ci)) {
         if let ([lower, upper], Some(centre)) = (&g.spread[..], g.mean.or(g.median)) {
             readings.intervals.push(IntervalReading {
@@ -124,6 +170,31 @@ fn inferred(g: &Group) -> bool {
     g.total.is_some_and(|t| matches!(t.origin, Origin::Inferred(Inference::FromPercent, _)))
 }
 
+/// What brackets in a line of their own hold.
+fn evidence_below(said: &[&Meaning; 5]) -> Option<Bracket> {
+    let nearest = said.iter().find(|m| m.speaks());
+    match nearest {
+        Some(m) if m.count && !m.summary() => Some(Bracket::Count),
+        Some(m) if m.median && m.spread.is_none() => {
+            Some(Bracket::Median(m.quantiles.unwrap_or(SpreadKind::Unstated)))
+        }
+        Some(m) => Some(Bracket::Mean(m.spread.unwrap_or(SpreadKind::Unstated))),
+        None => Some(Bracket::Mean(SpreadKind::Unstated)),
+    }
+}
+
+/// A row of ranges: `16–89` beside "Range".
+fn limits_alone(held: &Held, own: &Meaning) -> Option<Group> {
+    let kind = own.quantiles.filter(|_| !own.mean && !own.median)?;
+    let (lower, upper) = cell::limits(&held.view)?;
+    Some(Group {
+        n: held.size.map(|s| s.figure),
+        spread_kind: Some(kind),
+        spread: vec![lower.printed, upper.printed],
+        ..Group::new(held.view.span(lower.first, upper.last), held.view.id)
+    })
+}
+
 /// A summary whose other half stands in the next cell: `12 | 30`, `5.2 | 1.1`, `8 | 7–10`.
 fn two_cells(table: &Table, held: &Held, value: At, said: &[&Meaning; 5]) -> Option<Group> {
     let next = held.index + 1;
@@ -136,9 +207,8 @@ fn two_cells(table: &Table, held: &Held, value: At, said: &[&Meaning; 5]) -> Opt
     let start = held.view.span(value.first, value.last);
     let span = |last: usize| Span { end: view.span(last, last).end, ..start };
     let group = |last: usize| Group { n: held.size.map(|s| s.figure), ..Group::new(span(last), held.view.id) };
-    let single = || match cell::read(&view)[..] {
-        [Read { form: Form::Single { value, .. }, last, .. }] => Some((value.printed, last)),
-        [Read { form: Form::PlusMinus { .. }, .. }] => None,
+    let single = || match cell::read_first(&view) {
+        Some(Read { form: Form::Single { value, .. }, last, .. }) => Some((value.printed, last)),
         _ => None,
     };
     let mean = |kind: SpreadKind| {
@@ -232,7 +302,8 @@ impl Evidence {
     /// What brackets hold in this row, from the nearest text that says it.
     fn bracket(&self, said: &[&Meaning; 5], _: Option<Sized>) -> Option<Bracket> {
         let [own, _, _, _, around] = said;
-        let Some(nearest) = said.iter().find(|m| m.speaks()) else {
+        let shares = |m: &Meaning| m.bracket_percent && !self.decimals;
+        let Some(nearest) = said.iter().find(|m| m.speaks() || shares(m)) else {
             return if self.bears_out {
                 Some(Bracket::Count)
             } else if self.decimals && !own.percent {
@@ -249,6 +320,9 @@ impl Evidence {
         } else {
             None
         };
+        if !nearest.speaks() {
+            return Some(Bracket::Count);
+        }
         let swapped = nearest.percent_first && (self.swapped || !self.bears_out);
         let count = Some(if swapped { Bracket::Percent } else { Bracket::Count });
         if own.speaks() {
@@ -293,7 +367,7 @@ fn summary(
     size: Option<Sized>,
     said: &[&Meaning; 5],
     bracket: Option<Bracket>,
-    sexes: bool,
+    row: RowIs,
 ) -> Option<Group> {
     let header = size.map(|s| s.figure);
     let group = Group { n: header, ..Group::new(view.span(read.first, read.last), view.id) };
@@ -339,7 +413,7 @@ fn summary(
         Form::Fraction { events, total, percent } => {
             let stated = said[..4].iter().any(|m| m.fraction);
             let (e, t) = (events.printed.count()?, total.printed.count()?);
-            if sexes && percent.is_none() {
+            if row.sexes && percent.is_none() {
                 let sum = Printed::whole(e.checked_add(t)?);
                 let place = view.span(read.first, read.last);
                 let total = Some(Figure { printed: sum, origin: Origin::Inferred(Inference::Categories, place) });
@@ -390,10 +464,17 @@ fn summary(
                     Some(Group { median: Some(c), spread_kind: quantiles, spread, ..group })
                 }
                 _ if said[4].ci => Some(kind_of(SpreadKind::Ci)),
+                // Nothing says what they are: limits to one side of the figure are those of a median.
+                _ if !said.iter().any(|m| m.mean) => {
+                    let (down, up) = (c.value() - lower.value(), upper.value() - c.value());
+                    let one_sided = (down - up).abs() > 0.2 * (down + up);
+                    let median = Group { median: Some(c), spread_kind: Some(SpreadKind::Unstated), spread, ..group };
+                    one_sided.then_some(median)
+                }
                 _ => None,
             }
         }
-        Form::Single { value, percent } => single(view, value, percent, size, said, group),
+        Form::Single { value, percent } => single(view, value, percent, size, said, row.bare, group),
     }
 }
 
@@ -404,6 +485,7 @@ fn single(
     percent: bool,
     size: Option<Sized>,
     said: &[&Meaning; 5],
+    bare: bool,
     group: Group,
 ) -> Option<Group> {
     let [own, section, at, ..] = said;
@@ -417,8 +499,9 @@ fn single(
         return Some(Group { percent: Some(value.printed), ..group });
     }
     // `0` and other counts whose percentage was left out.
-    let counts = near.iter().find(|m| m.count || m.summary() || m.mean).is_some_and(|m| m.count && !m.summary());
-    if counts && let (Some(events), Some(size)) = (value.printed.count(), size) {
+    let speaking = near.iter().find(|m| m.count || m.bare_count || m.summary() || m.mean);
+    let counts = speaking.is_some_and(|m| (m.count || m.bare_count) && !m.summary());
+    if (counts || bare && speaking.is_none()) && let (Some(events), Some(size)) = (value.printed.count(), size) {
         let total = (events <= size.value).then_some(size.figure);
         return total.map(|total| Group { events: Some(printed(view, value)), total: Some(total), ..group });
     }
@@ -467,4 +550,13 @@ pub(super) fn names_sexes(view: &SentenceView) -> bool {
         (Some(a), Some(b)) => (a.min(b)..a.max(b)).any(|i| view.signs(i, &['/', ':', '-'])),
         _ => false,
     }
+}
+
+/// Words for measurements: what stands beside them is no count.
+fn names_measure(view: &SentenceView) -> bool {
+    const WORDS: &[&str] = &[
+        "min", "max", "minimum", "maximum", "age", "score", "time", "duration", "mean", "median", "range", "weight", "height", "rate",
+        "dose", "cost", "sd", "se", "year", "years", "level",
+    ];
+    (0..view.len()).any(|i| view.is(i, Classes::UNIT) || view.any(i, WORDS) || view.sign(i, '%'))
 }
