@@ -122,9 +122,17 @@ fn looks(text: &Text, _: &Grid, body: &[Cell], count: usize) -> Vec<Looks> {
 /// The role that the heads over a column give it, from the lowest up.
 fn head_role(text: &Text, grid: &Grid, column: &Column) -> ColumnRole {
     let mut found = ColumnRole::Other;
+    let names = || {
+        let names = column.path.iter().map(|&h| header::name(text.block, &grid.cells[h])).filter(|n| !n.is_empty());
+        names.collect::<Vec<_>>().join(", ")
+    };
     for &index in column.path.iter().rev() {
         let role = text.role(&grid.cells[index]);
         found = match (found, role) {
+            // A size below its name.
+            (ColumnRole::Other, ColumnRole::Group { label, n }) if label.is_empty() => {
+                ColumnRole::Group { label: names(), n }
+            }
             (ColumnRole::Other, role) => role,
             // "%" below "Tea (n = 24)": what it is stands lowest.
             (found, _) => return found,
@@ -170,6 +178,9 @@ fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
             ColumnRole::P if of.summary > of.number + of.bound => ColumnRole::Other,
             // A single letter is a symbol only where results stand.
             ColumnRole::Statistic if !some_p && of.number < of.filled() => ColumnRole::Other,
+            ColumnRole::Estimate if of.range > of.summary + of.number && columns_left_estimate(columns, k) => {
+                ColumnRole::Interval
+            }
             ColumnRole::Interval if of.summary > of.range => ColumnRole::Estimate,
             ColumnRole::Interval if of.number > of.range => ColumnRole::Lower,
             ColumnRole::Part(part) => match (part, &left) {
@@ -215,6 +226,31 @@ fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
         }
     }
     group_columns(text, grid, columns, looks, &heads);
+    own_intervals(grid, columns);
+}
+
+/// Whether an estimate stands right to the left.
+fn columns_left_estimate(columns: &[Column], k: usize) -> bool {
+    k > 0 && columns[k - 1].role == ColumnRole::Estimate
+}
+
+/// Intervals under the head of one group, with other groups behind them, are those of the group's mean.
+fn own_intervals(grid: &Grid, columns: &mut [Column]) {
+    let last_group = columns.iter().rposition(|c| matches!(c.role, ColumnRole::Group { .. }));
+    for k in 1..columns.len() {
+        let spans = |h: usize| grid.cells[h].column_span > 1;
+        let shared = columns[k].path.first() == columns[k - 1].path.first() && columns[k].path.first().is_some_and(|&h| spans(h));
+        let alone = last_group.is_some_and(|g| g > k)
+            || k > 1 && columns[..k - 1].iter().any(|c| c.role == ColumnRole::Part(Part::Ci));
+        if columns[k].role == ColumnRole::Interval
+            && columns[k].path.len() > 1
+            && columns[k - 1].role.summarises()
+            && shared
+            && alone
+        {
+            columns[k].role = ColumnRole::Part(Part::Ci);
+        }
+    }
 }
 
 /// A head of sizes: `N`, or `Drug arm No. households` in front of a column of summaries.
@@ -274,7 +310,9 @@ fn group_columns(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Look
     for k in 0..columns.len() {
         let of = looks[k];
         let bare = columns[k].role == ColumnRole::Other && of.number > 0 && 2 * of.number >= of.filled();
-        let whole_head = !heads[k].is_empty();
+        // A column of figures among results is one of theirs.
+        let compares = |j: Option<usize>| j.and_then(|j| columns.get(j)).is_some_and(|c| c.role.compares());
+        let whole_head = !heads[k].is_empty() && !(compares(k.checked_sub(1)) && compares(Some(k + 1)));
         if bare && whole_head && (some || results || halves) {
             let label = name(&columns[k]);
             columns[k].role = ColumnRole::Group { label, n: None };
@@ -343,6 +381,17 @@ pub(super) fn panels(text: &Text, grid: &Grid, columns: &mut [Column]) -> Vec<Pa
             Some(ColumnRole::Group { .. }) => open.groups.push(k),
             Some(role) if role.compares() => results.push(k),
             _ => {}
+        }
+    }
+    // `P | A | B`: the P stands in front of all groups.
+    if let [first] = &mut panels[..]
+        && first.groups.is_empty()
+        && open.groups.len() > 1
+    {
+        first.groups = std::mem::take(&mut open.groups);
+        judge(text, grid, columns, first);
+        for &c in &first.groups {
+            columns[c].panel = Some(0);
         }
     }
     if !open.groups.is_empty() {

@@ -193,7 +193,7 @@ pub(super) fn heads_column(head: &str) -> bool {
 pub(super) fn says_interval(head: &str) -> bool {
     let has = |w: &str| words(head).any(|x| x == w);
     let named = ["interval", "intervals", "limits"].iter().any(|w| has(w));
-    has("ci") || head.contains("c.i") || has("confidence") && named
+    has("ci") || head.contains("c.i") || head.contains("% ci") || has("confidence") && named
 }
 
 /// An interval alone: `95% CI`.
@@ -248,7 +248,10 @@ const MEASURES: &[&str] = &[
 /// A difference or ratio between groups.
 fn is_estimate(head: &str) -> bool {
     let has = |w: &str| words(head).any(|x| x == w);
+    // `H.R.` lost its points in no list of words.
+    let compact: String = head.chars().filter(|c| !matches!(c, '.' | ' ')).collect();
     let measure = MEASURES.iter().any(|w| has(w))
+        || head.contains('.') && MEASURES.contains(&compact.as_str())
         || ["relative risk", "effect size", "treatment effect", "risk reduction"].iter().any(|p| head.contains(p));
     let group = head.contains("n =") || head.contains("n=");
     // `or` alone is a conjunction.

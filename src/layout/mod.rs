@@ -90,6 +90,8 @@ pub enum Part {
     Percent,
     Iqr,
     Range,
+    /// The interval of the mean or share to the left.
+    Ci,
 }
 
 /// The size of a group as it is printed.

@@ -128,7 +128,8 @@ pub(super) fn read_first(view: &SentenceView) -> Option<Read> {
     }
     let line = Line::of(view);
     let (form, end) = form(&line, 0)?;
-    let apart = line.sign(end, &[',', ';']);
+    let p = line.sign(end, &['(', '[']) && view.is(line.at(end + 1), Classes::P);
+    let apart = p || line.sign(end, &[',', ';']);
     apart.then(|| Read { form, first: line.at(0), last: line.at(end - 1), n: None })
 }
 

@@ -19,7 +19,10 @@ pub(super) fn read(table: &Table, row: &Row, setting: &Setting, counts: bool, re
         if estimates && (role.summarises() || *role == ColumnRole::Other) {
             role = &ColumnRole::Estimate;
         }
-        if !matches!(role, ColumnRole::Estimate | ColumnRole::Interval | ColumnRole::Lower) {
+        if !matches!(
+            role,
+            ColumnRole::Estimate | ColumnRole::Interval | ColumnRole::Lower | ColumnRole::Part(Part::Ci)
+        ) {
             continue;
         }
         let view = table.view(index);
@@ -48,7 +51,7 @@ pub(super) fn read(table: &Table, row: &Row, setting: &Setting, counts: bool, re
                     }
                 }
             }
-            ColumnRole::Interval => {
+            ColumnRole::Interval | ColumnRole::Part(_) => {
                 let near = last.take().filter(|(k, _)| table.same_bundle(*k, column)).map(|(_, e)| e);
                 // The head may stand over the estimate alone.
                 let all: Vec<SentenceView> = if says_ci(&heads) {
@@ -197,8 +200,14 @@ fn add_interval(
         percent: near.is_some_and(|e| e.percent),
         credible: heads.iter().any(|h| (0..h.len()).any(|i| h.any(i, &["credible", "cri"]))),
         reversed,
-        estimate: near.map(|e| (e.value, e.span)),
+        estimate: near.map(|e| (e.value, e.span)).or_else(|| mean_before(view, readings)),
     });
+}
+
+/// The mean of the cell before an interval in a cell of its own.
+fn mean_before(view: &SentenceView, readings: &Readings) -> Option<(Printed, Span)> {
+    let group = readings.groups.last().filter(|g| g.sentence + 1 == view.id)?;
+    Some((group.mean.or(group.percent)?, group.span))
 }
 
 /// Measures that a head names in general terms: a coefficient of a model, a standardised effect.
@@ -242,7 +251,14 @@ fn measure(heads: &[SentenceView], counts: bool) -> Option<(Measure, Scale)> {
     if one(&["NNT"]) && !divides && !differs {
         return Some((Measure::NumberNeededToTreat, Scale::Reciprocal));
     }
-    Some(if one(&["HR", "aHR", "AHR"]) || two(&["hazard", "hazards"], ratio) {
+    let dotted = |first: &str| any(&|h, i| h.eq(i, first) && h.sign(i + 1, '.') && h.eq(i + 2, "r") && h.sign(i + 3, '.'));
+    Some(if dotted("h") {
+        (Measure::HazardRatio, Scale::Ratio)
+    } else if dotted("o") {
+        (Measure::OddsRatio, Scale::Ratio)
+    } else if dotted("r") {
+        (Measure::RiskRatio, Scale::Ratio)
+    } else if one(&["HR", "aHR", "AHR"]) || two(&["hazard", "hazards"], ratio) {
         (Measure::HazardRatio, Scale::Ratio)
     } else if one(&["OR", "aOR", "AOR"]) || two(&["odds"], ratio) {
         (Measure::OddsRatio, Scale::Ratio)

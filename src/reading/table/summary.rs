@@ -223,6 +223,7 @@ fn two_cells(table: &Table, held: &Held, value: At, said: &[&Meaning; 5]) -> Opt
     match part {
         Part::Sd => mean(SpreadKind::Sd),
         Part::Se => mean(SpreadKind::Se),
+        Part::Ci => None,
         Part::Percent => {
             let (percent, last) = single()?;
             let events = value.printed.count()?;
