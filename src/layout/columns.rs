@@ -191,7 +191,7 @@ fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
             },
             ColumnRole::Other
                 if of.number > 0
-                    && of.number == of.filled()
+                    && 2 * of.number >= of.filled()
                     && columns.get(k + 1).is_none_or(|c| c.role != ColumnRole::Part(Part::Percent))
                     && is_size(&heads[k], looks.get(k + 1)) =>
             {

@@ -490,7 +490,7 @@ pub(super) fn names_time(head: &str) -> bool {
 
 /// A head without the words for times, figures and what its figures are; and whether it had words for times.
 pub(super) fn timeless(head: &str) -> (String, bool) {
-    const FIGURES: &[&str] = &["n", "mean", "sd", "se", "sem", "median", "iqr", "range", "m", "no", "and", "of", "at"];
+    const FIGURES: &[&str] = &["n", "up", "mean", "sd", "se", "sem", "median", "iqr", "range", "m", "no", "and", "of", "at"];
     // A dose is no time: `2,000 IU/day`.
     let head = head.replace("/day", "").replace("/ day", "").replace("/week", "");
     let mut timed = false;

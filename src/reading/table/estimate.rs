@@ -16,7 +16,7 @@ pub(super) fn read(table: &Table, row: &Row, setting: &Setting, counts: bool, re
     let estimates = table.row_estimates(row);
     for index in row.cells.clone() {
         let mut role = table.role_of(index);
-        if estimates && (role.summarises() || *role == ColumnRole::Other) {
+        if estimates && (role.summarises() || matches!(role, ColumnRole::Other | ColumnRole::Size)) {
             role = &ColumnRole::Estimate;
         }
         if !matches!(
@@ -225,7 +225,7 @@ fn general(heads: &[SentenceView]) -> Option<(Measure, Scale)> {
 }
 
 /// `95` of `95% CI` in a header.
-fn level(head: &SentenceView) -> Option<Figure> {
+pub(super) fn level(head: &SentenceView) -> Option<Figure> {
     (0..head.len()).find_map(|i| {
         let printed = head.number(i).filter(|p: &Printed| (80.0..100.0).contains(&p.value()))?;
         let dotted = |k: usize| head.any(k, &["c"]) && head.sign(k + 1, '.') && head.any(k + 2, &["i"]);

@@ -134,6 +134,11 @@ impl Meaning {
         self.spread.is_some() || self.median || self.count || self.ci || self.quantiles.is_some()
     }
 
+    /// Says what one figure in brackets is; intervals and quartiles are two.
+    pub fn tells_brackets(&self) -> bool {
+        self.spread.is_some() || self.median || self.count
+    }
+
     /// Says that figures are means or medians with a spread.
     pub fn summary(&self) -> bool {
         self.spread.is_some() || self.median || self.ci || self.quantiles.is_some()

@@ -77,6 +77,12 @@ impl<'a> Table<'a> {
         (own, row.section.map_or(Meaning::default(), |s| Meaning::of(&self.view(s))))
     }
 
+    /// The level of intervals that the heads over a cell's column give.
+    fn level_of(&self, cell: usize) -> Option<Figure> {
+        let column = self.grid.cells.get(cell)?.column as usize;
+        self.heads(column).find_map(|h| estimate::level(&h))
+    }
+
     /// The heads over a column, from the top.
     fn heads(&self, column: usize) -> impl Iterator<Item = SentenceView<'a>> {
         let path = self.layout.columns.get(column).map_or(&[][..], |c| &c.path);

@@ -135,7 +135,7 @@ pub(super) fn read(table: &Table, number: usize, setting: &Setting, readings: &m
             readings.intervals.push(IntervalReading {
                 span: g.span,
                 sentence: g.sentence,
-                level: None,
+                level: table.level_of((g.sentence - table.first) as usize),
                 lower: *lower,
                 upper: *upper,
                 percent: false,
@@ -163,6 +163,7 @@ fn row_shares(groups: &mut [Group]) {
     for g in groups {
         let origin = Origin::Inferred(Inference::Categories, g.span);
         g.total = Some(Figure { printed: Printed::whole(sum), origin });
+        g.n = g.total;
     }
 }
 
@@ -266,8 +267,8 @@ fn total_of(
     // Missing answers shrink the group down a table: only the one size that the percentage allows will do.
     let n = only_size(events, percent, size.value)?;
     let origin = Origin::Inferred(Inference::FromPercent, place);
-    let n = n.map(|n| Figure { printed: Printed::whole(n), origin });
-    Some((n, n))
+    let total = n.map(|n| Figure { printed: Printed::whole(n), origin });
+    Some((total, Some(size.figure)))
 }
 
 /// What the figures in a row's brackets show by themselves.
@@ -304,7 +305,7 @@ impl Evidence {
     fn bracket(&self, said: &[&Meaning; 5], _: Option<Sized>) -> Option<Bracket> {
         let [own, _, _, _, around] = said;
         let shares = |m: &Meaning| m.bracket_percent && !self.decimals;
-        let Some(nearest) = said.iter().find(|m| m.speaks() || shares(m)) else {
+        let Some(nearest) = said.iter().find(|m| m.tells_brackets() || shares(m)) else {
             return if self.bears_out {
                 Some(Bracket::Count)
             } else if self.decimals && !own.percent {
@@ -321,12 +322,12 @@ impl Evidence {
         } else {
             None
         };
-        if !nearest.speaks() {
+        if !nearest.tells_brackets() {
             return Some(Bracket::Count);
         }
         let swapped = nearest.percent_first && (self.swapped || !self.bears_out);
         let count = Some(if swapped { Bracket::Percent } else { Bracket::Count });
-        if own.speaks() {
+        if own.tells_brackets() {
             return match (own.count, own.summary()) {
                 (true, false) => count,
                 (false, _) => summary,

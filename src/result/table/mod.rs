@@ -8,7 +8,7 @@ use super::{Feature, ReportedResult, StatedTest, feature};
 use crate::context::{Stated, Test};
 use crate::layout::{ColumnRole, Layout, Row, RowRole, around};
 use crate::manuscript::{BlockKind, Grid, Manuscript};
-use crate::reading::{Group, Inference, Origin, Readings, Scan, SentenceView};
+use crate::reading::{Figure, Group, Inference, Origin, Readings, Scan, SentenceView};
 use crate::text::Span;
 use notes::{Notes, of_label, tests_of};
 use std::ops::Range;
@@ -232,6 +232,9 @@ impl<'a> Table<'a> {
                     result.features.push((Feature::Paired, span));
                 }
             }
+            if shares_of_row(self.readings, &groups) {
+                result.features.push((Feature::OtherGroups, span));
+            }
             result.groups = groups;
             self.describe(row, &bundle.columns, &mut result, notes);
             out.push(result);
@@ -283,6 +286,10 @@ impl<'a> Table<'a> {
         let count = p.len().max(statistics.len()).max(intervals.len()).max(estimates.len());
         // A column of tests beside the groups.
         let beside = *self.role(cell) == ColumnRole::Other && count == 1;
+        let mean = |k: usize| {
+            let of = self.readings.intervals[intervals.clone().nth(k)?].estimate?.1;
+            self.groups_in(cell).find(|&g| self.readings.groups[g].span.overlaps(of))
+        };
         let groups: Vec<usize> = if beside {
             let group = |&c: &usize| matches!(self.role(c), ColumnRole::Group { .. });
             row.cells.clone().filter(group).flat_map(|c| self.groups_in(c)).collect()
@@ -296,7 +303,7 @@ impl<'a> Table<'a> {
                 statistic: nth(&statistics),
                 interval: nth(&intervals),
                 estimate: nth(&estimates),
-                groups: groups.clone(),
+                groups: if beside { groups.clone() } else { mean(k).into_iter().collect() },
                 ..ReportedResult::default()
             };
             if beside {
@@ -407,6 +414,14 @@ impl<'a> Table<'a> {
         let proposed = notes.tests.iter().filter(|(mark, _)| mark.is_none()).map(|&(_, test)| test);
         result.tests.extend(proposed.map(|test| StatedTest { test, here: false }));
     }
+}
+
+/// Counts that share out one total among them are no samples to compare.
+fn shares_of_row(readings: &Readings, groups: &[usize]) -> bool {
+    let count = |f: Option<Figure>| f.and_then(|f| f.printed.count());
+    let of = |g: &usize| &readings.groups[*g];
+    let sum = groups.iter().try_fold(0u64, |s, g| s.checked_add(count(of(g).events)?));
+    groups.len() > 1 && sum.is_some() && groups.iter().all(|g| count(of(g).total) == sum)
 }
 
 /// The first group of the first list; only asked where there is one.
