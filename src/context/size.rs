@@ -46,7 +46,10 @@ pub fn fill_sizes(manuscript: &Manuscript, scan: &Scan, readings: &mut Readings,
 /// A group's name without case, signs and the words for groups.
 fn folded(label: &str) -> String {
     let words = label.split(|c: char| !c.is_alphanumeric()).filter(|w| !w.is_empty()).map(str::to_lowercase);
-    words.filter(|w| !matches!(w.as_str(), "group" | "groups" | "arm" | "the" | "mean" | "sd")).collect::<Vec<_>>().join(" ")
+    words
+        .filter(|w| !matches!(w.as_str(), "group" | "groups" | "arm" | "the" | "mean" | "sd"))
+        .collect::<Vec<_>>()
+        .join(" ")
 }
 
 /// Gives summaries in tables that print no sizes those of the groups that bear the same name in other tables and where
@@ -81,7 +84,9 @@ fn from_tables(manuscript: &Manuscript, readings: &mut Readings, context: &Conte
         {
             continue;
         }
-        let Some(found) = sizes.get(&folded(&group.label)).filter(|_| !folded(&group.label).is_empty()) else { continue };
+        let Some(found) = sizes.get(&folded(&group.label)).filter(|_| !folded(&group.label).is_empty()) else {
+            continue;
+        };
         // Among equals the larger one, so that the choice does not hang on the order of a map.
         if let Some((&n, &(_, span))) = found.iter().max_by_key(|&(&n, &(votes, _))| (votes, n)) {
             group.n = Some(Figure { printed: Printed::whole(n), origin: Origin::Inferred(Inference::ArmSize, span) });

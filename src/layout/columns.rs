@@ -22,9 +22,12 @@ pub(super) fn header_rows(text: &Text, grid: &Grid, runs: &[Range<usize>]) -> u3
         let words = others().all(|c| is_head(text, c));
         // A row without cells of its own under heads that span down, or with heads under heads that span across.
         let above = &grid.cells[runs[rows - 1].clone()];
-        let under_span = above.iter().any(|c| c.column_span > 1 && c.column > 0 && c.column + c.column_span < grid.columns + 1);
+        let under_span =
+            above.iter().any(|c| c.column_span > 1 && c.column > 0 && c.column + c.column_span < grid.columns + 1);
         let says = others().filter(|c| header::heads_column(&text.folded(c))).count();
-        let goes_on = others().count() >= 2 && words && (says >= 2 || !labelled || under_span && stub.is_none_or(|c| !ends(text, c)));
+        let goes_on = others().count() >= 2
+            && words
+            && (says >= 2 || !labelled || under_span && stub.is_none_or(|c| !ends(text, c)));
         // A label that spans down from the header proper leaves its first column free.
         let spanned = stub.is_none() && grid.header_rows == 0 && words;
         let empty = others().count() == 0 && !labelled;
@@ -57,7 +60,14 @@ fn ends(text: &Text, cell: &Cell) -> bool {
 pub(super) fn columns(text: &Text, grid: &Grid, runs: &[Range<usize>], header_rows: u32) -> Vec<Column> {
     let count = grid.columns.min(2 * grid.cells.len() as u32 + 1) as usize;
     let mut columns: Vec<Column> = (0..count)
-        .map(|_| Column { role: ColumnRole::Other, header: None, path: Vec::new(), panel: None, bundle: 0, doubtful: false })
+        .map(|_| Column {
+            role: ColumnRole::Other,
+            header: None,
+            path: Vec::new(),
+            panel: None,
+            bundle: 0,
+            doubtful: false,
+        })
         .collect();
     let body = runs.get(header_rows as usize).map_or(grid.cells.len(), |r| r.start);
     for (index, cell) in grid.cells[..body].iter().enumerate() {
@@ -142,8 +152,23 @@ fn head_role(text: &Text, grid: &Grid, column: &Column) -> ColumnRole {
 }
 
 /// Words of a head that make a column one of labels whatever its cells look like.
-const LABELS: &[&str] =
-    &["category", "categories", "group", "variable", "measure", "time", "visit", "level", "subgroup", "item", "scale", "test", "period", "unit", "units"];
+const LABELS: &[&str] = &[
+    "category",
+    "categories",
+    "group",
+    "variable",
+    "measure",
+    "time",
+    "visit",
+    "level",
+    "subgroup",
+    "item",
+    "scale",
+    "test",
+    "period",
+    "unit",
+    "units",
+];
 
 /// How many columns from the left hold labels: the first, and those behind it whose cells hold hardly a figure.
 fn stub_columns(text: &Text, grid: &Grid, columns: &[Column], looks: &[Looks]) -> usize {
@@ -154,7 +179,8 @@ fn stub_columns(text: &Text, grid: &Grid, columns: &[Column], looks: &[Looks]) -
         let role = head_role(text, grid, column);
         let figures = of.summary + of.fraction + of.number + of.bound;
         let named = header::words(&head).any(|w| LABELS.contains(&w)) && of.summary == 0 && !head.contains('=');
-        let labels = of.words > 0 && of.words >= 2 * figures || named && figures + of.range + of.words > 0 && of.bound == 0;
+        let labels =
+            of.words > 0 && of.words >= 2 * figures || named && figures + of.range + of.words > 0 && of.bound == 0;
         let role_free = matches!(role, ColumnRole::Other) && !(header::is_size_label(&head));
         // The last columns are those of figures.
         if !(role_free && labels) || columns.len() - stubs < 2 {
@@ -181,6 +207,15 @@ fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
             ColumnRole::Estimate if of.range > of.summary + of.number && columns_left_estimate(columns, k) => {
                 ColumnRole::Interval
             }
+            // Two groups called A and B, and no regression.
+            ColumnRole::Estimate
+                if matches!(heads[k].as_str(), "b" | "d")
+                    && (of.summary > 0 || heads.iter().any(|h| matches!(h.as_str(), "a" | "c"))) =>
+            {
+                ColumnRole::Other
+            }
+            // "to" between two limits.
+            ColumnRole::Interval if of.words > 0 && of.words == of.filled() => ColumnRole::Other,
             ColumnRole::Interval if of.summary > of.range => ColumnRole::Estimate,
             ColumnRole::Interval if of.number > of.range => ColumnRole::Lower,
             ColumnRole::Part(part) => match (part, &left) {
@@ -199,12 +234,18 @@ fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
             }
             // The second limit of an interval whose head stands over the first only.
             ColumnRole::Other
-                if heads[k].is_empty() && of.number > 0 && of.number == of.filled() && follows_lower(columns, looks, k) =>
+                if heads[k].is_empty()
+                    && of.number > 0
+                    && of.number == of.filled()
+                    && follows_lower(columns, looks, k) =>
             {
                 ColumnRole::Upper
             }
             ColumnRole::Other
-                if heads[k].is_empty() && of.range > 0 && of.range == of.filled() && left == Some(ColumnRole::Estimate) =>
+                if heads[k].is_empty()
+                    && of.range > 0
+                    && of.range == of.filled()
+                    && left == Some(ColumnRole::Estimate) =>
             {
                 ColumnRole::Interval
             }
@@ -218,9 +259,11 @@ fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
     }
     // Two limits under one head: the first is the lower one, the second the upper.
     for k in 1..columns.len() {
+        let joins = columns[k - 1].role == ColumnRole::Other && looks[k - 1].words > 0;
+        let before = if joins && k > 1 { k - 2 } else { k - 1 };
         if columns[k].role == ColumnRole::Lower
-            && columns[k - 1].role == ColumnRole::Lower
-            && columns[k].header == columns[k - 1].header
+            && columns[before].role == ColumnRole::Lower
+            && columns[k].header == columns[before].header
         {
             columns[k].role = ColumnRole::Upper;
         }
@@ -239,7 +282,8 @@ fn own_intervals(grid: &Grid, columns: &mut [Column]) {
     let last_group = columns.iter().rposition(|c| matches!(c.role, ColumnRole::Group { .. }));
     for k in 1..columns.len() {
         let spans = |h: usize| grid.cells[h].column_span > 1;
-        let shared = columns[k].path.first() == columns[k - 1].path.first() && columns[k].path.first().is_some_and(|&h| spans(h));
+        let shared = columns[k].path.first() == columns[k - 1].path.first()
+            && columns[k].path.first().is_some_and(|&h| spans(h));
         let alone = last_group.is_some_and(|g| g > k)
             || k > 1 && columns[..k - 1].iter().any(|c| c.role == ColumnRole::Part(Part::Ci));
         if columns[k].role == ColumnRole::Interval
@@ -267,7 +311,9 @@ fn is_size(head: &str, next: Option<&Looks>) -> bool {
 fn is_contrast(text: &Text, grid: &Grid, columns: &[Column], k: usize, head: &str) -> bool {
     let against = head.contains([' ', '-', '–', '−'])
         && (header::words(head).any(|w| matches!(w, "vs" | "versus" | "minus"))
-            || head.split([' ', '(']).any(|w| matches!(w, "-" | "–" | "−") || w.ends_with(['-', '–', '−']) && w.len() > 3));
+            || head
+                .split([' ', '('])
+                .any(|w| matches!(w, "-" | "–" | "−") || w.ends_with(['-', '–', '−']) && w.len() > 3));
     let left = columns[..k].iter().rev().take(4).filter(|c| !matches!(c.role, ColumnRole::Stub) && !c.role.compares());
     let named = left.filter(|c| {
         c.header.is_some_and(|h| {

@@ -64,6 +64,11 @@ fn role_of_words(head: &str) -> ColumnRole {
     if let Some(part) = part(head) {
         return part;
     }
+    // `95% CI Lower`: a head in one line that stood in two.
+    let has = |w: &str| words(head).any(|x| x == w);
+    if says_interval(head) && has("lower") != has("upper") && words(head).count() <= 5 {
+        return if has("lower") { ColumnRole::Lower } else { ColumnRole::Upper };
+    }
     if is_estimate(head) {
         return ColumnRole::Estimate;
     }
@@ -168,7 +173,9 @@ fn part(head: &str) -> Option<ColumnRole> {
         "sd" | "s.d" | "±sd" | "± sd" | "standard deviation" | "std" | "std. deviation" | "std. dev" => {
             ColumnRole::Part(Part::Sd)
         }
-        "se" | "s.e" | "sem" | "±se" | "±sem" | "± sem" | "standard error" | "std. error" => ColumnRole::Part(Part::Se),
+        "se" | "s.e" | "sem" | "±se" | "±sem" | "± sem" | "standard error" | "std. error" => {
+            ColumnRole::Part(Part::Se)
+        }
         "%" | "percent" | "percentage" | "per cent" => ColumnRole::Part(Part::Percent),
         "iqr" | "interquartile range" => ColumnRole::Part(Part::Iqr),
         "range" | "min-max" | "min–max" => ColumnRole::Part(Part::Range),
@@ -293,7 +300,8 @@ fn size(text: &str) -> Option<(u64, std::ops::Range<usize>, std::ops::Range<usiz
 
 /// A name that an `n` was glued to: `groupn = 24` lost its line break.
 fn glues(name: &str) -> bool {
-    const NAMES: &[&str] = &["group", "arm", "placebo", "control", "controls", "intervention", "treatment", "total", "all"];
+    const NAMES: &[&str] =
+        &["group", "arm", "placebo", "control", "controls", "intervention", "treatment", "total", "all"];
     NAMES.iter().any(|n| name.ends_with(n))
 }
 
@@ -332,7 +340,11 @@ fn name_only(text: &str) -> String {
 
 /// The name that a header cell gives a group whose size stands elsewhere.
 pub(super) fn name(block: &Block, cell: &Cell) -> String {
-    name_only(block.text.get(cell.start as usize..cell.end as usize).unwrap_or(""))
+    let text = block.text.get(cell.start as usize..cell.end as usize).unwrap_or("");
+    match size(text) {
+        Some((_, _, at)) => label(text, at),
+        None => name_only(text),
+    }
 }
 
 /// A cell that holds a size and nothing else: `n = 24`, `(n = 24)`; `24` where the row is labelled N.
@@ -385,7 +397,24 @@ const PEOPLE: &[&str] = &[
 /// Words that may stand in the label of a size.
 fn names_people(word: &str) -> bool {
     const OTHERS: &[&str] = &[
-        "of", "n", "in", "per", "group", "sub", "subgroup", "arm", "randomized", "randomised", "analysed", "analyzed", "evaluated", "total", "each", "included", "the", "number",
+        "of",
+        "n",
+        "in",
+        "per",
+        "group",
+        "sub",
+        "subgroup",
+        "arm",
+        "randomized",
+        "randomised",
+        "analysed",
+        "analyzed",
+        "evaluated",
+        "total",
+        "each",
+        "included",
+        "the",
+        "number",
     ];
     PEOPLE.contains(&word) || OTHERS.contains(&word)
 }
@@ -490,7 +519,8 @@ pub(super) fn names_time(head: &str) -> bool {
 
 /// A head without the words for times, figures and what its figures are; and whether it had words for times.
 pub(super) fn timeless(head: &str) -> (String, bool) {
-    const FIGURES: &[&str] = &["n", "up", "mean", "sd", "se", "sem", "median", "iqr", "range", "m", "no", "and", "of", "at"];
+    const FIGURES: &[&str] =
+        &["n", "up", "mean", "sd", "se", "sem", "median", "iqr", "range", "m", "no", "and", "of", "at"];
     // A dose is no time: `2,000 IU/day`.
     let head = head.replace("/day", "").replace("/ day", "").replace("/week", "");
     let mut timed = false;

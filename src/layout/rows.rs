@@ -45,7 +45,9 @@ pub(super) fn rows(
             RowRole::Data
         };
         let own = match role {
-            RowRole::Section | RowRole::Data | RowRole::Sizes => labels.iter().rev().find_map(|&i| text.role(&grid.cells[i]).size()),
+            RowRole::Section | RowRole::Data | RowRole::Sizes => {
+                labels.iter().rev().find_map(|&i| text.role(&grid.cells[i]).size())
+            }
             _ => None,
         };
         match role {
@@ -55,7 +57,11 @@ pub(super) fn rows(
                 let titles = role == RowRole::Section || !says(header::is_size_label);
                 // With several columns of labels the last may label a row of dashes.
                 if titles {
-                    section = if role == RowRole::Section && stubs > 1 && labels.len() > 1 { first } else { labels.last().copied() };
+                    section = if role == RowRole::Section && stubs > 1 && labels.len() > 1 {
+                        first
+                    } else {
+                        labels.last().copied()
+                    };
                     carried = None;
                 }
             }
@@ -101,7 +107,8 @@ fn repeats_header(text: &Text, cells: &[Cell], columns: &[Column]) -> bool {
         Some(_) => {
             !text.of(c).starts_with(|c: char| c.is_ascii_digit()) && {
                 let role = text.role(c);
-                role == ColumnRole::P && text.look(c) == Look::Words || role.size().is_some() && text.look(c) == Look::Words
+                role == ColumnRole::P && text.look(c) == Look::Words
+                    || role.size().is_some() && text.look(c) == Look::Words
             }
         }
     })
@@ -129,11 +136,18 @@ pub(super) fn sizes(text: &Text, grid: &Grid, rows: &mut [Row], columns: &mut [C
                     };
                     Some((c.column as usize, size?))
                 })
-                .filter(|&(k, _)| columns.get(k).is_some_and(|c| !matches!(c.role, ColumnRole::Stub) && !c.role.compares()))
+                .filter(|&(k, _)| {
+                    columns.get(k).is_some_and(|c| !matches!(c.role, ColumnRole::Stub) && !c.role.compares())
+                })
                 .collect();
             if !known && !data && !found.is_empty() {
                 for (k, size) in found {
-                    let label = columns[k].path.iter().map(|&h| header::name(text.block, &grid.cells[h])).collect::<Vec<_>>().join(", ");
+                    let label = columns[k]
+                        .path
+                        .iter()
+                        .map(|&h| header::name(text.block, &grid.cells[h]))
+                        .collect::<Vec<_>>()
+                        .join(", ");
                     columns[k].role = ColumnRole::Group { label, n: Some(size) };
                 }
                 current = 0;
@@ -155,7 +169,19 @@ pub(super) fn sizes(text: &Text, grid: &Grid, rows: &mut [Row], columns: &mut [C
 
 /// Words that name groups of participants.
 const GROUPS: &[&str] = &[
-    "group", "groups", "arm", "arms", "treatment", "treatments", "intervention", "control", "controls", "placebo", "experimental", "treated", "untreated",
+    "group",
+    "groups",
+    "arm",
+    "arms",
+    "treatment",
+    "treatments",
+    "intervention",
+    "control",
+    "controls",
+    "placebo",
+    "experimental",
+    "treated",
+    "untreated",
 ];
 
 /// Whether the rows are groups: their labels name groups, and the columns do not.
@@ -170,8 +196,15 @@ pub(super) fn are_groups(text: &Text, grid: &Grid, rows: &[Row], columns: &[Colu
     }
     let head = columns.first().and_then(|c| c.header).is_some_and(|h| {
         let head = text.folded(&grid.cells[h]);
-        matches!(head.as_str(), "group" | "groups" | "treatment" | "treatment group" | "arm" | "study group" | "treatments")
+        matches!(
+            head.as_str(),
+            "group" | "groups" | "treatment" | "treatment group" | "arm" | "study group" | "treatments"
+        )
     });
-    let labelled = rows.iter().filter(|r| r.role == RowRole::Data).filter(|r| r.labels.iter().any(|&l| names(&grid.cells[l]))).count();
+    let labelled = rows
+        .iter()
+        .filter(|r| r.role == RowRole::Data)
+        .filter(|r| r.labels.iter().any(|&l| names(&grid.cells[l])))
+        .count();
     head || labelled >= 2 || rows.iter().filter(|r| r.role == RowRole::Data && r.own_size.is_some()).count() >= 2
 }

@@ -53,13 +53,8 @@ pub(crate) fn p_from_table(case: &Case) -> Result<Option<Recomputation>, &'stati
     // Ordered categories are often compared by ranks or for trend.
     let named = case.here().any(|t| matches!(t, Test::ChiSquared | Test::FisherExact | Test::YatesChiSquared));
     let open = (rows.len() > 2 || arms > 2) && !named;
-    let inputs: Inputs = case
-        .groups
-        .iter()
-        .filter_map(|g| g.events)
-        .filter_map(|e| place(&e))
-        .map(|span| (span, "a count"))
-        .collect();
+    let inputs: Inputs =
+        case.groups.iter().filter_map(|g| g.events).filter_map(|e| place(&e)).map(|span| (span, "a count")).collect();
     let policy = Policy {
         of: Quantity::P,
         ground: case.group_ground(),
@@ -85,8 +80,8 @@ fn fisher(case: &Case, table: &[Vec<u64>]) -> Option<Candidate> {
         table.iter().map(|r| r.iter().map(u64::to_string).collect::<Vec<_>>().join(", ")).collect();
     let p = Range::point(p).widened(distribution::RELATIVE_ERROR);
     let line = format!("[{}]; Fisher; {}", shown.join("; "), super::working::p(p));
-    let mut c = Candidate::new(&super::method::FISHER, "Fisher", p, line)
-        .assuming(crate::reading::Assumption::Unadjusted);
+    let mut c =
+        Candidate::new(&super::method::FISHER, "Fisher", p, line).assuming(crate::reading::Assumption::Unadjusted);
     c.decides = case.decides(&[Test::FisherExact]);
     Some(c)
 }

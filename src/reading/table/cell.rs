@@ -110,6 +110,11 @@ pub(super) fn read(view: &SentenceView) -> Vec<Read> {
         if rest >= line.kept.len() {
             return found;
         }
+        // `T1/T2/T3/T4` in counts.
+        let counts = matches!(form, Form::Fraction { percent: None, .. });
+        if counts && line.sign(rest, &['/']) {
+            return Vec::new();
+        }
         // Another form behind a sign, or right behind brackets.
         let apart = line.sign(rest, &['/', ';']) || line.sign(rest, &[',']) && line.sign(rest - 1, &[')', ']']);
         let glued = rest == after && line.sign(rest - 1, &[')', ']']) && line.number(rest).is_some();
@@ -140,8 +145,11 @@ fn skip_marks(line: &Line, after: usize) -> usize {
         let at = line.at(rest);
         let token = line.view.get(at).filter(|t| t.is_word());
         let short = |at: usize| line.view.word(at).chars().count() <= 2;
-        let mark = token.is_some_and(|t| t.is(Classes::UNIT) || short(at) && !t.is(Classes::CI) && !line.view.any(at, &["to", "or", "n"]));
-        let more = rest > after && (line.sign(rest, &[',']) && line.view.get(line.at(rest + 1)).is_some_and(|t| t.is_word()));
+        let mark = token.is_some_and(|t| {
+            t.is(Classes::UNIT) || short(at) && !t.is(Classes::CI) && !line.view.any(at, &["to", "or", "n"])
+        });
+        let more =
+            rest > after && (line.sign(rest, &[',']) && line.view.get(line.at(rest + 1)).is_some_and(|t| t.is_word()));
         if !mark && !more {
             return rest;
         }
@@ -168,7 +176,11 @@ fn form(line: &Line, start: usize) -> Option<(Form, usize)> {
     // `(20/10)`: the whole in brackets.
     if line.sign(start, &['(', '[']) {
         let (inside, next) = form(line, start + 1)?;
-        return if matches!(inside, Form::Fraction { .. } | Form::Single { .. }) { closed(line, next, inside) } else { None };
+        return if matches!(inside, Form::Fraction { .. } | Form::Single { .. }) {
+            closed(line, next, inside)
+        } else {
+            None
+        };
     }
     let (centre, next) = line.number(start)?;
     let (centre_percent, next) = line.percent(next);
@@ -225,9 +237,14 @@ fn form(line: &Line, start: usize) -> Option<(Form, usize)> {
     }
     let (inner_percent, next) = line.percent(next);
     if line.sign(next, &[')', ']', '}']) {
-        // `8 (7,100)` may be two quartiles: its comma is no thousands separator for certain.
-        if line.view.word(inner.last).contains(',') && inner.printed.places == 0 {
-            return None;
+        // `8 (7,100)` and `3.4 (0,13)` may be two limits: the comma is no decimal mark for certain.
+        if let Some((a, b)) = line.view.word(inner.last).split_once(',')
+            && !line.view.word(centre.last).contains(',')
+        {
+            let (a, b) = (Printed::parse(a)?, Printed::parse(b)?);
+            let between = a.value() <= centre.printed.value() && centre.printed.value() <= b.value();
+            let form = Form::Pair { centre, lower: a, upper: b };
+            return if between { closed(line, next, form) } else { None };
         }
         let form = if centre_percent && !inner_percent {
             inner.printed.count()?;

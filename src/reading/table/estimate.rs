@@ -19,10 +19,8 @@ pub(super) fn read(table: &Table, row: &Row, setting: &Setting, counts: bool, re
         if estimates && (role.summarises() || matches!(role, ColumnRole::Other | ColumnRole::Size)) {
             role = &ColumnRole::Estimate;
         }
-        if !matches!(
-            role,
-            ColumnRole::Estimate | ColumnRole::Interval | ColumnRole::Lower | ColumnRole::Part(Part::Ci)
-        ) {
+        if !matches!(role, ColumnRole::Estimate | ColumnRole::Interval | ColumnRole::Lower | ColumnRole::Part(Part::Ci))
+        {
             continue;
         }
         let view = table.view(index);
@@ -124,8 +122,8 @@ fn estimate(
     let percent = percent_sign || points || measure == Measure::PercentDifference;
     let says = |words: &[&str]| heads.iter().any(|h| (0..h.len()).any(|i| h.any(i, words)));
     let short = heads.iter().any(|h| (0..h.len()).any(|i| matches!(h.word(i), "aOR" | "aHR" | "aRR" | "AOR" | "AHR")));
-    let adjusted = (says(&["adjusted", "adj", "ancova", "multivariate", "multivariable"]) || short)
-        && !says(&["unadjusted"]);
+    let adjusted =
+        (says(&["adjusted", "adj", "ancova", "multivariate", "multivariable"]) || short) && !says(&["unadjusted"]);
     let mut span = view.span(value.first, value.last);
     let mut se = se;
     // A standard error in the next cell.
@@ -141,8 +139,7 @@ fn estimate(
     if matches!(read.form, Form::PlusMinus { .. } | Form::Bracket { .. }) && se.is_some() {
         span = view.span(read.first, read.last);
     }
-    let estimate =
-        Estimate { span, sentence: view.id, measure, scale, value: value.printed, se, percent, adjusted };
+    let estimate = Estimate { span, sentence: view.id, measure, scale, value: value.printed, se, percent, adjusted };
     readings.estimates.push(estimate.clone());
     if let Some((a, b)) = limits
         && (says_ci(heads) || says_ci(labels) || setting.around.ci || setting.columns.ci)
@@ -213,11 +210,28 @@ fn mean_before(view: &SentenceView, readings: &Readings) -> Option<(Printed, Spa
 /// Measures that a head names in general terms: a coefficient of a model, a standardised effect.
 fn general(heads: &[SentenceView]) -> Option<(Measure, Scale)> {
     let says = |words: &[&str]| heads.iter().any(|h| (0..h.len()).any(|i| words.contains(&h.word(i))));
-    if says(&["β", "B", "b", "beta", "Beta", "coefficient", "Coefficient", "coefficients", "Coefficients", "slope", "Slope"]) {
+    if says(&[
+        "β",
+        "B",
+        "b",
+        "beta",
+        "Beta",
+        "coefficient",
+        "Coefficient",
+        "coefficients",
+        "Coefficients",
+        "slope",
+        "Slope",
+    ]) {
         Some((Measure::RegressionCoefficient, Scale::Difference))
     } else if says(&["d", "ES"]) {
         Some((Measure::StandardizedDifference, Scale::Difference))
-    } else if heads.iter().any(|h| (1..h.len()).any(|i| h.sign(i, '-') && h.get(i + 1).is_some_and(|t| t.is_word()) && (h.spaced(i) || h.spaced(i + 1)) || h.any(i, &["minus"]))) {
+    } else if heads.iter().any(|h| {
+        (1..h.len()).any(|i| {
+            h.sign(i, '-') && h.get(i + 1).is_some_and(|t| t.is_word()) && (h.spaced(i) || h.spaced(i + 1))
+                || h.any(i, &["minus"])
+        })
+    }) {
         Some((Measure::MeanDifference, Scale::Difference))
     } else {
         None
@@ -251,7 +265,8 @@ fn measure(heads: &[SentenceView], counts: bool) -> Option<(Measure, Scale)> {
     if one(&["NNT"]) && !divides && !differs {
         return Some((Measure::NumberNeededToTreat, Scale::Reciprocal));
     }
-    let dotted = |first: &str| any(&|h, i| h.eq(i, first) && h.sign(i + 1, '.') && h.eq(i + 2, "r") && h.sign(i + 3, '.'));
+    let dotted =
+        |first: &str| any(&|h, i| h.eq(i, first) && h.sign(i + 1, '.') && h.eq(i + 2, "r") && h.sign(i + 3, '.'));
     Some(if dotted("h") {
         (Measure::HazardRatio, Scale::Ratio)
     } else if dotted("o") {

@@ -34,6 +34,8 @@ pub(super) struct Meaning {
     pub bare_count: bool,
     /// `(%)`: what stands in brackets is a percentage, or the unit of what stands alone.
     pub bracket_percent: bool,
+    /// A rate of events, often per person-time.
+    pub rate: bool,
     /// A measure that compares groups: "odds ratio", "difference".
     pub measure: bool,
     /// A geometric mean: its spread is no SD.
@@ -77,10 +79,13 @@ impl Meaning {
             let number = view.is(i, Classes::N) || view.any(i, &["no", "number", "numbers", "num", "frequency"]);
             self.number |= number;
             let enclosed = |i: usize| i > 0 && view.signs(i - 1, &['(', '[']) && view.signs(i + 1, &[')', ']']);
-            self.bare_count |= view.is(i, Classes::N) && (enclosed(i) || i > 0 && view.sign(i - 1, ',') && i + 1 == view.len());
+            self.bare_count |=
+                view.is(i, Classes::N) && (enclosed(i) || i > 0 && view.sign(i - 1, ',') && i + 1 == view.len());
             self.bracket_percent |= (view.sign(i, '%') || view.is(i, Classes::PERCENT))
                 && enclosed(i)
-                && !(i > 1 && (view.is(i - 2, Classes::SD) || view.any(i - 2, &["mean", "median", "change", "reduction"])));
+                && !(i > 1
+                    && (view.is(i - 2, Classes::SD) || view.any(i - 2, &["mean", "median", "change", "reduction"])));
+            self.rate |= view.any(i, &["rate", "rates", "incidence", "density"]);
             self.measure |= matches!(view.word(i), "OR" | "RR" | "HR" | "NNT" | "aOR" | "IRR")
                 || view.any(i, &["ratio", "difference"]) && !view.any(i + 1, &["before", "between"]);
             if number && self.percent_after(view, i) {

@@ -114,7 +114,10 @@ impl<'a> Table<'a> {
         }
         let bare = |&c: &usize| self.role_of(c).summarises() && !self.view(c).is_empty();
         let above = row.cells.clone().filter(bare).all(|c| {
-            matches!(cell::read(&self.view(c))[..], [cell::Read { form: cell::Form::Single { percent: false, .. }, .. }])
+            matches!(
+                cell::read(&self.view(c))[..],
+                [cell::Read { form: cell::Form::Single { percent: false, .. }, .. }]
+            )
         });
         (found >= 1 && above).then_some(below)
     }
@@ -138,7 +141,8 @@ impl<'a> Table<'a> {
                 let Some(size) = self.layout.size(row, column).filter(|_| self.role_of(cell).summarises()) else {
                     continue;
                 };
-                let [cell::Read { form: cell::Form::Single { value, percent: false }, .. }] = cell::read(&self.view(cell))[..]
+                let [cell::Read { form: cell::Form::Single { value, percent: false }, .. }] =
+                    cell::read(&self.view(cell))[..]
                 else {
                     continue;
                 };
@@ -251,7 +255,9 @@ impl<'a> Table<'a> {
             let df = row
                 .cells
                 .clone()
-                .find(|&i| *self.role_of(i) == ColumnRole::Df && self.same_bundle(self.grid.cells[i].column as usize, column))
+                .find(|&i| {
+                    *self.role_of(i) == ColumnRole::Df && self.same_bundle(self.grid.cells[i].column as usize, column)
+                })
                 .map_or((None, None), |i| self.freedom(i));
             let view = self.view(cell);
             match statistic::read(&view, head, df) {
@@ -268,9 +274,8 @@ impl<'a> Table<'a> {
     /// One or two degrees of freedom in a cell.
     fn freedom(&self, cell: usize) -> (Option<Figure>, Option<Figure>) {
         let view = self.view(cell);
-        let mut found = (0..view.len()).filter_map(|i| {
-            Some(Figure { printed: view.number(i)?, origin: Origin::Printed(view.span(i, i)) })
-        });
+        let mut found = (0..view.len())
+            .filter_map(|i| Some(Figure { printed: view.number(i)?, origin: Origin::Printed(view.span(i, i)) }));
         (found.next(), found.next())
     }
 

@@ -83,7 +83,8 @@ pub(super) fn noted<'a>(views: impl Iterator<Item = SentenceView<'a>>, single: b
 
 /// `15 healthy male subjects`
 fn counts_people(view: &SentenceView, i: usize) -> bool {
-    const PEOPLE: &[&str] = &["subjects", "patients", "participants", "volunteers", "individuals", "children", "adults"];
+    const PEOPLE: &[&str] =
+        &["subjects", "patients", "participants", "volunteers", "individuals", "children", "adults"];
     for k in i + 1..(i + 6).min(view.len()) {
         if view.any(k, PEOPLE) {
             return true;
@@ -212,7 +213,9 @@ pub(super) fn fill_totals(table: &Table, groups: &mut [Group]) {
     let mut blocks: HashMap<((usize, usize), u32), Vec<usize>> = HashMap::new();
     for (k, group) in groups.iter().enumerate().filter(|(_, g)| open(g)) {
         let cell = (group.sentence - table.first) as usize;
-        let (Some(&section), Some(cell)) = (section_of.get(&group.sentence), table.grid.cells.get(cell)) else { continue };
+        let (Some(&section), Some(cell)) = (section_of.get(&group.sentence), table.grid.cells.get(cell)) else {
+            continue;
+        };
         blocks.entry((section, cell.column)).or_default().push(k);
     }
     for members in blocks.values().filter(|m| m.len() > 1) {

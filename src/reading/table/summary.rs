@@ -1,8 +1,8 @@
 //! The group summaries of one row.
 
+use super::super::lexicon::Classes;
 use super::super::sentence::SentenceView;
 use super::super::{Figure, Group, Inference, IntervalReading, Origin, Readings, SpreadKind};
-use super::super::lexicon::Classes;
 use super::cell::{self, At, Form, Read};
 use super::meaning::Meaning;
 use super::{Setting, Table};
@@ -176,9 +176,7 @@ fn evidence_below(said: &[&Meaning; 5]) -> Option<Bracket> {
     let nearest = said.iter().find(|m| m.speaks());
     match nearest {
         Some(m) if m.count && !m.summary() => Some(Bracket::Count),
-        Some(m) if m.median && m.spread.is_none() => {
-            Some(Bracket::Median(m.quantiles.unwrap_or(SpreadKind::Unstated)))
-        }
+        Some(m) if m.median && m.spread.is_none() => Some(Bracket::Median(m.quantiles.unwrap_or(SpreadKind::Unstated))),
         Some(m) => Some(Bracket::Mean(m.spread.unwrap_or(SpreadKind::Unstated))),
         None => Some(Bracket::Mean(SpreadKind::Unstated)),
     }
@@ -229,13 +227,7 @@ fn two_cells(table: &Table, held: &Held, value: At, said: &[&Meaning; 5]) -> Opt
             let (percent, last) = single()?;
             let events = value.printed.count()?;
             let (total, n) = total_of(events, percent, held.size, span(last))?;
-            Some(Group {
-                events: Some(printed(&held.view, value)),
-                percent: Some(percent),
-                total,
-                n,
-                ..group(last)
-            })
+            Some(Group { events: Some(printed(&held.view, value)), percent: Some(percent), total, n, ..group(last) })
         }
         Part::Iqr | Part::Range => {
             let (lower, upper) = cell::limits(&view)?;
@@ -415,12 +407,16 @@ fn summary(
         Form::Fraction { events, total, percent } => {
             let stated = said[..4].iter().any(|m| m.fraction);
             let (e, t) = (events.printed.count()?, total.printed.count()?);
-            if row.sexes && percent.is_none() {
-                let sum = Printed::whole(e.checked_add(t)?);
+            let sum = e.checked_add(t)?;
+            if row.sexes && percent.is_none_or(|p| p.count() == Some(sum)) {
+                let sum = Printed::whole(sum);
                 let place = view.span(read.first, read.last);
                 let total = Some(Figure { printed: sum, origin: Origin::Inferred(Inference::Categories, place) });
                 return Some(Group { events: Some(printed(view, events)), total, n: header.or(total), ..group });
             }
+            // Events of persons with their rate per person-time.
+            let rate = said[..4].iter().any(|m| m.rate) && !said[..4].iter().any(|m| m.percent || m.count);
+            let percent = percent.filter(|_| !rate);
             let whole = header.is_some_and(|h| h.printed.count() == Some(t));
             let stated = stated || whole || said[0].number || said[1].number;
             if t == 0 || e > t || (percent.is_none() && !stated) {
@@ -447,7 +443,8 @@ fn summary(
             let spread = vec![lower, upper];
             let nearest = said.iter().find(|m| m.median || m.mean || m.ci || m.quantiles.is_some());
             let of_mean = nearest.is_some_and(|m| !m.median && m.mean);
-            let kind_of = |kind| Group { mean: Some(c), spread_kind: Some(kind), spread: spread.clone(), ..group.clone() };
+            let kind_of =
+                |kind| Group { mean: Some(c), spread_kind: Some(kind), spread: spread.clone(), ..group.clone() };
             match median {
                 Some(m) if !of_mean => {
                     let kind = m.quantiles.or(quantiles).unwrap_or(SpreadKind::Unstated);
@@ -462,9 +459,7 @@ fn summary(
                     Some(kind_of(SpreadKind::Range))
                 }
                 // Quartiles go with a median.
-                _ if quantiles.is_some() => {
-                    Some(Group { median: Some(c), spread_kind: quantiles, spread, ..group })
-                }
+                _ if quantiles.is_some() => Some(Group { median: Some(c), spread_kind: quantiles, spread, ..group }),
                 _ if said[4].ci => Some(kind_of(SpreadKind::Ci)),
                 // Nothing says what they are: limits to one side of the figure are those of a median.
                 _ if !said.iter().any(|m| m.mean) => {
@@ -503,7 +498,9 @@ fn single(
     // `0` and other counts whose percentage was left out.
     let speaking = near.iter().find(|m| m.count || m.bare_count || m.summary() || m.mean);
     let counts = speaking.is_some_and(|m| (m.count || m.bare_count) && !m.summary());
-    if (counts || bare && speaking.is_none()) && let (Some(events), Some(size)) = (value.printed.count(), size) {
+    if (counts || bare && speaking.is_none())
+        && let (Some(events), Some(size)) = (value.printed.count(), size)
+    {
         let total = (events <= size.value).then_some(size.figure);
         return total.map(|total| Group { events: Some(printed(view, value)), total: Some(total), ..group });
     }
@@ -557,8 +554,8 @@ pub(super) fn names_sexes(view: &SentenceView) -> bool {
 /// Words for measurements: what stands beside them is no count.
 fn names_measure(view: &SentenceView) -> bool {
     const WORDS: &[&str] = &[
-        "min", "max", "minimum", "maximum", "age", "score", "time", "duration", "mean", "median", "range", "weight", "height", "rate",
-        "dose", "cost", "sd", "se", "year", "years", "level",
+        "min", "max", "minimum", "maximum", "age", "score", "time", "duration", "mean", "median", "range", "weight",
+        "height", "rate", "dose", "cost", "sd", "se", "year", "years", "level",
     ];
     (0..view.len()).any(|i| view.is(i, Classes::UNIT) || view.any(i, WORDS) || view.sign(i, '%'))
 }

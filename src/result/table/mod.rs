@@ -176,7 +176,8 @@ impl<'a> Table<'a> {
         let row = &self.layout.rows[index];
         let lists = self.compared(row, bundle.panel);
         let same = |list: &[usize]| list.windows(2).all(|w| alike(self.readings, w[0], w[1]));
-        let results = bundle.p.len().max(bundle.estimates.len()).max(bundle.statistics.len()).max(bundle.intervals.len());
+        let results =
+            bundle.p.len().max(bundle.estimates.len()).max(bundle.statistics.len()).max(bundle.intervals.len());
         for k in 0..results {
             let p = bundle.p.get(k).copied();
             let estimate = bundle.estimates.get(k).copied();
@@ -376,8 +377,12 @@ impl<'a> Table<'a> {
             here.extend(tests_of(&view));
         }
         // Tests that the notes tie to this P by a mark; a mark on the column's head ties them to all its rows.
-        let marks: Vec<String> =
-            p_cell.into_iter().chain(heads.iter().copied()).chain(row.labels.iter().copied()).flat_map(|cell| self.marks(&self.view(cell))).collect();
+        let marks: Vec<String> = p_cell
+            .into_iter()
+            .chain(heads.iter().copied())
+            .chain(row.labels.iter().copied())
+            .flat_map(|cell| self.marks(&self.view(cell)))
+            .collect();
         let tied: Vec<Stated<Test>> = notes
             .tests
             .iter()
@@ -431,7 +436,8 @@ fn groups_first(lists: &[Vec<usize>]) -> usize {
 
 /// Whether two groups are summed up alike.
 fn alike(readings: &Readings, a: usize, b: usize) -> bool {
-    let kind = |g: &Group| (g.mean.is_some(), g.median.is_some(), g.events.is_some() || g.percent.is_some(), g.spread_kind);
+    let kind =
+        |g: &Group| (g.mean.is_some(), g.median.is_some(), g.events.is_some() || g.percent.is_some(), g.spread_kind);
     kind(&readings.groups[a]) == kind(&readings.groups[b])
 }
 

@@ -87,4 +87,3 @@ pub(super) fn of_label(view: &SentenceView) -> Vec<(Feature, Span)> {
     found.retain(|&(f, span)| f != Feature::Paired || from_baseline || !view.eq(at(span), "baseline"));
     found
 }
-
