@@ -79,9 +79,7 @@ fn from_tables(manuscript: &Manuscript, readings: &mut Readings, context: &Conte
         }
     }
     for group in readings.groups.iter_mut() {
-        if !(group.n.is_none() && group.total.is_none() && !group.label.is_empty())
-            || !matches!(manuscript.blocks[group.span.block as usize].kind, BlockKind::Table(_))
-        {
+        if !wanting(group) {
             continue;
         }
         let Some(found) = sizes.get(&folded(&group.label)).filter(|_| !folded(&group.label).is_empty()) else {

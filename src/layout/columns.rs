@@ -358,7 +358,8 @@ fn group_columns(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Look
         let bare = columns[k].role == ColumnRole::Other && of.number > 0 && 2 * of.number >= of.filled();
         // A column of figures among results is one of theirs.
         let compares = |j: Option<usize>| j.and_then(|j| columns.get(j)).is_some_and(|c| c.role.compares());
-        let whole_head = !heads[k].is_empty() && !(compares(k.checked_sub(1)) && compares(Some(k + 1)));
+        let among = compares(k.checked_sub(1)) && compares(Some(k + 1));
+        let whole_head = !heads[k].is_empty() && !among;
         if bare && whole_head && (some || results || halves) {
             let label = name(&columns[k]);
             columns[k].role = ColumnRole::Group { label, n: None };

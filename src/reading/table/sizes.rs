@@ -158,10 +158,8 @@ pub(super) fn shown(table: &Table) -> Vec<Option<Sized>> {
         let fit = r.iter().filter(|&&(a, b, _)| a <= total.value && total.value <= b).count();
         fit >= 2 && 2 * fit >= r.len()
     };
-    let known = |((r, sexes), total): ((&Vec<(u64, u64, Span)>, Option<Sized>), Option<Sized>)| {
-        total.filter(|t| borne_out(t, r)).or_else(|| common(r)).or(sexes)
-    };
-    ranges.iter().zip(sexes).zip(totals).map(known).collect()
+    let known = |k: usize| totals[k].filter(|t| borne_out(t, &ranges[k])).or_else(|| common(&ranges[k])).or(sexes[k]);
+    (0..ranges.len()).map(known).collect()
 }
 
 /// "Total", "All patients"

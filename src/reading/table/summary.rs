@@ -242,7 +242,6 @@ fn two_cells(table: &Table, held: &Held, value: At, said: &[&Meaning; 5]) -> Opt
 }
 
 /// The total and size that go with a count and its percentage; `None` where they cannot be these at all.
-#[allow(clippy::type_complexity)]
 fn total_of(
     events: u64,
     percent: Printed,
@@ -284,10 +283,15 @@ impl Evidence {
                 }
             }
         }
-        let all = |test: &dyn Fn(&(Printed, Printed, Option<u64>)) -> bool| !pairs.is_empty() && pairs.iter().all(test);
+        let fit = |swapped: bool| {
+            let fits_size = |&(a, b, n): &(Printed, Printed, Option<u64>)| {
+                n.is_some_and(|n| if swapped { fits(b, a, n) } else { fits(a, b, n) })
+            };
+            !pairs.is_empty() && pairs.iter().all(fits_size)
+        };
         Evidence {
-            bears_out: all(&|&(a, b, n)| n.is_some_and(|n| fits(a, b, n))),
-            swapped: all(&|&(a, b, n)| n.is_some_and(|n| fits(b, a, n))),
+            bears_out: fit(false),
+            swapped: fit(true),
             decimals: pairs.iter().any(|p| p.0.places > 0 || p.0.negative),
             beyond: pairs.iter().any(|p| p.2.is_some_and(|n| p.0.value() > n as f64)),
         }
@@ -488,7 +492,7 @@ fn single(
     let [own, section, at, ..] = said;
     let share = !value.printed.negative && value.printed.value() <= 100.0;
     if percent {
-        return (share && !own.summary()).then(|| Group { percent: Some(value.printed), ..group });
+        return (share && !own.summary()).then_some(Group { percent: Some(value.printed), ..group });
     }
     let near = [own, section, at];
     let summary = near.iter().find(|m| m.median || m.mean);

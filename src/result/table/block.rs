@@ -57,7 +57,8 @@ impl Table<'_> {
             }
         }
         let counts = |g: &usize| self.readings.groups[*g].events.is_some();
-        let table = arms >= 2 && groups.len() >= 2 * arms && groups.len() % arms == 0 && groups.iter().all(counts);
+        let table =
+            arms >= 2 && groups.len() >= 2 * arms && groups.len().is_multiple_of(arms) && groups.iter().all(counts);
         let carried = row.section.is_some() && rows.clone().all(|r| self.layout.rows[r].section == row.section);
         if title || spans || carried && !self.stub_is_single() {
             if title && groups.len() == arms {
