@@ -136,7 +136,7 @@ pub(super) fn is_statistic(head: &str) -> bool {
         let df = inner == "df" || !inner.is_empty() && inner.chars().all(|c| c.is_ascii_digit() || ",.;".contains(c));
         let before = head.trim_end().rsplit_once('(').map_or("", |b| b.0.trim_end());
         let last = before.rsplit(' ').next().unwrap_or("");
-        if df && matches!(last, "f" | "t" | "χ2" | "χ²" | "x2" | "x²" | "chi2") {
+        if df && matches!(last, "f" | "t" | "χ" | "x" | "χ2" | "χ²" | "x2" | "x²" | "chi2") {
             return true;
         }
     }
@@ -146,7 +146,10 @@ pub(super) fn is_statistic(head: &str) -> bool {
     }
     matches!(
         symbol,
-        "t" | "f"
+        // The 2 of χ² is raised, and raised marks are left out.
+        "χ" | "x"
+            | "t"
+            | "f"
             | "z"
             | "u"
             | "h"

@@ -103,7 +103,8 @@ pub(super) fn read(view: &SentenceView) -> Vec<Read> {
         let behind = own_size(&line, end).or_else(|| bare_size(&line, &form, end));
         let (n, after) = match behind {
             Some((n, after)) => (Some(n), after),
-            None => (None, end),
+            // `59.3 ± 10.3 (37–75)`: the range beside the mean.
+            None => (None, range_behind(&line, &form, end).unwrap_or(end)),
         };
         found.push(Read { form, first: line.at(k), last: line.at(end - 1), n });
         let rest = skip_marks(&line, after);
@@ -290,6 +291,18 @@ fn bare_size(line: &Line, form: &Form, k: usize) -> Option<(At, usize)> {
     let (n, next) = line.number(k + 1)?;
     n.printed.count().filter(|&n| n > 0)?;
     line.sign(next, &[')', ']']).then_some((n, next + 1))
+}
+
+/// A range in brackets behind a mean with its SD; gives the position after it.
+fn range_behind(line: &Line, form: &Form, k: usize) -> Option<usize> {
+    let summary = matches!(form, Form::PlusMinus { .. } | Form::Bracket { percent: false, .. });
+    if !summary || !line.sign(k, &['(', '[']) {
+        return None;
+    }
+    let (_, next) = line.number(k + 1)?;
+    let joins = line.sign(next, &['-', ',', ';']) || line.view.any(line.at(next), &["to"]);
+    let (_, next) = if joins { line.number(next + 1)? } else { return None };
+    line.sign(next, &[')', ']']).then_some(next + 1)
 }
 
 /// `(n = 20)`, `, n = 20`; gives the position after it.

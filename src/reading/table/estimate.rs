@@ -10,13 +10,21 @@ use crate::printed::Printed;
 use crate::text::Span;
 
 /// Appends the estimates and intervals of a row. `counts` tells that the row's groups are counts.
-pub(super) fn read(table: &Table, row: &Row, setting: &Setting, counts: bool, readings: &mut Readings) {
+///
+/// `whole_row` tells that its cells are estimates whatever their columns are.
+pub(super) fn read(
+    table: &Table,
+    row: &Row,
+    setting: &Setting,
+    counts: bool,
+    whole_row: bool,
+    readings: &mut Readings,
+) {
     // The last estimate with its column, for an interval in cells of its own.
     let mut last: Option<(usize, Estimate)> = None;
-    let estimates = table.row_estimates(row);
     for index in row.cells.clone() {
         let mut role = table.role_of(index);
-        if estimates && (role.summarises() || matches!(role, ColumnRole::Other | ColumnRole::Size)) {
+        if whole_row && (role.summarises() || matches!(role, ColumnRole::Other | ColumnRole::Size)) {
             role = &ColumnRole::Estimate;
         }
         if !matches!(role, ColumnRole::Estimate | ColumnRole::Interval | ColumnRole::Lower | ColumnRole::Part(Part::Ci))

@@ -34,10 +34,11 @@ pub fn read(manuscript: &Manuscript, scan: &Scan, number: usize, readings: &mut 
         }
         table.read_p(row, &setting, readings);
         table.read_statistics(row, readings);
+        let estimates = row.role == RowRole::Data && table.row_estimates(row);
         let continues = number > 0 && table.brackets_below(number - 1).is_some();
         if row.role == RowRole::Data && !continues {
-            let counts = !table.row_estimates(row) && summary::read(&table, number, &setting, readings);
-            estimate::read(&table, row, &setting, counts, readings);
+            let counts = !estimates && summary::read(&table, number, &setting, readings);
+            estimate::read(&table, row, &setting, counts, estimates, readings);
         }
     }
     // Cells are read by role, and readings are in reading order.

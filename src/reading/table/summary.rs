@@ -63,7 +63,17 @@ pub(super) fn read(table: &Table, number: usize, setting: &Setting, readings: &m
     let own_size = row.labels.iter().any(|&l| names_size(&table.view(l))) && !table.layout.rows_are_groups;
     let start = out.len();
     let labels: Vec<SentenceView> = row.labels.iter().map(|&l| table.view(l)).collect();
-    let sexes = labels.iter().any(names_sexes);
+    // `Never/ever smoked` beside `14/26`: two categories that make up the group.
+    let parts = |h: &Held| match h.reads[..] {
+        [Read { form: Form::Fraction { events, total, percent: None }, .. }] => {
+            let sum = events.printed.count().zip(total.printed.count()).and_then(|(a, b)| a.checked_add(b));
+            sum.is_some() && sum == h.size.map(|s| s.value)
+        }
+        _ => false,
+    };
+    let two_parts = |l: &SentenceView| (0..l.len()).filter(|&i| l.sign(i, '/')).count() == 1;
+    let categories = labels.iter().any(two_parts) && cells.len() > 1 && cells.iter().all(parts);
+    let sexes = categories || labels.iter().any(names_sexes);
     let whole = |h: &Held| match h.reads[..] {
         [Read { form: Form::Single { value, percent: false }, .. }] => {
             value.printed.count().zip(h.size).is_some_and(|(v, n)| v <= n.value)
@@ -269,7 +279,7 @@ struct Evidence {
     /// The same with the percentage in front.
     swapped: bool,
     decimals: bool,
-    /// A figure in front beyond the size of its group.
+    /// A figure in front beyond the size of its group, or far from any share of it in every cell.
     beyond: bool,
 }
 
@@ -293,7 +303,11 @@ impl Evidence {
             bears_out: fit(false),
             swapped: fit(true),
             decimals: pairs.iter().any(|p| p.0.places > 0 || p.0.negative),
-            beyond: pairs.iter().any(|p| p.2.is_some_and(|n| p.0.value() > n as f64)),
+            beyond: pairs.iter().any(|p| p.2.is_some_and(|n| p.0.value() > n as f64))
+                || !pairs.is_empty()
+                    && pairs
+                        .iter()
+                        .all(|p| p.2.is_some_and(|n| (100.0 * p.0.value() / n as f64 - p.1.value()).abs() > 5.0)),
         }
     }
 

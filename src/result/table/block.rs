@@ -28,7 +28,11 @@ impl Table<'_> {
         if rows.is_empty() {
             return None;
         }
-        let arms = panel.and_then(|k| self.layout.panels.get(k)).map_or(0, |p| p.groups.len());
+        let columns = panel.and_then(|k| self.layout.panels.get(k)).map_or(&[][..], |p| &p.groups);
+        if let [column] = columns {
+            return self.rows_as_groups(index, rows, *column, spans);
+        }
+        let arms = columns.len();
         let mut groups = own.to_vec();
         let mut whole = title || !own.is_empty();
         let mut complete = None;
@@ -76,6 +80,27 @@ impl Table<'_> {
             Some((count, _)) if table => Some(Block { groups: groups[..count].to_vec(), arms, doubtful: false }),
             _ => Some(Block { groups: own.to_vec(), arms: 0, doubtful: true }),
         }
+    }
+
+    /// One column of figures and a P for several rows: it compares the rows.
+    fn rows_as_groups(&self, index: usize, below: Range<usize>, column: usize, spans: bool) -> Option<Block> {
+        /// More groups than one P compares.
+        const MOST: usize = 8;
+        let carried = !self.stub_is_single() && self.layout.rows[index].section.is_some();
+        if !(spans || carried || self.layout.rows_are_groups) || below.len() >= MOST {
+            return None;
+        }
+        let mut groups = Vec::new();
+        for row in std::iter::once(index).chain(below) {
+            let cell = self.layout.rows[row].cells.clone().find(|&c| self.column(c) == column)?;
+            let mut found = self.groups_in(cell);
+            groups.push(found.next()?);
+            if found.next().is_some() {
+                return None;
+            }
+        }
+        // Rows that do not name groups may be times or items.
+        Some(Block { groups, arms: 0, doubtful: !self.layout.rows_are_groups })
     }
 
     /// Rows below that have figures and no P of their own in the column of a P.
