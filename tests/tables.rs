@@ -132,10 +132,17 @@ Table 2. Porridge eaters
 
 Values are mean (SE) or n (%).
 ";
-    // A whole number that is no share of the group may be either: it is left alone.
+    // 42 of 50 is no 11 %, and 44 of 48 no 12 %: what else is said must hold.
     assert_eq!(
         groups(&read(notes)),
-        ["Oats: 71.2 Se 9.8 [50]", "Rye: 70.1 Se 10.4 [48]", "Oats: 5 10.0% [50]", "Rye: 6 12.5% [48]",]
+        [
+            "Oats: 71.2 Se 9.8 [50]",
+            "Rye: 70.1 Se 10.4 [48]",
+            "Oats: 5 10.0% [50]",
+            "Rye: 6 12.5% [48]",
+            "Oats: 42 Se 11 [50]",
+            "Rye: 44 Se 12 [48]",
+        ]
     );
     let silent = notes.replace("Values are mean (SE) or n (%).", "");
     assert_eq!(groups(&read(&silent))[0], "Oats: 71.2 Unstated 9.8 [50]");
@@ -686,5 +693,41 @@ fn figures_in_no_known_shape_are_left_alone() {
     .iter()
     {
         assert!(a.readings.groups.is_empty() && a.readings.p.is_empty() && a.results.is_empty());
+    }
+}
+
+#[test]
+fn a_p_below_an_estimate_in_a_row_is_that_of_the_estimate() {
+    for a in both(
+        "Calm in three choirs",
+        &["Outcome | Silence (n = 30) | Tea (n = 31) | Water (n = 29)"],
+        &[
+            "Calm, mean (SD) | 12.0 (3.1) | 14.4 (3.6) | 14.9 (3.4)",
+            "Difference vs silence (95% CI) |  | 2.4 (0.5 to 4.3) | 2.9 (1.2 to 4.6)",
+            "P value |  | 0.013 | 0.5",
+        ],
+        "",
+    )
+    .iter()
+    {
+        let rows = with_p(a);
+        assert!(rows.iter().all(|r| r.estimate.is_some() && r.interval.is_some()));
+        assert!(a.readings.p.iter().all(|p| p.role == Role::Effect));
+        assert_eq!(verdicts(a), [Verdict::Tallies, Verdict::Differs]);
+    }
+}
+
+#[test]
+fn rows_under_one_p_are_what_it_compares() {
+    for a in both(
+        "Calm by choir",
+        &["Score | Group | N | Mean | SD | P"],
+        &["2vCalm | Tea group | 24 | 5.2 | 1.4 | 2v0.013", "Water group | 26 | 6.3 | 1.6"],
+        "",
+    )
+    .iter()
+    {
+        assert_eq!(with_p(a)[0].groups, [0, 1]);
+        assert_eq!(verdicts(a), [Verdict::Tallies]);
     }
 }

@@ -32,7 +32,9 @@ pub fn read(manuscript: &Manuscript, scan: &Scan, number: usize, readings: &mut 
             RowRole::Header | RowRole::Blank | RowRole::Sizes => continue,
             RowRole::Section | RowRole::P | RowRole::Data | RowRole::Statistic => {}
         }
-        table.read_p(row, &setting, readings);
+        let above = &table.layout.rows[number.saturating_sub(1)];
+        let of_estimates = row.role == RowRole::P && above.role == RowRole::Data && table.row_estimates(above);
+        table.read_p(row, &setting, of_estimates, readings);
         table.read_statistics(row, readings);
         let estimates = row.role == RowRole::Data && table.row_estimates(row);
         let continues = number > 0 && table.brackets_below(number - 1).is_some();
@@ -160,7 +162,8 @@ impl<'a> Table<'a> {
         of(a) == of(b)
     }
 
-    fn read_p(&self, row: &Row, setting: &Setting, readings: &mut Readings) {
+    /// The p-values of a row. `of_estimates` tells that it is a row of them below a row of estimates.
+    fn read_p(&self, row: &Row, setting: &Setting, of_estimates: bool, readings: &mut Readings) {
         let words = |cells: &[usize], class: Classes| {
             cells.iter().any(|&c| {
                 let view = self.view(c);
@@ -195,7 +198,7 @@ impl<'a> Table<'a> {
                 Role::Interaction
             } else if words(&named, Classes::TREND) {
                 Role::TrendOrJoint
-            } else if !in_p_column && role.summarises() && !self.layout.rows_are_groups
+            } else if !in_p_column && role.summarises() && !self.layout.rows_are_groups && !of_estimates
                 || in_p_column && times
                 || self.says(&named, &["within", "paired"])
             {

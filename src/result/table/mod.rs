@@ -121,7 +121,10 @@ impl<'a> Table<'a> {
                 continue;
             }
             if !column.role.compares() {
-                self.of_cell(row, cell, notes, out);
+                // An estimate over its P is joined to it there.
+                if self.p_below(index, k).is_none() || estimates.is_empty() {
+                    self.of_cell(row, cell, notes, out);
+                }
                 continue;
             }
             // Those of one comparison stand side by side.
@@ -316,12 +319,31 @@ impl<'a> Table<'a> {
         }
     }
 
+    /// The cell of a column in the row below, where that is a row of p-values and has one there.
+    fn p_below(&self, index: usize, column: usize) -> Option<usize> {
+        let below = self.layout.rows.get(index + 1).filter(|r| r.role == RowRole::P)?;
+        let cell = below.cells.clone().find(|&c| self.column(c) == column)?;
+        (!self.p_in(cell).is_empty()).then_some(cell)
+    }
+
     /// A P or statistic in a row of its own: it compares the rows above it in its column.
     fn of_column(&self, index: usize, cell: usize, notes: &Notes, out: &mut Vec<ReportedResult>) {
         /// More rows than one P compares.
         const MOST: usize = 8;
         let k = self.column(cell);
         let row = &self.layout.rows[index];
+        // `Difference (95% CI)` in the row above: the P is that of the estimate.
+        let over = index.checked_sub(1).map(|i| &self.layout.rows[i]).filter(|r| r.role == RowRole::Data);
+        let over = over.and_then(|r| r.cells.clone().find(|&c| self.column(c) == k));
+        if let Some(over) = over.filter(|&c| !self.estimates_in(c).is_empty())
+            && let Some(p) = self.p_in(cell).next()
+        {
+            let (estimate, interval) = (self.estimates_in(over).next(), self.intervals_in(over).next());
+            let mut result = ReportedResult { p: Some(p), estimate, interval, ..ReportedResult::default() };
+            self.describe(row, &[k], &mut result, notes);
+            out.push(result);
+            return;
+        }
         let mut groups: Vec<usize> = Vec::new();
         let mut statistic = self.statistics_in(cell).next();
         let mut rows = 0;
