@@ -731,3 +731,19 @@ fn rows_under_one_p_are_what_it_compares() {
         assert_eq!(verdicts(a), [Verdict::Tallies]);
     }
 }
+
+#[test]
+fn standard_errors_without_sizes_agree_or_say_nothing() {
+    let table = "Table 1. Values are mean ± SEM\n\n|  | Tea | Water | P |\n|---|---|---|---|\n| Calm | 5.20 ± 0.30 | 6.30 ± 0.30 | 0.01 |\n| Pace | 5.20 ± 0.30 | 6.30 ± 0.30 | 0.8 |\n";
+    assert_eq!(verdicts(&read(table)), [Verdict::Tallies, Verdict::Undecided]);
+}
+
+#[test]
+fn what_a_marked_note_says_holds_for_the_marked_alone() {
+    let a = read(
+        "|  | Tea (n = 24) | Water (n = 26) | P | Difference (95% CI) | P^a^ |\n|---|---|---|---|---|---|\n| Calm, mean (SD) | 5.2 (1.4) | 6.3 (1.6) | 0.5 | 1.1 (0.3 to 1.9) | 0.008 |\n\n^a^ Adjusted for age.\n",
+    );
+    let rows = with_p(&a);
+    assert!(!rows[0].has(Feature::Adjusted) && rows[1].has(Feature::Adjusted));
+    assert_eq!(verdicts(&a), [Verdict::Differs, Verdict::Tallies]);
+}

@@ -430,7 +430,8 @@ impl<'a> Table<'a> {
         if let Some(g) = groups.iter().find(|g| g.median.is_some()) {
             features.push((Feature::Ranked, g.span));
         }
-        features.extend(&notes.features);
+        let applies = |mark: &Option<String>| mark.as_ref().is_none_or(|m| marks.contains(m));
+        features.extend(notes.features.iter().filter(|n| applies(&n.0)).map(|n| (n.1, n.2)));
         for (feature, span) in features {
             if result.features.iter().all(|&(f, _)| f != feature) {
                 result.features.push((feature, span));

@@ -12,8 +12,8 @@ use crate::text::Span;
 pub(super) struct Notes {
     /// Tests, each with the mark that ties it to cells.
     pub tests: Vec<(Option<String>, Stated<Test>)>,
-    /// Features said of the whole table.
-    pub features: Vec<(Feature, Span)>,
+    /// Features said of the whole table, or of the cells with a mark.
+    pub features: Vec<(Option<String>, Feature, Span)>,
 }
 
 impl Table<'_> {
@@ -38,11 +38,17 @@ impl Table<'_> {
                 if !caption {
                     mark = (at..view.len()).rev().find_map(|i| mark_at(&view, i)).or(mark);
                 }
-                notes.features.extend(feature::of_words(&view).into_iter().filter(|&(f, _)| {
+                // A mark in the same sentence ties what follows to its cells; one further back may not.
+                let tied = |i: usize| {
+                    let from = (0..i).rev().take_while(|&k| !view.sign(k, ';')).find_map(|k| mark_at(&view, k));
+                    from.filter(|_| !caption)
+                };
+                let words = feature::of_words(&view).into_iter().filter(|&(f, _)| {
                     matches!(f, Feature::Adjusted | Feature::Imputed | Feature::Transformed | Feature::Corrected)
-                }));
+                });
+                notes.features.extend(words.map(|(f, span)| (tied(view.token_at(span.start)), f, span)));
                 if let Some(i) = (0..view.len()).find(|&i| view.any(i, &["paired", "within-group", "intragroup"])) {
-                    notes.features.push((Feature::Paired, view.span(i, i)));
+                    notes.features.push((tied(i), Feature::Paired, view.span(i, i)));
                 }
             }
         }
