@@ -148,7 +148,7 @@ pub(crate) fn p_from_interval(case: &Case) -> Result<Vec<Recomputation>, &'stati
     let wald = Wald::new(scale, e, lower, upper).ok_or(reason::SCALE)?;
     let (level, printed_level) = case.level();
     // A log-rank p is near that of the hazard ratio: a factor of five is no matter of the test.
-    let log_rank = case.here().any(|t| t == Test::LogRank) && e.scale == Scale::Ratio;
+    let log_rank = case.here().any(|t| t == Test::LogRank) && e.measure == Measure::HazardRatio;
     let mut hold = case.interval_hold().filter(|&h| !(log_rank && h == reason::TIME_TO_EVENT));
     if e.scale == Scale::Unknown {
         hold = hold.or(Some(reason::SCALE));
