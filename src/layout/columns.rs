@@ -7,6 +7,8 @@ use std::ops::Range;
 
 /// Rows below the format's own header that may go on with it.
 const MOST_ADDED: usize = 3;
+/// Cells over one column that are looked at.
+const MOST_HEADS: usize = 6;
 /// Columns that a table of figures has at most; beyond them nothing is joined.
 const MOST_GROUPS: usize = 24;
 
@@ -81,6 +83,10 @@ pub(super) fn columns(text: &Text, grid: &Grid, runs: &[Range<usize>], header_ro
             continue;
         }
         for column in &mut columns[from..to] {
+            // Of endless heads the lowest counts.
+            if column.path.len() == MOST_HEADS {
+                column.path.pop();
+            }
             column.path.push(index);
             column.header = Some(index);
         }
@@ -193,6 +199,8 @@ fn stub_columns(text: &Text, grid: &Grid, columns: &[Column], looks: &[Looks]) -
 
 /// Settles by the cells what the heads leave open or say wrongly.
 fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
+    let letters =
+        columns.iter().any(|c| c.header.is_some_and(|h| matches!(text.folded(&grid.cells[h]).as_str(), "a" | "c")));
     let some_p = columns.iter().any(|c| c.role == ColumnRole::P);
     let heads: Vec<String> =
         columns.iter().map(|c| c.header.map_or(String::new(), |h| text.folded(&grid.cells[h]))).collect();
@@ -208,10 +216,7 @@ fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
                 ColumnRole::Interval
             }
             // Two groups called A and B, and no regression.
-            ColumnRole::Estimate
-                if matches!(heads[k].as_str(), "b" | "d")
-                    && (of.summary > 0 || heads.iter().any(|h| matches!(h.as_str(), "a" | "c"))) =>
-            {
+            ColumnRole::Estimate if matches!(heads[k].as_str(), "b" | "d") && (of.summary > 0 || letters) => {
                 ColumnRole::Other
             }
             // "to" between two limits.
@@ -279,13 +284,13 @@ fn columns_left_estimate(columns: &[Column], k: usize) -> bool {
 
 /// Intervals under the head of one group, with other groups behind them, are those of the group's mean.
 fn own_intervals(grid: &Grid, columns: &mut [Column]) {
+    let mut some = false;
     let last_group = columns.iter().rposition(|c| matches!(c.role, ColumnRole::Group { .. }));
     for k in 1..columns.len() {
         let spans = |h: usize| grid.cells[h].column_span > 1;
         let shared = columns[k].path.first() == columns[k - 1].path.first()
             && columns[k].path.first().is_some_and(|&h| spans(h));
-        let alone = last_group.is_some_and(|g| g > k)
-            || k > 1 && columns[..k - 1].iter().any(|c| c.role == ColumnRole::Part(Part::Ci));
+        let alone = last_group.is_some_and(|g| g > k) || some;
         if columns[k].role == ColumnRole::Interval
             && columns[k].path.len() > 1
             && columns[k - 1].role.summarises()
@@ -293,6 +298,7 @@ fn own_intervals(grid: &Grid, columns: &mut [Column]) {
             && alone
         {
             columns[k].role = ColumnRole::Part(Part::Ci);
+            some = true;
         }
     }
 }

@@ -204,6 +204,13 @@ impl Layout {
         }
     }
 
+    /// The cell of a row in a column; cells of a row are in the order of their columns.
+    pub fn cell_in(&self, grid: &Grid, row: &Row, column: usize) -> Option<usize> {
+        let cells = &grid.cells[row.cells.clone()];
+        let at = cells.partition_point(|c| (c.column as usize) < column);
+        cells.get(at).filter(|c| c.column as usize == column).map(|_| row.cells.start + at)
+    }
+
     /// The panel of a column.
     pub fn panel(&self, column: usize) -> Option<&Panel> {
         self.panels.get(self.columns.get(column)?.panel?)

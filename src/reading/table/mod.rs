@@ -127,7 +127,7 @@ impl<'a> Table<'a> {
 
     /// The one figure in brackets in a row's cell of a column.
     fn bracketed(&self, row: &Row, column: usize) -> Option<Printed> {
-        let cell = row.cells.clone().find(|&c| self.grid.cells[c].column as usize == column)?;
+        let cell = self.layout.cell_in(self.grid, row, column)?;
         match cell::read(&self.view(cell))[..] {
             [cell::Read { form: cell::Form::Single { value, .. }, .. }] => Some(value.printed),
             _ => None,
@@ -256,9 +256,9 @@ impl<'a> Table<'a> {
                 }
                 _ => continue,
             };
-            let df = row
-                .cells
-                .clone()
+            // Degrees of freedom stand within a few cells of their statistic.
+            let mut near = cell.saturating_sub(3).max(row.cells.start)..(cell + 4).min(row.cells.end);
+            let df = near
                 .find(|&i| {
                     *self.role_of(i) == ColumnRole::Df && self.same_bundle(self.grid.cells[i].column as usize, column)
                 })
@@ -307,6 +307,8 @@ struct Setting {
     noted: Option<summary::Sized>,
     /// Bare figures are counts.
     bare_counts: bool,
+    /// Columns of sizes.
+    size_columns: Vec<usize>,
 }
 
 impl Setting {
@@ -345,6 +347,8 @@ impl Setting {
             sizes::noted(views(around.caption.clone()).chain(views(around.notes.clone())), single)
         };
         let bare_counts = table.has_bare_counts();
-        Setting { columns, heads, around: said, baseline, shown, noted, bare_counts }
+        let is_size = |(k, c): (usize, &Column)| (c.role == ColumnRole::Size).then_some(k);
+        let size_columns = table.layout.columns.iter().enumerate().filter_map(is_size).collect();
+        Setting { columns, heads, around: said, baseline, shown, noted, bare_counts, size_columns }
     }
 }

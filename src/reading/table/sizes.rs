@@ -21,9 +21,10 @@ impl Table<'_> {
         let column = self.grid.cells[index].column as usize;
         let is_size = |&i: &usize| *self.role_of(i) == ColumnRole::Size;
         let beside = index.checked_sub(1).filter(|i| row.cells.contains(i)).filter(is_size);
-        let of_row = if self.layout.rows_are_groups { row.cells.clone().find(is_size) } else { None };
+        let first = setting.size_columns.first().filter(|_| self.layout.rows_are_groups);
+        let of_row = first.and_then(|&k| self.layout.cell_in(self.grid, row, k));
         // One column of sizes beside several groups is of all of them.
-        let several = || row.cells.clone().filter(is_size).count() > 1 || self.layout.rows_are_groups;
+        let several = || setting.size_columns.len() > 1 || self.layout.rows_are_groups;
         if let Some(cell) = beside.filter(|_| several()).or(of_row) {
             return self.printed_size(cell);
         }

@@ -92,7 +92,7 @@ impl Table<'_> {
         }
         let mut groups = Vec::new();
         for row in std::iter::once(index).chain(below) {
-            let cell = self.layout.rows[row].cells.clone().find(|&c| self.column(c) == column)?;
+            let cell = self.layout.cell_in(self.grid, &self.layout.rows[row], column)?;
             let mut found = self.groups_in(cell);
             groups.push(found.next()?);
             if found.next().is_some() {
@@ -116,7 +116,8 @@ impl Table<'_> {
         let mut end = start;
         while end < self.layout.rows.len() && end - start < MOST_ROWS {
             let below = &self.layout.rows[end];
-            let own = below.cells.clone().any(|c| self.column(c) == k && !self.view(c).is_empty() && !self.is_dash(c));
+            let own =
+                self.layout.cell_in(self.grid, below, k).is_some_and(|c| !self.view(c).is_empty() && !self.is_dash(c));
             let new_title = !title && !self.stub_is_single() && below.section != row.section;
             if below.role != RowRole::Data || own || new_title {
                 break;

@@ -152,13 +152,14 @@ impl<'a> Table<'a> {
     /// several; empty where one cannot be read.
     fn compared(&self, row: &Row, panel: Option<usize>) -> Vec<Vec<usize>> {
         let Some(panel) = panel.and_then(|k| self.layout.panels.get(k)) else { return Vec::new() };
+        /// More groups than one result compares.
+        const MOST: usize = 40;
+        if panel.groups.len() > MOST {
+            return Vec::new();
+        }
         let mut lists: Vec<Vec<usize>> = Vec::new();
         let mut met = 0;
-        for cell in row.cells.clone() {
-            let k = self.column(cell);
-            if panel.groups.binary_search(&k).is_err() {
-                continue;
-            }
+        for cell in panel.groups.iter().filter_map(|&k| self.layout.cell_in(self.grid, row, k)) {
             let groups: Vec<usize> = self.groups_in(cell).collect();
             if met == 0 {
                 lists = vec![Vec::new(); groups.len()];
@@ -322,7 +323,7 @@ impl<'a> Table<'a> {
     /// The cell of a column in the row below, where that is a row of p-values and has one there.
     fn p_below(&self, index: usize, column: usize) -> Option<usize> {
         let below = self.layout.rows.get(index + 1).filter(|r| r.role == RowRole::P)?;
-        let cell = below.cells.clone().find(|&c| self.column(c) == column)?;
+        let cell = self.layout.cell_in(self.grid, below, column)?;
         (!self.p_in(cell).is_empty()).then_some(cell)
     }
 
@@ -334,7 +335,7 @@ impl<'a> Table<'a> {
         let row = &self.layout.rows[index];
         // `Difference (95% CI)` in the row above: the P is that of the estimate.
         let over = index.checked_sub(1).map(|i| &self.layout.rows[i]).filter(|r| r.role == RowRole::Data);
-        let over = over.and_then(|r| r.cells.clone().find(|&c| self.column(c) == k));
+        let over = over.and_then(|r| self.layout.cell_in(self.grid, r, k));
         if let Some(over) = over.filter(|&c| !self.estimates_in(c).is_empty())
             && let Some(p) = self.p_in(cell).next()
         {
@@ -347,7 +348,7 @@ impl<'a> Table<'a> {
         let mut groups: Vec<usize> = Vec::new();
         let mut statistic = self.statistics_in(cell).next();
         let mut rows = 0;
-        let at = |row: &Row| row.cells.clone().find(|&c| self.column(c) == k);
+        let at = |row: &Row| self.layout.cell_in(self.grid, row, k);
         for above in self.layout.rows[..index].iter().rev().take(MOST + 4) {
             match above.role {
                 RowRole::Statistic if row.role == RowRole::P && rows == 0 => {
