@@ -11,7 +11,7 @@ pub struct Around {
 }
 
 /// How many blocks are taken for notes at most.
-const MOST_NOTES: usize = 12;
+const MOST_NOTES: usize = 40;
 
 /// The caption and notes of the table that is block number `table`.
 pub fn around(manuscript: &Manuscript, table: usize) -> Around {
@@ -107,6 +107,35 @@ const OPENINGS: &[&str] = &[
     "mean ±",
     "median",
     "unless otherwise",
+    "the median",
+    "the mean",
+    "the values",
+    "means ",
+    "medians",
+    "percentages",
+    "number (",
+    "n (%",
+    "statistical",
+    "different letters",
+    "results represent",
+    "values expressed",
+    "data expressed",
+    "comparison",
+    "test of",
+    "tests of",
+    "t test",
+    "t-test",
+    "chi-square",
+    "chi square",
+    "mann-whitney",
+    "fisher",
+    "student",
+    "anova",
+    "all p",
+    "bold",
+    "estimates",
+    "effect estimates",
+    "estimated",
     "ns ",
 ];
 
@@ -126,7 +155,14 @@ fn is_note(block: &Block) -> bool {
     {
         return true;
     }
-    let opening: String = text.chars().take(24).flat_map(char::to_lowercase).collect();
+    // `*MPR* mediation possession ratio`: an abbreviation set apart.
+    if block.marked(MarkKind::Emphasis, skipped, skipped + 1) {
+        let first: String = text.chars().take_while(|c| !c.is_whitespace()).collect();
+        if (2..=12).contains(&first.chars().count()) && first.chars().filter(|c| c.is_uppercase()).count() >= 2 {
+            return true;
+        }
+    }
+    let opening: String = text.chars().take(28).flat_map(char::to_lowercase).collect();
     OPENINGS.iter().any(|w| opening.starts_with(w)) || lists_abbreviations(text)
 }
 

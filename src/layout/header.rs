@@ -1,6 +1,6 @@
 //! What a header cell says: a group with its size, P, an estimate.
 
-use super::{ColumnRole, Size};
+use super::{ColumnRole, Part, Size};
 use crate::manuscript::{Block, Cell, MarkKind};
 use crate::text::Span;
 
@@ -35,19 +35,13 @@ pub(super) fn folded(block: &Block, start: u32, end: u32) -> String {
 }
 
 /// The words of a folded header.
-fn words(folded: &str) -> impl Iterator<Item = &str> {
+pub(super) fn words(folded: &str) -> impl Iterator<Item = &str> {
     folded.split(|c: char| !c.is_alphanumeric()).filter(|w| !w.is_empty())
 }
 
-/// The role that a header cell gives its column.
+/// The role that a header cell gives its column; [`ColumnRole::Other`] where it says nothing of it.
 pub(super) fn role(block: &Block, number: usize, cell: &Cell) -> ColumnRole {
     let head = folded(block, cell.start, cell.end);
-    if is_p(&head) {
-        return ColumnRole::P;
-    }
-    if is_estimate(&head) {
-        return ColumnRole::Estimate;
-    }
     let text = block.text.get(cell.start as usize..cell.end as usize).unwrap_or("");
     match size(text) {
         Some((value, at, name)) => {
@@ -56,24 +50,53 @@ pub(super) fn role(block: &Block, number: usize, cell: &Cell) -> ColumnRole {
             let label = label(text, name);
             if is_overall(&label) { ColumnRole::Overall { label, n } } else { ColumnRole::Group { label, n } }
         }
-        None => ColumnRole::Other,
+        None => role_of_words(&head),
     }
 }
 
-/// `P`, `P value`, `p-value (t test)`, `P for interaction`, `Sig.`
-pub(super) fn is_p(head: &str) -> bool {
-    let mut all = words(head);
-    match all.next() {
-        Some("p" | "pvalue" | "pvalues") => {}
-        Some("sig" | "significance") => return all.next().is_none(),
-        Some("overall" | "adjusted" | "unadjusted" | "exact" | "nominal") => match all.next() {
-            Some("p" | "pvalue") => {}
-            _ => return false,
-        },
-        _ => return false,
+fn role_of_words(head: &str) -> ColumnRole {
+    if is_p(head) {
+        return ColumnRole::P;
     }
+    if is_statistic(head) {
+        return ColumnRole::Statistic;
+    }
+    if let Some(part) = part(head) {
+        return part;
+    }
+    // `95% CI Lower`: a head in one line that stood in two.
+    let has = |w: &str| words(head).any(|x| x == w);
+    if says_interval(head) && has("lower") != has("upper") && words(head).count() <= 5 {
+        return if has("lower") { ColumnRole::Lower } else { ColumnRole::Upper };
+    }
+    if is_estimate(head) {
+        return ColumnRole::Estimate;
+    }
+    if is_interval(head) { ColumnRole::Interval } else { ColumnRole::Other }
+}
+
+/// `P`, `P value`, `p-value (t test)`, `P for interaction`, `Sig.`, `Between-group P value`
+pub(super) fn is_p(head: &str) -> bool {
     // `P (n = 24)` would be a group called P.
-    !head.contains('=') && words(head).count() <= 12
+    if head.contains('=') || words(head).count() > 14 {
+        return false;
+    }
+    if matches!(words(head).next(), Some("sig" | "significance" | "probability")) {
+        return words(head).skip(1).all(|w| matches!(w, "2" | "1" | "two" | "one" | "tailed" | "sided" | "level"));
+    }
+    let mut before = 0;
+    let mut all = words(head).peekable();
+    while let Some(word) = all.next() {
+        let next = all.peek().copied();
+        let value = matches!(next, Some("value" | "values" | "val"));
+        // In front, before "value" or at the end; "vitamin P" and "P (mmol/l)" are other things.
+        let stands = before == 0 && !head.contains('/') || next.is_none() && before > 0 && !head.contains("vitamin");
+        if matches!(word, "pvalue" | "pvalues") || word == "p" && (value || stands) {
+            return true;
+        }
+        before += 1;
+    }
+    false
 }
 
 /// A P that compares the groups of the row, and says nothing else of itself than by what test.
@@ -97,22 +120,158 @@ pub(super) fn is_plain_p(head: &str, groups: usize) -> bool {
         "and",
         "noninferiority",
         "inferiority",
+        "adjusted",
+        "corrected",
     ];
     // Of two groups there is only one comparison, named or not.
     !words(head).any(|w| OTHER.contains(&w) && !(groups == 2 && matches!(w, "vs" | "versus" | "v" | "and")))
 }
 
+/// A test statistic: `t`, `F(1, 146)`, `χ²`, `t value`, `Z`.
+pub(super) fn is_statistic(head: &str) -> bool {
+    let plain: String = head.chars().filter(|c| !c.is_whitespace()).collect();
+    // `pretest f(1,146)`: a symbol with its degrees of freedom at the end.
+    if let Some(open) = plain.rfind('(').filter(|_| plain.ends_with(')')) {
+        let inner = &plain[open + 1..plain.len() - 1];
+        let df = inner == "df" || !inner.is_empty() && inner.chars().all(|c| c.is_ascii_digit() || ",.;".contains(c));
+        let before = head.trim_end().rsplit_once('(').map_or("", |b| b.0.trim_end());
+        let last = before.rsplit(' ').next().unwrap_or("");
+        if df && matches!(last, "f" | "t" | "χ" | "x" | "χ2" | "χ²" | "x2" | "x²" | "chi2") {
+            return true;
+        }
+    }
+    let mut symbol = plain.as_str();
+    for end in ["value", "values", "test", "statistic", "statistics", "-", "ratio"] {
+        symbol = symbol.strip_suffix(end).unwrap_or(symbol);
+    }
+    matches!(
+        symbol,
+        // The 2 of χ² is raised, and raised marks are left out.
+        "χ" | "x"
+            | "t"
+            | "f"
+            | "z"
+            | "u"
+            | "h"
+            | "χ2"
+            | "χ²"
+            | "x2"
+            | "x²"
+            | "chi2"
+            | "chi-square"
+            | "chisquare"
+            | "chi-squared"
+            | "chisquared"
+            | "mann-whitneyu"
+    )
+}
+
+/// A column that goes on what the one before it begins, or bounds an interval.
+fn part(head: &str) -> Option<ColumnRole> {
+    let plain = head.trim_matches(|c: char| !c.is_alphanumeric() && c != '%' && c != '±');
+    Some(match plain {
+        _ if plain.starts_with("s.d") && plain.contains("c.v") || plain.starts_with("sd") && plain.contains("cv") => {
+            ColumnRole::Part(Part::Sd)
+        }
+        "sd" | "s.d" | "±sd" | "± sd" | "standard deviation" | "std" | "std. deviation" | "std. dev" => {
+            ColumnRole::Part(Part::Sd)
+        }
+        "se" | "s.e" | "sem" | "±se" | "±sem" | "± sem" | "standard error" | "std. error" => {
+            ColumnRole::Part(Part::Se)
+        }
+        "%" | "percent" | "percentage" | "per cent" => ColumnRole::Part(Part::Percent),
+        "iqr" | "interquartile range" => ColumnRole::Part(Part::Iqr),
+        "range" | "min-max" | "min–max" => ColumnRole::Part(Part::Range),
+        "df" | "d.f" | "degrees of freedom" => ColumnRole::Df,
+        "lower" | "lower limit" | "lower bound" | "lower 95% ci" | "lower ci" | "lower 95%" | "lcl" => {
+            ColumnRole::Lower
+        }
+        "upper" | "upper limit" | "upper bound" | "upper 95% ci" | "upper ci" | "upper 95%" | "ucl" => {
+            ColumnRole::Upper
+        }
+        _ => return None,
+    })
+}
+
+/// Whether a cell of a second header row says what stands in its column.
+pub(super) fn heads_column(head: &str) -> bool {
+    role_of_words(head) != ColumnRole::Other
+        || matches!(head, "mean" | "median" | "n" | "n (%)" | "no. (%)" | "no." | "mean (sd)" | "mean ± sd" | "m")
+}
+
+/// Words of the head of an interval.
+pub(super) fn says_interval(head: &str) -> bool {
+    let has = |w: &str| words(head).any(|x| x == w);
+    let named = ["interval", "intervals", "limits"].iter().any(|w| has(w));
+    has("ci") || head.contains("c.i") || head.contains("% ci") || has("confidence") && named
+}
+
+/// An interval alone: `95% CI`.
+fn is_interval(head: &str) -> bool {
+    const WORDS: &[&str] = &[
+        "ci",
+        "c",
+        "i",
+        "confidence",
+        "interval",
+        "intervals",
+        "limits",
+        "percent",
+        "of",
+        "for",
+        "the",
+        "wald",
+        "bootstrap",
+        "adjusted",
+        "unadjusted",
+        "crude",
+        "and",
+    ];
+    says_interval(head) && words(head).all(|w| w.bytes().all(|b| b.is_ascii_digit()) || WORDS.contains(&w))
+}
+
+/// Names of measures that compare groups.
+const MEASURES: &[&str] = &[
+    "difference",
+    "differences",
+    "or",
+    "ors",
+    "rr",
+    "hr",
+    "ratio",
+    "md",
+    "aor",
+    "aors",
+    "ahr",
+    "arr",
+    "rd",
+    "irr",
+    "smd",
+    "nnt",
+    "rrr",
+    "coefficient",
+    "coefficients",
+    "β",
+    "beta",
+];
+
 /// A difference or ratio between groups.
 fn is_estimate(head: &str) -> bool {
     let has = |w: &str| words(head).any(|x| x == w);
-    let interval = has("ci") || (has("confidence") && (has("interval") || has("intervals") || has("limits")));
-    let named = ["difference", "differences", "or", "rr", "hr", "ratio", "md", "aor", "ahr", "arr", "rd", "irr", "smd"];
-    let measure = named.iter().any(|w| has(w)) || head.contains("relative risk") || head.contains("effect size");
+    // `H.R.` lost its points in no list of words.
+    let compact: String = head.chars().filter(|c| !matches!(c, '.' | ' ')).collect();
+    let measure = MEASURES.iter().any(|w| has(w))
+        || head.contains('.') && MEASURES.contains(&compact.as_str())
+        || ["relative risk", "effect size", "treatment effect", "risk reduction"].iter().any(|p| head.contains(p));
     let group = head.contains("n =") || head.contains("n=");
     // `or` alone is a conjunction.
-    let only_or = has("or") && !named.iter().any(|w| *w != "or" && has(w));
-    let alone = words(head).count() <= 4 && measure && (!only_or || words(head).count() == 1);
-    !group && (interval && measure || alone)
+    let only_or = has("or") && !MEASURES.iter().any(|w| *w != "or" && has(w));
+    let alone = words(head).count() <= 6 && measure && (!only_or || words(head).count() == 1);
+    let bare = matches!(
+        head.trim_matches(|c: char| !c.is_alphanumeric()),
+        "estimate" | "estimated effect" | "b" | "d" | "cohen's d" | "cohen’s d" | "effect" | "es" | "slope"
+    );
+    !group && (says_interval(head) && (measure || has("effect") || has("estimate")) || alone || bare)
 }
 
 /// `n = 24`: the value, where its digits stand, and where the name of the group ends (before `(n`).
@@ -123,7 +282,7 @@ fn size(text: &str) -> Option<(u64, std::ops::Range<usize>, std::ops::Range<usiz
         let before = text[..at].trim_end();
         let Some(name) = before.strip_suffix(['n', 'N']) else { continue };
         // `mean = 24`: a letter before the n makes it a word, unless a name is glued to it (`groupn = 24`).
-        let glued = name.ends_with(|c: char| c.is_alphabetic()) && !name.to_lowercase().ends_with("group");
+        let glued = name.ends_with(|c: char| c.is_alphabetic()) && !glues(&name.to_lowercase());
         let rest = &text[at + sign.len()..];
         let start = at + sign.len() + (rest.len() - rest.trim_start().len());
         let digits = digits(&text[start..]);
@@ -140,6 +299,13 @@ fn size(text: &str) -> Option<(u64, std::ops::Range<usize>, std::ops::Range<usiz
         found = Some((value, start..start + digits, name.len()..start + digits));
     }
     found.filter(|&(value, ..): &(u64, _, _)| value > 0)
+}
+
+/// A name that an `n` was glued to: `groupn = 24` lost its line break.
+fn glues(name: &str) -> bool {
+    const NAMES: &[&str] =
+        &["group", "arm", "placebo", "control", "controls", "intervention", "treatment", "total", "all"];
+    NAMES.iter().any(|n| name.ends_with(n))
 }
 
 /// Bytes of a whole number at the start, thousands set apart by a comma or a narrow space.
@@ -177,7 +343,11 @@ fn name_only(text: &str) -> String {
 
 /// The name that a header cell gives a group whose size stands elsewhere.
 pub(super) fn name(block: &Block, cell: &Cell) -> String {
-    name_only(block.text.get(cell.start as usize..cell.end as usize).unwrap_or(""))
+    let text = block.text.get(cell.start as usize..cell.end as usize).unwrap_or("");
+    match size(text) {
+        Some((_, _, at)) => label(text, at),
+        None => name_only(text),
+    }
 }
 
 /// A cell that holds a size and nothing else: `n = 24`, `(n = 24)`; `24` where the row is labelled N.
@@ -194,23 +364,68 @@ pub(super) fn size_alone(block: &Block, number: usize, cell: &Cell, labelled: bo
     (labelled && value > 0 && text[end..].trim().is_empty()).then(|| Size { value, span: at(start..end) })
 }
 
-/// The label of a row of sizes.
+/// The label of a row or column of sizes: `N`, `No. of patients`, `Number of women randomised`.
 pub(super) fn is_size_label(head: &str) -> bool {
-    matches!(
-        head,
-        "n" | "n="
-            | "n ="
-            | "(n)"
-            | "no."
-            | "number"
-            | "no. of patients"
-            | "number of patients"
-            | "number of participants"
-            | "no. of participants"
-            | "number of subjects"
-            | "no. of subjects"
-            | "sample size"
-    )
+    let mut all = words(head).peekable();
+    let number = match all.next() {
+        Some("n" | "no" | "number" | "numbers") => true,
+        Some("total") => return words(head).any(|w| matches!(w, "n" | "number")) && all.all(names_people),
+        Some("sample" | "group") => matches!(all.next(), Some("n" | "number" | "size")),
+        Some("case") => return matches!(all.next(), Some("no" | "number")) && all.next().is_none(),
+        // "Women" alone is a category.
+        Some("patients" | "participants" | "subjects") => return all.all(|w| w == "n"),
+        Some(_) => false,
+        None => false,
+    };
+    number && !head.contains('%') && all.all(names_people)
+}
+
+/// People that a study counts.
+const PEOPLE: &[&str] = &[
+    "patients",
+    "participants",
+    "subjects",
+    "cases",
+    "women",
+    "men",
+    "children",
+    "individuals",
+    "households",
+    "people",
+    "persons",
+    "infants",
+    "students",
+];
+
+/// Words that may stand in the label of a size.
+fn names_people(word: &str) -> bool {
+    const OTHERS: &[&str] = &[
+        "of",
+        "n",
+        "in",
+        "per",
+        "group",
+        "sub",
+        "subgroup",
+        "arm",
+        "randomized",
+        "randomised",
+        "analysed",
+        "analyzed",
+        "evaluated",
+        "total",
+        "each",
+        "included",
+        "the",
+        "number",
+    ];
+    PEOPLE.contains(&word) || OTHERS.contains(&word)
+}
+
+/// `drug arm no. households`: a name, then the words of a size.
+pub(super) fn size_words_at_end(head: &str) -> bool {
+    let at = ["no. ", "no ", "number of ", "n of "].iter().filter_map(|w| head.rfind(w)).max();
+    at.is_some_and(|at| is_size_label(head[at..].trim()))
 }
 
 /// Words for all participants together.
@@ -241,38 +456,85 @@ pub(super) fn is_overall(label: &str) -> bool {
 }
 
 /// Words that show that a column is a time of measurement, not a group of participants.
+const TIMES: &[&str] = &[
+    "before",
+    "after",
+    "baseline",
+    "pre",
+    "post",
+    "pretest",
+    "posttest",
+    "pretreatment",
+    "posttreatment",
+    "preintervention",
+    "postintervention",
+    "week",
+    "weeks",
+    "month",
+    "months",
+    "day",
+    "days",
+    "year",
+    "years",
+    "visit",
+    "followup",
+    "follow",
+    "change",
+    "changes",
+    "difference",
+    "admission",
+    "discharge",
+    "endpoint",
+    "t0",
+    "t1",
+    "t2",
+    "t3",
+    "time",
+    "test",
+    "retest",
+    "basal",
+    "initial",
+    "final",
+    "end",
+    "start",
+    "mo",
+    "wk",
+    "w",
+    "h",
+    "min",
+    "mins",
+    "hour",
+    "hours",
+    "minutes",
+    "wave",
+    "1st",
+    "2nd",
+    "3rd",
+    "first",
+    "second",
+    "third",
+];
+
+/// Whether a head names a time of measurement.
 pub(super) fn names_time(head: &str) -> bool {
-    const TIMES: &[&str] = &[
-        "before",
-        "after",
-        "baseline",
-        "pre",
-        "post",
-        "pretest",
-        "posttest",
-        "pretreatment",
-        "posttreatment",
-        "preintervention",
-        "postintervention",
-        "week",
-        "weeks",
-        "month",
-        "months",
-        "day",
-        "days",
-        "year",
-        "years",
-        "visit",
-        "followup",
-        "follow",
-        "change",
-        "changes",
-        "difference",
-        "admission",
-        "discharge",
-        "endpoint",
-    ];
+    timeless(head).1
+}
+
+/// A head without the words for times, figures and what its figures are; and whether it had words for times.
+pub(super) fn timeless(head: &str) -> (String, bool) {
+    const FIGURES: &[&str] =
+        &["n", "up", "mean", "sd", "se", "sem", "median", "iqr", "range", "m", "no", "and", "of", "at"];
     // A dose is no time: `2,000 IU/day`.
     let head = head.replace("/day", "").replace("/ day", "").replace("/week", "");
-    words(&head).any(|w| TIMES.contains(&w))
+    let mut timed = false;
+    let mut key = String::new();
+    for word in words(&head) {
+        if TIMES.contains(&word) {
+            timed = true;
+        } else if !FIGURES.contains(&word) && !word.bytes().all(|b| b.is_ascii_digit()) {
+            key.push_str(word);
+            key.push(' ');
+        }
+    }
+    (key, timed)
 }

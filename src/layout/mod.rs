@@ -1,12 +1,15 @@
 //! Tables as readers see them: what each column and row is for, and which paragraphs belong to the table.
 //!
-//! One shape is known whole, the *plain* one: labels on the left, one column for each group with its size in
-//! the header, then possibly an estimate, then possibly P. Every other table is only told apart from it, so that
-//! nobody reads more into it than a P column. A table taken for plain wrongly costs false objections; a plain
-//! table that is missed costs only silence. So every doubt counts against the plain shape.
+//! Heads are read from the top to the columns beneath them; where a head says nothing, the look of the cells does. The
+//! result columns that stand behind a run of group columns compare those groups: together they are a *panel*, and a
+//! table may have several side by side. What is doubtful about a panel is kept with it, since a table taken wrongly
+//! costs false objections, and one that is missed costs only silence.
 
 mod around;
+mod columns;
+mod figures;
 mod header;
+mod rows;
 
 pub use around::{Around, around};
 
@@ -17,22 +20,35 @@ use std::ops::Range;
 /// A table with the parts of its columns and rows.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Layout {
-    /// Rows from the top that hold headers: those that the format names and a row of sizes below them.
+    /// Rows from the top that hold headers: those that the format names and further ones that look like it.
     pub header_rows: u32,
     /// One for each column of the grid.
     pub columns: Vec<Column>,
     /// One for each row that has cells, header rows included.
     pub rows: Vec<Row>,
-    /// The plain shape: labels, groups with their sizes, at most one estimate, at most one P, in this order.
-    pub plain: bool,
+    /// Groups with the results that compare them, from the left.
+    pub panels: Vec<Panel>,
+    /// The rows are groups of participants, and the columns what was measured or when.
+    pub rows_are_groups: bool,
+    /// Sizes of the columns as rows of the body print them; [`Row::sizes`] counts from 1 here.
+    sizes: Vec<Vec<Option<Size>>>,
 }
 
-/// A column and the cell that heads it.
+/// A column and the cells that head it.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Column {
     pub role: ColumnRole,
-    /// Index of the header cell in the grid's cells.
+    /// Index of the header cell nearest to the figures.
     pub header: Option<usize>,
+    /// Indexes of all header cells over the column, from the top.
+    pub path: Vec<usize>,
+    /// The panel that it belongs to.
+    pub panel: Option<usize>,
+    /// Result columns with one number are of one comparison.
+    pub bundle: usize,
+    /// Of a result column: it is not certain that it compares just the groups of its panel. It is one of several, its
+    /// head says more of it, or the groups are doubtful.
+    pub doubtful: bool,
 }
 
 /// What a column is for.
@@ -40,7 +56,7 @@ pub struct Column {
 pub enum ColumnRole {
     /// Labels of rows.
     Stub,
-    /// One group of participants.
+    /// Summaries of one group of participants, at one time.
     Group {
         label: String,
         n: Option<Size>,
@@ -50,18 +66,51 @@ pub enum ColumnRole {
         label: String,
         n: Option<Size>,
     },
+    /// The other half of the summary or estimate to its left.
+    Part(Part),
+    /// The size of the group to its right, or of the row.
+    Size,
     /// A comparison of the groups: a difference or ratio, with its interval or without.
     Estimate,
+    /// An interval, both limits in one cell.
+    Interval,
+    Lower,
+    Upper,
+    Statistic,
+    Df,
     P,
     Other,
 }
 
-/// The size of a group as its header prints it.
+/// What a column adds to the one on its left.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Part {
+    Sd,
+    Se,
+    Percent,
+    Iqr,
+    Range,
+    /// The interval of the mean or share to the left.
+    Ci,
+}
+
+/// The size of a group as it is printed.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub struct Size {
     pub value: u64,
     /// The digits.
     pub span: Span,
+}
+
+/// Groups and the results that compare them.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct Panel {
+    /// Columns of groups.
+    pub groups: Vec<usize>,
+    /// The columns are one group at several times.
+    pub times: bool,
+    /// Groups at several times, or without a name of their own.
+    pub doubtful: bool,
 }
 
 /// A row with its label.
@@ -74,6 +123,10 @@ pub struct Row {
     pub labels: Vec<usize>,
     /// Index of the cell that titles the rows below it, this one among them.
     pub section: Option<usize>,
+    /// The sizes in force: 0 for those of the header, else one more than the index of a list of sizes.
+    sizes: usize,
+    /// The size that the row's own label or section prints, of the one group that it is about.
+    pub own_size: Option<Size>,
 }
 
 /// What a row is for.
@@ -82,8 +135,12 @@ pub enum RowRole {
     Header,
     /// A label alone: it titles the rows below. A P may stand in it, for all of them together.
     Section,
+    /// Sizes of the groups, for the rows below.
+    Sizes,
     /// Labelled P: its cells are p-values.
     P,
+    /// Labelled t, F, χ²: its cells are test statistics.
+    Statistic,
     Data,
     Blank,
 }
@@ -104,6 +161,17 @@ impl ColumnRole {
             _ => None,
         }
     }
+
+    /// Summaries of participants stand in it.
+    pub fn summarises(&self) -> bool {
+        matches!(self, ColumnRole::Group { .. } | ColumnRole::Overall { .. })
+    }
+
+    /// A result of comparing groups stands in it.
+    pub fn compares(&self) -> bool {
+        use ColumnRole::*;
+        matches!(self, Estimate | Interval | Lower | Upper | Statistic | Df | P)
+    }
 }
 
 impl Layout {
@@ -111,41 +179,41 @@ impl Layout {
     pub fn of(block: &Block, number: usize, grid: &Grid) -> Layout {
         let text = Text { block, number };
         let runs = rows_of(&grid.cells);
-        let mut header_rows = grid.header_rows.max(1).min(runs.len() as u32);
-        let mut columns: Vec<Column> = (0..grid.columns.min(grid.cells.len() as u32))
-            .map(|_| Column { role: ColumnRole::Other, header: None })
-            .collect();
-        for (index, cell) in grid.cells.iter().enumerate().take_while(|(_, c)| c.row < header_rows) {
-            let wide = cell.column_span > 1 || cell.row_span > 1;
-            if let Some(column) = columns.get_mut(cell.column as usize) {
-                // Of stacked header cells the lowest is nearest to the figures.
-                if !text.of(cell).is_empty() || column.header.is_none() {
-                    *column =
-                        Column { role: if wide { ColumnRole::Other } else { text.role(cell) }, header: Some(index) };
-                }
-            }
-        }
-        let stubs = stub_columns(&text, grid, &runs, header_rows, &columns);
-        for column in &mut columns[..stubs] {
-            column.role = ColumnRole::Stub;
-        }
-        if columns.iter().all(|c| c.role.size().is_none())
-            && let Some(run) = runs.get(header_rows as usize)
-            && sizes_below(&text, grid, run.clone(), &mut columns)
-        {
-            header_rows += 1;
-        }
-        find_overall(&text, grid, &mut columns);
-        let rows = rows(&text, grid, &runs, header_rows, stubs, &columns);
-        let inner_header = rows.iter().skip(header_rows as usize).any(|r| r.role == RowRole::Header);
-        let spans = grid.cells.iter().any(|c| c.column_span > 1 || c.row_span > 1);
-        let plain = !inner_header && !spans && plain_columns(&text, grid, &columns);
-        Layout { header_rows, columns, rows, plain }
+        let header_rows = columns::header_rows(&text, grid, &runs);
+        let mut columns = columns::columns(&text, grid, &runs, header_rows);
+        let stubs = columns.iter().take_while(|c| c.role == ColumnRole::Stub).count();
+        let mut rows = rows::rows(&text, grid, &runs, header_rows, stubs, &columns);
+        let sizes = rows::sizes(&text, grid, &mut rows, &mut columns);
+        columns::find_overall(&text, grid, &mut columns);
+        let panels = columns::panels(&text, grid, &mut columns);
+        let rows_are_groups = rows::are_groups(&text, grid, &rows, &columns);
+        Layout { header_rows, columns, rows, panels, rows_are_groups, sizes }
     }
 
     /// The role of the column that a cell stands in.
     pub fn role(&self, cell: &Cell) -> &ColumnRole {
         self.columns.get(cell.column as usize).map_or(&ColumnRole::Other, |c| &c.role)
+    }
+
+    /// The size of the group in a row's cell of a column: as rows of the body print it, else as the header does.
+    pub fn size(&self, row: &Row, column: usize) -> Option<Size> {
+        let printed = row.sizes.checked_sub(1).and_then(|k| self.sizes.get(k)).map(|list| list.get(column).copied());
+        match printed {
+            Some(size) => size.flatten(),
+            None => self.columns.get(column).and_then(|c| c.role.size()),
+        }
+    }
+
+    /// The cell of a row in a column; cells of a row are in the order of their columns.
+    pub fn cell_in(&self, grid: &Grid, row: &Row, column: usize) -> Option<usize> {
+        let cells = &grid.cells[row.cells.clone()];
+        let at = cells.partition_point(|c| (c.column as usize) < column);
+        cells.get(at).filter(|c| c.column as usize == column).map(|_| row.cells.start + at)
+    }
+
+    /// The panel of a column.
+    pub fn panel(&self, column: usize) -> Option<&Panel> {
+        self.panels.get(self.columns.get(column)?.panel?)
     }
 }
 
@@ -168,6 +236,10 @@ impl Text<'_> {
     fn role(&self, cell: &Cell) -> ColumnRole {
         header::role(self.block, self.number, cell)
     }
+
+    fn look(&self, cell: &Cell) -> figures::Look {
+        figures::look(self.of(cell))
+    }
 }
 
 /// The cells of each row; rows without cells are left out.
@@ -180,182 +252,6 @@ fn rows_of(cells: &[Cell]) -> Vec<Range<usize>> {
         }
     }
     runs
-}
-
-/// How many columns from the left hold labels: the first, and a second whose cells hold hardly a figure.
-fn stub_columns(text: &Text, grid: &Grid, runs: &[Range<usize>], header_rows: u32, columns: &[Column]) -> usize {
-    if columns.is_empty() {
-        return 0;
-    }
-    let second = columns.get(1).is_some_and(|c| matches!(c.role, ColumnRole::Other));
-    if !second || columns.len() < 4 {
-        return 1;
-    }
-    let (mut words, mut figures) = (0, 0);
-    for run in runs.iter().skip(header_rows as usize) {
-        for cell in grid.cells[run.clone()].iter().filter(|c| c.column == 1) {
-            let shown = text.of(cell);
-            if shown.is_empty() {
-                continue;
-            }
-            // "Week 12" is a label, "12 (3)" is not.
-            if shown.starts_with(|c: char| c.is_alphabetic()) { words += 1 } else { figures += 1 }
-        }
-    }
-    if words > 0 && words >= 4 * figures { 2 } else { 1 }
-}
-
-/// Sizes in the row right below the header: `n = 24` in every column, or a row labelled N of whole numbers.
-fn sizes_below(text: &Text, grid: &Grid, run: Range<usize>, columns: &mut [Column]) -> bool {
-    let cells = &grid.cells[run];
-    let labelled = cells.iter().find(|c| !text.of(c).is_empty()).is_some_and(|c| {
-        matches!(columns.get(c.column as usize).map(|c| &c.role), Some(ColumnRole::Stub))
-            && header::is_size_label(&text.folded(c))
-    });
-    let mut found = Vec::new();
-    for cell in cells {
-        let Some(column) = columns.get(cell.column as usize) else { return false };
-        if column.role != ColumnRole::Other {
-            continue;
-        }
-        if text.of(cell).is_empty() {
-            continue;
-        }
-        match header::size_alone(text.block, text.number, cell, labelled) {
-            Some(size) => found.push((cell.column as usize, size)),
-            None => return false,
-        }
-    }
-    if found.len() < 2 {
-        return false;
-    }
-    for (at, size) in found {
-        let label = columns[at].header.map_or(String::new(), |h| header::name(text.block, &grid.cells[h]));
-        columns[at].role = ColumnRole::Group { label, n: Some(size) };
-    }
-    true
-}
-
-/// Tells the column of all participants from the groups: by its name, or as the sum of at least two others.
-fn find_overall(text: &Text, grid: &Grid, columns: &mut [Column]) {
-    let sizes: Vec<(usize, u64)> =
-        columns.iter().enumerate().filter_map(|(i, c)| Some((i, c.role.size()?.value))).collect();
-    let sum: u64 = sizes.iter().map(|s| s.1).fold(0, u64::saturating_add);
-    let whole = sizes.iter().find(|&&(_, n)| sizes.len() >= 3 && n == sum.saturating_sub(n)).map(|s| s.0);
-    for (i, column) in columns.iter_mut().enumerate() {
-        if column.role == ColumnRole::Other
-            && let Some(head) = column.header.map(|h| text.folded(&grid.cells[h])).filter(|h| header::is_overall(h))
-        {
-            column.role = ColumnRole::Overall { label: head, n: None };
-        }
-        if let ColumnRole::Group { label, n } = &column.role
-            && (whole == Some(i) || header::is_overall(label))
-        {
-            column.role = ColumnRole::Overall { label: label.clone(), n: *n };
-        }
-    }
-}
-
-fn rows(
-    text: &Text,
-    grid: &Grid,
-    runs: &[Range<usize>],
-    header_rows: u32,
-    stubs: usize,
-    columns: &[Column],
-) -> Vec<Row> {
-    let mut rows = Vec::with_capacity(runs.len());
-    let mut section = None;
-    // With two columns of labels the first is printed once for several rows.
-    let mut carried = None;
-    for (number, run) in runs.iter().enumerate() {
-        let cells = &grid.cells[run.clone()];
-        let is_stub = |c: &Cell| (c.column as usize) < stubs;
-        let shown = |c: &Cell| !text.of(c).is_empty();
-        let labels: Vec<usize> = run.clone().filter(|&i| is_stub(&grid.cells[i]) && shown(&grid.cells[i])).collect();
-        let filled = cells.iter().filter(|c| !is_stub(c) && shown(c)).count();
-        let p_only = filled == 1
-            && cells
-                .iter()
-                .any(|c| shown(c) && matches!(columns.get(c.column as usize).map(|c| &c.role), Some(ColumnRole::P)));
-        let last_label = labels.last().map(|&i| text.folded(&grid.cells[i]));
-        let role = if number < header_rows as usize {
-            RowRole::Header
-        } else if labels.is_empty() && filled == 0 {
-            RowRole::Blank
-        } else if last_label.as_deref().is_some_and(header::is_p) && filled > 0 {
-            RowRole::P
-        } else if repeats_header(text, cells, columns) {
-            RowRole::Header
-        } else if filled == 0 || (p_only && !labels.is_empty()) {
-            RowRole::Section
-        } else {
-            RowRole::Data
-        };
-        if role == RowRole::Section {
-            section = labels.last().copied();
-            carried = None;
-        } else if stubs == 2 && matches!(role, RowRole::Data | RowRole::P) {
-            if let Some(&first) = labels.first().filter(|&&i| grid.cells[i].column == 0) {
-                carried = (labels.len() == 2).then_some(first);
-            } else if carried.is_some() {
-                section = carried;
-            }
-        }
-        rows.push(Row { role, cells: run.clone(), labels, section });
-    }
-    rows
-}
-
-/// A row that heads columns anew, in the middle of a table.
-fn repeats_header(text: &Text, cells: &[Cell], columns: &[Column]) -> bool {
-    cells.iter().any(|c| match columns.get(c.column as usize).map(|c| &c.role) {
-        Some(ColumnRole::Stub) | None => false,
-        Some(ColumnRole::P) => header::is_p(&text.folded(c)),
-        Some(_) => {
-            !text.of(c).starts_with(|c: char| c.is_ascii_digit()) && {
-                let role = text.role(c);
-                role == ColumnRole::P || role.size().is_some() && text.of(c).contains('=')
-            }
-        }
-    })
-}
-
-/// Labels, groups (and the whole), an estimate, P: in this order, each group once and named as a group.
-fn plain_columns(text: &Text, grid: &Grid, columns: &[Column]) -> bool {
-    let place = |role: &ColumnRole| match role {
-        ColumnRole::Stub => Some(0),
-        ColumnRole::Group { n: Some(_), .. } | ColumnRole::Overall { .. } => Some(1),
-        ColumnRole::Estimate => Some(2),
-        ColumnRole::P => Some(3),
-        _ => None,
-    };
-    let Some(places) = columns.iter().map(|c| place(&c.role)).collect::<Option<Vec<_>>>() else { return false };
-    let count = |x| places.iter().filter(|&&p| p == x).count();
-    let groups = columns.iter().filter(|c| matches!(c.role, ColumnRole::Group { .. })).count();
-    // The few columns are compared with each other below; a table of more groups is no plain one anyway.
-    if groups > 8 || count(1) > 9 || count(0) > 2 {
-        return false;
-    }
-    let heads: Vec<String> =
-        columns.iter().map(|c| c.header.map_or(String::new(), |h| text.folded(&grid.cells[h]))).collect();
-    let alike = |role: &ColumnRole, k: usize| {
-        columns[..k].iter().enumerate().any(|(j, c)| {
-            c.role.size().is_some() && (heads[j] == heads[k] || c.role.label() == role.label()) && !heads[k].is_empty()
-        })
-    };
-    let repeated = columns.iter().enumerate().any(|(k, c)| c.role.size().is_some() && alike(&c.role, k));
-    // Columns of one group at two times are no groups.
-    let timed = columns.iter().zip(&heads).any(|(c, h)| c.role.size().is_some() && header::names_time(h));
-    let odd_p = columns.iter().zip(&heads).any(|(c, h)| c.role == ColumnRole::P && !header::is_plain_p(h, groups));
-    places.is_sorted()
-        && count(2) <= 1
-        && count(3) <= 1
-        && count(1) >= 1
-        && (groups >= 2 || count(3) + count(2) == 0)
-        && !repeated
-        && !timed
-        && !odd_p
 }
 
 #[cfg(test)]

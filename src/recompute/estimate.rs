@@ -147,7 +147,9 @@ pub(crate) fn p_from_interval(case: &Case) -> Result<Vec<Recomputation>, &'stati
     let Some(&scale) = scales.first() else { return Err(reason::SCALE) };
     let wald = Wald::new(scale, e, lower, upper).ok_or(reason::SCALE)?;
     let (level, printed_level) = case.level();
-    let mut hold = case.interval_hold();
+    // A log-rank p is near that of the hazard ratio: a factor of five is no matter of the test.
+    let log_rank = case.here().any(|t| t == Test::LogRank) && e.measure == Measure::HazardRatio;
+    let mut hold = case.interval_hold().filter(|&h| !(log_rank && h == reason::TIME_TO_EVENT));
     if e.scale == Scale::Unknown {
         hold = hold.or(Some(reason::SCALE));
     }
@@ -191,7 +193,13 @@ pub(crate) fn p_from_interval(case: &Case) -> Result<Vec<Recomputation>, &'stati
         of: Quantity::P,
         ground: Ground::IfOneMethod,
         hold,
-        least: if rival_tests(case, e) { 2.0 } else { 1.2 },
+        least: if log_rank {
+            5.0
+        } else if rival_tests(case, e) {
+            2.0
+        } else {
+            1.2
+        },
         least_shift: 0.0,
         alpha: case.alpha,
         stated: None,

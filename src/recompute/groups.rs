@@ -75,6 +75,23 @@ pub(crate) fn summaries(groups: &[&Group], read: Read) -> Result<Vec<Summary>, &
     groups.iter().map(|g| summary(g, read)).collect()
 }
 
+/// Stands for a size that is not printed where the spread is a standard error or an interval: it drops out as it grows.
+const LARGE: f64 = 1e6;
+
+/// Summaries without any sizes whose spreads are errors of the mean: the comparison is that by z.
+fn without_sizes(groups: &[&Group], read: Read) -> Option<Vec<Summary>> {
+    if read == Read::Sd || groups.iter().any(|g| size(g).is_some()) {
+        return None;
+    }
+    let large = |g: &&Group| {
+        let printed = crate::printed::Printed::whole(LARGE as u64);
+        let origin = crate::reading::Origin::Assumed(Assumption::PlausibleDf);
+        let sized = Group { n: Some(crate::reading::Figure { printed, origin }), ..(**g).clone() };
+        summary(&sized, read).ok()
+    };
+    groups.iter().map(large).collect()
+}
+
 /// The counts of one group, and whether its total had to be guessed at.
 pub(crate) fn cell(g: &Group) -> Result<(Cell, bool), &'static str> {
     let n = g.total.or(g.n).and_then(|f| f.printed.count()).filter(|n| *n > 0);
@@ -131,7 +148,12 @@ fn means_candidates(case: &Case, groups: &[&Group]) -> Result<(Vec<Candidate>, V
     let mut candidates = Vec::new();
     let mut tests = Vec::new();
     for &read in &ways {
-        let s = summaries(groups, read)?;
+        let by_z = if ways.len() == 1 { without_sizes(groups, read) } else { None };
+        let sized = by_z.is_none();
+        let s = match by_z {
+            Some(s) => s,
+            None => summaries(groups, read)?,
+        };
         let named = match (ways.len(), read) {
             (1, Read::Ci) => "; SD from the intervals",
             (1, Read::Se) => "; SD from the SEs",
@@ -139,7 +161,8 @@ fn means_candidates(case: &Case, groups: &[&Group]) -> Result<(Vec<Candidate>, V
             (_, Read::Sd) => "; ± read as SD",
             (_, _) => "; ± read as SE",
         };
-        let on: Rc<str> = format!("{}{named}", sizes_line(s.iter().map(|s| s.n))).into();
+        let sizes = if sized { sizes_line(s.iter().map(|s| s.n)) } else { "n not printed, taken as large".into() };
+        let on: Rc<str> = format!("{sizes}{named}").into();
         let mut add = |tested: Option<Tested>, method, short: &'static str, symbol: &'static str, variants: &[Test]| {
             let Some(t) = tested else { return };
             let line = Line::Test { on: on.clone(), short, symbol, tested: t };
@@ -179,6 +202,9 @@ pub(crate) fn p_from_means(case: &Case) -> Result<Option<Recomputation>, &'stati
     let (mut candidates, _) = means_candidates(case, groups)?;
     let (inputs, own_sizes) = size_inputs(groups);
     let mut policy = policy(case, Quantity::P, own_sizes);
+    if groups.iter().any(|g| size(g).is_none()) {
+        policy.hold = policy.hold.or(Some(reason::NO_SIZES));
+    }
     one_sided_too(case, &mut candidates);
     if groups.len() > 2
         && policy.stated != Some(Test::Anova)
@@ -387,7 +413,7 @@ fn fisher_table(cells: &[Cell], named: bool) -> Option<Range> {
     Some(Range::point(p).widened(distribution::RELATIVE_ERROR))
 }
 
-fn table_candidates(case: &Case, table: &[Vec<u64>]) -> Result<Vec<Candidate>, &'static str> {
+pub(crate) fn table_candidates(case: &Case, table: &[Vec<u64>]) -> Result<Vec<Candidate>, &'static str> {
     let (x, df) = proportion::pearson_table(table).ok_or(reason::NO_METHOD)?;
     let p = tail::chi_squared(Range::point(x).widened(1e-12), df).ok_or(reason::NO_METHOD)?;
     let rows: Vec<String> = table.iter().map(|r| r.iter().map(u64::to_string).collect::<Vec<_>>().join(", ")).collect();

@@ -2,6 +2,7 @@
 
 mod association;
 mod case;
+mod crosstab;
 mod estimate;
 mod groups;
 mod mean;
@@ -189,7 +190,9 @@ fn allow_for_one_side(r: &mut Recomputation) {
 
 /// p from the groups: means, else counts.
 fn p_from_groups(case: &Case) -> Result<Option<Recomputation>, &'static str> {
-    if case.groups.iter().all(|g| g.mean.is_some()) {
+    if case.result.arms > 1 && case.groups.len().is_multiple_of(case.result.arms) {
+        crosstab::p_from_table(case)
+    } else if case.groups.iter().all(|g| g.mean.is_some()) {
         groups::p_from_means(case)
     } else if case.groups.iter().all(|g| g.events.is_some() || g.percent.is_some()) {
         groups::p_from_counts(case)

@@ -56,6 +56,9 @@ pub struct ReportedResult {
     pub estimate: Option<usize>,
     /// In printed order; two or more when the result compares them.
     pub groups: Vec<usize>,
+    /// The groups are the counts of categories, row by row, with this many groups of participants in each; 0 where they
+    /// are not.
+    pub arms: usize,
     /// Candidates in order; those stated `here` first. What the Methods propose for all results stands in the context.
     pub tests: Vec<StatedTest>,
     /// With the place that says it.

@@ -92,28 +92,98 @@ impl<'a> Line<'a> {
     }
 }
 
-/// The form of a cell.
-pub(super) fn read(view: &SentenceView) -> Option<Read> {
+/// The forms of a cell, where it is nothing but forms: `5.2 ± 1.1/4.8 ± 0.9`, `8 (7–10) 8.4 (SD 2.2)`; empty otherwise.
+pub(super) fn read(view: &SentenceView) -> Vec<Read> {
+    /// More forms than a cell holds side by side.
+    const MOST: usize = 4;
     let line = Line::of(view);
-    let (form, end) = form(&line)?;
-    let (n, after) = match own_size(&line, end) {
-        Some((n, after)) => (Some(n), after),
-        None => (None, end),
-    };
-    // A mark that lost its raised setting: `12.4 (3.1)a`.
-    let marks = |k: usize| {
-        let at = line.at(k);
-        view.get(at).is_some_and(|t| t.is_word() && view.word(at).len() == 1)
-    };
-    let mut rest = after;
-    while rest < line.kept.len() && (marks(rest) || rest > after && line.sign(rest, &[','])) {
-        rest += 1;
+    let mut found = Vec::new();
+    let mut k = 0;
+    while let Some((form, end)) = form(&line, k).filter(|_| found.len() < MOST) {
+        let behind = own_size(&line, end).or_else(|| bare_size(&line, &form, end));
+        let (n, after) = match behind {
+            Some((n, after)) => (Some(n), after),
+            // `59.3 ± 10.3 (37–75)`: the range beside the mean.
+            None => (None, range_behind(&line, &form, end).unwrap_or(end)),
+        };
+        found.push(Read { form, first: line.at(k), last: line.at(end - 1), n });
+        let rest = skip_marks(&line, after);
+        if rest >= line.kept.len() {
+            return found;
+        }
+        // `T1/T2/T3/T4` in counts.
+        let counts = matches!(form, Form::Fraction { percent: None, .. });
+        if counts && line.sign(rest, &['/']) {
+            return Vec::new();
+        }
+        // Another form behind a sign, or right behind brackets.
+        let apart = line.sign(rest, &['/', ';']) || line.sign(rest, &[',']) && line.sign(rest - 1, &[')', ']']);
+        let glued = rest == after && line.sign(rest - 1, &[')', ']']) && line.number(rest).is_some();
+        if !apart && !glued {
+            return Vec::new();
+        }
+        k = rest + usize::from(apart);
     }
-    (rest == line.kept.len()).then(|| Read { form, first: line.at(0), last: line.at(end - 1), n })
+    Vec::new()
 }
 
-fn form(line: &Line) -> Option<(Form, usize)> {
-    let (centre, next) = line.number(0)?;
+/// The form that a cell begins with, whatever is said behind a comma: `1.57 [0.49, 2.65], d = 0.66`.
+pub(super) fn read_first(view: &SentenceView) -> Option<Read> {
+    if let [first, ..] = read(view)[..] {
+        return Some(first);
+    }
+    let line = Line::of(view);
+    let (form, end) = form(&line, 0)?;
+    let p = line.sign(end, &['(', '[']) && view.is(line.at(end + 1), Classes::P);
+    let apart = p || line.sign(end, &[',', ';']);
+    apart.then(|| Read { form, first: line.at(0), last: line.at(end - 1), n: None })
+}
+
+/// Passes marks that lost their raised setting (`12.4 (3.1)a`) and units.
+fn skip_marks(line: &Line, after: usize) -> usize {
+    let mut rest = after;
+    loop {
+        let at = line.at(rest);
+        let token = line.view.get(at).filter(|t| t.is_word());
+        let short = |at: usize| line.view.word(at).chars().count() <= 2;
+        let mark = token.is_some_and(|t| {
+            t.is(Classes::UNIT) || short(at) && !t.is(Classes::CI) && !line.view.any(at, &["to", "or", "n"])
+        });
+        let more =
+            rest > after && (line.sign(rest, &[',']) && line.view.get(line.at(rest + 1)).is_some_and(|t| t.is_word()));
+        if !mark && !more {
+            return rest;
+        }
+        rest += 1;
+    }
+}
+
+/// `0.62 to 0.91`, `(−4.1; −1.0)`: two limits and nothing else.
+pub(super) fn limits(view: &SentenceView) -> Option<(At, At)> {
+    let line = Line::of(view);
+    let open = usize::from(line.sign(0, &['(', '[', '{']));
+    let (lower, next) = line.number(open)?;
+    let (_, next) = line.percent(next);
+    if !line.sign(next, &['-', ',', ';', ':', '~', '/']) && !line.view.any(line.at(next), &["to", "and"]) {
+        return None;
+    }
+    let (upper, next) = line.number(next + 1)?;
+    let (_, next) = line.percent(next);
+    let next = next + usize::from(open == 1 && line.sign(next, &[')', ']', '}']));
+    (skip_marks(&line, next) >= line.kept.len()).then_some((lower, upper))
+}
+
+fn form(line: &Line, start: usize) -> Option<(Form, usize)> {
+    // `(20/10)`: the whole in brackets.
+    if line.sign(start, &['(', '[']) {
+        let (inside, next) = form(line, start + 1)?;
+        return if matches!(inside, Form::Fraction { .. } | Form::Single { .. }) {
+            closed(line, next, inside)
+        } else {
+            None
+        };
+    }
+    let (centre, next) = line.number(start)?;
     let (centre_percent, next) = line.percent(next);
     if line.sign(next, &['±']) {
         let (spread, next) = line.number(next + 1)?;
@@ -121,11 +191,12 @@ fn form(line: &Line) -> Option<(Form, usize)> {
         return Some((Form::PlusMinus { centre: centre.printed, spread: spread.printed }, next));
     }
     if line.sign(next, &['/']) && !centre_percent {
-        let (total, next) = line.number(next + 1)?;
+        let (total, after) = line.number(next + 1)?;
         let whole = centre.printed.count().is_some() && total.printed.count().is_some();
         if !whole {
-            return None;
+            return Some((Form::Single { value: centre, percent: centre_percent }, next));
         }
+        let next = after;
         if line.sign(next, &['(', '[', ',', ';']) {
             let bracket = line.sign(next, &['(', '[']);
             let (percent, next) = line.number(next + 1)?;
@@ -152,15 +223,29 @@ fn form(line: &Line) -> Option<(Form, usize)> {
     let (inner, next) = line.number(at)?;
     if line.sign(next, &['/']) {
         let (total, next) = line.number(next + 1)?;
-        let whole = inner.printed.count().is_some() && total.printed.count().is_some() && named.is_none();
-        let form = Form::Fraction { events: inner, total, percent: Some(centre.printed) };
-        return if whole { closed(line, next, form) } else { None };
+        let (events, whole) = (inner.printed, total.printed);
+        // `180 (120/414)` holds two quartiles, `54.1 (166/307)` a fraction: the figure in front tells.
+        let counts = events.count().is_some() && whole.count().is_some() && named.is_none();
+        let share = 100.0 * events.value() / whole.value();
+        let near = (share - centre.printed.value()).abs() < 5.0;
+        let between = events.value() <= centre.printed.value() && centre.printed.value() <= whole.value();
+        let form = if counts && (near || centre_percent || !between) {
+            Form::Fraction { events: inner, total, percent: Some(centre.printed) }
+        } else {
+            Form::Pair { centre, lower: events, upper: whole }
+        };
+        return closed(line, next, form);
     }
     let (inner_percent, next) = line.percent(next);
     if line.sign(next, &[')', ']', '}']) {
-        // `8 (7,100)` may be two quartiles: its comma is no thousands separator for certain.
-        if line.view.word(inner.last).contains(',') && inner.printed.places == 0 {
-            return None;
+        // `8 (7,100)` and `3.4 (0,13)` may be two limits: the comma is no decimal mark for certain.
+        if let Some((a, b)) = line.view.word(inner.last).split_once(',')
+            && !line.view.word(centre.last).contains(',')
+        {
+            let (a, b) = (Printed::parse(a)?, Printed::parse(b)?);
+            let between = a.value() <= centre.printed.value() && centre.printed.value() <= b.value();
+            let form = Form::Pair { centre, lower: a, upper: b };
+            return if between { closed(line, next, form) } else { None };
         }
         let form = if centre_percent && !inner_percent {
             inner.printed.count()?;
@@ -196,6 +281,28 @@ fn named_spread(line: &Line, k: usize) -> Option<SpreadKind> {
     } else {
         None
     }
+}
+
+/// `5.2 ± 1.1 (12)`: the size behind a whole summary.
+fn bare_size(line: &Line, form: &Form, k: usize) -> Option<(At, usize)> {
+    if !matches!(form, Form::PlusMinus { .. }) || !line.sign(k, &['(', '[']) {
+        return None;
+    }
+    let (n, next) = line.number(k + 1)?;
+    n.printed.count().filter(|&n| n > 0)?;
+    line.sign(next, &[')', ']']).then_some((n, next + 1))
+}
+
+/// A range in brackets behind a mean with its SD; gives the position after it.
+fn range_behind(line: &Line, form: &Form, k: usize) -> Option<usize> {
+    let summary = matches!(form, Form::PlusMinus { .. } | Form::Bracket { percent: false, .. });
+    if !summary || !line.sign(k, &['(', '[']) {
+        return None;
+    }
+    let (_, next) = line.number(k + 1)?;
+    let joins = line.sign(next, &['-', ',', ';']) || line.view.any(line.at(next), &["to"]);
+    let (_, next) = if joins { line.number(next + 1)? } else { return None };
+    line.sign(next, &[')', ']']).then_some(next + 1)
 }
 
 /// `(n = 20)`, `, n = 20`; gives the position after it.

@@ -3,98 +3,285 @@
 use super::super::lexicon::Classes;
 use super::super::sentence::SentenceView;
 use super::super::{Estimate, Figure, Inference, IntervalReading, Measure, Origin, Readings, Scale};
-use super::cell::{self, Form};
+use super::cell::{self, At, Form};
 use super::{Setting, Table};
-use crate::layout::{ColumnRole, Row};
+use crate::layout::{ColumnRole, Part, Row};
 use crate::printed::Printed;
+use crate::text::Span;
 
-/// Appends the estimate and interval of a row. `counts` tells that the row's groups are counts.
-pub(super) fn read(table: &Table, row: &Row, setting: &Setting, counts: bool, readings: &mut Readings) {
-    for index in row.cells.clone().filter(|&i| *table.role_of(i) == ColumnRole::Estimate) {
-        let Some(header) = table.layout.columns.get(table.grid.cells[index].column as usize).and_then(|c| c.header)
-        else {
-            continue;
-        };
-        let (view, head) = (table.view(index), table.view(header));
-        let Some(read) = cell::read(&view) else { continue };
-        let percent_sign = (0..view.len()).any(|i| view.sign(i, '%'));
-        let (value, limits) = match read.form {
-            Form::Pair { centre, lower, upper } => (centre, Some((lower, upper))),
-            Form::Single { value, .. } => (value, None),
-            _ => continue,
-        };
-        let Some((mut measure, mut scale)) = measure(&head, counts) else { continue };
-        if counts && measure == Measure::MeanDifference {
-            measure = Measure::RiskDifference;
+/// Appends the estimates and intervals of a row. `counts` tells that the row's groups are counts.
+///
+/// `whole_row` tells that its cells are estimates whatever their columns are.
+pub(super) fn read(
+    table: &Table,
+    row: &Row,
+    setting: &Setting,
+    counts: bool,
+    whole_row: bool,
+    readings: &mut Readings,
+) {
+    // The last estimate with its column, for an interval in cells of its own.
+    let mut last: Option<(usize, Estimate)> = None;
+    for index in row.cells.clone() {
+        let mut role = table.role_of(index);
+        if whole_row && (role.summarises() || matches!(role, ColumnRole::Other | ColumnRole::Size)) {
+            role = &ColumnRole::Estimate;
         }
-        let negative = |p: Printed| p.value() <= 0.0;
-        if scale == Scale::Ratio && (negative(value.printed) || limits.is_some_and(|(a, b)| negative(a) || negative(b)))
+        if !matches!(role, ColumnRole::Estimate | ColumnRole::Interval | ColumnRole::Lower | ColumnRole::Part(Part::Ci))
         {
-            // A header for several measures, of which this is another.
-            (measure, scale) = (Measure::Other, Scale::Unknown);
-        }
-        // A difference of shares beyond 1 is in percentage points, printed or not.
-        let points = measure == Measure::RiskDifference && value.printed.value().abs() > 1.0;
-        let percent = percent_sign || points || measure == Measure::PercentDifference;
-        let adjusted = (0..head.len()).any(|i| {
-            head.any(i, &["adjusted", "adj", "ancova"]) || matches!(head.word(i), "aOR" | "aHR" | "aRR" | "AOR" | "AHR")
-        }) && !(0..head.len()).any(|i| head.any(i, &["unadjusted"]));
-        let span = view.span(value.first, value.last);
-        readings.estimates.push(Estimate {
-            span,
-            sentence: view.id,
-            measure,
-            scale,
-            value: value.printed,
-            se: None,
-            percent,
-            adjusted,
-        });
-        let Some((a, b)) = limits else { continue };
-        let level = level(&head);
-        let ci = level.is_some() || (0..head.len()).any(|i| head.is(i, Classes::CI) || head.is(i, Classes::CONFIDENCE));
-        if !ci && !setting.around.ci {
             continue;
         }
-        let reversed = a.value() > b.value();
-        let (lower, upper) = if reversed { (b, a) } else { (a, b) };
-        readings.intervals.push(IntervalReading {
-            span: view.span(read.first, read.last),
-            sentence: view.id,
-            level,
-            lower,
-            upper,
-            percent,
-            credible: (0..head.len()).any(|i| head.any(i, &["credible", "cri"])),
-            reversed,
-            estimate: Some((value.printed, span)),
-        });
+        let view = table.view(index);
+        if view.is_empty() {
+            continue;
+        }
+        let column = table.grid.cells[index].column as usize;
+        let heads: Vec<SentenceView> = table.heads(column).collect();
+        match role {
+            ColumnRole::Estimate => {
+                let labels: Vec<SentenceView> = row.labels.iter().chain(&row.section).map(|&l| table.view(l)).collect();
+                let mut reads = cell::read(&view);
+                if reads.is_empty() {
+                    reads.extend(cell::read_first(&view));
+                }
+                if reads.is_empty() {
+                    // An interval in a column headed for both, as in the second line of a cell.
+                    if let (Some(pair), true) = (cell::limits(&view), says_ci(&heads)) {
+                        push_interval(&view, pair, &heads, None, setting, readings);
+                    }
+                    continue;
+                }
+                for read in &reads {
+                    if let Some(e) = estimate(table, index, &view, read, &heads, &labels, counts, setting, readings) {
+                        last = Some((column, e));
+                    }
+                }
+            }
+            ColumnRole::Interval | ColumnRole::Part(_) => {
+                let near = last.take().filter(|(k, _)| table.same_bundle(*k, column)).map(|(_, e)| e);
+                // The head may stand over the estimate alone.
+                let all: Vec<SentenceView> = if says_ci(&heads) {
+                    heads
+                } else {
+                    heads.into_iter().chain(table.heads(column.saturating_sub(1))).collect()
+                };
+                if let Some(pair) = cell::limits(&view) {
+                    push_interval(&view, pair, &all, near.as_ref(), setting, readings);
+                }
+            }
+            _ => {
+                let near = last.take().filter(|(k, _)| table.same_bundle(*k, column)).map(|(_, e)| e);
+                let upper = (index + 1..row.cells.end.min(index + 3)).find(|&i| *table.role_of(i) == ColumnRole::Upper);
+                let Some(upper) = upper.map(|i| table.view(i)) else { continue };
+                let (Some(a), Some(b)) = (only_number(&view), only_number(&upper)) else { continue };
+                let span = Span { end: upper.span(b.first, b.last).end, ..view.span(a.first, a.last) };
+                add_interval(&view, span, (a.printed, b.printed), &heads, near.as_ref(), readings);
+            }
+        }
+    }
+}
+
+/// The one number of a cell that holds nothing else, brackets aside.
+fn only_number(view: &SentenceView) -> Option<At> {
+    let from = usize::from(view.signs(0, &['(', '[']));
+    let to = view.len() - usize::from(view.len() > from && view.signs(view.len() - 1, &[')', ']', ',', '-']));
+    let cut = SentenceView { tokens: view.tokens.get(from..to)?, ..*view };
+    match cell::read(&cut)[..] {
+        [cell::Read { form: Form::Single { value, .. }, .. }] => {
+            Some(At { first: value.first + from, last: value.last + from, ..value })
+        }
+        _ => None,
+    }
+}
+
+#[allow(clippy::too_many_arguments)]
+fn estimate(
+    table: &Table,
+    index: usize,
+    view: &SentenceView,
+    read: &cell::Read,
+    heads: &[SentenceView],
+    labels: &[SentenceView],
+    counts: bool,
+    setting: &Setting,
+    readings: &mut Readings,
+) -> Option<Estimate> {
+    let percent_sign = (0..view.len()).any(|i| view.sign(i, '%'));
+    let says_se = heads.iter().any(|h| (0..h.len()).any(|i| h.is(i, Classes::SE)));
+    let (value, limits, se) = match read.form {
+        Form::Pair { centre, lower, upper } => (centre, Some((lower, upper)), None),
+        Form::Single { value, .. } => (value, None, None),
+        Form::PlusMinus { centre, spread } => (at_start(view, read, centre), None, says_se.then_some(spread)),
+        Form::Bracket { centre, inner, percent: false, .. } => (centre, None, says_se.then_some(inner)),
+        _ => return None,
+    };
+    let named = measure(heads, counts).filter(|m| m.0 != Measure::Other).or_else(|| measure(labels, counts));
+    let (mut measure, mut scale) = named.or_else(|| general(heads)).unwrap_or((Measure::Other, Scale::Unknown));
+    if counts && measure == Measure::MeanDifference {
+        measure = Measure::RiskDifference;
+    }
+    let negative = |p: Printed| p.value() <= 0.0;
+    if scale == Scale::Ratio && (negative(value.printed) || limits.is_some_and(|(a, b)| negative(a) || negative(b))) {
+        // A header for several measures, of which this is another.
+        (measure, scale) = (Measure::Other, Scale::Unknown);
+    }
+    // A difference of shares beyond 1 is in percentage points, printed or not.
+    let points = measure == Measure::RiskDifference && value.printed.value().abs() > 1.0;
+    let percent = percent_sign || points || measure == Measure::PercentDifference;
+    let says = |words: &[&str]| heads.iter().any(|h| (0..h.len()).any(|i| h.any(i, words)));
+    let short = heads.iter().any(|h| (0..h.len()).any(|i| matches!(h.word(i), "aOR" | "aHR" | "aRR" | "AOR" | "AHR")));
+    let adjusted =
+        (says(&["adjusted", "adj", "ancova", "multivariate", "multivariable"]) || short) && !says(&["unadjusted"]);
+    let mut span = view.span(value.first, value.last);
+    let mut se = se;
+    // A standard error in the next cell.
+    if let Some(next) = table.grid.cells.get(index + 1).filter(|c| c.row == table.grid.cells[index].row)
+        && *table.layout.role(next) == ColumnRole::Part(Part::Se)
+        && limits.is_none()
+    {
+        se = only_number(&table.view(index + 1)).map(|n| n.printed);
+    }
+    if se.is_some_and(|s| s.negative) {
+        se = None;
+    }
+    if matches!(read.form, Form::PlusMinus { .. } | Form::Bracket { .. }) && se.is_some() {
+        span = view.span(read.first, read.last);
+    }
+    let estimate = Estimate { span, sentence: view.id, measure, scale, value: value.printed, se, percent, adjusted };
+    readings.estimates.push(estimate.clone());
+    if let Some((a, b)) = limits
+        && (says_ci(heads) || says_ci(labels) || setting.around.ci || setting.columns.ci)
+    {
+        let all: Vec<SentenceView> = heads.iter().chain(labels).copied().collect();
+        add_interval(view, view.span(read.first, read.last), (a, b), &all, Some(&estimate), readings);
+    }
+    Some(estimate)
+}
+
+/// The token of a figure that a form begins with.
+fn at_start(view: &SentenceView, read: &cell::Read, printed: Printed) -> At {
+    let last = (read.first..=read.last).find(|&i| view.number(i).is_some()).unwrap_or(read.first);
+    At { printed, first: read.first, last }
+}
+
+/// The heads speak of confidence intervals.
+fn says_ci(heads: &[SentenceView]) -> bool {
+    heads.iter().any(|h| {
+        let named = |i: usize| h.is(i, Classes::CI) || h.is(i, Classes::CONFIDENCE);
+        level(h).is_some() || (0..h.len()).any(|i| named(i) || h.any(i, &["c"]) && h.any(i + 2, &["i"]))
+    })
+}
+
+fn push_interval(
+    view: &SentenceView,
+    (a, b): (At, At),
+    heads: &[SentenceView],
+    near: Option<&Estimate>,
+    _: &Setting,
+    readings: &mut Readings,
+) {
+    let open = usize::from(a.first > 0 && view.signs(a.first - 1, &['(', '[', '{']));
+    let close = usize::from(view.signs(b.last + 1, &[')', ']', '}']));
+    let span = view.span(a.first - open, b.last + close);
+    add_interval(view, span, (a.printed, b.printed), heads, near, readings);
+}
+
+fn add_interval(
+    view: &SentenceView,
+    span: Span,
+    (a, b): (Printed, Printed),
+    heads: &[SentenceView],
+    near: Option<&Estimate>,
+    readings: &mut Readings,
+) {
+    let reversed = a.value() > b.value();
+    let (lower, upper) = if reversed { (b, a) } else { (a, b) };
+    readings.intervals.push(IntervalReading {
+        span,
+        sentence: view.id,
+        level: heads.iter().find_map(level),
+        lower,
+        upper,
+        percent: near.is_some_and(|e| e.percent),
+        credible: heads.iter().any(|h| (0..h.len()).any(|i| h.any(i, &["credible", "cri"]))),
+        reversed,
+        estimate: near.map(|e| (e.value, e.span)).or_else(|| mean_before(view, readings)),
+    });
+}
+
+/// The mean of the cell before an interval in a cell of its own.
+fn mean_before(view: &SentenceView, readings: &Readings) -> Option<(Printed, Span)> {
+    let group = readings.groups.last().filter(|g| g.sentence + 1 == view.id)?;
+    Some((group.mean.or(group.percent)?, group.span))
+}
+
+/// Measures that a head names in general terms: a coefficient of a model, a standardised effect.
+fn general(heads: &[SentenceView]) -> Option<(Measure, Scale)> {
+    let says = |words: &[&str]| heads.iter().any(|h| (0..h.len()).any(|i| words.contains(&h.word(i))));
+    if says(&[
+        "β",
+        "B",
+        "b",
+        "beta",
+        "Beta",
+        "coefficient",
+        "Coefficient",
+        "coefficients",
+        "Coefficients",
+        "slope",
+        "Slope",
+    ]) {
+        Some((Measure::RegressionCoefficient, Scale::Difference))
+    } else if says(&["d", "ES"]) {
+        Some((Measure::StandardizedDifference, Scale::Difference))
+    } else if heads.iter().any(|h| {
+        (1..h.len()).any(|i| {
+            h.sign(i, '-') && h.get(i + 1).is_some_and(|t| t.is_word()) && (h.spaced(i) || h.spaced(i + 1))
+                || h.any(i, &["minus"])
+        })
+    }) {
+        Some((Measure::MeanDifference, Scale::Difference))
+    } else {
+        None
     }
 }
 
 /// `95` of `95% CI` in a header.
-fn level(head: &SentenceView) -> Option<Figure> {
+pub(super) fn level(head: &SentenceView) -> Option<Figure> {
     (0..head.len()).find_map(|i| {
         let printed = head.number(i).filter(|p: &Printed| (80.0..100.0).contains(&p.value()))?;
-        let named = (i + 1..i + 4).any(|k| head.is(k, Classes::CI) || head.is(k, Classes::CONFIDENCE))
+        let dotted = |k: usize| head.any(k, &["c"]) && head.sign(k + 1, '.') && head.any(k + 2, &["i"]);
+        let named = (i + 1..i + 4).any(|k| head.is(k, Classes::CI) || head.is(k, Classes::CONFIDENCE) || dotted(k))
             || i > 0 && head.is(i - 1, Classes::CI);
         named.then(|| Figure { printed, origin: Origin::Inferred(Inference::Header, head.span(i, i)) })
     })
 }
 
-/// The measure that a header names, and its scale. "Odds ratio or mean difference" is the ratio for counts.
-fn measure(head: &SentenceView, counts: bool) -> Option<(Measure, Scale)> {
-    let two = |a: &[&str], b: &[&str]| (0..head.len()).any(|i| head.any(i, a) && head.any(i + 1, b));
-    let one = |words: &[&str]| (0..head.len()).any(|i| words.contains(&head.word(i)));
+/// The measure that heads name, and its scale. "Odds ratio or mean difference" is the ratio for counts.
+fn measure(heads: &[SentenceView], counts: bool) -> Option<(Measure, Scale)> {
+    let any = |test: &dyn Fn(&SentenceView, usize) -> bool| heads.iter().any(|h| (0..h.len()).any(|i| test(h, i)));
+    let two = |a: &[&str], b: &[&str]| any(&|h, i| h.any(i, a) && h.any(i + 1, b));
+    let one = |words: &[&str]| any(&|h, i| words.contains(&h.word(i)));
     let ratio: &[&str] = &["ratio", "ratios"];
     let difference: &[&str] = &["difference", "differences"];
-    let has = |words: &[&str]| (0..head.len()).any(|i| head.any(i, words));
+    let has = |words: &[&str]| any(&|h, i| h.any(i, words));
     let differs = has(difference) || one(&["MD", "RD", "ARD"]);
     let divides = has(ratio) || one(&["HR", "OR", "RR", "IRR"]) || has(&["relative"]) && has(&["risk"]);
     if differs && divides && !counts {
         return Some((Measure::MeanDifference, Scale::Difference));
     }
-    Some(if one(&["HR", "aHR", "AHR"]) || two(&["hazard", "hazards"], ratio) {
+    if one(&["NNT"]) && !divides && !differs {
+        return Some((Measure::NumberNeededToTreat, Scale::Reciprocal));
+    }
+    let dotted =
+        |first: &str| any(&|h, i| h.eq(i, first) && h.sign(i + 1, '.') && h.eq(i + 2, "r") && h.sign(i + 3, '.'));
+    Some(if dotted("h") {
+        (Measure::HazardRatio, Scale::Ratio)
+    } else if dotted("o") {
+        (Measure::OddsRatio, Scale::Ratio)
+    } else if dotted("r") {
+        (Measure::RiskRatio, Scale::Ratio)
+    } else if one(&["HR", "aHR", "AHR"]) || two(&["hazard", "hazards"], ratio) {
         (Measure::HazardRatio, Scale::Ratio)
     } else if one(&["OR", "aOR", "AOR"]) || two(&["odds"], ratio) {
         (Measure::OddsRatio, Scale::Ratio)

@@ -28,6 +28,16 @@ pub(super) struct Meaning {
     pub change: bool,
     /// "reduction", "gain", "difference": a change or a level, as the case may be.
     pub shift: bool,
+    /// "n", "no.", "number"
+    pub number: bool,
+    /// `(n)` at its end: bare figures are counts.
+    pub bare_count: bool,
+    /// `(%)`: what stands in brackets is a percentage, or the unit of what stands alone.
+    pub bracket_percent: bool,
+    /// A rate of events, often per person-time.
+    pub rate: bool,
+    /// A measure that compares groups: "odds ratio", "difference".
+    pub measure: bool,
     /// A geometric mean: its spread is no SD.
     pub geometric: bool,
 }
@@ -67,6 +77,17 @@ impl Meaning {
             self.shift |= view.any(i, SHIFTS)
                 || view.any(i, &["loss"]) && !(i > 0 && view.any(i - 1, &["blood", "hearing", "hair"]));
             let number = view.is(i, Classes::N) || view.any(i, &["no", "number", "numbers", "num", "frequency"]);
+            self.number |= number;
+            let enclosed = |i: usize| i > 0 && view.signs(i - 1, &['(', '[']) && view.signs(i + 1, &[')', ']']);
+            self.bare_count |=
+                view.is(i, Classes::N) && (enclosed(i) || i > 0 && view.sign(i - 1, ',') && i + 1 == view.len());
+            self.bracket_percent |= (view.sign(i, '%') || view.is(i, Classes::PERCENT))
+                && enclosed(i)
+                && !(i > 1
+                    && (view.is(i - 2, Classes::SD) || view.any(i - 2, &["mean", "median", "change", "reduction"])));
+            self.rate |= view.any(i, &["rate", "rates", "incidence", "density"]);
+            self.measure |= matches!(view.word(i), "OR" | "RR" | "HR" | "NNT" | "aOR" | "IRR")
+                || view.any(i, &["ratio", "difference"]) && !view.any(i + 1, &["before", "between"]);
             if number && self.percent_after(view, i) {
                 self.count = true;
             }
@@ -116,6 +137,11 @@ impl Meaning {
     /// Says what the figures of a cell are.
     pub fn speaks(&self) -> bool {
         self.spread.is_some() || self.median || self.count || self.ci || self.quantiles.is_some()
+    }
+
+    /// Says what one figure in brackets is; intervals and quartiles are two.
+    pub fn tells_brackets(&self) -> bool {
+        self.spread.is_some() || self.median || self.count
     }
 
     /// Says that figures are means or medians with a spread.
