@@ -522,6 +522,7 @@ fn surroundings(view: &SentenceView, after: usize, p: &mut PExpression) {
                     "shapiro",
                     "levene",
                     "hosmer",
+                    "breslow",
                     "mauchly",
                     "kolmogorov",
                 ],

@@ -112,7 +112,7 @@ fn query(facts: &Look, raised: Raised, fingerprint: String) -> Query {
     let place = finding.at[0];
     let titles = facts.titles(place);
     let mut words = finding.fills;
-    words.push(("quote", wording::one_line(facts.quote(place))));
+    words.push(("quote", facts.shown(place)));
     words.push(("section", titles.last().cloned().unwrap_or_else(|| "this text".to_owned())));
     let mut explanations = finding.explanations;
     for says in &rule.assumes {

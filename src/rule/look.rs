@@ -1,6 +1,6 @@
 //! Questions that several checks put to the facts.
 
-use super::Facts;
+use super::{Facts, wording};
 use crate::context::Context;
 use crate::manuscript::{BlockKind, Manuscript, MarkKind, SectionKind};
 use crate::query::Verdict;
@@ -126,6 +126,21 @@ impl<'a> Look<'a> {
         };
         look.with_interval = readings.intervals.iter().map(|i| look.part(i.span)).collect();
         look
+    }
+
+    /// A quote for people, on one line, with raised figures raised: `14.6⁵` is 14.6 with a note, not 14.65.
+    pub(super) fn shown(&self, span: Span) -> String {
+        let block = self.manuscript.block(span);
+        let mut text = String::new();
+        let mut at = span.start;
+        for mark in block.marks_over(span.start, span.end).filter(|m| m.kind == MarkKind::Superscript) {
+            let (from, to) = (mark.start.clamp(at, span.end), mark.end.clamp(at, span.end));
+            text.push_str(&block.text[at as usize..from as usize]);
+            text.push_str(&wording::raised(&block.text[from as usize..to as usize]));
+            at = to;
+        }
+        text.push_str(&block.text[at as usize..span.end as usize]);
+        wording::one_line(&text)
     }
 
     pub(super) fn quote(&self, span: Span) -> &'a str {

@@ -30,6 +30,18 @@ pub fn fill(text: &str, words: &[(&'static str, String)]) -> String {
     })
 }
 
+/// Raised text in characters that are raised by themselves, or behind `^` where there are none.
+pub fn raised(text: &str) -> String {
+    const PLAIN: &str = "0123456789+-−n";
+    const RAISED: [char; 14] = ['⁰', '¹', '²', '³', '⁴', '⁵', '⁶', '⁷', '⁸', '⁹', '⁺', '⁻', '⁻', 'ⁿ'];
+    let one = |c: char| PLAIN.chars().position(|p| p == c).map(|k| RAISED[k]);
+    let text = text.trim();
+    match text.chars().map(one).collect::<Option<String>>() {
+        Some(raised) => raised,
+        None => format!("^{text}"),
+    }
+}
+
 /// Canonical text on one line, shortened in the middle of a long one.
 pub fn one_line(text: &str) -> String {
     const LONGEST: usize = 160;

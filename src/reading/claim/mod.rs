@@ -235,10 +235,25 @@ fn attribution(flat: &Flat, clause: &Clause, facts: &Facts) -> Attribution {
         flat.is(k, Classes::BASELINE) && !flat.any(k.wrapping_sub(1), &["from", "to", "with", "versus", "vs", "than"])
             || flat.any(k, &["characteristics", "demographics", "demographic"])
     });
+    // No treatment changes age or sex.
+    let given = |k: usize| flat.any(k, &["age", "ages", "sex", "gender", "race", "ethnicity"]);
+    let in_given = (range.start..range.end).any(|k| {
+        given(k)
+            && flat.any(k.wrapping_sub(1), &["in", "for", "of", "by", "regarding", "the", "mean", "median"])
+            && !flat.any(k + 1, &["groups", "group", "effect"])
+    }) || given(range.start);
+    let baseline = baseline || in_given && found_difference(flat, &range);
     if baseline {
         return Attribution::Baseline;
     }
     Attribution::ThisStudy
+}
+
+/// Whether a clause speaks of a difference or of its absence between people, not of one that goes with age.
+fn found_difference(flat: &Flat, range: &std::ops::Range<usize>) -> bool {
+    let range = range.clone();
+    range.clone().any(|k| flat.any(k, &["difference", "differences", "differ", "differed", "similar", "comparable"]))
+        && !range.clone().any(|k| flat.any(k, &["associated", "association", "correlated", "predicted", "adjusted"]))
 }
 
 #[cfg(test)]

@@ -206,7 +206,20 @@ impl<'a> Table<'a> {
                 Role::WithinGroup
             } else if self.says(&named, &["noninferiority", "inferiority"]) {
                 Role::NonInferiority
-            } else if self.says(&named, &["normality", "shapiro", "levene", "heterogeneity", "homogeneity"]) {
+            } else if self.says(
+                &named,
+                &[
+                    "normality",
+                    "shapiro",
+                    "levene",
+                    "heterogeneity",
+                    "homogeneity",
+                    "breslow",
+                    "hosmer",
+                    "cochran",
+                    "fit",
+                ],
+            ) {
                 Role::AssumptionOrFit
             } else if setting.baseline || words(&named, Classes::BASELINE) && !self.says(&named, &["from", "change"]) {
                 Role::Baseline

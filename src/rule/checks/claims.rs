@@ -23,9 +23,10 @@ pub fn claim(facts: &Look, kinds: &[Claimed], of: &[Whose], backing: Backing, pe
     let mut singles: Vec<Finding> = Vec::new();
     for claim in &facts.readings.claims {
         let wanted = kinds.iter().any(|k| k.is(kind_of(facts, claim))) && of.iter().any(|w| w.is(claim.attribution));
-        // What an introduction tells is what others found.
+        // What an introduction tells is what others found, what the Methods tell is how figures were used.
+        let section = facts.manuscript.section(claim.span).kind;
         let wanted = wanted
-            && facts.manuscript.section(claim.span).kind != SectionKind::Introduction
+            && !matches!(section, SectionKind::Introduction | SectionKind::Methods)
             && !facts.cites_others(claim);
         if let Some(found) = wanted.then(|| backed(facts, claim, backing)).flatten() {
             singles.push(finding(facts, claim, &found));
@@ -35,6 +36,16 @@ pub fn claim(facts: &Look, kinds: &[Claimed], of: &[Whose], backing: Backing, pe
         Per::Claim => singles,
         Per::Section => by_section(facts, singles),
     }
+}
+
+/// Whether a negation stands between the beginning of a claim and its p: "a significant effect on A without significantly
+/// affecting B (P > 0.05)".
+fn turned(facts: &Look, claim: &Claim, p: &PValue) -> bool {
+    if p.span.block != claim.span.block || p.span.start <= claim.span.start {
+        return false;
+    }
+    let text = &facts.manuscript.block(claim.span).text[claim.span.start as usize..p.span.start as usize];
+    claim.kind == ClaimKind::Difference && ["without", " nor ", "neither"].iter().any(|w| text.contains(w))
 }
 
 /// "No significant difference" and "no evidence of a difference" say that something is missing, not that there is no
@@ -151,16 +162,16 @@ fn excepted(sentence: &str) -> bool {
 }
 
 fn finding(facts: &Look, claim: &Claim, found: &Found) -> Finding {
-    let quote = wording::one_line(facts.quote(claim.span));
+    let quote = facts.shown(claim.span);
     let alpha = facts.alpha;
     let mut p: Vec<String> = found.p.iter().map(|p| p_words(facts, p)).collect();
     p.dedup();
     let says = match (&p[..], found.interval) {
         ([], None) => format!("“{quote}” stands without a p-value or an interval in its sentence."),
-        ([], Some(i)) => format!("“{quote}” stands beside {}.", wording::one_line(facts.quote(i))),
+        ([], Some(i)) => format!("“{quote}” stands beside {}.", facts.shown(i)),
         (p, None) => format!("“{quote}” stands beside {}; alpha is {}.", p.join(" and "), alpha.words()),
         (p, Some(i)) => {
-            let interval = wording::one_line(facts.quote(i));
+            let interval = facts.shown(i);
             format!("“{quote}” stands beside {interval} and {}; alpha is {}.", p.join(" and "), alpha.words())
         }
     };
@@ -191,7 +202,7 @@ fn alpha_assumed(facts: &Look) -> Option<Explanation> {
 
 /// A bare cell or `NS` gets its letter, so that the sentence around it reads.
 fn p_words(facts: &Look, p: &PValue) -> String {
-    let quote = wording::one_line(facts.quote(p.span));
+    let quote = facts.shown(p.span);
     if quote.contains(['p', 'P']) || p.value.is_none() { quote } else { format!("P {quote}") }
 }
 
@@ -276,10 +287,14 @@ pub fn against_p(facts: &Look, says: Says) -> Vec<Finding> {
         };
         let comparable = |p: &&PValue| is_effect(p) || matches!(p.role, Role::WithinGroup | Role::Baseline);
         let all = !p.is_empty() && p.iter().all(|p| against(p) && comparable(p) && !p.corrected);
-        if !all || !direct(facts, claim, p[0]) || says == Says::NotSignificant && corrects(facts, claim) {
+        if !all
+            || turned(facts, claim, p[0])
+            || !direct(facts, claim, p[0])
+            || says == Says::NotSignificant && corrects(facts, claim)
+        {
             continue;
         }
-        let quote = wording::one_line(facts.quote(claim.span));
+        let quote = facts.shown(claim.span);
         let mut words: Vec<String> = p.iter().map(|p| p_words(facts, p)).collect();
         words.dedup();
         let side = if says == Says::Significant { "above" } else { "below" };

@@ -6,7 +6,6 @@ use crate::reading::{Attribution, Claim, Direction, Estimate, Group, Measure, Sc
 use crate::rule::finding::Finding;
 use crate::rule::level::Weight;
 use crate::rule::look::Look;
-use crate::rule::wording;
 use crate::text::Span;
 
 pub fn against_figures(facts: &Look) -> Vec<Finding> {
@@ -106,7 +105,7 @@ fn two_figures(facts: &Look, claim: &Claim, direction: Direction) -> Option<Find
     if !against {
         return None;
     }
-    let quote = wording::one_line(facts.quote(claim.span));
+    let quote = facts.shown(claim.span);
     let figures = format!("{a} against {b}");
     let f = finding(facts, claim, figures.clone(), format!("“{quote}” stands beside {figures}, in this order."));
     Some(Finding {
@@ -151,8 +150,8 @@ fn one_ratio(facts: &Look, claim: &Claim, direction: Direction, view: &SentenceV
     if !against {
         return None;
     }
-    let quote = wording::one_line(facts.quote(claim.span));
-    let estimate = wording::one_line(facts.quote(e.span));
+    let quote = facts.shown(claim.span);
+    let estimate = facts.shown(e.span);
     let f = finding(facts, claim, estimate.clone(), format!("“{quote}” stands beside {estimate}."));
     let related = vec![(e.span, "the estimate".to_owned()), (interval.span, "the interval".to_owned())];
     Some(Finding { related, figures: vec![claim.span, e.span], ..f })

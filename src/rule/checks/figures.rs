@@ -1,5 +1,6 @@
 //! Figures that their own definition rules out, whatever was analysed.
 
+use crate::manuscript::{MarkKind, SectionKind};
 use crate::printed::Printed;
 use crate::query::{Ground, RepairKind, Verdict};
 use crate::reading::{Measure, Relation, Scale, Symbol};
@@ -18,7 +19,7 @@ fn by_definition() -> Weight {
 
 fn about(facts: &Look, span: Span, says: String) -> Finding {
     let mut f = Finding::at(span, by_definition(), says);
-    f.fills.push(("printed", wording::one_line(facts.quote(span))));
+    f.fills.push(("printed", facts.shown(span)));
     f.results = facts.results_with(span).collect();
     f
 }
@@ -45,7 +46,7 @@ pub fn outside(facts: &Look, field: Bounded, lowest: f64, highest: f64) -> Vec<F
     };
     let mut findings: Vec<Finding> = Vec::new();
     for (span, value) in figures.into_iter().filter(|(_, value)| out(*value)) {
-        let quote = wording::one_line(facts.quote(span));
+        let quote = facts.shown(span);
         let lowest = lowest.to_string().replace('-', "−");
         let says = format!("Printed {quote}; {name} lies between {lowest} and {highest}.");
         let mut f = about(facts, span, says);
@@ -70,7 +71,7 @@ pub fn order(facts: &Look, of: Pair) -> Vec<Finding> {
                     })
                 };
                 if (i.reversed || i.lower.value() > i.upper.value()) && !reciprocal() {
-                    let quote = wording::one_line(facts.quote(i.span));
+                    let quote = facts.shown(i.span);
                     let says = format!("Printed {quote}; the larger limit stands first.");
                     let mut f = about(facts, i.span, says);
                     // `−2.5 to −12.9`: many print a reduction from the smaller to the larger.
@@ -84,7 +85,7 @@ pub fn order(facts: &Look, of: Pair) -> Vec<Finding> {
                 if let [low, high] = g.spread[..]
                     && low.value() > high.value()
                 {
-                    let quote = wording::one_line(facts.quote(g.span));
+                    let quote = facts.shown(g.span);
                     let says = format!("Printed {quote}; the lower figure {low} is above the upper figure {high}.");
                     findings.push(about(facts, g.span, says));
                 }
@@ -96,7 +97,7 @@ pub fn order(facts: &Look, of: Pair) -> Vec<Finding> {
                 if let (Some(events), Some(total)) = (count(g.events), count(g.total))
                     && events > total
                 {
-                    let quote = wording::one_line(facts.quote(g.span));
+                    let quote = facts.shown(g.span);
                     let says = format!("Printed {quote}; the count {events} is above its total {total}.");
                     findings.push(about(facts, g.span, says));
                 }
@@ -128,7 +129,7 @@ pub fn estimate_outside_interval(facts: &Look) -> Vec<Finding> {
         if from.block != to.block || from.start > to.start || apart || torn {
             continue;
         }
-        let (estimate, interval) = (wording::one_line(facts.quote(from)), wording::one_line(facts.quote(to)));
+        let (estimate, interval) = (facts.shown(from), facts.shown(to));
         let at_limit = [i.lower, i.upper].iter().any(|limit| limit.value() == e.value.value());
         let how = if at_limit { "one of whose limits is also" } else { "which does not hold" };
         let says = format!("Printed {estimate} with {interval}, {how} {}.", e.value);
@@ -155,9 +156,10 @@ pub fn printed_zero(facts: &Look) -> Vec<Finding> {
         .p
         .iter()
         .filter(zero)
+        .filter(|p| !quoted(facts, p.sentence, p.span))
         .map(|p| {
             let quote = facts.quote(p.span);
-            let says = format!("Printed {}; a p-value can be very small, but not zero.", wording::one_line(quote));
+            let says = format!("Printed {}; a p-value can be very small, but not zero.", facts.shown(p.span));
             let mut f = Finding { weight: Weight::reporting(), ..about(facts, p.span, says) };
             let number = wording::last_number(quote);
             // `0.000` stands for less than 0.0005, so that `< 0.001` is safe; and so on for other places.
@@ -171,6 +173,15 @@ pub fn printed_zero(facts: &Look) -> Vec<Finding> {
         })
         .collect();
     one_per_table(facts, found)
+}
+
+/// Whether a sentence outside the results cites where its figures are from.
+fn quoted(facts: &Look, sentence: u32, span: Span) -> bool {
+    let told = matches!(facts.manuscript.section(span).kind, SectionKind::Introduction | SectionKind::Discussion);
+    let tokens = facts.scan.view(facts.manuscript, sentence).tokens;
+    let (Some(first), Some(last)) = (tokens.first(), tokens.last()) else { return false };
+    // The reference may stand behind the full stop.
+    told && facts.manuscript.block(span).marked(MarkKind::Reference, first.start, last.end + 8)
 }
 
 /// A table full of `0.000` is one question, with all its places.

@@ -6,7 +6,6 @@ use crate::rule::check::Statement;
 use crate::rule::finding::Finding;
 use crate::rule::level::Weight;
 use crate::rule::look::{Look, is_effect};
-use crate::rule::wording;
 use crate::text::Span;
 
 /// P-values of effects below which a manuscript is a fragment, not a report.
@@ -137,7 +136,7 @@ pub fn one_sided_unexplained(facts: &Look) -> Vec<Finding> {
     if planned || REASONS.iter().any(|r| text.contains(r)) {
         return Vec::new();
     }
-    let quote = wording::one_line(facts.quote(sides.span));
+    let quote = facts.shown(sides.span);
     let says = format!("Tests are described as one-sided ({quote}), without the direction or the reason.");
     let f = Finding::at(sides.span, Weight::reporting(), says);
     vec![f]

@@ -118,10 +118,18 @@ fn finding(facts: &Look, checked: &Checked, r: &Recomputation, all: &[&Recomputa
     let quote = facts.quote(r.figure);
     let percent = (r.of == Quantity::Percent).then(|| wording::percent_number(quote)).flatten();
     let sign = if percent.is_some() { "%" } else { "" };
-    let printed = percent.map_or_else(|| wording::one_line(quote), |(at, _)| format!("{}%", &quote[at]));
+    let printed = percent.map_or_else(|| facts.shown(r.figure), |(at, _)| format!("{}%", &quote[at]));
     let computed = r.computed.map_or(String::new(), |range| match r.of {
         Quantity::P => wording::p_range(range),
-        of => wording::figure_range(range, number(of, quote).map_or(0, |(_, places)| places)) + sign,
+        of => {
+            // The quote of a share may end in its total.
+            let share = facts.results[checked.result].groups.iter().find_map(|&g| facts.readings.groups[g].percent);
+            let places = match share.filter(|_| of == Quantity::Percent) {
+                Some(share) => usize::from(share.places),
+                None => number(of, quote).map_or(0, |(_, places)| places),
+            };
+            wording::figure_range(range, places) + sign
+        }
     });
     let mut from = inputs(facts, r);
     let estimate = facts.results[checked.result].estimate.map(|i| &facts.readings.estimates[i]);
@@ -170,7 +178,7 @@ fn inputs(facts: &Look, r: &Recomputation) -> String {
             }
         }
         spans.sort();
-        spans.iter().map(|&s| wording::one_line(facts.quote(s))).collect::<Vec<_>>()
+        spans.iter().map(|&s| facts.shown(s)).collect::<Vec<_>>()
     };
     let (figures, sizes) = (words(false), words(true));
     match (figures.len(), sizes.len()) {

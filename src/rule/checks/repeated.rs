@@ -3,7 +3,6 @@
 use super::super::finding::Finding;
 use super::super::level::{Off, Weight};
 use super::super::look::Look;
-use super::super::wording;
 use crate::manuscript::BlockKind;
 use crate::query::Ground;
 use crate::result::repeat::{self, Part};
@@ -14,7 +13,7 @@ pub fn same_result_differs(facts: &Look) -> Vec<Finding> {
     let found = repeat::disagreements(facts.readings, facts.results, is_table);
     let about = |d: &repeat::Disagreement| {
         let (first, second) = d.figures;
-        let quote = |span| wording::one_line(facts.quote(span));
+        let quote = |span| facts.shown(span);
         let (before, here) = (quote(first), quote(second));
         let (figure, shared) = match d.part {
             Part::P => ("the p-value", "the same figures"),

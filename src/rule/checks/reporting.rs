@@ -25,7 +25,7 @@ fn per_part(facts: &Look, mut spans: Vec<Span>, says: impl Fn(usize, &str) -> St
         parts.entry(facts.part(span)).or_default().push(span);
     }
     let of_part = |(part, at): (u32, Vec<Span>)| {
-        let (count, first) = (at.len(), wording::one_line(facts.quote(at[0])));
+        let (count, first) = (at.len(), facts.shown(at[0]));
         let label = facts.manuscript.sections[part as usize].title.clone();
         let mut f = Finding::wide(at, Weight::reporting(), says(count, &first), vec![label]);
         f.fills.push(("count", count.to_string()));
@@ -215,7 +215,7 @@ pub fn spread_unnamed(facts: &Look, sign: SpreadSign) -> Vec<Finding> {
     if at.is_empty() || fragment || facts.context.spread.is_some() || facts.mentions(&SPREAD_NAMES) {
         return Vec::new();
     }
-    let first = wording::one_line(facts.quote(at[0]));
+    let first = facts.shown(at[0]);
     let count = at.len();
     let (figure, label) = match sign {
         SpreadSign::PlusMinus => ("figure after ±", "plus-minus"),
