@@ -158,6 +158,7 @@ fn centre(view: &SentenceView, i: usize) -> Option<(Printed, usize)> {
         return None;
     }
     match token.kind {
+        TokenKind::Number(_) if i > 0 && view.sign(i - 1, '×') => None,
         TokenKind::Number(p) => Some((p, i + 1)),
         TokenKind::Sign('-' | '+') if !view.spaced(i + 1) || view.spaced(i) => {
             // `3-5 ± 1`: a dash between figures is no sign.
@@ -190,7 +191,7 @@ fn plus_minus(view: &SentenceView, i: usize, centre: Printed, next: usize, setti
         next
     } else {
         let at = after_unit(view, next, |k| view.sign(k, '±'))?;
-        if at > next + 3 {
+        if at > next + 3 + power(view, next) {
             return None;
         }
         at
@@ -249,7 +250,7 @@ fn bracketed(
     before: Option<&Draft>,
 ) -> Option<Draft> {
     let open = after_unit(view, next, |k| view.signs(k, &['(', '[', '{']))?;
-    if taken.get(open).copied().unwrap_or(false) || open > next + 4 {
+    if taken.get(open).copied().unwrap_or(false) || open > next + 4 + power(view, next) {
         return None;
     }
     let mut at = open + 1;
@@ -321,6 +322,7 @@ fn bracketed(
                 (Some(k), _) if centre.places > 0 || a.places > 0 => k,
                 (Some(k), true) => k,
                 (None, true) if a.places > 0 || centre.places > 0 => SpreadKind::Unstated,
+                _ if has_twin(view, i, centre, a, last) => SpreadKind::Unstated,
                 _ => return None,
             }
         }
@@ -332,6 +334,30 @@ fn bracketed(
         group.mean = Some(centre);
     }
     Some(Draft { first: i, last, group })
+}
+
+/// Tokens that a power of ten adds to a unit: `138 × 10^9^/L (range 96–141)`.
+fn power(view: &SentenceView, at: usize) -> usize {
+    if view.sign(at, '×') && view.eq(at + 1, "10") { 3 } else { 0 }
+}
+
+/// `wax 3.9 (3.1) mg, comb 3.3 (1.6) mg`: two figures of one unit with as many places inside their brackets as before
+/// them are a centre and its spread, whatever the text calls them.
+fn has_twin(view: &SentenceView, i: usize, centre: Printed, spread: Printed, close: usize) -> bool {
+    const REACH: usize = 16;
+    let unit = close + 1;
+    if centre.places == 0 || centre.places != spread.places || !view.is(unit, Classes::UNIT) || !view.sign(i + 1, '(') {
+        return false;
+    }
+    let alike = |k: usize| {
+        k != i
+            && view.number(k).is_some_and(|c| c.places == centre.places)
+            && view.sign(k + 1, '(')
+            && view.number(k + 2).is_some_and(|s| s.places == spread.places)
+            && view.sign(k + 3, ')')
+            && view.eq(k + 4, view.word(unit))
+    };
+    (i.saturating_sub(REACH)..(i + REACH).min(view.len())).any(alike)
 }
 
 /// `– 10`, `, 10`, `to 10`, `; 10` after a first figure.
