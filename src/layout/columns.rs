@@ -1,6 +1,6 @@
 //! Heads and columns: how far the header reaches, what stands over each column, what it is for, what is compared.
 
-use super::figures::Look;
+use super::figures::{self, Look};
 use super::{Column, ColumnRole, Panel, Part, Text, header};
 use crate::manuscript::{Cell, Grid};
 use std::ops::Range;
@@ -49,6 +49,8 @@ pub(super) fn header_rows(text: &Text, grid: &Grid, runs: &[Range<usize>]) -> u3
 fn is_head(text: &Text, cell: &Cell) -> bool {
     match text.look(cell) {
         Look::Words | Look::Empty => true,
+        // `95% CI`
+        _ if header::says_interval(&text.folded(cell)) && header::heads_column(&text.folded(cell)) => true,
         _ => header::size_alone(text.block, text.number, cell, false).is_some(),
     }
 }
@@ -110,6 +112,10 @@ struct Looks {
     range: u32,
     number: u32,
     bound: u32,
+    /// Numbers that a p-value may be: `0.03`, `.03`, `1`.
+    shares: u32,
+    /// Figures behind a symbol: `F = 3.2`, `χ2(1) = 4.1`.
+    symbols: u32,
 }
 
 impl Looks {
@@ -124,11 +130,17 @@ fn looks(text: &Text, _: &Grid, body: &[Cell], count: usize) -> Vec<Looks> {
         let Some(of) = looks.get_mut(cell.column as usize) else { continue };
         match text.look(cell) {
             Look::Empty => {}
-            Look::Words => of.words += 1,
+            Look::Words => {
+                of.words += 1;
+                of.symbols += u32::from(figures::shows_symbol(text.of(cell)));
+            }
             Look::Summary => of.summary += 1,
             Look::Fraction => of.fraction += 1,
             Look::Range => of.range += 1,
-            Look::Number => of.number += 1,
+            Look::Number => {
+                of.number += 1;
+                of.shares += u32::from(figures::may_be_p(text.of(cell)));
+            }
             Look::Bound => of.bound += 1,
         }
     }
@@ -184,7 +196,15 @@ fn stub_columns(text: &Text, grid: &Grid, columns: &[Column], looks: &[Looks]) -
         let head = column.header.map_or(String::new(), |h| text.folded(&grid.cells[h]));
         let role = head_role(text, grid, column);
         let figures = of.summary + of.fraction + of.number + of.bound;
-        let named = header::words(&head).any(|w| LABELS.contains(&w)) && of.summary == 0 && !head.contains('=');
+        // `Group: tea, mean | SE`: half of a summary is no label.
+        let halved = columns.get(stubs + 1).is_some_and(|c| matches!(head_role(text, grid, c), ColumnRole::Part(_)));
+        // So is a symbol no label: `Post-test z`.
+        let symbol = header::ends_in_symbol(&head) && of.number == of.filled();
+        let named = header::words(&head).any(|w| LABELS.contains(&w))
+            && of.summary == 0
+            && !head.contains('=')
+            && !halved
+            && !symbol;
         let labels =
             of.words > 0 && of.words >= 2 * figures || named && figures + of.range + of.words > 0 && of.bound == 0;
         let role_free = matches!(role, ColumnRole::Other) && !(header::is_size_label(&head));
@@ -210,6 +230,27 @@ fn settle(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Looks]) {
         let role = match &columns[k].role {
             ColumnRole::Stub => continue,
             ColumnRole::P if of.summary > of.number + of.bound => ColumnRole::Other,
+            // `P~CO2~`, `P~max~`: a symbol of something else.
+            ColumnRole::P if of.shares < of.number && !header::is_p(&heads[k]) => ColumnRole::Other,
+            // "Group differences" over `F = 0.36, NS`: the cells say themselves what they are.
+            ColumnRole::Estimate | ColumnRole::Interval if 2 * of.symbols > of.filled() => ColumnRole::Other,
+            // "…, n = 30, Pearson r": the size is that of all who were measured.
+            ColumnRole::Group { .. }
+                if (heads[k].ends_with("pearson r") || heads[k].ends_with("spearman r"))
+                    && of.number > 0
+                    && of.shares == of.number =>
+            {
+                ColumnRole::Statistic
+            }
+            ColumnRole::Other | ColumnRole::Estimate
+                if header::ends_in_symbol(&heads[k])
+                    && of.number > 0
+                    && of.number == of.filled()
+                    && (heads[k].ends_with(['r', 'o', 'ρ']) && of.shares == of.number
+                        || columns.get(k + 1).is_some_and(|c| c.role == ColumnRole::P)) =>
+            {
+                ColumnRole::Statistic
+            }
             // A single letter is a symbol only where results stand.
             ColumnRole::Statistic if !some_p && of.number < of.filled() => ColumnRole::Other,
             ColumnRole::Estimate if of.range > of.summary + of.number && columns_left_estimate(columns, k) => {
@@ -379,13 +420,17 @@ fn inherit_sizes(text: &Text, grid: &Grid, columns: &mut [Column], _: &[Looks]) 
     let mut last: Option<(super::Size, bool)> = None;
     for column in columns.iter_mut() {
         let Some(head) = column.header.map(|h| text.folded(&grid.cells[h])) else {
-            last = None;
+            // "Tea (n = 12) Pre Post" over two columns, of which the second has no head.
+            let left = last.take();
+            if let (ColumnRole::Group { n: n @ None, .. }, Some((size, true))) = (&mut column.role, left) {
+                *n = Some(size);
+            }
             continue;
         };
         match &mut column.role {
-            ColumnRole::Group { n: Some(size), .. } => last = Some((*size, header::names_time(&head))),
+            ColumnRole::Group { n: Some(size), .. } => last = Some((*size, header::names_two_times(&head))),
             ColumnRole::Group { n, .. } => match last {
-                Some((size, true)) if header::names_time(&head) && header::timeless(&head).0.is_empty() => {
+                Some((size, _)) if header::names_time(&head) && header::timeless(&head).0.is_empty() => {
                     *n = Some(size);
                 }
                 _ => last = None,
@@ -503,6 +548,11 @@ fn judge(text: &Text, grid: &Grid, columns: &[Column], panel: &mut Panel) {
     for &k in panel.groups.iter().take(MOST_GROUPS) {
         let mut key = String::new();
         let mut timed = false;
+        // Without a head of its own: another time of the group to its left.
+        if let ([], Some((left, was_timed))) = (&columns[k].path[..], keys.last()) {
+            key.clone_from(left);
+            timed = *was_timed;
+        }
         for &h in &columns[k].path {
             let (part, time) = header::timeless(&text.folded(&grid.cells[h]));
             key.push_str(&part);

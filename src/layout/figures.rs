@@ -62,6 +62,22 @@ pub(super) fn look(text: &str) -> Look {
     }
 }
 
+/// `0.03`, `.03`, `1`, `1.00`: a number from 0 to 1, footnote signs aside.
+pub(super) fn may_be_p(text: &str) -> bool {
+    let digits = text.trim_end_matches(|c: char| !c.is_ascii_digit()).trim_start_matches('0');
+    let rest = digits.strip_prefix(['.', ',', '·']);
+    rest.is_some_and(|r| r.starts_with(|c: char| c.is_ascii_digit()))
+        || digits.is_empty()
+        || digits.strip_prefix('1').is_some_and(|r| r.chars().all(|c| matches!(c, '0' | '.' | '·')))
+}
+
+/// `F = 3.2`, `t(38) = 2.1`, `χ2 = 4.1`: a symbol of a test, then an equals sign.
+pub(super) fn shows_symbol(text: &str) -> bool {
+    let Some((before, _)) = text.split_once('=') else { return false };
+    let before = before.trim_start();
+    before.chars().count() <= 14 && before.starts_with(['F', 't', 'T', 'Z', 'z', 'χ', 'Χ', 'X', 'U', 'H', 'r'])
+}
+
 /// Words of two letters or more that no summary holds.
 fn has_words(text: &str) -> bool {
     text.split(|c: char| !c.is_alphabetic()).any(|w| w.chars().count() > 1 && !known(w))

@@ -50,8 +50,20 @@ pub(super) fn role(block: &Block, number: usize, cell: &Cell) -> ColumnRole {
             let label = label(text, name);
             if is_overall(&label) { ColumnRole::Overall { label, n } } else { ColumnRole::Group { label, n } }
         }
+        None if is_marked_p(block, cell) => ColumnRole::P,
         None => role_of_words(&head),
     }
+}
+
+/// `P~T~`, `*P*~time~`: a P with what it tests set low behind it. `P~CO2~` is no such thing; the column's figures show it.
+fn is_marked_p(block: &Block, cell: &Cell) -> bool {
+    let text = block.text.get(cell.start as usize..cell.end as usize).unwrap_or("");
+    let start = cell.start + (text.len() - text.trim_start().len()) as u32;
+    let end = cell.start + text.trim_end().len() as u32;
+    let low = || block.marks_over(start, end).filter(|m| m.kind == MarkKind::Subscript).collect::<Vec<_>>();
+    text.trim_start().starts_with(['P', 'p'])
+        && matches!(low()[..], [mark, ..] if mark.start == start + 1)
+        && low().last().is_some_and(|m| m.end == end)
 }
 
 fn role_of_words(head: &str) -> ColumnRole {
@@ -66,7 +78,10 @@ fn role_of_words(head: &str) -> ColumnRole {
     }
     // `95% CI Lower`: a head in one line that stood in two.
     let has = |w: &str| words(head).any(|x| x == w);
-    if says_interval(head) && has("lower") != has("upper") && words(head).count() <= 5 {
+    // "95% CI of difference (mmHg) Lower": what stands over both limits is joined to the first.
+    let ends = |w: &str| words(head).last() == Some(w);
+    let short = words(head).count() <= 5 || ends("lower") || ends("upper");
+    if says_interval(head) && has("lower") != has("upper") && short {
         return if has("lower") { ColumnRole::Lower } else { ColumnRole::Upper };
     }
     if is_estimate(head) {
@@ -77,7 +92,8 @@ fn role_of_words(head: &str) -> ColumnRole {
 
 /// `P`, `P value`, `p-value (t test)`, `P for interaction`, `Sig.`, `Between-group P value`
 pub(super) fn is_p(head: &str) -> bool {
-    // `P (n = 24)` would be a group called P.
+    // `P (n = 24)` would be a group called P; `Wilcoxon test, P =` asks for the figure.
+    let head = head.strip_suffix('=').map_or(head, str::trim_end);
     if head.contains('=') || words(head).count() > 14 {
         return false;
     }
@@ -141,29 +157,53 @@ pub(super) fn is_statistic(head: &str) -> bool {
         }
     }
     let mut symbol = plain.as_str();
-    for end in ["value", "values", "test", "statistic", "statistics", "-", "ratio"] {
+    for end in ["value", "values", "test", "statistic", "statistics", "score", "-", "ratio"] {
         symbol = symbol.strip_suffix(end).unwrap_or(symbol);
     }
-    matches!(
-        symbol,
-        // The 2 of χ² is raised, and raised marks are left out.
-        "χ" | "x"
-            | "t"
-            | "f"
-            | "z"
-            | "u"
-            | "h"
-            | "χ2"
-            | "χ²"
-            | "x2"
-            | "x²"
-            | "chi2"
-            | "chi-square"
-            | "chisquare"
-            | "chi-squared"
-            | "chisquared"
-            | "mann-whitneyu"
-    )
+    for start in ["pseudo-", "pseudo", "pearson’s", "pearson's", "pearson", "spearman’s", "spearman's", "spearman"]
+    {
+        symbol = symbol.strip_prefix(start).unwrap_or(symbol);
+    }
+    // `t/χ²`: the one for means, the other for counts.
+    let either = symbol.split_once('/').is_some_and(|(a, b)| {
+        let of = |s: &str| matches!(s, "t" | "z" | "f" | "χ" | "x" | "χ2" | "χ²" | "x2" | "x²");
+        of(a) && of(b) && a != b
+    });
+    either
+        || symbol != plain && matches!(symbol, "r" | "rho" | "ρ" | "rs")
+        || matches!(
+            symbol,
+            // The 2 of χ² is raised, and raised marks are left out.
+            "χ" | "x"
+                | "t"
+                | "f"
+                | "z"
+                | "u"
+                | "h"
+                | "χ2"
+                | "χ²"
+                | "x2"
+                | "x²"
+                | "chi2"
+                | "chi-square"
+                | "chisquare"
+                | "chi-squared"
+                | "chisquared"
+                | "mann-whitneyu"
+        )
+}
+
+/// `Pre-test z`, `Group effect F`: the symbol ends a head that was set in several lines.
+pub(super) fn ends_in_symbol(head: &str) -> bool {
+    let Some((before, last)) = head.trim_end().rsplit_once(' ') else { return false };
+    let letter = matches!(last, "t" | "f" | "z" | "χ2" | "χ²" | "χ" | "r" | "rho" | "ρ");
+    letter && words(before).count() <= 8 && !before.contains(['=', '%'])
+}
+
+/// `SE of mean (mmHg)`, `Standard error of the mean`
+fn is_se_of_mean(head: &str) -> bool {
+    let rest = ["se ", "s.e. ", "standard error "].iter().find_map(|w| head.strip_prefix(w));
+    rest.is_some_and(|r| r.starts_with("of mean") || r.starts_with("of the mean") || r.starts_with("mean"))
 }
 
 /// A column that goes on what the one before it begins, or bounds an interval.
@@ -179,7 +219,10 @@ fn part(head: &str) -> Option<ColumnRole> {
         "se" | "s.e" | "sem" | "±se" | "±sem" | "± sem" | "standard error" | "std. error" => {
             ColumnRole::Part(Part::Se)
         }
-        "%" | "percent" | "percentage" | "per cent" => ColumnRole::Part(Part::Percent),
+        _ if is_se_of_mean(plain) => ColumnRole::Part(Part::Se),
+        "%" | "percent" | "percentage" | "per cent" | "percent (%" | "percentage (%" | "percentages"
+        | "percentages (%" | "per cent (%" | "proportion (%" | "frequency (%" | "% of total" | "% of patients"
+        | "rate (%" => ColumnRole::Part(Part::Percent),
         "iqr" | "interquartile range" => ColumnRole::Part(Part::Iqr),
         "range" | "min-max" | "min–max" => ColumnRole::Part(Part::Range),
         "df" | "d.f" | "degrees of freedom" => ColumnRole::Df,
@@ -518,6 +561,11 @@ const TIMES: &[&str] = &[
 /// Whether a head names a time of measurement.
 pub(super) fn names_time(head: &str) -> bool {
     timeless(head).1
+}
+
+/// `tea (n = 12) pre post`: a head over two times, as in a table whose lower heads were joined to it.
+pub(super) fn names_two_times(head: &str) -> bool {
+    words(head).filter(|w| TIMES.contains(w)).count() >= 2
 }
 
 /// A head without the words for times, figures and what its figures are; and whether it had words for times.

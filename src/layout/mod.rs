@@ -211,6 +211,14 @@ impl Layout {
         cells.get(at).filter(|c| c.column as usize == column).map(|_| row.cells.start + at)
     }
 
+    /// The column of the one standard error that a row's means have in common: `A | B | C | SEM`.
+    pub fn pooled(&self) -> Option<usize> {
+        let mut parts = self.columns.iter().enumerate().filter(|(_, c)| matches!(c.role, ColumnRole::Part(_)));
+        let (k, column) = parts.next()?;
+        let left = self.panel(k.checked_sub(1)?).filter(|p| p.groups.len() > 1 && p.groups.contains(&(k - 1)));
+        (column.role == ColumnRole::Part(Part::Se) && parts.next().is_none() && left.is_some()).then_some(k)
+    }
+
     /// The panel of a column.
     pub fn panel(&self, column: usize) -> Option<&Panel> {
         self.panels.get(self.columns.get(column)?.panel?)

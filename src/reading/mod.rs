@@ -16,6 +16,7 @@ pub mod statistic;
 pub mod table;
 pub mod token;
 
+use crate::layout::Layout;
 use crate::manuscript::{BlockKind, Manuscript, SectionKind};
 use crate::printed::Printed;
 use crate::text::Span;
@@ -49,7 +50,7 @@ pub enum Inference {
     OtherSentence,
     /// The arm's size as the Methods or the flow of participants give it.
     ArmSize,
-    /// The total that all other counts of the paragraph have.
+    /// The total that the other counts of the paragraph, or of a block of a table, have or make.
     Siblings,
     /// The sum of the categories that the sentence lists: their percentages fit it.
     Categories,
@@ -367,6 +368,8 @@ pub struct Readings {
     pub estimates: Vec<Estimate>,
     pub claims: Vec<Claim>,
     pub planning: Vec<Planning>,
+    /// The layout of each table by the number of its block: working it out is dear, and results need it as well.
+    pub layouts: Vec<(usize, Layout)>,
 }
 
 /// The members of a list of readings that stand in some sentences. Lists are in reading order.

@@ -402,8 +402,11 @@ fn counts_candidates(case: &Case, cells: &[Cell], target: &Target) -> Result<Vec
 
 /// Fisher's test of several groups: only for small tables, since the work grows fast.
 fn fisher_table(cells: &[Cell], named: bool) -> Option<Range> {
+    // Of two rows there are at most so many tables as the smaller row can be shared out in.
+    let events: u64 = cells.iter().map(|c| c.events.1).sum();
     let total: u64 = cells.iter().map(|c| c.total.1).sum();
-    let small = total <= if named { 200 } else { 80 } && cells.len() <= 4;
+    let tables = events.min(total.saturating_sub(events)).saturating_add(1).saturating_pow(cells.len() as u32 - 1);
+    let small = tables <= if named { 100_000 } else { 20_000 } && total <= 5_000 && cells.len() <= 4;
     if !small || !cells.iter().all(Cell::is_exact) {
         return None;
     }

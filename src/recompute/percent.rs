@@ -68,6 +68,8 @@ pub(crate) fn check(g: &Group, agreement: Agreement) -> Vec<Recomputation> {
         _ if g.approximate => Some(reason::ABOUT),
         _ if matches!(total.origin, Origin::Inferred(Inference::Siblings, _)) => None,
         (true, _) | (_, true) => None,
+        // None of any number is 0 %.
+        _ if e == 0 && percent.value() == 0.0 => None,
         _ if agreement.settled() && below_all => None,
         _ => Some(reason::DENOMINATOR),
     };

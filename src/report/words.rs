@@ -145,7 +145,7 @@ pub fn origin(origin: Origin) -> &'static str {
         Origin::Inferred(Inference::SameSentence, _) => "same sentence",
         Origin::Inferred(Inference::OtherSentence, _) => "other sentence",
         Origin::Inferred(Inference::ArmSize, _) => "arm size",
-        Origin::Inferred(Inference::Siblings, _) => "other counts of the paragraph",
+        Origin::Inferred(Inference::Siblings, _) => "other counts beside it",
         Origin::Inferred(Inference::Categories, _) => "sum of categories",
         Origin::Inferred(Inference::FromPercent, _) => "percent",
         Origin::Inferred(Inference::FromGroupSizes, _) => "group sizes",

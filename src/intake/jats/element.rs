@@ -119,7 +119,9 @@ pub(super) fn kind_of_type(types: &str) -> Option<SectionKind> {
     types.split('|').find_map(|t| match t {
         "intro" => Some(SectionKind::Introduction),
         "cases" => Some(SectionKind::Results),
-        "COI-statement" | "supplementary-material" | "data-availability" | "display-objects" => Some(SectionKind::Back),
+        "COI-statement" | "supplementary-material" | "data-availability" => Some(SectionKind::Back),
+        // Tables and figures that the publisher set behind the references are those of the results.
+        "display-objects" => Some(SectionKind::Results),
         t => SectionKind::of_title(t),
     })
 }

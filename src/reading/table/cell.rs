@@ -355,6 +355,13 @@ pub(super) fn bare_p(view: &SentenceView) -> Vec<BareP> {
     }
 }
 
+/// `NS` behind a comma at the end of a cell.
+pub(super) fn not_significant_at_end(view: &SentenceView) -> Option<BareP> {
+    let line = Line::of(view);
+    let k = (1..line.kept.len()).rev().find(|&k| line.sign(k - 1, &[',', ';', '(']))?;
+    one_p(&line, k).map(|(p, _)| p).filter(|p| p.relation == Relation::NotSignificant)
+}
+
 fn one_p(line: &Line, k: usize) -> Option<(BareP, usize)> {
     let view = line.view;
     let first = line.at(k);

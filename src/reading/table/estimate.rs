@@ -47,7 +47,7 @@ pub(super) fn read(
                 if reads.is_empty() {
                     // An interval in a column headed for both, as in the second line of a cell.
                     if let (Some(pair), true) = (cell::limits(&view), says_ci(&heads)) {
-                        push_interval(&view, pair, &heads, None, setting, readings);
+                        push_interval(&view, pair, &heads, None, readings);
                     }
                     continue;
                 }
@@ -66,7 +66,7 @@ pub(super) fn read(
                     heads.into_iter().chain(table.heads(column.saturating_sub(1))).collect()
                 };
                 if let Some(pair) = cell::limits(&view) {
-                    push_interval(&view, pair, &all, near.as_ref(), setting, readings);
+                    push_interval(&view, pair, &all, near.as_ref(), readings);
                 }
             }
             _ => {
@@ -79,6 +79,45 @@ pub(super) fn read(
             }
         }
     }
+}
+
+/// Appends the intervals of a row that holds nothing else, of the figures in the row above: "95% CI" below "Mean".
+pub(super) fn read_limits(table: &Table, number: usize, readings: &mut Readings) {
+    let row = &table.layout.rows[number];
+    let (own, _) = table.said(row);
+    let labels: Vec<SentenceView> = row.labels.iter().map(|&l| table.view(l)).collect();
+    if !own.ci
+        || own.measure
+        || own.quantiles.is_some()
+        || own.mean
+        || own.median
+        || !labels.last().is_some_and(ends_in_ci)
+    {
+        return;
+    }
+    let above = number.checked_sub(1).map(|n| &table.layout.rows[n]);
+    for index in row.cells.clone().filter(|&i| table.role_of(i).summarises()) {
+        let view = table.view(index);
+        let Some((a, b)) = cell::limits(&view) else { continue };
+        if readings.intervals.iter().rev().take_while(|i| i.sentence >= view.id).any(|i| i.sentence == view.id) {
+            continue;
+        }
+        let column = table.grid.cells[index].column as usize;
+        let over = above.and_then(|r| table.layout.cell_in(table.grid, r, column)).map(|c| table.view(c).id);
+        let group = over
+            .and_then(|id| readings.groups.iter().rev().take_while(|g| g.sentence >= id).find(|g| g.sentence == id));
+        let centre = group.and_then(|g| Some((g.mean.or(g.median).or(g.percent)?, g.span)));
+        push_interval(&view, (a, b), &labels, None, readings);
+        if let Some(interval) = readings.intervals.last_mut() {
+            interval.estimate = centre;
+        }
+    }
+}
+
+/// "95% CI", "(95% confidence interval)": nothing is said behind it.
+fn ends_in_ci(label: &SentenceView) -> bool {
+    let last = (0..label.len()).rev().find(|&i| label.get(i).is_some_and(|t| t.is_word()));
+    last.is_some_and(|i| label.is(i, Classes::CI) || label.any(i, &["ci", "interval", "intervals", "limits"]))
 }
 
 /// The one number of a cell that holds nothing else, brackets aside.
@@ -177,7 +216,6 @@ fn push_interval(
     (a, b): (At, At),
     heads: &[SentenceView],
     near: Option<&Estimate>,
-    _: &Setting,
     readings: &mut Readings,
 ) {
     let open = usize::from(a.first > 0 && view.signs(a.first - 1, &['(', '[', '{']));

@@ -10,6 +10,7 @@ mod meaning;
 mod sizes;
 mod statistic;
 mod summary;
+mod totals;
 
 use super::lexicon::Classes;
 use super::sentence::{Scan, SentenceView};
@@ -35,19 +36,36 @@ pub fn read(manuscript: &Manuscript, scan: &Scan, number: usize, readings: &mut 
         let above = &table.layout.rows[number.saturating_sub(1)];
         let of_estimates = row.role == RowRole::P && above.role == RowRole::Data && table.row_estimates(above);
         table.read_p(row, &setting, of_estimates, readings);
-        table.read_statistics(row, readings);
         let estimates = row.role == RowRole::Data && table.row_estimates(row);
         let continues = number > 0 && table.brackets_below(number - 1).is_some();
+        let mut counts = false;
         if row.role == RowRole::Data && !continues {
-            let counts = !estimates && summary::read(&table, number, &setting, readings);
+            counts = !estimates && summary::read(&table, number, &setting, readings);
             estimate::read(&table, row, &setting, counts, estimates, readings);
         }
+        if row.role == RowRole::Data {
+            estimate::read_limits(&table, number, readings);
+        }
+        table.read_statistics(row, counts, readings);
     }
     // Cells are read by role, and readings are in reading order.
     readings.p.sort_by_key(|p| p.sentence);
     readings.statistics.sort_by_key(|s| s.sentence);
     readings.intervals.sort_by_key(|i| i.sentence);
-    sizes::fill_totals(&table, &mut readings.groups[first_group..]);
+    totals::fill(&table, &mut readings.groups[first_group..]);
+    readings.layouts.push((number, table.layout));
+}
+
+fn bare_reading(view: &SentenceView, x: cell::BareP, role: Role, corrected: bool) -> PValue {
+    PValue {
+        span: view.span(x.first, x.last),
+        sentence: view.id,
+        relation: x.relation,
+        value: x.value,
+        role,
+        corrected,
+        shared: false,
+    }
 }
 
 /// A table with what is needed to look at its cells.
@@ -156,6 +174,17 @@ impl<'a> Table<'a> {
         all >= LEAST && 10 * whole >= 8 * all
     }
 
+    /// Whether a row or a column holds figures from the start of the study.
+    fn shows_start(&self) -> bool {
+        let is_start = |view: SentenceView| {
+            view.any(0, &["baseline", "pretreatment", "preintervention", "pretest"])
+                || view.any(0, &["before", "pre"]) && view.len() <= 3
+        };
+        let rows = self.layout.rows.iter().filter(|r| matches!(r.role, RowRole::Data | RowRole::Section));
+        let columns = self.layout.columns.iter().filter(|c| c.role.summarises()).filter_map(|c| c.header);
+        rows.filter_map(|r| r.labels.last().copied()).chain(columns).any(|c| is_start(self.view(c)))
+    }
+
     /// Whether two columns of results are of one comparison.
     fn same_bundle(&self, a: usize, b: usize) -> bool {
         let of = |k: usize| self.layout.columns.get(k).map(|c| (c.panel, c.bundle));
@@ -178,6 +207,10 @@ impl<'a> Table<'a> {
                 continue;
             }
             let in_p_column = *role == ColumnRole::P;
+            // `χ2(1) = 4.1` in a column headed "Significance" says itself what it is.
+            if in_p_column && (0..view.len()).any(|i| view.sign(i, '=')) && cell::bare_p(&view).is_empty() {
+                super::statistic::read(&view, &mut vec![false; view.len()], &mut readings.statistics);
+            }
             if !in_p_column && row.role != RowRole::P {
                 // `12.4 (3.1), P = 0.03` says itself what it is; so does `z = 2.1, P = 0.03`.
                 let found = p::find(&view);
@@ -185,7 +218,13 @@ impl<'a> Table<'a> {
                 if *role == ColumnRole::Other || !found.is_empty() {
                     let mut taken = vec![false; view.len()];
                     found.iter().for_each(|x| taken[x.first..=x.last].fill(true));
+                    let before = readings.statistics.len();
                     super::statistic::read(&view, &mut taken, &mut readings.statistics);
+                    // `F = 0.36, NS`
+                    let tested = readings.statistics.len() > before && found.is_empty();
+                    if let Some(x) = cell::not_significant_at_end(&view).filter(|_| tested) {
+                        readings.p.push(bare_reading(&view, x, Role::Effect, false));
+                    }
                     super::interval::read(&view, &mut taken, &mut readings.intervals);
                 }
                 continue;
@@ -232,21 +271,13 @@ impl<'a> Table<'a> {
                 readings.p.extend(p::find(&view).iter().map(|x| x.reading(&view)));
             }
             for x in bare {
-                readings.p.push(PValue {
-                    span: view.span(x.first, x.last),
-                    sentence: view.id,
-                    relation: x.relation,
-                    value: x.value,
-                    role: p_role,
-                    corrected,
-                    shared: false,
-                });
+                readings.p.push(bare_reading(&view, x, p_role, corrected));
             }
         }
     }
 
     /// The statistics of a row, in columns or a row of their own.
-    fn read_statistics(&self, row: &Row, readings: &mut Readings) {
+    fn read_statistics(&self, row: &Row, counts: bool, readings: &mut Readings) {
         let of_row = (row.role == RowRole::Statistic)
             .then(|| row.labels.last().map(|&l| statistic::Head::of(&self.view(l))))
             .flatten();
@@ -265,7 +296,7 @@ impl<'a> Table<'a> {
                             head = of;
                         }
                     }
-                    head
+                    head.settled(counts)
                 }
                 _ => continue,
             };
@@ -322,6 +353,8 @@ struct Setting {
     bare_counts: bool,
     /// Columns of sizes.
     size_columns: Vec<usize>,
+    /// The column of a standard error that all means of a row have in common.
+    pooled: Option<usize>,
 }
 
 impl Setting {
@@ -342,6 +375,8 @@ impl Setting {
         };
         let mut said = Meaning::default();
         views(around.caption.clone()).chain(views(around.notes.clone())).for_each(|v| said.add(&v));
+        // "Changes of weight" over a table with a row or column of the start: its figures are levels, not changes.
+        said.change &= !table.shows_start();
         let caption_says =
             |words: &[&str]| views(around.caption.clone()).any(|v| (0..v.len()).any(|i| v.any(i, words)));
         let title = table.manuscript.sections[table.block.section as usize].title.to_lowercase();
@@ -362,6 +397,16 @@ impl Setting {
         let bare_counts = table.has_bare_counts();
         let is_size = |(k, c): (usize, &Column)| (c.role == ColumnRole::Size).then_some(k);
         let size_columns = table.layout.columns.iter().enumerate().filter_map(is_size).collect();
-        Setting { columns, heads, around: said, baseline, shown, noted, bare_counts, size_columns }
+        Setting {
+            columns,
+            heads,
+            around: said,
+            baseline,
+            shown,
+            noted,
+            bare_counts,
+            size_columns,
+            pooled: table.layout.pooled(),
+        }
     }
 }

@@ -1,14 +1,13 @@
 //! The sizes of groups where the header gives none: from the row, from the caption, from counts with their percentages.
 
 use super::super::sentence::SentenceView;
-use super::super::{Figure, Group, Inference, Origin};
+use super::super::{Figure, Inference, Origin};
 use super::cell::{self, At, Form};
 use super::summary::Sized;
 use super::{Setting, Table};
 use crate::layout::{ColumnRole, Part, Row, RowRole, Size};
 use crate::printed::Printed;
 use crate::text::Span;
-use std::collections::HashMap;
 
 fn sized(size: Size, inference: Inference) -> Sized {
     let origin = Origin::Inferred(inference, size.span);
@@ -184,54 +183,4 @@ fn common(ranges: &[(u64, u64, Span)]) -> Option<Sized> {
     let enough = best as usize >= LEAST && 5 * best as usize >= 3 * ranges.len();
     let (_, _, span) = *ranges.first()?;
     (enough && width == 1).then(|| sized(Size { value: from, span }, Inference::FromPercent))
-}
-
-/// Totals of categories that share out a group: where the counts of a block add up to a sum that all their percentages
-/// fit, that sum is their total.
-pub(super) fn fill_totals(table: &Table, groups: &mut [Group]) {
-    let open = |g: &Group| {
-        let doubtful = g.total.is_none_or(|t| matches!(t.origin, Origin::Inferred(Inference::FromPercent, _)));
-        g.events.is_some() && g.percent.is_some() && doubtful
-    };
-    if !groups.iter().any(open) {
-        return;
-    }
-    // A block begins at a title, and at a P whose next rows have none.
-    let mut section_of: HashMap<u32, (usize, usize)> = HashMap::new();
-    let mut started = 0;
-    for (number, row) in table.layout.rows.iter().enumerate() {
-        let has_p = |&c: &usize| *table.role_of(c) == ColumnRole::P && !table.view(c).is_empty();
-        if row.cells.clone().any(|c| has_p(&c)) {
-            started = number;
-        }
-        if row.role == RowRole::Data {
-            let section = (row.section.unwrap_or(0), started);
-            section_of.extend(row.cells.clone().map(|c| (table.first + c as u32, section)));
-        }
-    }
-    let mut blocks: HashMap<((usize, usize), u32), Vec<usize>> = HashMap::new();
-    for (k, group) in groups.iter().enumerate().filter(|(_, g)| open(g)) {
-        let cell = (group.sentence - table.first) as usize;
-        let (Some(&section), Some(cell)) = (section_of.get(&group.sentence), table.grid.cells.get(cell)) else {
-            continue;
-        };
-        blocks.entry((section, cell.column)).or_default().push(k);
-    }
-    for members in blocks.values().filter(|m| m.len() > 1) {
-        let count = |&k: &usize| groups[k].events.and_then(|e| e.printed.count());
-        let Some(sum) = members.iter().map(count).try_fold(0u64, |s, c| s.checked_add(c?)) else { continue };
-        let fits = |&k: &usize| {
-            let share = 100.0 * count(&k).unwrap_or(0) as f64 / sum as f64;
-            groups[k].percent.is_some_and(|p| p.rounded().hull(p.cut()).widened(1e-12).contains(share))
-        };
-        if sum == 0 || !members.iter().all(fits) {
-            continue;
-        }
-        for &k in members {
-            let origin = Origin::Inferred(Inference::Categories, groups[k].span);
-            let total = Some(Figure { printed: Printed::whole(sum), origin });
-            groups[k].total = total;
-            groups[k].n = groups[k].n.or(total);
-        }
-    }
 }

@@ -11,15 +11,29 @@ pub(super) struct Head {
     pub symbol: Option<Symbol>,
     pub df1: Option<Figure>,
     pub df2: Option<Figure>,
+    /// `t/χ²`: the symbol for rows of counts.
+    pub of_counts: Option<Symbol>,
 }
 
 impl Head {
+    /// The symbol for a row that holds counts, or none.
+    pub fn settled(self, counts: bool) -> Head {
+        Head { symbol: self.of_counts.filter(|_| counts).or(self.symbol), ..self }
+    }
+
     /// What a head says; the last symbol counts.
     pub fn of(view: &SentenceView) -> Head {
         let mut found = Head::default();
         for i in 0..view.len() {
             let Some(symbol) = symbol(view, i) else { continue };
-            found = Head { symbol: Some(symbol), df1: None, df2: None };
+            // `t/χ²`, `χ²/t`: the one for means, the other for counts.
+            if let Some(before) = found.symbol.filter(|_| (i.saturating_sub(2)..i).any(|k| view.sign(k, '/'))) {
+                let (means, of_counts) = if before == Symbol::ChiSquared { (symbol, before) } else { (before, symbol) };
+                if of_counts == Symbol::ChiSquared && means != of_counts {
+                    return Head { symbol: Some(means), of_counts: Some(of_counts), ..Head::default() };
+                }
+            }
+            found = Head { symbol: Some(symbol), ..Head::default() };
             let figure = |at: usize| {
                 let printed = view.number(at)?;
                 Some(Figure { printed, origin: Origin::Inferred(Inference::Header, view.span(at, at)) })
@@ -57,6 +71,9 @@ fn symbol(view: &SentenceView, i: usize) -> Option<Symbol> {
         "z" | "Z" => Symbol::Z,
         "U" => Symbol::U,
         "H" => Symbol::H,
+        "ρ" | "rho" | "Rho" | "rs" => Symbol::Rho,
+        "r" if (0..i).any(|k| view.any(k, &["spearman", "spearman’s", "spearman's"])) => Symbol::Rho,
+        "r" if i > 0 || view.len() == 1 => Symbol::R,
         "χ2" | "X2" | "x2" | "chi2" | "Chi2" => Symbol::ChiSquared,
         "χ" | "Χ" => Symbol::ChiSquared,
         "X" | "x" if view.number(i + 1).is_some_and(|n| n.count() == Some(2)) => Symbol::ChiSquared,
@@ -83,6 +100,13 @@ pub(super) fn read(view: &SentenceView, head: Head, df: (Option<Figure>, Option<
     let [read] = cell::read(&cut)[..] else { return None };
     let Form::Single { value, percent: false } = read.form else { return None };
     if matches!(symbol, Symbol::F | Symbol::ChiSquared | Symbol::U | Symbol::H) && value.printed.negative {
+        return None;
+    }
+    // `693` for 0.693: no normal deviate.
+    if symbol == Symbol::Z && value.printed.value().abs() > 60.0 {
+        return None;
+    }
+    if matches!(symbol, Symbol::R | Symbol::Rho) && value.printed.value().abs() > 1.0 {
         return None;
     }
     Some(Statistic {

@@ -6,7 +6,7 @@ use super::super::{Figure, Group, Inference, IntervalReading, Origin, Readings, 
 use super::cell::{self, At, Form, Read};
 use super::meaning::Meaning;
 use super::{Setting, Table};
-use crate::layout::{ColumnRole, Part};
+use crate::layout::{ColumnRole, Part, Row};
 use crate::printed::{Printed, Range};
 use crate::text::Span;
 
@@ -72,7 +72,9 @@ pub(super) fn read(table: &Table, number: usize, setting: &Setting, readings: &m
         _ => false,
     };
     let two_parts = |l: &SentenceView| (0..l.len()).filter(|&i| l.sign(i, '/')).count() == 1;
-    let categories = labels.iter().any(two_parts) && cells.len() > 1 && cells.iter().all(parts);
+    let blank = |h: &Held| h.reads.is_empty() && h.view.len() == 1 && h.view.sign(0, '-');
+    let filled = || cells.iter().filter(|h| !blank(h));
+    let categories = labels.iter().any(two_parts) && filled().count() > 1 && filled().all(parts);
     let sexes = categories || labels.iter().any(names_sexes);
     let whole = |h: &Held| match h.reads[..] {
         [Read { form: Form::Single { value, percent: false }, .. }] => {
@@ -83,6 +85,7 @@ pub(super) fn read(table: &Table, number: usize, setting: &Setting, readings: &m
     let bare = setting.bare_counts && cells.len() > 1 && cells.iter().all(whole) && !labels.iter().any(names_measure);
     let row_is = RowIs { sexes, bare };
     let below = table.brackets_below(number);
+    let joint = joint_error(table, row, setting, &cells);
     for held in &cells {
         let column = table.grid.cells[held.index].column as usize;
         let at = setting.heads.get(column).copied().unwrap_or_default();
@@ -118,7 +121,8 @@ pub(super) fn read(table: &Table, number: usize, setting: &Setting, readings: &m
         }
         let bracket = if below.is_some() { evidence_below(&said).or(bracket) } else { bracket };
         if let [Read { form: Form::Single { value, percent: false }, .. }] = reads[..]
-            && let Some(group) = two_cells(table, held, value, &said)
+            && let Some(group) =
+                joint.map(|se| pooled(held, value, se)).or_else(|| two_cells(table, held, value, &said))
         {
             add(group, None);
             continue;
@@ -204,6 +208,27 @@ fn limits_alone(held: &Held, own: &Meaning) -> Option<Group> {
     })
 }
 
+/// The standard error at the end of a row, for all its means, where they are bare figures.
+fn joint_error(table: &Table, row: &Row, setting: &Setting, cells: &[Held]) -> Option<Printed> {
+    let bare = |h: &Held| matches!(h.reads[..], [Read { form: Form::Single { percent: false, .. }, .. }]);
+    let cell = table.layout.cell_in(table.grid, row, setting.pooled?).filter(|_| cells.iter().all(bare))?;
+    match cell::read(&table.view(cell))[..] {
+        [Read { form: Form::Single { value, percent: false }, .. }] if !value.printed.negative => Some(value.printed),
+        _ => None,
+    }
+}
+
+/// A mean whose standard error stands at the end of the row.
+fn pooled(held: &Held, value: At, se: Printed) -> Group {
+    Group {
+        n: held.size.map(|s| s.figure),
+        mean: Some(value.printed),
+        spread_kind: Some(SpreadKind::Se),
+        spread: vec![se],
+        ..Group::new(held.view.span(value.first, value.last), held.view.id)
+    }
+}
+
 /// A summary whose other half stands in the next cell: `12 | 30`, `5.2 | 1.1`, `8 | 7–10`.
 fn two_cells(table: &Table, held: &Held, value: At, said: &[&Meaning; 5]) -> Option<Group> {
     let next = held.index + 1;
@@ -263,6 +288,11 @@ fn total_of(
     }
     let Some(size) = size else { return Some((None, None)) };
     if fits(Printed::whole(events), percent, size.value) {
+        return Some((Some(size.figure), Some(size.figure)));
+    }
+    // A percentage below what the head's size gives is of no smaller group: missing answers make it larger. Where no
+    // size between the count and the head's gives it, the head's is its total, right or wrong.
+    if only_above(events, percent, size.value) {
         return Some((Some(size.figure), Some(size.figure)));
     }
     // Missing answers shrink the group down a table: only the one size that the percentage allows will do.
@@ -540,6 +570,23 @@ fn only_size(events: u64, percent: Printed, header: u64) -> Option<Option<u64>> 
     let most = if share.lo > 0.0 { (100.0 * events as f64 / share.lo * (1.0 + 1e-12)).floor() } else { f64::INFINITY };
     let within = least <= header as f64 && least >= header as f64 / 2.0;
     Some((least == most && within).then_some(least as u64))
+}
+
+/// Whether no size from the count up to the header's gives the percentage, near as it is to that of the header's.
+fn only_above(events: u64, percent: Printed, header: u64) -> bool {
+    let share = percent.rounded();
+    if events == 0 || share.hi <= 0.0 || events > header {
+        return false;
+    }
+    let e = 100.0 * events as f64;
+    // Far off it is a share of something else, or no share at all.
+    const NEAR: f64 = 10.0;
+    if (e / header as f64 - percent.value()).abs() > NEAR {
+        return false;
+    }
+    let least = (e / share.hi * (1.0 - 1e-12)).ceil().max(events as f64);
+    let most = if share.lo > 0.0 { (e / share.lo * (1.0 + 1e-12)).floor() } else { f64::INFINITY };
+    least > header as f64 || least > most
 }
 
 /// The count in the brackets of `30 (12)`, with its token.

@@ -23,6 +23,10 @@ impl Table<'_> {
     pub(super) fn block_of(&self, index: usize, cell: usize, panel: Option<usize>, own: &[usize]) -> Option<Block> {
         let row = &self.layout.rows[index];
         let title = row.role == RowRole::Section;
+        // "Chi square for trend = 7.5" in the cell above: what the P compares began there.
+        if self.begins_above(index, cell) {
+            return Some(Block { groups: Vec::new(), arms: 0, doubtful: true });
+        }
         let rows = self.rows_below(index, cell);
         let spans = self.grid.cells[cell].row_span > 1;
         if rows.is_empty() {
@@ -55,6 +59,11 @@ impl Table<'_> {
                 whole &= self.is_bare(below);
                 continue;
             };
+            // A dash among them: it is open what was counted there.
+            if list.len() != arms {
+                whole = false;
+                continue;
+            }
             groups.extend(list);
             if complete.is_none() && self.exhausts(&groups, arms) {
                 complete = Some((groups.len(), k + 1));
@@ -103,6 +112,18 @@ impl Table<'_> {
         Some(Block { groups, arms: 0, doubtful: !self.layout.rows_are_groups })
     }
 
+    /// The cell above a P, in its own column, holds something else than a P.
+    fn begins_above(&self, index: usize, cell: usize) -> bool {
+        let Some(above) = index.checked_sub(1).map(|i| &self.layout.rows[i]).filter(|r| r.role == RowRole::Data) else {
+            return false;
+        };
+        let over = self.layout.cell_in(self.grid, above, self.column(cell));
+        over.is_some_and(|c| {
+            let view = self.view(c);
+            self.p_in(c).is_empty() && (0..view.len()).any(|i| view.sign(i, '=') || view.any(i, &["chi", "test"]))
+        })
+    }
+
     /// Rows below that have figures and no P of their own in the column of a P.
     fn rows_below(&self, index: usize, cell: usize) -> Range<usize> {
         let start = index + 1;
@@ -119,7 +140,12 @@ impl Table<'_> {
             let own =
                 self.layout.cell_in(self.grid, below, k).is_some_and(|c| !self.view(c).is_empty() && !self.is_dash(c));
             let new_title = !title && !self.stub_is_single() && below.section != row.section;
-            if below.role != RowRole::Data || own || new_title {
+            // "Total" sums up the rows above it.
+            let total = below.labels.last().is_some_and(|&l| {
+                let view = self.view(l);
+                view.len() == 1 && view.any(0, &["total", "all", "overall"])
+            });
+            if below.role != RowRole::Data || own || new_title || total {
                 break;
             }
             end += 1;
@@ -127,7 +153,7 @@ impl Table<'_> {
         start..end
     }
 
-    fn is_dash(&self, cell: usize) -> bool {
+    pub(super) fn is_dash(&self, cell: usize) -> bool {
         let view = self.view(cell);
         view.len() == 1 && view.sign(0, '-')
     }

@@ -6,9 +6,9 @@ mod notes;
 use super::sentence::Members;
 use super::{Feature, ReportedResult, StatedTest, feature};
 use crate::context::{Stated, Test};
-use crate::layout::{ColumnRole, Layout, Row, RowRole, around};
+use crate::layout::{ColumnRole, Layout, Panel, Row, RowRole, around};
 use crate::manuscript::{BlockKind, Grid, Manuscript};
-use crate::reading::{Figure, Group, Inference, Origin, Readings, Scan, SentenceView};
+use crate::reading::{Figure, Group, Inference, Origin, Readings, Scan, SentenceView, SpreadKind, Symbol};
 use crate::text::Span;
 use notes::{Notes, of_label, tests_of};
 use std::ops::Range;
@@ -24,7 +24,8 @@ pub(super) fn join(
 ) {
     let block = &manuscript.blocks[number];
     let BlockKind::Table(grid) = &block.kind else { return };
-    let layout = Layout::of(block, number, grid);
+    let Ok(at) = readings.layouts.binary_search_by_key(&number, |l| l.0) else { return };
+    let layout = &readings.layouts[at].1;
     let around = around(manuscript, number);
     let table = Table { manuscript, scan, grid, first: scan.of_block(number).start, layout, members, readings };
     let notes = table.notes(&around);
@@ -38,7 +39,7 @@ struct Table<'a> {
     scan: &'a Scan,
     grid: &'a Grid,
     first: u32,
-    layout: Layout,
+    layout: &'a Layout,
     members: &'a Members,
     readings: &'a Readings,
 }
@@ -159,8 +160,14 @@ impl<'a> Table<'a> {
         }
         let mut lists: Vec<Vec<usize>> = Vec::new();
         let mut met = 0;
+        let mut blank = 0;
         for cell in panel.groups.iter().filter_map(|&k| self.layout.cell_in(self.grid, row, k)) {
             let groups: Vec<usize> = self.groups_in(cell).collect();
+            // A dash: the group has no such figure.
+            if groups.is_empty() && self.is_dash(cell) {
+                blank += 1;
+                continue;
+            }
             if met == 0 {
                 lists = vec![Vec::new(); groups.len()];
             }
@@ -172,7 +179,7 @@ impl<'a> Table<'a> {
                 list.push(g);
             }
         }
-        if met < panel.groups.len() || met < 2 { Vec::new() } else { lists }
+        if met + blank < panel.groups.len() || met < 2 { Vec::new() } else { lists }
     }
 
     /// The results in the columns of one comparison.
@@ -233,9 +240,17 @@ impl<'a> Table<'a> {
                 if panel.doubtful || bundle.columns.iter().any(|&k| self.layout.columns[k].doubtful) {
                     result.features.push((Feature::Unclear, span));
                 }
+                // One standard error for all: of a model, or of one group.
+                let se = |g: &usize| self.readings.groups[*g].spread_kind == Some(SpreadKind::Se);
+                if self.layout.pooled().is_some() && groups.iter().all(se) {
+                    result.features.push((Feature::Unclear, span));
+                }
                 if panel.times {
                     result.features.push((Feature::Paired, span));
                 }
+            }
+            if bundle.panel.and_then(|k| self.layout.panels.get(k)).is_some_and(|p| self.has_dash(row, p)) {
+                result.features.push((Feature::OtherGroups, span));
             }
             if shares_of_row(self.readings, &groups) {
                 result.features.push((Feature::OtherGroups, span));
@@ -244,6 +259,11 @@ impl<'a> Table<'a> {
             self.describe(row, &bundle.columns, &mut result, notes);
             out.push(result);
         }
+    }
+
+    /// A group of the panel has a dash in the row.
+    fn has_dash(&self, row: &Row, panel: &Panel) -> bool {
+        panel.groups.iter().filter_map(|&k| self.layout.cell_in(self.grid, row, k)).any(|c| self.is_dash(c))
     }
 
     /// The two groups that the head of a P names, where the panel has more: `P (A vs. C)`.
@@ -313,7 +333,13 @@ impl<'a> Table<'a> {
             };
             if beside {
                 let span = self.span_of(&result);
-                result.features.push((Feature::Unclear, span));
+                // With its degrees of freedom, a statistic in the cell is that of the P, whatever groups they compare.
+                let whole = |s: usize| {
+                    let s = &self.readings.statistics[s];
+                    s.df1.is_some() || s.symbol == Symbol::Z
+                };
+                let open = if result.statistic.is_some_and(whole) { Feature::OtherGroups } else { Feature::Unclear };
+                result.features.push((open, span));
                 self.describe(row, &[self.column(cell)], &mut result, notes);
             }
             out.push(result);

@@ -166,7 +166,9 @@ fn inputs(facts: &Look, r: &Recomputation) -> String {
     const MOST: usize = 4;
     let part = |name: &str| r.inputs.iter().find(|(_, part)| *part == name).map(|&(s, _)| facts.quote(s));
     if let (Some(count), Some(total)) = (part("the count"), part("the total")) {
-        return wording::one_line(&format!("{count} of {total}"));
+        // A total that is printed nowhere has the place of what it was inferred from; the working names it.
+        let unprinted = total.contains(count).then(|| r.working.split(['/', ' ']).nth(1)).flatten();
+        return wording::one_line(&format!("{count} of {}", unprinted.filter(|_| total != count).unwrap_or(total)));
     }
     let others = || r.inputs.iter().filter(|(s, _)| *s != r.figure);
     let words = |sizes: bool| {
