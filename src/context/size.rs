@@ -4,6 +4,7 @@
 use super::Context;
 use crate::manuscript::Manuscript;
 use crate::reading::group::named::{self, Known};
+use crate::reading::group::total;
 use crate::reading::{Inference, Readings, Scan};
 
 /// Fills the sizes of groups that a sentence sets side by side, where it names arms of known size and the order of names
@@ -21,7 +22,11 @@ pub fn fill_sizes(manuscript: &Manuscript, scan: &Scan, readings: &mut Readings,
         let to = from + groups[from..].iter().take_while(|g| g.sentence == sentence).count();
         let here = &mut groups[from..to];
         if here.iter().any(|g| g.n.is_none() && g.events.is_none() && g.has_figure()) {
-            named::assign(&scan.view(manuscript, sentence), here, &known, Inference::ArmSize);
+            let view = scan.view(manuscript, sentence);
+            // Another study's arms may bear the same names.
+            if !total::of_others(&view) {
+                named::assign(&view, here, &known, Inference::ArmSize);
+            }
         }
         from = to;
     }
