@@ -5,6 +5,7 @@ use super::Context;
 use crate::manuscript::{BlockKind, Manuscript};
 use crate::printed::Printed;
 use crate::reading::group::named::{self, Known};
+use crate::reading::group::total;
 use crate::reading::{Figure, Group, Inference, Origin, Readings, Scan};
 use crate::text::Span;
 use std::collections::HashMap;
@@ -28,10 +29,13 @@ pub fn fill_sizes(manuscript: &Manuscript, scan: &Scan, readings: &mut Readings,
         let to = from + groups[from..].iter().take_while(|g| g.sentence == sentence).count();
         let here = &mut groups[from..to];
         if here.iter().any(|g| g.n.is_none() && g.events.is_none() && g.has_figure()) {
-            if named {
-                named::assign(&scan.view(manuscript, sentence), here, &known, Inference::ArmSize);
+            let view = scan.view(manuscript, sentence);
+            // Another study's arms may bear the same names.
+            let ours = !total::of_others(&view);
+            if named && ours {
+                named::assign(&view, here, &known, Inference::ArmSize);
             }
-            if let Some(arms) = &alike
+            if let Some(arms) = alike.as_ref().filter(|_| ours)
                 && !in_table(manuscript, &here[0])
             {
                 two_unnamed(here, arms);

@@ -426,8 +426,7 @@ fn read_paragraph(
     let tested = |sentence| !within(p, |p| p.sentence, sentence..sentence + 1).is_empty();
     let groups = &mut readings.groups[first_group..];
     group::named::fill(groups, |id| scan.view(manuscript, id));
-    let speaks_of_arms = |id| group::total::speaks_of_arms(&scan.view(manuscript, id));
-    group::total::fill(groups, &mentions, tested, speaks_of_arms);
+    group::total::fill(groups, &mentions, tested, |id| scan.view(manuscript, id));
 }
 
 fn read_sentence(

@@ -151,12 +151,49 @@ pub fn find(view: &SentenceView) -> Vec<Named> {
         }
         found = parts(view);
     }
+    if tells_of_leaving_behind(view, &found) {
+        found.clear();
+    }
     found
+}
+
+/// "13 (8 in the syrup group and 5 in the water group) had declined": those who left make no groups.
+fn tells_of_leaving_behind(view: &SentenceView, found: &[Named]) -> bool {
+    let [first, .., last] = found else { return false };
+    let end = (last.last + 1..(last.last + 9).min(view.len())).find(|&k| view.number(k).is_some() || view.sign(k, ';'));
+    let behind = (last.last + 1..end.unwrap_or((last.last + 9).min(view.len()))).any(|k| {
+        view.any(k, LEAVING) && !view.any(k, &["adverse"]) || view.any(k, &["switched", "missing", "stopped"])
+    });
+    let before = (first.first.saturating_sub(8)..first.first).any(|k| {
+        view.any(
+            k,
+            &[
+                "withdrew",
+                "dropped",
+                "discontinued",
+                "declined",
+                "refused",
+                "died",
+                "deaths",
+                "withdrawals",
+                "dropouts",
+            ],
+        )
+    });
+    // "Swarming occurred in 43 hives (20 syrup, 23 water)": what befell them.
+    let befell = (first.first.saturating_sub(8)..first.first)
+        .any(|k| view.any(k, &["occurred", "death", "deaths", "died", "relapsed", "relapses", "experienced"]));
+    behind || befell || before && first.n < 20
 }
 
 /// Whether a sentence tells who left the study or what befell them: its sizes are not those of arms.
 pub fn tells_of_leaving(view: &SentenceView) -> bool {
-    (0..view.len()).any(|k| view.any(k, LEAVING) || view.any(k, &["missing", "died", "stopped"]))
+    tells_of_leaving_within(view, 0, view.len())
+}
+
+/// The same of some tokens of a sentence.
+pub fn tells_of_leaving_within(view: &SentenceView, from: usize, to: usize) -> bool {
+    (from..to).any(|k| view.any(k, LEAVING) || view.any(k, &["missing", "died", "stopped"]))
 }
 
 /// A word for a group beside the size.

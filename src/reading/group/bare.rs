@@ -36,6 +36,7 @@ const NO_LEVEL: &[&str] = &[
     "p",
     "percent",
     "coefficient",
+    "window",
 ];
 
 /// A figure at token `i` that the sentence calls a mean or median.
@@ -94,7 +95,7 @@ pub(super) fn name(view: &SentenceView, i: usize) -> Option<usize> {
             // "M" is a mean only in "M = 5.2", which has a reading of its own.
             // So is "on average" a manner of speaking.
             let by = view.eq(k.wrapping_sub(1), "by") || view.eq(k.wrapping_sub(2), "by");
-            let named = view.word(k).len() > 1 && !view.eq(k.wrapping_sub(1), "on") && !by;
+            let named = view.word(k).len() > 1 && !view.any(k.wrapping_sub(1), &["on", "moving", "rolling"]) && !by;
             // "the difference in means was"
             let between =
                 (k.saturating_sub(3)..k).any(|j| view.any(j, &["difference", "differences", "change", "ratio"]));

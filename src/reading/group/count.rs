@@ -10,7 +10,10 @@ use crate::printed::Printed;
 
 /// A count or percentage summary starting at token `i`.
 pub(super) fn read(view: &SentenceView, i: usize, setting: &Setting, taken: &[bool]) -> Option<Draft> {
-    fraction(view, i).or_else(|| count_and_percent(view, i, taken)).or_else(|| percent_first(view, i, setting, taken))
+    fraction(view, i)
+        .or_else(|| count_and_percent(view, i, taken))
+        .or_else(|| percent_first(view, i, setting, taken))
+        .or_else(|| count_of_told(view, i))
 }
 
 /// A count in digits or words: `45`, `Sixteen`, `One hundred and forty nine`; gives the token after it.
@@ -100,13 +103,24 @@ fn percent_in_words(view: &SentenceView, i: usize) -> Option<(Printed, usize)> {
 /// A percentage in brackets at or a few plain words after `at`: `(44.6%)`, `; 44.6%`; gives its last token.
 fn percent_in_brackets(view: &SentenceView, at: usize, words: usize) -> Option<(Printed, usize)> {
     let mut open = at;
-    while open < at + words
-        && view.get(open)?.is_word()
-        && !view.is(open, Classes::VERSUS)
-        && !view.any(open, &["and", "or"])
-        && !(view.eq(open, "to") && view.number(open + 1).is_some())
-        && !(open == at && view.is(open, Classes::UNIT))
-    {
+    while open < at + words {
+        // "31 were still flying after 9 weeks (52%)": a time between the count and its share.
+        if open > at
+            && view.any(open, &["after", "at", "by", "within", "for", "over"])
+            && view.number(open + 1).is_some()
+            && view.is(open + 2, Classes::UNIT)
+            && view.signs(open + 3, &['(', '['])
+        {
+            open += 3;
+            break;
+        }
+        let stops = view.is(open, Classes::VERSUS)
+            || view.any(open, &["and", "or"])
+            || view.eq(open, "to") && view.number(open + 1).is_some()
+            || open == at && view.is(open, Classes::UNIT);
+        if stops || !view.get(open)?.is_word() {
+            break;
+        }
         open += 1;
         if view.sign(open, '-') && view.get(open + 1).is_some_and(|t| t.is_word()) {
             open += 1;
@@ -254,7 +268,7 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
                     "criteria",
                     "following",
                 ],
-            );
+            ) || view.any(end, PLACES);
             if scale || view.any(end + 1, &["group", "groups", "arm", "arms", "conditions"]) {
                 return None;
             }
@@ -268,6 +282,25 @@ fn fraction(view: &SentenceView, i: usize) -> Option<Draft> {
     group.one_expression = true;
     Some(Draft { first: i, last, group })
 }
+
+/// As far as a total told before may stand from its count.
+const WIDE: usize = 60;
+
+/// Where a study took place.
+const PLACES: &[&str] = &[
+    "site",
+    "sites",
+    "centres",
+    "centers",
+    "hospitals",
+    "clinics",
+    "countries",
+    "practices",
+    "schools",
+    "villages",
+    "trials",
+    "studies",
+];
 
 /// A verb that tells what became of the members of a group.
 fn verb(view: &SentenceView, k: usize) -> bool {
@@ -344,7 +377,9 @@ fn count_and_percent(view: &SentenceView, i: usize, taken: &[bool]) -> Option<Dr
     if view.is(next, Classes::PERCENT) || view.eq(next, "per") {
         return None;
     }
-    let (percent, last) = percent_in_brackets(view, next, 0).or_else(|| percent_in_brackets(view, next, 4))?;
+    let (percent, last) = percent_in_brackets(view, next, 0)
+        .or_else(|| percent_in_brackets(view, next, 4))
+        .or_else(|| members_and_percent(view, i, next))?;
     // `1.2 (26%)` and a percent after a comma are taken only where a count can be meant.
     let in_bracket =
         i > 0 && view.signs(i - 1, &['(', '[']) && view.signs(last + 1, &[')', ']']) && view.sign(next, ';');
@@ -371,10 +406,58 @@ fn count_and_percent(view: &SentenceView, i: usize, taken: &[bool]) -> Option<Dr
     Some(Draft { first: i, last: end, group })
 }
 
+/// `(33 patients, 2.4%)`: members between the count and its percentage, in a bracket of their own.
+fn members_and_percent(view: &SentenceView, i: usize, next: usize) -> Option<(Printed, usize)> {
+    let opens = |k: usize| view.signs(k, &['(', '[']);
+    if i == 0 || !(opens(i - 1) || i > 1 && opens(i - 2) && view.any(i - 1, &["for", "in"])) {
+        return None;
+    }
+    let comma = (next..next + 3).find(|&k| view.sign(k, ','))?;
+    let (percent, after) = percent_at(view, comma + 1)?;
+    let whole = view.is(comma - 1, Classes::GROUP) && view.signs(after, &[')', ']', ';', ',']);
+    whole.then_some((percent, after - 1))
+}
+
+/// "Of the 45 hives that were fed, 12 swarmed": a count whose total the sentence has told before, without percentage.
+fn count_of_told(view: &SentenceView, i: usize) -> Option<Draft> {
+    let opens = i > 1 && (view.sign(i - 1, ',') || view.sign(i - 2, ',') && view.any(i - 1, &["and", "only"]));
+    if !opens {
+        return None;
+    }
+    let (events, next) = count_at(view, i)?;
+    // A verb right behind the count, or behind the members or "of them".
+    let members = next + usize::from(view.is(next, Classes::GROUP));
+    let of_them =
+        members + if view.eq(members, "of") && view.any(members + 1, &["them", "these", "whom"]) { 2 } else { 0 };
+    let acts =
+        verb(view, of_them) || view.get(of_them).is_some_and(|t| t.is_word()) && view.word(of_them).ends_with("ed");
+    let divided =
+        (of_them..of_them + 3).any(|k| view.any(k, &["assigned", "allocated", "randomised", "randomized", "randomly"]));
+    if !acts || divided || view.any(of_them, &["of"]) {
+        return None;
+    }
+    let (total, span) = of_the(view, i).filter(|&(total, _)| events <= total && total >= 5)?;
+    // Nor do lists of those who left make groups. A window: a sentence of counts must not take the square of its length.
+    if super::arm::tells_of_leaving_within(view, i.saturating_sub(WIDE), (i + WIDE).min(view.len())) {
+        return None;
+    }
+    // Places are no participants.
+    let of = view.token_at(span.end);
+    if (of..of + 3).any(|k| view.any(k, PLACES)) {
+        return None;
+    }
+    let mut group = empty(view, i, next - 1);
+    group.events = Some(whole(view, events, i, next - 1));
+    group.total =
+        Some(Figure { printed: Printed::whole(total), origin: Origin::Inferred(Inference::SameSentence, span) });
+    group.n = group.total;
+    Some(Draft { first: i, last: next - 1, group })
+}
+
 /// "Of the 786 treated students, …" opening the sentence or clause before token `i`.
 fn of_the(view: &SentenceView, i: usize) -> Option<(u64, crate::text::Span)> {
     let mut k = i;
-    while k > 0 {
+    while k > i.saturating_sub(2 * WIDE) {
         k -= 1;
         let out = view.eq(k, "of")
             && view.eq(k.wrapping_sub(1), "out")
@@ -437,10 +520,9 @@ fn percent_first(view: &SentenceView, i: usize, setting: &Setting, taken: &[bool
             }
         }
     }
-    // `9%, 3/33`
+    // `9%, 3/33`, `9%, 3 out of 33`
     if view.signs(next, &[',', ';'])
         && let Some((events, after)) = count_at(view, next + 1)
-        && view.sign(after, '/')
         && let Some((total, k, end)) = denominator(view, after).filter(|&(t, ..)| events <= t && t > 1)
         && fits_share(events, total, percent)
     {

@@ -13,7 +13,7 @@ pub(super) fn assign(view: &SentenceView, drafts: &mut [Draft]) {
         let first = drafts[d].first;
         drafts[d].group.label =
             bracketed(view, first, limit).or_else(|| behind(view, last + 1, limit)).unwrap_or_default();
-        drafts[d].group.change = is_change(view, drafts[d].first);
+        drafts[d].group.change = is_change(view, first) || d > 0 && shares_change(view, &drafts[d - 1], first);
     }
 }
 
@@ -59,6 +59,21 @@ fn behind(view: &SentenceView, from: usize, limit: usize) -> Option<String> {
         }
     }
     (last > first).then(|| view.quote(first, last - 1).to_string())
+}
+
+/// `changes (syrup 5.2 ± 1.1; water 6.1 ± 1.0)`: in one bracket, what is said of the first member is said of all.
+fn shares_change(view: &SentenceView, before: &Draft, first: usize) -> bool {
+    let (from, change) = (before.last + 1, before.group.change);
+    let near = change && (from..from + 8).contains(&first);
+    let open = |k: usize| view.signs(k, &['(', '[']);
+    let inside = near && before.group.mean.is_some() && {
+        // The bracket was opened before the member before this one, and is closed nowhere between.
+        (before.first.saturating_sub(24)..before.first).rev().take_while(|&k| !view.signs(k, &[')', ']'])).any(open)
+    };
+    inside
+        && (from..first).any(|k| view.sign(k, ';'))
+        && !(from..first)
+            .any(|k| view.signs(k, &['(', '[', ')', ']', '.']) || view.any(k, &["from", "to", "pre", "post"]))
 }
 
 /// "change", "increase", "reduction" … told before the figure and after the last figure.

@@ -43,6 +43,7 @@ pub(super) fn read(
     drafts: &mut Vec<Draft>,
 ) {
     let mut before: Option<(usize, bool)> = None;
+    let mut timed = None;
     // "at the end it was 2.1 (95% CI …) and 1.9 (95% CI …)": the paragraph has told that its figures are means.
     let carried = setting.limits.filter(|_| intervals.len() >= 2 && !(0..view.len()).any(|k| view.any(k, EFFECT)));
     for interval in intervals {
@@ -53,8 +54,14 @@ pub(super) fn read(
         if estimates.iter().any(|e| effect(&e)) || interval.credible {
             continue;
         }
+        // "a mean 6 mm reduction on the scale (95% CI …)"
+        let figure_end = view.token_at(span.end);
+        if (figure_end..last.min(figure_end + 12)).any(|k| view.any(k, EFFECT) && !view.sign(k - 1, '(')) {
+            continue;
+        }
         let follows = before.filter(|&(end, _)| first - end.min(first) <= 14 && list(view, end, first)).map(|b| b.1);
-        let Some(median) = named(view, first).or(follows).or(carried) else { continue };
+        let of_time = || of_time(view, first, figure_end, &mut timed);
+        let Some(median) = named(view, first).or(follows).or(carried).or_else(of_time) else { continue };
         let inside = interval.lower.value() <= value.value() && value.value() <= interval.upper.value();
         if !inside {
             continue;
@@ -70,6 +77,20 @@ pub(super) fn read(
         before = Some((last, median));
         setting.limits = Some(median);
     }
+}
+
+/// "Clearance took 61 hours (95% CI 48 to 75) … and 43 hours …" where a hazard ratio or a log-rank test compares them:
+/// times to an event, of which the median is told. `timed` keeps what the sentence says of that.
+fn of_time(view: &SentenceView, first: usize, end: usize, timed: &mut Option<bool>) -> Option<bool> {
+    const TIMES: &[&str] = &["hours", "hour", "days", "day", "weeks", "months", "years", "minutes"];
+    if !view.any(end, TIMES) || !(first.saturating_sub(24)..first).all(|k| !view.any(k, EFFECT)) {
+        return None;
+    }
+    let told = *timed.get_or_insert_with(|| {
+        (0..view.len()).any(|k| view.any(k, &["hazard", "hr", "logrank", "kaplan"]) || view.phrase(k, &["log", "rank"]))
+            || (1..view.len()).any(|k| view.eq(k, "rank") && view.sign(k - 1, '-'))
+    });
+    told.then_some(true)
 }
 
 /// Gives a percentage that was read by itself the interval in the bracket right behind it: `63% (95% CI 58 to 68)`.

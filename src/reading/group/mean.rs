@@ -285,6 +285,7 @@ fn bracketed(
             Some(k @ (SpreadKind::Iqr | SpreadKind::Range)) => k,
             Some(_) => return None,
             None if named_median => SpreadKind::Unstated,
+            None if carried_median(view, i, centre, (a, b), setting) => SpreadKind::Iqr,
             // "a mean age of 45 years (21–70)"
             None if a.value() < centre.value() && centre.value() < b.value() && bare::name(view, i).is_some() => {
                 SpreadKind::Unstated
@@ -358,6 +359,29 @@ fn has_twin(view: &SentenceView, i: usize, centre: Printed, spread: Printed, clo
             && view.eq(k + 4, view.word(unit))
     };
     (i.saturating_sub(REACH)..(i + REACH).min(view.len())).any(alike)
+}
+
+/// "On day 2 it was alike: 340 mL (260, 840) v 210 mL (170, 630)" after a sentence of medians with quartiles: two figures
+/// of one form, each between two limits that nothing calls an interval.
+fn carried_median(
+    view: &SentenceView,
+    i: usize,
+    centre: Printed,
+    limits: (Printed, Printed),
+    setting: &Setting,
+) -> bool {
+    let inside = limits.0.value() <= centre.value() && centre.value() <= limits.1.value();
+    let plain = |k: usize| {
+        let named = view.is(k, Classes::CI.or(Classes::CONFIDENCE).or(Classes::RATIO).or(Classes::MEAN));
+        let effect = &["difference", "differences", "reduction", "increase", "decrease", "effect", "change"];
+        !named && !view.any(k, effect)
+    };
+    setting.declared.median == Some(SpreadKind::Iqr)
+        && inside
+        && limits.0.value() < limits.1.value()
+        && (i.saturating_sub(30)..(i + 40).min(view.len())).all(plain)
+        && (i.saturating_sub(20)..(i + 20).min(view.len()))
+            .any(|k| view.is(k, Classes::VERSUS) || view.is(k, Classes::AND))
 }
 
 /// `– 10`, `, 10`, `to 10`, `; 10` after a first figure.

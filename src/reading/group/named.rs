@@ -1,6 +1,7 @@
 //! Sizes of groups that the text names with their size and later only by name: "pain was lower with the sling than
 //! without (5.2 ± 1.1 v 6.1 ± 1.0)", where the groups were introduced as `sling (n = 24)` and `usual care (n = 25)`.
 
+use super::super::lexicon::Classes;
 use super::super::sentence::SentenceView;
 use super::super::{Figure, Group, Inference, Origin, within};
 use super::arm;
@@ -26,6 +27,12 @@ pub fn assign(view: &SentenceView, groups: &mut [Group], known: &[Known], infere
         return;
     }
     if open.iter().all(|&g| groups[g].n.is_some()) {
+        return;
+    }
+    // Who was kept, or came, is told of those randomised as often as of those analysed.
+    let kept = &["retention", "attrition", "dropout", "adherence", "attendance", "compliance", "withdrawal"];
+    let first = view.token_at(groups[open[0]].span.start);
+    if groups[open[0]].percent.is_some() && (first.saturating_sub(14)..first).any(|k| view.any(k, kept)) {
         return;
     }
     let mut places: Vec<(usize, usize)> = Vec::new();
@@ -91,7 +98,7 @@ pub fn fill<'a>(groups: &mut [Group], view: impl Fn(u32) -> SentenceView<'a>) {
         .take(MOST + 1)
         .collect();
     if introduced.len() < 2 || introduced.len() > MOST {
-        return;
+        return carry(groups, &view);
     }
     let introduced: Vec<_> = introduced.into_iter().filter(|x| !arm::tells_of_leaving(&view(x.3))).collect();
     let mut from = 0;
@@ -109,11 +116,78 @@ pub fn fill<'a>(groups: &mut [Group], view: impl Fn(u32) -> SentenceView<'a>) {
         }
         if known.len() >= 2 {
             let here = known.iter().any(|k| groups[from..to].iter().any(|g| g.span.overlaps(k.span)));
-            if !here {
+            if here {
+                in_one_sentence(&view(sentence), &mut groups[from..to]);
+            } else {
                 assign(&view(sentence), &mut groups[from..to], &known, Inference::ArmSize);
             }
         }
         from = to;
+    }
+    carry(groups, &view);
+}
+
+/// "31 were fed syrup and 29 water (mean weight 5.2 ± 1.1 v 6.1 ± 1.0)": as many figures behind the named groups of
+/// their sentence as there are groups, joined to one list.
+fn in_one_sentence(view: &SentenceView, groups: &mut [Group]) {
+    let arms = groups.iter().take_while(|g| !g.has_figure()).count();
+    let sizes: Vec<Option<Figure>> = groups[..arms].iter().map(|g| g.n).collect();
+    let figures = &mut groups[arms..];
+    let open = |g: &Group| g.has_figure() && g.n.is_none() && g.events.is_none();
+    if arms < 2 || figures.is_empty() || !figures.len().is_multiple_of(arms) || !figures.iter().all(open) {
+        return;
+    }
+    let listed = figures.chunks(arms).all(|list| {
+        list.windows(2).all(|w| {
+            let (a, b) = (view.token_at(w[0].span.end), view.token_at(w[1].span.start));
+            b.saturating_sub(a) <= 4 && (a..b).any(|k| view.is(k, Classes::AND) || view.is(k, Classes::VERSUS))
+        })
+    });
+    if !listed {
+        return;
+    }
+    for (k, g) in figures.iter_mut().enumerate() {
+        let Some(n) = sizes[k % arms] else { continue };
+        if let Origin::Printed(span) | Origin::Inferred(_, span) = n.origin {
+            g.n = Some(Figure { printed: n.printed, origin: Origin::Inferred(Inference::SameSentence, span) });
+        }
+    }
+}
+
+/// "… were 8.9 and 8.8, respectively" after a sentence that told the same groups in an order of its own: figures that
+/// end in that word take the sizes of the list before, where they name no group themselves.
+fn carry<'a>(groups: &mut [Group], view: &impl Fn(u32) -> SentenceView<'a>) {
+    // The list told last with its word: the sentence and the sizes.
+    let mut told: Option<(u32, Vec<Figure>)> = None;
+    let mut from = 0;
+    while from < groups.len() {
+        let sentence = groups[from].sentence;
+        let to = from + groups[from..].iter().take_while(|g| g.sentence == sentence).count();
+        let here = &mut groups[from..to];
+        from = to;
+        let view = view(sentence);
+        let mut start = 0;
+        for word in (0..view.len()).filter(|&k| view.is(k, Classes::RESPECTIVELY)) {
+            let end = here.partition_point(|g| view.token_at(g.span.start) < word);
+            let list = &mut here[start..end.max(start)];
+            start = end.max(start);
+            let [.., last] = &*list else { continue };
+            let close = word - view.token_at(last.span.end).min(word) <= 4;
+            if let Some((before, sizes)) = &told
+                && close
+                && *before + 1 == sentence
+                && list.len() == sizes.len()
+                && list.iter().all(|g| g.has_figure() && g.n.is_none() && g.events.is_none())
+            {
+                for (g, n) in list.iter_mut().zip(sizes) {
+                    let (Origin::Printed(span) | Origin::Inferred(_, span)) = n.origin else { continue };
+                    g.n = Some(Figure { printed: n.printed, origin: Origin::Inferred(Inference::ArmSize, span) });
+                }
+                continue;
+            }
+            let sizes: Vec<Figure> = list.iter().filter(|g| g.has_figure()).filter_map(|g| g.n).collect();
+            told = (sizes.len() == list.len() && sizes.len() >= 2).then_some((sentence, sizes));
+        }
     }
 }
 

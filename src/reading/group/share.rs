@@ -107,6 +107,57 @@ const NOT_SHARE_AFTER: &[&str] = &[
     "saline",
     "dextrose",
     "glucose",
+    "nacl",
+    "naocl",
+    "hypochlorite",
+    "lidocaine",
+    "lignocaine",
+    "bupivacaine",
+    "levobupivacaine",
+    "ropivacaine",
+    "mepivacaine",
+    "articaine",
+    "procaine",
+    "sevoflurane",
+    "isoflurane",
+    "desflurane",
+    "povidone",
+    "iodine",
+    "peroxide",
+    "fluoride",
+    "sucrose",
+    "albumin",
+    "paraformaldehyde",
+    "formaldehyde",
+    "acid",
+    "acetic",
+    "sodium",
+    "potassium",
+    "chloride",
+    "emulsion",
+    "lotion",
+    "mouthwash",
+    "mouthrinse",
+    "varnish",
+    "gargle",
+    "humidity",
+    "air",
+    "ammonium",
+    "trypsin",
+    "agarose",
+    "bovine",
+    "fetal",
+    "tropicamide",
+    "atropine",
+    "timolol",
+];
+
+/// What a percentage right behind is the strength of.
+#[rustfmt::skip]
+const STRENGTH_OF: &[&str] = &[
+    "lidocaine", "lignocaine", "bupivacaine", "levobupivacaine", "ropivacaine", "chlorhexidine", "hypochlorite", "naocl",
+    "saline", "dextrose", "glucose", "ethanol", "sevoflurane", "isoflurane", "desflurane", "atropine", "tropicamide",
+    "timolol", "articaine", "mepivacaine", "povidone", "iodine", "cream", "gel", "ointment", "solution",
 ];
 
 /// Words that say that a percentage is about so much; what stands before them decides.
@@ -184,6 +235,9 @@ pub(super) fn told(view: &SentenceView, i: usize, next: usize, setting: &Setting
         // The last of a list that is none of shares: "by 31 and 36%".
         let range = range || view.is(b, Classes::AND) && b > 0 && view.number(b - 1).is_some();
         // "between 21% and 26%"
+        // "ropivacaine 0.2%": the name of what it is the strength of, and no share is so small and told so.
+        let strength = view.any(b, STRENGTH_OF);
+        let range = range || strength;
         let range = range || b > 2 && view.is(b, Classes::AND) && view.sign(b - 1, '%') && view.eq(b - 3, "between");
         if sign
             || no_share

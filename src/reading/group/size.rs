@@ -13,6 +13,8 @@ pub(super) fn assign(view: &SentenceView, drafts: &mut [Draft]) {
     }
     let mut sizes = sizes(view);
     // `8% (n = 4)`: the number is the count itself.
+    // `(syrup n = 5; water n = 6; p = 0.7)`: counts that are compared.
+    sizes.retain(|s| !compared(view, s.1));
     sizes.retain(|s| !drafts.iter().any(|d| d.group.events.is_some() && d.first <= s.1 && s.1 <= d.last));
     if sizes.is_empty() {
         return;
@@ -48,6 +50,9 @@ pub(super) fn assign(view: &SentenceView, drafts: &mut [Draft]) {
             continue;
         }
         let before = sizes.iter().rev().find(|s| s.1 < first);
+        // "flights (n = 172) were alike (91% v 87%)": the one size is that of both together.
+        let of_both = sizes.len() == 1 && share && open.len() > 1 && behind.is_none() && opposed(view, drafts, &open);
+        let before = before.filter(|_| !of_both);
         if let Some(&(n, at)) = behind.or(before) {
             give(view, &mut drafts[d], n, at);
         }
@@ -59,6 +64,25 @@ fn give(view: &SentenceView, draft: &mut Draft, n: u64, at: usize) {
         printed: Printed::whole(n),
         origin: Origin::Inferred(Inference::SameSentence, view.span(at, at)),
     });
+}
+
+/// Whether the bracket of a size holds another one and a p-value, and no summary.
+fn compared(view: &SentenceView, at: usize) -> bool {
+    let edge = |k: usize| view.signs(k, &[')', ']', '(', '[']);
+    let Some(open) = (at.saturating_sub(24)..at).rev().find(|&k| edge(k)) else { return false };
+    let inside = || (open + 1..(open + 40).min(view.len())).take_while(|&k| !edge(k));
+    view.signs(open, &['(', '['])
+        && inside().any(|k| view.is(k, Classes::P) && view.signs(k + 1, &['=', '<', '>']))
+        && inside().filter(|&k| view.is(k, Classes::N) && view.sign(k + 1, '=')).count() == 2
+        && !inside().any(|k| view.sign(k, '±') || view.sign(k, '%'))
+}
+
+/// Summaries set against each other.
+fn opposed(view: &SentenceView, drafts: &[Draft], open: &[usize]) -> bool {
+    open.windows(2).any(|w| {
+        let (a, b) = (drafts[w[0]].last + 1, drafts[w[1]].first);
+        b.saturating_sub(a) <= 12 && (a..b).any(|k| view.is(k, Classes::VERSUS) || view.any(k, &["compared", "than"]))
+    })
 }
 
 /// A comma or another figure between a summary and the size behind it.

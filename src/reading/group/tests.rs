@@ -127,7 +127,7 @@ fn groups_of_which_only_the_size_is_told() {
         "Hives were randomised to syrup (n = 31) or water (n = 29).",
         "Hives were randomised to syrup (31) or water (29).",
         "There were 60 hives (31 in the syrup group and 29 in the water group).",
-        "Sixty hives (31 syrup: daily; 29 water) took part.",
+        "Sixty volunteers (31 syrup: daily; 29 water) took part.",
         "In all, 60 were included (syrup, n = 31; water, n = 29).",
         "31 hives were randomised to syrup and 29 to water.",
         "We had 31 and 29 hives included in the syrup and water groups.",
@@ -176,4 +176,85 @@ fn a_total_from_elsewhere_is_one_that_fits() {
     let totals: Vec<_> = groups(text).iter().map(|g| g.total.map(|t| t.printed.value())).collect();
     assert_eq!(totals, [Some(412.0), Some(351.0), None]);
     assert!(matches!(groups(text)[1].total.map(|t| t.origin), Some(Origin::Inferred(..))));
+}
+
+#[test]
+fn counts_of_a_total_told_before() {
+    assert_eq!(told("Of the 45 dogs that were fed, 12 recovered.")[0], "events 12, n 45");
+    assert_eq!(told("Most keepers (75%, 60 out of 80) agreed."), ["events 60, percent 75, n 80"]);
+    assert_eq!(told("Sixty-four per cent (16 of 25) agreed."), ["events 16, percent 64, n 25"]);
+    assert_eq!(told("In all, 31 were still flying after 9 wks (52%).")[0], "events 31, percent 52");
+    assert_eq!(told("They were found in registers (33 patients, 2.4%)."), ["events 33, percent 2.4"]);
+    // Places, arms and those who left are none.
+    for text in [
+        "Of the 9 sites that took part, only 4 sites had losses.",
+        "Of the 38 patients excluded, 21 did not return and 17 were lost.",
+        "Of 120 keepers, 60 were randomised to each group.",
+        "In all, 13 patients (8 in the syrup arm and 5 in the water arm) had declined treatment.",
+        "It was rinsed with 2.5% NaOCl and numbed with ropivacaine 0.2%.",
+    ] {
+        assert!(told(text).is_empty(), "{text}: {:?}", told(text));
+    }
+}
+
+#[test]
+fn whose_size_it_is() {
+    for (text, last) in [
+        // The bracket behind the participants.
+        (
+            "There were 16 males (mean age 31.4 ± 2.6 years) and 14 females (mean age 30.2 ± 2.9 years).",
+            "mean 30.2, ± 2.9, n 14",
+        ),
+        ("Fifty ringers (28 men and 22 women, age 37 ± 6 years) took part.", "mean 37, ± 6, n 50"),
+        // Parts of the whole leave it the only size.
+        (
+            "We saw 82 patients. Sites were legs (n = 44), wings (n = 36) and tails (n = 2). Mean pain was 4.1.",
+            "mean 4.1, n 82",
+        ),
+        // Those analysed.
+        (
+            "Of the 96 patients, 91 were included in the analysis. Their mean age was 48.2 ± 7.1 years.",
+            "mean 48.2, ± 7.1, n 91",
+        ),
+        // Those counted, not those of whom they are counted.
+        ("In all, 9 out of 22 were responders, among whom it fell by a mean of 4.7 ± 1.2.", "mean 4.7, ± 1.2, n 9"),
+        ("Of 90 keepers, 50 (55.6%) received it, with a mean of 3.6 visits.", "mean 3.6, n 50"),
+        // Some stayed, some did not: of whom it is told is open.
+        ("Thirty patients took part and 26 completed the study. The mean gain was 6.4 ± 1.9 mm.", "mean 6.4, ± 1.9"),
+        (
+            "Thirty patients took part and 26 completed the study. Their mean age was 52 ± 8 years.",
+            "mean 52, ± 8, n 30",
+        ),
+        // Another study, and a plan.
+        ("A total of 58 keepers took part. An earlier study showed a gain of 2.3 ± 0.6 mm.", "mean 2.3, ± 0.6"),
+        ("With 80% power, 24 keepers per group were needed. The gain was 2.3 ± 0.6 mm.", "mean 2.3, ± 0.6"),
+        (
+            "Some stopped (syrup n = 5; water n = 6; P = 0.7) after a median of 10 months (IQR 7 to 15).",
+            "median 10, ± 7, ± 15",
+        ),
+        ("Flights (n = 172) were even (91% with syrup v 87% with water).", "percent 87"),
+    ] {
+        assert_eq!(told(text).last().map(String::as_str), Some(last), "{text}");
+    }
+    let order = "Load was 7.8 ± 1.5 and 7.1 ± 1.6 with syrup (n = 28) and water (n = 13), respectively. At the start it was \
+                 8.9 ± 1.7 and 8.8 ± 1.4, respectively.";
+    assert_eq!(told(order)[2..], ["mean 8.9, ± 1.7, n 28", "mean 8.8, ± 1.4, n 13"]);
+}
+
+#[test]
+fn members_of_a_bracket_share_what_is_said_of_them() {
+    let text =
+        "The changes differed in their loads over all of the weeks (A 512 ± 204; B 633 ± 251; A and B 871 ± 318 mg).";
+    assert!(groups(text).iter().all(|g| g.change), "{:?}", groups(text));
+    assert_eq!(
+        told(
+            "Clearance took 61 hours (95% CI 48 to 75) with syrup and 43 hours (95% CI 31 to 52) with water (log-rank test)."
+        ),
+        ["median 61, ± 48, ± 75", "median 43, ± 31, ± 52"]
+    );
+    assert_eq!(
+        told("The median (IQR) yield was 16 kg (12, 20). On day 2 it was alike: 34 kg (26, 84) versus 21 kg (7, 63).")
+            [1..],
+        ["median 34, ± 26, ± 84", "median 21, ± 7, ± 63"]
+    );
 }
