@@ -20,6 +20,8 @@ pub enum Check {
     EstimateOutsideInterval {},
     /// One result printed in two places, all its figures alike but one.
     SameResultDiffers {},
+    /// Rows of a table whose percentages agree on a size that its header does not print; once per table.
+    OtherTotal {},
     /// P printed as exactly zero.
     PrintedZero {},
     /// P printed only as above or below one of `bounds`, or as not significant; once per section.
@@ -197,6 +199,7 @@ impl Check {
             Check::Order { .. } => "order",
             Check::EstimateOutsideInterval {} => "estimate-outside-interval",
             Check::SameResultDiffers {} => "same-result-differs",
+            Check::OtherTotal {} => "other-total",
             Check::PrintedZero {} => "printed-zero",
             Check::ThresholdOnly { .. } => "threshold-only",
             Check::Missing { .. } => "missing",

@@ -1,6 +1,7 @@
 //! The kinds of check, one function each, by what they look at.
 
 mod claims;
+mod denominators;
 mod direction;
 mod figures;
 mod planning;
@@ -24,6 +25,7 @@ pub fn run(check: &Check, facts: &Look) -> Vec<Finding> {
         Check::Order { of } => gathered(facts, figures::order(facts, *of)),
         Check::EstimateOutsideInterval {} => gathered(facts, figures::estimate_outside_interval(facts)),
         Check::SameResultDiffers {} => repeated::same_result_differs(facts),
+        Check::OtherTotal {} => denominators::other_total(facts),
         Check::PrintedZero {} => gathered(facts, figures::printed_zero(facts)),
         Check::ThresholdOnly { bounds } => reporting::threshold_only(facts, bounds),
         Check::Missing { what } => reporting::missing(facts, *what),
