@@ -22,6 +22,8 @@ pub enum Check {
     SameResultDiffers {},
     /// Rows of a table whose percentages agree on a size that its header does not print; once per table.
     OtherTotal {},
+    /// Means below twice their SD, of quantities that cannot be negative; once per table.
+    LowMeans {},
     /// P printed as exactly zero.
     PrintedZero {},
     /// P printed only as above or below one of `bounds`, or as not significant; once per section.
@@ -200,6 +202,7 @@ impl Check {
             Check::EstimateOutsideInterval {} => "estimate-outside-interval",
             Check::SameResultDiffers {} => "same-result-differs",
             Check::OtherTotal {} => "other-total",
+            Check::LowMeans {} => "low-means",
             Check::PrintedZero {} => "printed-zero",
             Check::ThresholdOnly { .. } => "threshold-only",
             Check::Missing { .. } => "missing",

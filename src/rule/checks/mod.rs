@@ -8,6 +8,7 @@ mod planning;
 mod recomputed;
 mod repeated;
 mod reporting;
+mod skewed;
 
 use super::check::Check;
 use super::finding::Finding;
@@ -26,6 +27,7 @@ pub fn run(check: &Check, facts: &Look) -> Vec<Finding> {
         Check::EstimateOutsideInterval {} => gathered(facts, figures::estimate_outside_interval(facts)),
         Check::SameResultDiffers {} => repeated::same_result_differs(facts),
         Check::OtherTotal {} => denominators::other_total(facts),
+        Check::LowMeans {} => skewed::low_means(facts),
         Check::PrintedZero {} => gathered(facts, figures::printed_zero(facts)),
         Check::ThresholdOnly { bounds } => reporting::threshold_only(facts, bounds),
         Check::Missing { what } => reporting::missing(facts, *what),
