@@ -24,6 +24,8 @@ pub enum Check {
     OtherTotal {},
     /// Means below twice their SD, of quantities that cannot be negative; once per table.
     LowMeans {},
+    /// An estimate with its interval that stands in two rows of one table, for two sets of groups.
+    SameEstimate {},
     /// P printed as exactly zero.
     PrintedZero {},
     /// P printed only as above or below one of `bounds`, or as not significant; once per section.
@@ -203,6 +205,7 @@ impl Check {
             Check::SameResultDiffers {} => "same-result-differs",
             Check::OtherTotal {} => "other-total",
             Check::LowMeans {} => "low-means",
+            Check::SameEstimate {} => "same-estimate",
             Check::PrintedZero {} => "printed-zero",
             Check::ThresholdOnly { .. } => "threshold-only",
             Check::Missing { .. } => "missing",

@@ -1,6 +1,7 @@
 //! The kinds of check, one function each, by what they look at.
 
 mod claims;
+mod copied;
 mod denominators;
 mod direction;
 mod figures;
@@ -28,6 +29,7 @@ pub fn run(check: &Check, facts: &Look) -> Vec<Finding> {
         Check::SameResultDiffers {} => repeated::same_result_differs(facts),
         Check::OtherTotal {} => denominators::other_total(facts),
         Check::LowMeans {} => skewed::low_means(facts),
+        Check::SameEstimate {} => gathered(facts, copied::same_estimate(facts)),
         Check::PrintedZero {} => gathered(facts, figures::printed_zero(facts)),
         Check::ThresholdOnly { bounds } => reporting::threshold_only(facts, bounds),
         Check::Missing { what } => reporting::missing(facts, *what),
