@@ -26,6 +26,8 @@ pub enum Check {
     LowMeans {},
     /// An estimate with its interval that stands in two rows of one table, for two sets of groups.
     SameEstimate {},
+    /// A column of p-values that fit the rows beside their own.
+    ColumnShifted {},
     /// P printed as exactly zero.
     PrintedZero {},
     /// P printed only as above or below one of `bounds`, or as not significant; once per section.
@@ -206,6 +208,7 @@ impl Check {
             Check::OtherTotal {} => "other-total",
             Check::LowMeans {} => "low-means",
             Check::SameEstimate {} => "same-estimate",
+            Check::ColumnShifted {} => "column-shifted",
             Check::PrintedZero {} => "printed-zero",
             Check::ThresholdOnly { .. } => "threshold-only",
             Check::Missing { .. } => "missing",

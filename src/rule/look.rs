@@ -1,6 +1,7 @@
 //! Questions that several checks put to the facts.
 
 use super::Facts;
+use super::shift::{Shift, shifts};
 use crate::context::Context;
 use crate::manuscript::{BlockKind, Manuscript, MarkKind, SectionKind};
 use crate::query::Verdict;
@@ -69,6 +70,8 @@ pub struct Look<'a> {
     pub results: &'a [ReportedResult],
     pub checked: &'a [Checked],
     pub alpha: Alpha,
+    /// P columns that fit when they are moved by a row.
+    pub(super) shifts: Vec<Shift>,
     /// Readings of results, each with the result's number.
     members: Vec<(Span, usize)>,
     /// Where the claims, intervals and estimates stand, by place.
@@ -116,6 +119,7 @@ impl<'a> Look<'a> {
             results,
             checked,
             alpha: alpha(facts),
+            shifts: shifts(facts),
             members: members(facts),
             claims: sorted(&mut readings.claims.iter().map(|c| c.span)),
             intervals: sorted(&mut readings.intervals.iter().map(|i| i.span)),
@@ -154,6 +158,11 @@ impl<'a> Look<'a> {
             let mut near = spans[from..].iter().take_while(|s| (s.block, s.start) <= (first.block, second.start));
             near.any(|s| s.end <= second.start)
         })
+    }
+
+    /// The p-value stands in a column that fits when it is moved: asked about with the column.
+    pub(super) fn is_shifted(&self, p: Span) -> bool {
+        self.shifts.iter().any(|s| s.end == Some(p) || s.moved.iter().any(|m| m.p == p))
     }
 
     /// The titles of the sections that a place stands in, from the top.

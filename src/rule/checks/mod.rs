@@ -9,6 +9,7 @@ mod planning;
 mod recomputed;
 mod repeated;
 mod reporting;
+mod shifted;
 mod skewed;
 
 use super::check::Check;
@@ -30,6 +31,7 @@ pub fn run(check: &Check, facts: &Look) -> Vec<Finding> {
         Check::OtherTotal {} => denominators::other_total(facts),
         Check::LowMeans {} => skewed::low_means(facts),
         Check::SameEstimate {} => gathered(facts, copied::same_estimate(facts)),
+        Check::ColumnShifted {} => shifted::columns(facts),
         Check::PrintedZero {} => gathered(facts, figures::printed_zero(facts)),
         Check::ThresholdOnly { bounds } => reporting::threshold_only(facts, bounds),
         Check::Missing { what } => reporting::missing(facts, *what),

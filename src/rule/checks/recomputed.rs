@@ -58,6 +58,7 @@ fn candidates<'a>(
             && from.contains(&basis(facts, checked, r))
             && !within_group(facts, checked, r)
             && !small_total_elsewhere(facts, checked, r)
+            && !facts.is_shifted(r.figure)
             && !tallies(r)
     })
 }
