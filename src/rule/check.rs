@@ -28,6 +28,8 @@ pub enum Check {
     SameEstimate {},
     /// A column of p-values that fit the rows beside their own.
     ColumnShifted {},
+    /// The arms of a sentence do not add up to the number randomised that it states.
+    ArmsAgainstWhole {},
     /// P printed as exactly zero.
     PrintedZero {},
     /// P printed only as above or below one of `bounds`, or as not significant; once per section.
@@ -209,6 +211,7 @@ impl Check {
             Check::LowMeans {} => "low-means",
             Check::SameEstimate {} => "same-estimate",
             Check::ColumnShifted {} => "column-shifted",
+            Check::ArmsAgainstWhole {} => "arms-against-whole",
             Check::PrintedZero {} => "printed-zero",
             Check::ThresholdOnly { .. } => "threshold-only",
             Check::Missing { .. } => "missing",

@@ -11,6 +11,7 @@ mod repeated;
 mod reporting;
 mod shifted;
 mod skewed;
+mod sums;
 
 use super::check::Check;
 use super::finding::Finding;
@@ -32,6 +33,7 @@ pub fn run(check: &Check, facts: &Look) -> Vec<Finding> {
         Check::LowMeans {} => skewed::low_means(facts),
         Check::SameEstimate {} => gathered(facts, copied::same_estimate(facts)),
         Check::ColumnShifted {} => shifted::columns(facts),
+        Check::ArmsAgainstWhole {} => sums::arms_against_whole(facts),
         Check::PrintedZero {} => gathered(facts, figures::printed_zero(facts)),
         Check::ThresholdOnly { bounds } => reporting::threshold_only(facts, bounds),
         Check::Missing { what } => reporting::missing(facts, *what),
