@@ -72,6 +72,7 @@ pub struct Look<'a> {
     pub alpha: Alpha,
     /// P columns that fit when they are moved by a row.
     pub(super) shifts: Vec<Shift>,
+    shifted: HashSet<Span>,
     /// Readings of results, each with the result's number.
     members: Vec<(Span, usize)>,
     /// Where the claims, intervals and estimates stand, by place.
@@ -120,6 +121,7 @@ impl<'a> Look<'a> {
             checked,
             alpha: alpha(facts),
             shifts: shifts(facts),
+            shifted: HashSet::new(),
             members: members(facts),
             claims: sorted(&mut readings.claims.iter().map(|c| c.span)),
             intervals: sorted(&mut readings.intervals.iter().map(|i| i.span)),
@@ -128,6 +130,8 @@ impl<'a> Look<'a> {
             settled,
             mentioned: RefCell::default(),
         };
+        let in_shift = |s: &Shift| s.moved.iter().map(|m| m.p).chain(s.end).collect::<Vec<_>>();
+        look.shifted = look.shifts.iter().flat_map(in_shift).collect();
         look.with_interval = readings.intervals.iter().map(|i| look.part(i.span)).collect();
         look
     }
@@ -162,7 +166,7 @@ impl<'a> Look<'a> {
 
     /// The p-value stands in a column that fits when it is moved: asked about with the column.
     pub(super) fn is_shifted(&self, p: Span) -> bool {
-        self.shifts.iter().any(|s| s.end == Some(p) || s.moved.iter().any(|m| m.p == p))
+        self.shifted.contains(&p)
     }
 
     /// The titles of the sections that a place stands in, from the top.

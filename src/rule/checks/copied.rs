@@ -126,7 +126,9 @@ fn name(facts: &Look, layout: &Layout, offset: u32, block: u32) -> Option<Name> 
     let cell = grid.cell_at(offset)?;
     let number = layout.rows.partition_point(|r| grid.cells[r.cells.start].row < cell.row);
     let row = layout.rows.get(number)?;
-    let text = |c: usize| wording::one_line(&block.text[grid.cells[c].start as usize..grid.cells[c].end as usize]);
+    let text = |c: usize| {
+        wording::one_line(wording::beginning(&block.text[grid.cells[c].start as usize..grid.cells[c].end as usize]))
+    };
     let own: Vec<String> = row.labels.iter().map(|&c| text(c)).collect();
     Some(Name { number, own: own.join(" "), title: row.section.map(text).unwrap_or_default() })
 }

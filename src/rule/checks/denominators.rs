@@ -14,6 +14,9 @@ use std::collections::BTreeMap;
 /// Rows that must agree on one other size: a single one is as likely a slip.
 const ROWS: usize = 3;
 
+/// More columns than any table has groups. Text made to hurt has more, and each looks through the whole table.
+const COLUMNS: usize = 30;
+
 /// A count with its percentage under a head that prints a size.
 struct Share<'a> {
     row: u32,
@@ -57,7 +60,7 @@ fn of_table(facts: &Look, block: u32, grid: &Grid, groups: &[Group]) -> Option<F
     // Shares of all groups together are another matter.
     let all: u64 = columns.keys().map(|k| k.1).sum();
     let mut agreed: Vec<Agreed> = Vec::new();
-    for ((column, n), (head, shares)) in columns {
+    for ((column, n), (head, shares)) in columns.into_iter().take(COLUMNS) {
         let found = one_other(n, head, shares);
         agreed.extend(found.filter(|a| a.fits != all && !told(facts, block, grid, column, a.fits)));
     }

@@ -55,7 +55,9 @@ fn of_table(facts: &Look, number: usize, grid: &Grid, groups: &[Group]) -> Optio
         return None;
     }
     let layout = Layout::of(block, number, grid);
-    let text = |cell: usize| grid.cells.get(cell).map_or("", |c| &block.text[c.start as usize..c.end as usize]);
+    let text = |cell: usize| {
+        grid.cells.get(cell).map_or("", |c| wording::beginning(&block.text[c.start as usize..c.end as usize]))
+    };
     let row_of = |g: &Group| {
         let cell = grid.cell_at(g.span.start)?;
         let at = layout.rows.partition_point(|r| grid.cells[r.cells.start].row < cell.row);
@@ -63,10 +65,12 @@ fn of_table(facts: &Look, number: usize, grid: &Grid, groups: &[Group]) -> Optio
     };
     let heads = |column: usize| layout.columns.get(column).map_or(&[][..], |c| &c.path).iter().map(|&h| text(h));
     // Rows of medians, and the titles that they stand under: there the median is given already.
-    let with_median = groups.iter().filter(|g| g.median.is_some()).filter_map(row_of);
-    let medians: HashSet<(usize, Option<usize>)> = with_median.map(|(at, r, _)| (at, r.section)).collect();
+    let with_median: Vec<_> = groups.iter().filter(|g| g.median.is_some()).filter_map(row_of).collect();
+    let medians: HashSet<usize> = with_median.iter().map(|(at, ..)| *at).collect();
+    let titles: HashSet<usize> = with_median.iter().filter_map(|(_, r, _)| r.section).collect();
     let has_median = |at: usize, row: &Row| {
-        medians.iter().any(|&(m, section)| m.abs_diff(at) <= 1 || section.is_some() && section == row.section)
+        let near = (at.saturating_sub(1)..=at + 1).any(|k| medians.contains(&k));
+        near || row.section.is_some_and(|s| titles.contains(&s))
     };
     let named = |row: &Row, column: usize| -> Option<String> {
         let own = row.labels.iter().copied().map(text);
