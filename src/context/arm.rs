@@ -20,14 +20,13 @@ pub(super) fn arms(view: &SentenceView, context: &mut Context) {
             context.arms.push(Arm { label: named.label, n: named.n, span });
         }
     }
-    randomised(view, context);
+    if context.randomised.is_none() {
+        context.randomised = randomised_in(view);
+    }
 }
 
-/// "60 patients were randomised": the total, said once and only of all.
-fn randomised(view: &SentenceView, context: &mut Context) {
-    if context.randomised.is_some() {
-        return;
-    }
+/// "60 patients were randomised": the total, where a sentence says it only of all.
+pub fn randomised_in(view: &SentenceView) -> Option<Stated<u64>> {
     for v in 0..view.len() {
         if !view.is(v, Classes::RARE) || !view.any(v, &["randomised", "randomized", "randomly"]) {
             continue;
@@ -49,9 +48,9 @@ fn randomised(view: &SentenceView, context: &mut Context) {
         if to_one || parted && !view.any(at.wrapping_sub(1), &["of"]) || view.signs(at + 1, &['%', '/']) {
             continue;
         }
-        context.randomised = Some(Stated { value: n, span: view.span(at, people) });
-        return;
+        return Some(Stated { value: n, span: view.span(at, people) });
     }
+    None
 }
 
 /// A whole number in digits or in words ("one hundred and forty nine" is left alone: its last word alone misleads).

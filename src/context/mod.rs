@@ -11,6 +11,7 @@ use crate::printed::Printed;
 use crate::reading::{PlanningKind, Readings, Scan, Sides};
 use crate::text::Span;
 
+pub use arm::randomised_in;
 pub use size::fill_sizes;
 pub use test_name::{Test, tests_in};
 

@@ -11,6 +11,7 @@ pub mod interval;
 pub mod lexicon;
 pub mod p;
 pub mod planning;
+pub mod quantity;
 pub mod sentence;
 pub mod statistic;
 pub mod table;

@@ -20,6 +20,16 @@ pub enum Check {
     EstimateOutsideInterval {},
     /// One result printed in two places, all its figures alike but one.
     SameResultDiffers {},
+    /// Rows of a table whose percentages agree on a size that its header does not print; once per table.
+    OtherTotal {},
+    /// Means below twice their SD, of quantities that cannot be negative; once per table.
+    LowMeans {},
+    /// An estimate with its interval that stands in two rows of one table, for two sets of groups.
+    SameEstimate {},
+    /// A column of p-values that fit the rows beside their own.
+    ColumnShifted {},
+    /// The arms of a sentence do not add up to the number randomised that it states.
+    ArmsAgainstWhole {},
     /// P printed as exactly zero.
     PrintedZero {},
     /// P printed only as above or below one of `bounds`, or as not significant; once per section.
@@ -197,6 +207,11 @@ impl Check {
             Check::Order { .. } => "order",
             Check::EstimateOutsideInterval {} => "estimate-outside-interval",
             Check::SameResultDiffers {} => "same-result-differs",
+            Check::OtherTotal {} => "other-total",
+            Check::LowMeans {} => "low-means",
+            Check::SameEstimate {} => "same-estimate",
+            Check::ColumnShifted {} => "column-shifted",
+            Check::ArmsAgainstWhole {} => "arms-against-whole",
             Check::PrintedZero {} => "printed-zero",
             Check::ThresholdOnly { .. } => "threshold-only",
             Check::Missing { .. } => "missing",

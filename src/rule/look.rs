@@ -1,5 +1,6 @@
 //! Questions that several checks put to the facts.
 
+use super::shift::{Shift, shifts};
 use super::{Facts, wording};
 use crate::context::Context;
 use crate::manuscript::{BlockKind, Manuscript, MarkKind, SectionKind};
@@ -69,6 +70,9 @@ pub struct Look<'a> {
     pub results: &'a [ReportedResult],
     pub checked: &'a [Checked],
     pub alpha: Alpha,
+    /// P columns that fit when they are moved by a row.
+    pub(super) shifts: Vec<Shift>,
+    shifted: HashSet<Span>,
     /// Readings of results, each with the result's number.
     members: Vec<(Span, usize)>,
     /// Where the claims, intervals and estimates stand, by place.
@@ -116,6 +120,8 @@ impl<'a> Look<'a> {
             results,
             checked,
             alpha: alpha(facts),
+            shifts: shifts(facts),
+            shifted: HashSet::new(),
             members: members(facts),
             claims: sorted(&mut readings.claims.iter().map(|c| c.span)),
             intervals: sorted(&mut readings.intervals.iter().map(|i| i.span)),
@@ -124,6 +130,8 @@ impl<'a> Look<'a> {
             settled,
             mentioned: RefCell::default(),
         };
+        let in_shift = |s: &Shift| s.moved.iter().map(|m| m.p).chain(s.end).collect::<Vec<_>>();
+        look.shifted = look.shifts.iter().flat_map(in_shift).collect();
         look.with_interval = readings.intervals.iter().map(|i| look.part(i.span)).collect();
         look
     }
@@ -169,6 +177,11 @@ impl<'a> Look<'a> {
             let mut near = spans[from..].iter().take_while(|s| (s.block, s.start) <= (first.block, second.start));
             near.any(|s| s.end <= second.start)
         })
+    }
+
+    /// The p-value stands in a column that fits when it is moved: asked about with the column.
+    pub(super) fn is_shifted(&self, p: Span) -> bool {
+        self.shifted.contains(&p)
     }
 
     /// The titles of the sections that a place stands in, from the top.

@@ -14,6 +14,7 @@ mod fingerprint;
 mod level;
 mod look;
 mod places;
+mod shift;
 mod wording;
 
 use crate::context::Context;

@@ -53,6 +53,12 @@ pub fn one_line(text: &str) -> String {
     format!("{}…", head.trim_end())
 }
 
+/// As much of a label as can matter. Text made to hurt has endless ones, which every figure beside them would read again.
+pub fn beginning(label: &str) -> &str {
+    const LONGEST: usize = 300;
+    &label[..label.floor_char_boundary(LONGEST)]
+}
+
 /// A p-value for people: two decimals from 0.1 on, else two digits that count, four decimals at most.
 fn p_figure(p: f64) -> String {
     if p >= 0.0995 {

@@ -1,12 +1,17 @@
 //! The kinds of check, one function each, by what they look at.
 
 mod claims;
+mod copied;
+mod denominators;
 mod direction;
 mod figures;
 mod planning;
 mod recomputed;
 mod repeated;
 mod reporting;
+mod shifted;
+mod skewed;
+mod sums;
 
 use super::check::Check;
 use super::finding::Finding;
@@ -24,6 +29,11 @@ pub fn run(check: &Check, facts: &Look) -> Vec<Finding> {
         Check::Order { of } => gathered(facts, figures::order(facts, *of)),
         Check::EstimateOutsideInterval {} => gathered(facts, figures::estimate_outside_interval(facts)),
         Check::SameResultDiffers {} => repeated::same_result_differs(facts),
+        Check::OtherTotal {} => denominators::other_total(facts),
+        Check::LowMeans {} => skewed::low_means(facts),
+        Check::SameEstimate {} => gathered(facts, copied::same_estimate(facts)),
+        Check::ColumnShifted {} => shifted::columns(facts),
+        Check::ArmsAgainstWhole {} => sums::arms_against_whole(facts),
         Check::PrintedZero {} => gathered(facts, figures::printed_zero(facts)),
         Check::ThresholdOnly { bounds } => reporting::threshold_only(facts, bounds),
         Check::Missing { what } => reporting::missing(facts, *what),

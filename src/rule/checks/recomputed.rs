@@ -58,6 +58,7 @@ fn candidates<'a>(
             && from.contains(&basis(facts, checked, r))
             && !within_group(facts, checked, r)
             && !small_total_elsewhere(facts, checked, r)
+            && !facts.is_shifted(r.figure)
             && !tallies(r)
     })
 }
@@ -141,6 +142,11 @@ fn finding(facts: &Look, checked: &Checked, r: &Recomputation, all: &[&Recomputa
         Quantity::P => format!("Printed {printed}; from {from} we get {computed}."),
         of => format!("Printed {printed} as {}; from {from} we get {computed}.", wording::quantity(of)),
     };
+    // What makes the one row credible.
+    let says = match vouching(facts, checked, r) {
+        Some(others) => format!("{says} The other {others} rows of this table that could be checked tally."),
+        None => says,
+    };
     let mut f = Finding::at(r.figure, weight(facts, checked, r), says);
     f.working = Some(r.working.clone());
     f.related = r.inputs.iter().filter(|(s, _)| *s != r.figure).map(|&(s, part)| (s, part.to_owned())).collect();
@@ -210,7 +216,7 @@ fn weight(facts: &Look, checked: &Checked, r: &Recomputation) -> Weight {
         peripheral: p.is_some_and(|p| matches!(p.role, Role::Baseline | Role::AssumptionOrFit))
             || facts.manuscript.section(r.figure).kind == SectionKind::Introduction
             || elsewhere(r),
-        table_vouches: r.ground == Ground::IfUnadjusted && table_vouches(facts, checked, r),
+        table_vouches: r.ground == Ground::IfUnadjusted && vouching(facts, checked, r).is_some(),
     }
 }
 
@@ -223,17 +229,18 @@ fn below_one_unit(r: &Recomputation) -> bool {
     unit > 0.0 && unit.is_finite() && (printed.middle() - nearest).abs() < unit
 }
 
-/// The other rows of the same table tally sharply, and none differs.
-fn table_vouches(facts: &Look, checked: &Checked, r: &Recomputation) -> bool {
+/// How many other rows of the same table tally sharply, where that is enough and none differs.
+fn vouching(facts: &Look, checked: &Checked, r: &Recomputation) -> Option<usize> {
     if !facts.in_table(r.figure) {
-        return false;
+        return None;
     }
     let all = facts.settled(r.of, r.figure.block);
     let mut own = Settled::default();
     for o in checked.recomputations.iter().filter(|o| o.of == r.of && o.figure.block == r.figure.block) {
         own.add(o.verdict, o.sharp);
     }
-    all.sharp - own.sharp >= VOUCHING_ROWS && all.differ == own.differ
+    let others = all.sharp - own.sharp;
+    (others >= VOUCHING_ROWS && all.differ == own.differ).then_some(others)
 }
 
 /// The recomputed figure as the author might print it, where the printed ones leave only one.
