@@ -3,7 +3,7 @@
 //!
 //! `cargo bench` times. `cargo bench --bench audit -- peak` prints the peak memory instead, and
 //! `-- passes` the time of each pass by size: a pass that more than doubles when the text doubles is
-//! not linear.
+//! not linear. `-- text` prints the generated megabyte, for a profiler.
 
 use std::alloc::{GlobalAlloc, Layout, System};
 use std::fmt::Write;
@@ -60,6 +60,8 @@ fn main() {
         peak();
     } else if asked("passes") {
         passes();
+    } else if asked("text") {
+        print!("{}", manuscript(1 << 20));
     } else {
         divan::main();
     }

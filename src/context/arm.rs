@@ -1,23 +1,20 @@
 //! Arms with their sizes, and how many took part in all.
 
 use super::{Arm, Context, Stated};
-use crate::reading::SentenceView;
-use crate::reading::group::arm::{self, NO_ARM};
+use crate::reading::group::arm::NO_ARM;
 use crate::reading::lexicon::{self, Classes};
+use crate::reading::{Readings, SentenceView, within};
 
 /// More arms than any study has; text made to hurt has more.
 const MOST: usize = 100;
 
 /// Appends the arms that a sentence introduces (`the placebo group (n = 24)`), and the number randomised.
-pub(super) fn arms(view: &SentenceView, context: &mut Context) {
-    let found: Vec<_> = arm::find(view).into_iter().filter(|a| a.label != arm::EACH).collect();
+pub(super) fn arms(view: &SentenceView, readings: &Readings, context: &mut Context) {
     // Who left a study makes no arm of it.
-    let leaving = !found.is_empty() && arm::tells_of_leaving(view);
-    for named in found.into_iter().filter(|_| !leaving) {
-        let known = context.arms.iter().any(|a| a.label.eq_ignore_ascii_case(&named.label));
+    for arm in within(&readings.arms, |a| a.sentence, view.id..view.id + 1).iter().filter(|a| !a.leaving) {
+        let known = context.arms.iter().any(|a| a.label.eq_ignore_ascii_case(&arm.label));
         if !known && context.arms.len() < MOST {
-            let span = named.span(view);
-            context.arms.push(Arm { label: named.label, n: named.n, span });
+            context.arms.push(Arm { label: arm.label.clone(), n: arm.n, span: arm.span });
         }
     }
     if context.randomised.is_none() {

@@ -95,7 +95,7 @@ pub fn gather(manuscript: &Manuscript, scan: &Scan, readings: &Readings) -> Cont
             }
             if own {
                 statement::anywhere(&view, &mut context);
-                arm::arms(&view, &mut context);
+                arm::arms(&view, readings, &mut context);
             }
         }
     }

@@ -369,6 +369,8 @@ pub struct Readings {
     pub estimates: Vec<Estimate>,
     pub claims: Vec<Claim>,
     pub planning: Vec<Planning>,
+    /// Groups that running text names with their sizes.
+    pub arms: Vec<group::arm::SizedArm>,
     /// The layout of each table by the number of its block: working it out is dear, and results need it as well.
     pub layouts: Vec<(usize, Layout)>,
 }
@@ -453,6 +455,6 @@ fn read_sentence(
     let first_estimate = readings.estimates.len();
     estimate::read(view, named, &mut taken, &mut readings.intervals, first_interval, &mut readings.estimates);
     let (intervals, estimates) = (&readings.intervals[first_interval..], &readings.estimates[first_estimate..]);
-    group::read(view, setting, intervals, estimates, &mut taken, &mut readings.groups);
+    group::read(view, setting, intervals, estimates, &mut taken, &mut readings.arms, &mut readings.groups);
     claim::read(view, &p, &mut readings.claims);
 }

@@ -77,10 +77,30 @@ const GROUP: &[&str] = &["group", "groups", "arm", "arms", "condition", "cohort"
 const SAYS_GROUP: &[&str] =
     &["group", "groups", "arm", "arms", "controls", "control", "placebo", "condition", "cohort", "treatment", "set"];
 
-/// Appends the named groups whose size no summary of the sentence has taken over.
-pub(super) fn read(view: &SentenceView, taken: &[bool], drafts: &mut Vec<Draft>) {
+/// A group that a sentence names with its size, whether or not a summary took the size over.
+#[derive(Clone, Debug, PartialEq)]
+pub struct SizedArm {
+    pub label: String,
+    pub n: u64,
+    pub span: Span,
+    pub sentence: u32,
+    /// The sentence tells who left the study: its sizes are not those of arms.
+    pub leaving: bool,
+}
+
+/// Appends the named groups whose size no summary of the sentence has taken over, and all of them to `arms`.
+pub(super) fn read(view: &SentenceView, taken: &[bool], drafts: &mut Vec<Draft>, arms: &mut Vec<SizedArm>) {
     let own = drafts.len();
-    for arm in find(view) {
+    let found = find(view);
+    let leaving = !found.is_empty() && tells_of_leaving(view);
+    arms.extend(found.iter().filter(|a| a.label != EACH).map(|a| SizedArm {
+        label: a.label.clone(),
+        n: a.n,
+        span: a.span(view),
+        sentence: view.id,
+        leaving,
+    }));
+    for arm in found {
         let span = view.span(arm.at, arm.at);
         let used = drafts[..own].iter().any(|d| {
             let of = |f: &Option<Figure>| f.is_some_and(|f| origin_span(f.origin).is_some_and(|s| s.overlaps(span)));
@@ -130,8 +150,7 @@ pub fn find(view: &SentenceView) -> Vec<Named> {
             found.remove(0);
         }
         // One by itself is as often a subgroup or a reason; two in a sentence, or a word for a group, name arms.
-        let leaving = tells_of_leaving(view);
-        if found.len() < 2 || leaving {
+        if found.len() == 1 || found.len() > 1 && tells_of_leaving(view) {
             found.retain(|a| says_group(view, a));
         }
         if found.is_empty() && counts >= 2 {
@@ -421,6 +440,12 @@ fn parts(view: &SentenceView) -> Vec<Named> {
             continue;
         };
         let mut list: Vec<Named> = Vec::new();
+        // The parts of a whole are smaller than it, and stand behind it.
+        if !whole.iter().any(|w| w.0 > n) {
+            whole.push((n, after));
+            i = after;
+            continue;
+        }
         let (mut at, mut first, mut count) = (after, i, n);
         let mut placed = false;
         loop {

@@ -41,13 +41,15 @@ struct Draft {
 }
 
 /// Appends the groups of a sentence, in order; passes over tokens that other readings took. `intervals` and `estimates`
-/// are those of the sentence.
+/// are those of the sentence. Groups
+/// that are named with their sizes go to `arms` as well.
 pub fn read(
     view: &SentenceView,
     setting: &mut Setting,
     intervals: &[IntervalReading],
     estimates: &[Estimate],
     taken: &mut [bool],
+    arms: &mut Vec<arm::SizedArm>,
     out: &mut Vec<Group>,
 ) {
     if !view.tokens.iter().any(|t| t.number().is_some() || t.is(Classes::NUMBER_WORD)) {
@@ -82,7 +84,7 @@ pub fn read(
     count::soften(view, &mut drafts);
     size::assign(view, &mut drafts);
     label::assign(view, &mut drafts);
-    arm::read(view, taken, &mut drafts);
+    arm::read(view, taken, &mut drafts, arms);
     drafts.sort_by_key(|d| d.first);
     out.extend(drafts.into_iter().map(|d| d.group));
 }
