@@ -7,7 +7,7 @@ use std::collections::HashMap;
 
 use super::{Feature, ReportedResult};
 use crate::printed::{Printed, Range};
-use crate::reading::{Group, PValue, Readings, Relation};
+use crate::reading::{Group, PValue, Readings, Relation, Role};
 use crate::text::Span;
 
 /// Significant digits that shared figures must have together.
@@ -102,7 +102,8 @@ pub fn disagreements(
 
 /// What a result may share with another place, each with the figure that is then compared.
 fn keys(readings: &Readings, result: &ReportedResult) -> Vec<(Key, Span, u32, Range)> {
-    let p = result.p.map(|i| &readings.p[i]).filter(|p| !p.corrected && !p.shared);
+    // A p for homogeneity or trend may stand in the same row.
+    let p = result.p.map(|i| &readings.p[i]).filter(|p| !p.corrected && !p.shared && p.role == Role::Effect);
     let exact = p.filter(|p| p.relation == Relation::Equal).and_then(|p| p.value);
     let estimate = result.estimate.map(|i| &readings.estimates[i]);
     let interval = result.interval.map(|i| &readings.intervals[i]);

@@ -236,10 +236,14 @@ fn attribution(flat: &Flat, clause: &Clause, facts: &Facts) -> Attribution {
             || flat.any(k, &["characteristics", "demographics", "demographic"])
     });
     // No treatment changes age or sex.
+    const AGES: &[&str] = &["chronological", "gestational", "maternal", "paternal"];
     let given = |k: usize| flat.any(k, &["age", "ages", "sex", "gender", "race", "ethnicity"]);
     let in_given = (range.start..range.end).any(|k| {
         given(k)
-            && flat.any(k.wrapping_sub(1), &["in", "for", "of", "by", "regarding", "the", "mean", "median"])
+            && flat.any(
+                k.wrapping_sub(1 + usize::from(flat.any(k.wrapping_sub(1), AGES))),
+                &["in", "for", "of", "by", "regarding", "the", "mean", "median"],
+            )
             && !flat.any(k + 1, &["groups", "group", "effect"])
     }) || given(range.start);
     let baseline = baseline || in_given && found_difference(flat, &range);

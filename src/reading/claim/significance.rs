@@ -65,7 +65,8 @@ impl Scope<'_> {
         if flat.any(k, &["statistically"]) && flat.find(k + 1..k + 3, METHOD).is_some() {
             return None;
         }
-        if flat.any(k, &["statistically"]) && flat.is(k + 1, Classes::SIGNIFICANCE) && !non {
+        let qualified = flat.is(k + 1, Classes::SIGNIFICANCE) || flat.any(k + 1, &["non", "not", "in"]);
+        if flat.any(k, &["statistically"]) && qualified && !non {
             return None;
         }
         // "was statistically underpowered"
