@@ -195,5 +195,7 @@ pub fn beta_quantile(lower: f64, a: f64, b: f64) -> Result<f64, DistributionErro
         return Err(DistributionError::OutOfDomain);
     }
     let target = Tails { lower, upper: 1.0 - lower };
-    Ok(pair_at(log_ratio(target, a, b)?, a, b).0)
+    let x = pair_at(log_ratio(target, a, b)?, a, b).0;
+    // Shapes hundreds of powers of ten apart leave nothing between 0 and 1 to tell.
+    if x.is_finite() { Ok(x) } else { Err(DistributionError::OutOfDomain) }
 }

@@ -142,5 +142,6 @@ pub fn chi_squared_quantile(upper: f64, df: f64) -> Result<f64, DistributionErro
         return Err(DistributionError::OutOfDomain);
     }
     let target = Tails { lower: 1.0 - upper, upper };
-    Ok(df * log_ratio(target, 0.5 * df)?.exp())
+    let x = df * log_ratio(target, 0.5 * df)?.exp();
+    if x.is_finite() { Ok(x) } else { Err(DistributionError::OutOfDomain) }
 }
