@@ -57,7 +57,7 @@ pub fn read(
             && view.signs(last + 2, &['(', '['])
             && view.token_at(interval.span.start).saturating_sub(last) <= 3
             && interval.level.is_some();
-        // "fell by 8.8 (95% CI −14.2 to −3.4)", "a lowering of 32% (95% CI −40% to −22%)": the sign stands in the words.
+        // "fell by 6.2 (95% CI −9.9 to −2.5)", "a lowering of 30% (95% CI −39% to −20%)": the sign stands in the words.
         if !within(value) && within(value.negated()) && (adjoins || told_as_change(view, at, last)) {
             value = value.negated();
         }
@@ -128,7 +128,7 @@ pub fn read(
     }
 }
 
-/// `(−2.72 cm, SE = 1.34; p = 0.04)`: a figure with its sign, its standard error and its p in one bracket. The sign says
+/// `(−3.1 cm, SE = 1.5; p = 0.04)`: a figure with its sign, its standard error and its p in one bracket. The sign says
 /// that it is a difference or a change, which both are tested by their standard error. Where a neighbour has no p of its
 /// own, the p compares the two.
 fn signed_with_error(view: &SentenceView, taken: &mut [bool], out: &mut Vec<Estimate>) {
@@ -172,7 +172,7 @@ fn signed_with_error(view: &SentenceView, taken: &mut [bool], out: &mut Vec<Esti
     }
 }
 
-/// Whether the words around a figure tell it as a change: "fell by 8.8 mmHg", "a 14.5 mm reduction".
+/// Whether the words around a figure tell it as a change: "fell by 6.2 mmHg", "a 12.0 mm reduction".
 fn told_as_change(view: &SentenceView, at: usize, last: usize) -> bool {
     const VERBS: &[&str] = &[
         "decreased",
@@ -276,7 +276,7 @@ fn value_after(view: &SentenceView, name: &Name) -> Option<usize> {
                 }
                 return (words <= 2 || verb).then_some(k);
             }
-            // "KT-1000": a hyphen within a name is no sign
+            // "LX-200": a hyphen within a name is no sign
             TokenKind::Sign('-') if k > 0 && !view.spaced(k) && view.get(k - 1).is_some_and(|t| t.is_word()) => {
                 k += 1;
                 words += 1;

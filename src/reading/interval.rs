@@ -303,7 +303,7 @@ fn pair_in_bracket(view: &SentenceView, i: usize) -> Option<(Option<(Printed, Sp
     (inside && closes && pair.upper.places > 0).then(|| (Some((estimate, view.span(i, next - 1))), pair))
 }
 
-/// `8.8 mmHg (−14.2, −3.4`: a figure, and two limits in the bracket behind it.
+/// `6.2 mmHg (−9.9, −2.5`: a figure, and two limits in the bracket behind it.
 fn pair_after_number(view: &SentenceView, i: usize) -> Option<(Option<(Printed, Span)>, Pair)> {
     let (estimate, mut next) = view.signed(i)?;
     let end = next - 1;
@@ -343,7 +343,7 @@ fn estimate_before(view: &SentenceView, first: usize) -> Option<(Printed, Span)>
     Some((p, view.span(k, k)))
 }
 
-/// "a 14.5 mm reduction on the scale (95% CI 5.2 to 23.8)": the figure of a change whose noun stands between it and its
+/// "a 12.0 mm reduction on the scale (95% CI 3.1 to 20.9)": the figure of a change whose noun stands between it and its
 /// interval. It must be the only figure there, and lie about midway between the limits.
 fn change_before(view: &SentenceView, first: usize, pair: &Pair) -> Option<(Printed, Span)> {
     let bracket = first.checked_sub(1).filter(|&k| view.signs(k, &['(', '[']))?;
@@ -397,7 +397,7 @@ fn spread_named(view: &SentenceView, i: usize, from: usize) -> bool {
 
 /// Bracketed pairs after a named estimate, where the text never says what they are: `HR 0.75 (0.60–0.93)`.
 /// `named` tells whether an estimate's name stands right before the figure at token `i`, `changed` whether that figure
-/// is told as a change: `fell by 8.8 mmHg (−14.2, −3.4, p = 0.002)`.
+/// is told as a change: `fell by 6.2 mmHg (−9.9, −2.5, p = 0.001)`.
 pub fn read_unnamed(
     view: &SentenceView,
     named: impl Fn(usize) -> bool,
@@ -406,7 +406,7 @@ pub fn read_unnamed(
     taken: &mut [bool],
     out: &mut Vec<IntervalReading>,
 ) {
-    // "3.1 (2.4 to 4.4) at six and 3.0 (2.3 to 4.2) at eight hours": what the first pair is, the next are as well.
+    // "5.2 (4.1 to 6.8) at six and 4.9 (3.8 to 6.4) at eight hours": what the first pair is, the next are as well.
     let mut list = false;
     for i in 0..view.len() {
         if taken[i] || (view.number(i).is_some() && i > 0 && view.sign(i - 1, '-') && !view.spaced(i) && !taken[i - 1])

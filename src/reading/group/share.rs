@@ -235,7 +235,7 @@ pub(super) fn told(view: &SentenceView, i: usize, next: usize, setting: &Setting
         // The last of a list that is none of shares: "by 31 and 36%".
         let range = range || view.is(b, Classes::AND) && b > 0 && view.number(b - 1).is_some();
         // "between 21% and 26%"
-        // "ropivacaine 0.2%": the name of what it is the strength of, and no share is so small and told so.
+        // "lidocaine 0.2%": the name of what it is the strength of, and no share is so small and told so.
         let strength = view.any(b, STRENGTH_OF);
         let range = range || strength;
         let range = range || b > 2 && view.is(b, Classes::AND) && view.sign(b - 1, '%') && view.eq(b - 3, "between");

@@ -191,7 +191,7 @@ fn counts_of_a_total_told_before() {
         "Of the 38 patients excluded, 21 did not return and 17 were lost.",
         "Of 120 keepers, 60 were randomised to each group.",
         "In all, 13 patients (8 in the syrup arm and 5 in the water arm) had declined treatment.",
-        "It was rinsed with 2.5% NaOCl and numbed with ropivacaine 0.2%.",
+        "It was rinsed with 2.5% hypochlorite and numbed with lidocaine 0.2%.",
     ] {
         assert!(told(text).is_empty(), "{text}: {:?}", told(text));
     }
