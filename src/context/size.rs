@@ -2,7 +2,7 @@
 //! where the arms were introduced as `sling (n = 24)` and `usual care (n = 25)`.
 
 use super::Context;
-use crate::manuscript::{BlockKind, Manuscript};
+use crate::manuscript::Manuscript;
 use crate::printed::Printed;
 use crate::reading::group::named::{self, Known};
 use crate::reading::group::total;
@@ -36,17 +36,13 @@ pub fn fill_sizes(manuscript: &Manuscript, scan: &Scan, readings: &mut Readings,
                 named::assign(&view, here, &known, Inference::ArmSize);
             }
             if let Some(arms) = alike.as_ref().filter(|_| ours)
-                && !in_table(manuscript, &here[0])
+                && !manuscript.block(here[0].span).is_table()
             {
                 two_unnamed(here, arms);
             }
         }
         from = to;
     }
-}
-
-fn in_table(manuscript: &Manuscript, group: &Group) -> bool {
-    matches!(manuscript.blocks[group.span.block as usize].kind, BlockKind::Table(_))
 }
 
 /// Gives two summaries that a sentence sets side by side without naming their groups the sizes of a study's only two
@@ -130,7 +126,7 @@ fn folded(label: &str) -> String {
 fn from_tables(manuscript: &Manuscript, sizes: &Sizes, readings: &mut Readings) {
     for group in readings.groups.iter_mut() {
         let wanting = group.n.is_none() && group.total.is_none() && !group.label.is_empty();
-        if !wanting || !in_table(manuscript, group) {
+        if !wanting || !manuscript.block(group.span).is_table() {
             continue;
         }
         if let Some((n, span)) = sizes.usual(&folded(&group.label)) {

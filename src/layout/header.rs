@@ -42,7 +42,7 @@ pub(super) fn words(folded: &str) -> impl Iterator<Item = &str> {
 /// The role that a header cell gives its column; [`ColumnRole::Other`] where it says nothing of it.
 pub(super) fn role(block: &Block, number: usize, cell: &Cell) -> ColumnRole {
     let head = folded(block, cell.start, cell.end);
-    let text = block.text.get(cell.start as usize..cell.end as usize).unwrap_or("");
+    let text = block.text_of(cell);
     match size(text) {
         Some((value, at, name)) => {
             let start = cell.start as usize + at.start;
@@ -57,7 +57,7 @@ pub(super) fn role(block: &Block, number: usize, cell: &Cell) -> ColumnRole {
 
 /// `P~T~`, `*P*~time~`: a P with what it tests set low behind it. `P~CO2~` is no such thing; the column's figures show it.
 fn is_marked_p(block: &Block, cell: &Cell) -> bool {
-    let text = block.text.get(cell.start as usize..cell.end as usize).unwrap_or("");
+    let text = block.text_of(cell);
     let start = cell.start + (text.len() - text.trim_start().len()) as u32;
     let end = cell.start + text.trim_end().len() as u32;
     let low = || block.marks_over(start, end).filter(|m| m.kind == MarkKind::Subscript).collect::<Vec<_>>();
@@ -386,7 +386,7 @@ fn name_only(text: &str) -> String {
 
 /// The name that a header cell gives a group whose size stands elsewhere.
 pub(super) fn name(block: &Block, cell: &Cell) -> String {
-    let text = block.text.get(cell.start as usize..cell.end as usize).unwrap_or("");
+    let text = block.text_of(cell);
     match size(text) {
         Some((_, _, at)) => label(text, at),
         None => name_only(text),
@@ -395,7 +395,7 @@ pub(super) fn name(block: &Block, cell: &Cell) -> String {
 
 /// A cell that holds a size and nothing else: `n = 24`, `(n = 24)`; `24` where the row is labelled N.
 pub(super) fn size_alone(block: &Block, number: usize, cell: &Cell, labelled: bool) -> Option<Size> {
-    let text = block.text.get(cell.start as usize..cell.end as usize)?;
+    let text = block.text_of(cell);
     let at = |r: std::ops::Range<usize>| Span::new(number, cell.start as usize + r.start, cell.start as usize + r.end);
     if let Some((value, digits, whole)) = size(text) {
         let rest = format!("{}{}", &text[..whole.start], &text[whole.end..]);

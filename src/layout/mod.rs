@@ -204,6 +204,17 @@ impl Layout {
         }
     }
 
+    /// The row that a cell stands in, with its number.
+    pub fn row_of(&self, grid: &Grid, cell: &Cell) -> Option<(usize, &Row)> {
+        let at = self.rows.partition_point(|r| grid.cells[r.cells.start].row < cell.row);
+        Some((at, self.rows.get(at)?))
+    }
+
+    /// Indexes of the cells that head a column, from the top.
+    pub fn heads(&self, column: usize) -> &[usize] {
+        self.columns.get(column).map_or(&[], |c| &c.path)
+    }
+
     /// The cell of a row in a column; cells of a row are in the order of their columns.
     pub fn cell_in(&self, grid: &Grid, row: &Row, column: usize) -> Option<usize> {
         let cells = &grid.cells[row.cells.clone()];
@@ -233,7 +244,7 @@ struct Text<'a> {
 
 impl Text<'_> {
     fn of(&self, cell: &Cell) -> &str {
-        self.block.text.get(cell.start as usize..cell.end as usize).unwrap_or("").trim()
+        self.block.text_of(cell).trim()
     }
 
     /// Lower case, without footnote marks, one space between words.

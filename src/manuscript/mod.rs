@@ -139,7 +139,7 @@ impl Manuscript {
             block.text.shrink_to_fit();
             block.marks.shrink_to_fit();
         }
-        let tables = (0u32..).zip(&blocks).filter(|(_, b)| matches!(b.kind, BlockKind::Table(_))).map(|(i, _)| i);
+        let tables = (0u32..).zip(&blocks).filter(|(_, b)| b.is_table()).map(|(i, _)| i);
         Manuscript { tables: tables.collect(), sections, blocks, source }
     }
 
@@ -188,6 +188,15 @@ impl Grid {
 }
 
 impl Block {
+    pub fn is_table(&self) -> bool {
+        matches!(self.kind, BlockKind::Table(_))
+    }
+
+    /// The text of one of its cells.
+    pub fn text_of(&self, cell: &Cell) -> &str {
+        self.text.get(cell.start as usize..cell.end as usize).unwrap_or("")
+    }
+
     /// Whether a mark of a kind overlaps `start..end`.
     pub fn marked(&self, kind: MarkKind, start: u32, end: u32) -> bool {
         self.marks_over(start, end).any(|m| m.kind == kind)

@@ -375,6 +375,14 @@ pub struct Readings {
     pub layouts: Vec<(usize, Layout)>,
 }
 
+impl Readings {
+    /// The layout of the table that is block number `table`.
+    pub fn layout(&self, table: usize) -> Option<&Layout> {
+        let at = self.layouts.binary_search_by_key(&table, |l| l.0).ok()?;
+        Some(&self.layouts[at].1)
+    }
+}
+
 /// The members of a list of readings that stand in some sentences. Lists are in reading order.
 pub fn within<T>(list: &[T], sentence: impl Fn(&T) -> u32, sentences: std::ops::Range<u32>) -> &[T] {
     let first = list.partition_point(|x| sentence(x) < sentences.start);
@@ -393,7 +401,7 @@ pub fn read(manuscript: &Manuscript, scan: &Scan) -> Readings {
         if matches!(section.kind, SectionKind::References | SectionKind::Back) {
             continue;
         }
-        if matches!(block.kind, BlockKind::Table(_)) {
+        if block.is_table() {
             table::read(manuscript, scan, number, &mut readings);
             continue;
         }

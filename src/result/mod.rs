@@ -6,7 +6,7 @@ mod sentence;
 mod table;
 
 use crate::context::{Stated, Test};
-use crate::manuscript::{BlockKind, Manuscript};
+use crate::manuscript::Manuscript;
 use crate::reading::{Readings, Scan};
 use crate::text::Span;
 
@@ -87,7 +87,7 @@ pub fn join(manuscript: &Manuscript, scan: &Scan, readings: &Readings) -> Vec<Re
         ];
         let Some(id) = next.into_iter().flatten().min() else { break };
         let block = scan.sentences[id as usize].block as usize;
-        let in_table = matches!(manuscript.blocks[block].kind, BlockKind::Table(_));
+        let in_table = manuscript.blocks[block].is_table();
         let part = if in_table { scan.of_block(block) } else { id..id + 1 };
         from = sentence::Members {
             p: run(&readings.p, from.p.end, |x| part.contains(&x.sentence)),

@@ -3,9 +3,9 @@
 use super::shift::{Shift, shifts};
 use super::{Facts, wording};
 use crate::context::Context;
-use crate::manuscript::{BlockKind, Manuscript, MarkKind, SectionKind};
+use crate::manuscript::{BlockKind, Grid, Manuscript, MarkKind, SectionKind};
 use crate::query::Verdict;
-use crate::reading::{Claim, PValue, PlanningKind, Readings, Relation, Role, Scan, Sides, within};
+use crate::reading::{Claim, Group, PValue, PlanningKind, Readings, Relation, Role, Scan, Sides, within};
 use crate::recompute::{Checked, Quantity};
 use crate::result::ReportedResult;
 use crate::text::Span;
@@ -156,7 +156,19 @@ impl<'a> Look<'a> {
     }
 
     pub(super) fn in_table(&self, span: Span) -> bool {
-        matches!(self.manuscript.block(span).kind, BlockKind::Table(_))
+        self.manuscript.block(span).is_table()
+    }
+
+    /// The tables in which groups were read, each with the number of its block and the groups.
+    pub(super) fn groups_of_tables(&self) -> impl Iterator<Item = (usize, &'a Grid, &'a [Group])> {
+        let blocks = self.readings.groups.chunk_by(|a, b| a.span.block == b.span.block);
+        blocks.filter_map(|here| {
+            let number = here[0].span.block as usize;
+            match &self.manuscript.blocks[number].kind {
+                BlockKind::Table(grid) => Some((number, grid, here)),
+                _ => None,
+            }
+        })
     }
 
     /// The numbers of the results that a reading belongs to, in order.

@@ -106,8 +106,7 @@ impl<'a> Table<'a> {
 
     /// The heads over a column, from the top.
     fn heads(&self, column: usize) -> impl Iterator<Item = SentenceView<'a>> {
-        let path = self.layout.columns.get(column).map_or(&[][..], |c| &c.path);
-        path.iter().map(|&h| self.view(h))
+        self.layout.heads(column).iter().map(|&h| self.view(h))
     }
 
     /// Whether a row's cells are estimates with their intervals: its label or title names a measure and intervals.
@@ -230,8 +229,7 @@ impl<'a> Table<'a> {
                 continue;
             }
             let column = self.grid.cells[cell].column as usize;
-            let path = self.layout.columns.get(column).map_or(&[][..], |c| &c.path);
-            let named: Vec<usize> = headed.iter().copied().chain(path.iter().copied()).collect();
+            let named: Vec<usize> = headed.iter().chain(self.layout.heads(column)).copied().collect();
             let times = self.layout.panel(column).is_some_and(|p| p.times);
             let p_role = if words(&named, Classes::INTERACTION) {
                 Role::Interaction

@@ -24,8 +24,7 @@ pub(super) fn join(
 ) {
     let block = &manuscript.blocks[number];
     let BlockKind::Table(grid) = &block.kind else { return };
-    let Ok(at) = readings.layouts.binary_search_by_key(&number, |l| l.0) else { return };
-    let layout = &readings.layouts[at].1;
+    let Some(layout) = readings.layout(number) else { return };
     let around = around(manuscript, number);
     let table = Table { manuscript, scan, grid, first: scan.of_block(number).start, layout, members, readings };
     let notes = table.notes(&around);

@@ -1,6 +1,5 @@
 //! An estimate with its interval that stands in two rows of one table.
 
-use crate::layout::Layout;
 use crate::manuscript::BlockKind;
 use crate::printed::Printed;
 use crate::query::Ground;
@@ -10,6 +9,7 @@ use crate::rule::finding::Finding;
 use crate::rule::level::{Off, Weight};
 use crate::rule::look::Look;
 use crate::rule::wording;
+use crate::text::Span;
 use std::collections::HashMap;
 
 /// Significant digits that chance does not repeat in one table.
@@ -59,27 +59,14 @@ pub fn same_estimate(facts: &Look) -> Vec<Finding> {
             std::collections::hash_map::Entry::Occupied(o) => pairs.push((*o.get(), number, digits)),
         }
     }
-    let mut findings: Vec<Finding> = Vec::new();
-    let mut last: Option<(u32, Layout)> = None;
-    for (first, second, digits) in pairs {
-        let span = facts.results[second].interval.map(|i| readings.intervals[i].span);
-        let Some(block) = span.map(|s| s.block) else { continue };
-        if last.as_ref().is_none_or(|l| l.0 != block) {
-            let text = &facts.manuscript.blocks[block as usize];
-            let BlockKind::Table(grid) = &text.kind else { continue };
-            last = Some((block, Layout::of(text, block as usize, grid)));
-        }
-        let Some((_, layout)) = &last else { continue };
-        findings.extend(finding(facts, layout, first, second, digits));
-    }
-    findings
+    pairs.into_iter().filter_map(|(first, second, digits)| finding(facts, first, second, digits)).collect()
 }
 
-fn finding(facts: &Look, layout: &Layout, first: usize, second: usize, digits: u32) -> Option<Finding> {
+fn finding(facts: &Look, first: usize, second: usize, digits: u32) -> Option<Finding> {
     let (a, b) = (&facts.results[first], &facts.results[second]);
     let place = |r: &ReportedResult| r.interval.map(|i| facts.readings.intervals[i].span);
     let (before, here) = (place(a)?, place(b)?);
-    let (row, other) = (name(facts, layout, before.start, here.block)?, name(facts, layout, here.start, here.block)?);
+    let (row, other) = (name(facts, before)?, name(facts, here)?);
     let least = if row.own == other.own { DIGITS_OF_KIN } else { DIGITS };
     let plain = |n: &Name| {
         let text = format!("{} {}", n.own, n.title).to_lowercase();
@@ -120,15 +107,12 @@ impl Name {
     }
 }
 
-fn name(facts: &Look, layout: &Layout, offset: u32, block: u32) -> Option<Name> {
-    let block = &facts.manuscript.blocks[block as usize];
+fn name(facts: &Look, at: Span) -> Option<Name> {
+    let block = facts.manuscript.block(at);
     let BlockKind::Table(grid) = &block.kind else { return None };
-    let cell = grid.cell_at(offset)?;
-    let number = layout.rows.partition_point(|r| grid.cells[r.cells.start].row < cell.row);
-    let row = layout.rows.get(number)?;
-    let text = |c: usize| {
-        wording::one_line(wording::beginning(&block.text[grid.cells[c].start as usize..grid.cells[c].end as usize]))
-    };
+    let layout = facts.readings.layout(at.block as usize)?;
+    let (number, row) = layout.row_of(grid, grid.cell_at(at.start)?)?;
+    let text = |c: usize| wording::one_line(wording::beginning(block.text_of(&grid.cells[c])));
     let own: Vec<String> = row.labels.iter().map(|&c| text(c)).collect();
     Some(Name { number, own: own.join(" "), title: row.section.map(text).unwrap_or_default() })
 }

@@ -1,7 +1,7 @@
 //! Tables whose percentages are of another number than their heads print.
 
 use crate::layout::around;
-use crate::manuscript::{BlockKind, Grid};
+use crate::manuscript::Grid;
 use crate::query::Ground;
 use crate::reading::{Figure, Group, Inference, Origin};
 use crate::rule::finding::Finding;
@@ -35,21 +35,10 @@ struct Agreed<'a> {
 
 /// One note for a table: rows whose counts and percentages agree on one size, which is not the head's.
 pub fn other_total(facts: &Look) -> Vec<Finding> {
-    let groups = &facts.readings.groups;
-    let mut findings = Vec::new();
-    let mut from = 0;
-    while from < groups.len() {
-        let block = groups[from].span.block;
-        let to = from + groups[from..].partition_point(|g| g.span.block == block);
-        if let BlockKind::Table(grid) = &facts.manuscript.blocks[block as usize].kind {
-            findings.extend(of_table(facts, block, grid, &groups[from..to]));
-        }
-        from = to;
-    }
-    findings
+    facts.groups_of_tables().filter_map(|(block, grid, groups)| of_table(facts, block, grid, groups)).collect()
 }
 
-fn of_table(facts: &Look, block: u32, grid: &Grid, groups: &[Group]) -> Option<Finding> {
+fn of_table(facts: &Look, block: usize, grid: &Grid, groups: &[Group]) -> Option<Finding> {
     let mut columns: BTreeMap<(u32, u64), (Span, Vec<Share>)> = BTreeMap::new();
     for group in groups {
         let Some((n, head)) = headed(group) else { continue };
@@ -108,13 +97,12 @@ fn one_other(n: u64, head: Span, shares: Vec<Share>) -> Option<Agreed> {
 
 /// The number stands in a column's own cells, in the labels of rows, in the caption or in the notes: the table tells of
 /// it itself. Under the head of another group it does not: then two heads may have changed places.
-fn told(facts: &Look, block: u32, grid: &Grid, column: u32, number: u64) -> bool {
-    let (around, blocks) = (around(facts.manuscript, block as usize), &facts.manuscript.blocks);
+fn told(facts: &Look, block: usize, grid: &Grid, column: u32, number: u64) -> bool {
+    let (around, blocks) = (around(facts.manuscript, block), &facts.manuscript.blocks);
     let number = number.to_string();
     let holds = |text: &str| text.split(|c: char| !c.is_ascii_digit()).any(|word| word == number);
-    let text = &blocks[block as usize].text;
     let own = grid.cells.iter().filter(|c| c.column == 0 || (c.column..c.column + c.column_span).contains(&column));
-    own.map(|c| &text[c.start as usize..c.end as usize]).any(holds)
+    own.map(|c| blocks[block].text_of(c)).any(holds)
         || around.caption.chain(around.notes).any(|b| holds(&blocks[b].text))
 }
 

@@ -16,7 +16,6 @@ mod sums;
 use super::check::Check;
 use super::finding::Finding;
 use super::look::Look;
-use crate::manuscript::BlockKind;
 use std::collections::HashMap;
 
 /// Runs one check. Exhaustive: a new kind does not compile until it is answered here.
@@ -49,7 +48,6 @@ pub fn run(check: &Check, facts: &Look) -> Vec<Finding> {
 /// Many rows of one table (or figures of one paragraph) that stand alike have one cause: one question, at the first of
 /// them, with the others beside it.
 fn gathered(facts: &Look, findings: Vec<Finding>) -> Vec<Finding> {
-    let is_table = |f: &Finding| matches!(facts.manuscript.block(f.at[0]).kind, BlockKind::Table(_));
     let mut alike: HashMap<u32, usize> = HashMap::new();
     for f in &findings {
         *alike.entry(f.at[0].block).or_default() += 1;
@@ -59,7 +57,7 @@ fn gathered(facts: &Look, findings: Vec<Finding>) -> Vec<Finding> {
     for f in findings {
         let (at, count) = (f.at[0], alike[&f.at[0].block]);
         let (many, whole, part) =
-            if is_table(&f) { (4, "rows of this table", "row") } else { (3, "in this paragraph", "place") };
+            if facts.in_table(at) { (4, "rows of this table", "row") } else { (3, "in this paragraph", "place") };
         if count < many {
             kept.push(f);
             continue;

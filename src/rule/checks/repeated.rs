@@ -3,13 +3,12 @@
 use super::super::finding::Finding;
 use super::super::level::{Off, Weight};
 use super::super::look::Look;
-use crate::manuscript::BlockKind;
 use crate::query::Ground;
 use crate::result::repeat::{self, Part};
 
 /// Two places that print one result and differ in one figure. The later place is asked about.
 pub fn same_result_differs(facts: &Look) -> Vec<Finding> {
-    let is_table = |block: u32| matches!(facts.manuscript.blocks[block as usize].kind, BlockKind::Table(_));
+    let is_table = |block: u32| facts.manuscript.blocks[block as usize].is_table();
     let found = repeat::disagreements(facts.readings, facts.results, is_table);
     let about = |d: &repeat::Disagreement| {
         let (first, second) = d.figures;

@@ -16,7 +16,7 @@ pub fn columns(facts: &Look) -> Vec<Finding> {
 fn finding(facts: &Look, shift: &Shift) -> Option<Finding> {
     let first = shift.moved.first()?;
     let side = if shift.above { "above" } else { "below" };
-    let quote = wording::one_line(facts.quote(first.p));
+    let quote = facts.shown(first.p);
     let says = format!(
         "Of {} p-values of this column that could be recomputed, {} differ from their own rows and fit the rows {side} \
          them, as {quote}: its own row gives {}, the row {side} it {}.",

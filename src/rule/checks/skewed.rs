@@ -1,7 +1,7 @@
 //! Means below twice their standard deviation, of quantities that cannot be negative.
 
-use crate::layout::{Layout, Row, around};
-use crate::manuscript::{BlockKind, Grid};
+use crate::layout::{Row, around};
+use crate::manuscript::Grid;
 use crate::printed::{Printed, Range};
 use crate::reading::quantity::{cannot_be_negative, is_of_changes, is_transformed, may_be_negative, says_when_or_how};
 use crate::reading::{Group, SpreadKind};
@@ -16,22 +16,9 @@ const CELLS: usize = 2;
 
 /// One note for a table in which such means stand.
 pub fn low_means(facts: &Look) -> Vec<Finding> {
-    let groups = &facts.readings.groups;
-    let mut findings = Vec::new();
-    let mut from = 0;
-    while from < groups.len() {
-        let block = groups[from].span.block;
-        let to = from + groups[from..].partition_point(|g| g.span.block == block);
-        let here = &groups[from..to];
-        from = to;
-        if here.iter().filter(|g| is_low(g)).count() < CELLS {
-            continue;
-        }
-        if let BlockKind::Table(grid) = &facts.manuscript.blocks[block as usize].kind {
-            findings.extend(of_table(facts, block as usize, grid, here));
-        }
-    }
-    findings
+    let enough = |groups: &[Group]| groups.iter().filter(|g| is_low(g)).count() >= CELLS;
+    let tables = facts.groups_of_tables().filter(|(.., groups)| enough(groups));
+    tables.filter_map(|(number, grid, groups)| of_table(facts, number, grid, groups)).collect()
 }
 
 /// A positive mean below twice its SD, whatever the rounding, that is no count with its percentage.
@@ -54,16 +41,13 @@ fn of_table(facts: &Look, number: usize, grid: &Grid, groups: &[Group]) -> Optio
     if transformed || around.caption.any(|b| is_of_changes(&blocks[b].text)) {
         return None;
     }
-    let layout = Layout::of(block, number, grid);
-    let text = |cell: usize| {
-        grid.cells.get(cell).map_or("", |c| wording::beginning(&block.text[c.start as usize..c.end as usize]))
-    };
+    let layout = facts.readings.layout(number)?;
+    let text = |cell: usize| wording::beginning(block.text_of(&grid.cells[cell]));
     let row_of = |g: &Group| {
         let cell = grid.cell_at(g.span.start)?;
-        let at = layout.rows.partition_point(|r| grid.cells[r.cells.start].row < cell.row);
-        layout.rows.get(at).map(|r| (at, r, cell.column as usize))
+        layout.row_of(grid, cell).map(|(at, r)| (at, r, cell.column as usize))
     };
-    let heads = |column: usize| layout.columns.get(column).map_or(&[][..], |c| &c.path).iter().map(|&h| text(h));
+    let heads = |column: usize| layout.heads(column).iter().map(|&h| text(h));
     // Rows of medians, and the titles that they stand under: there the median is given already.
     let with_median: Vec<_> = groups.iter().filter(|g| g.median.is_some()).filter_map(row_of).collect();
     let medians: HashSet<usize> = with_median.iter().map(|(at, ..)| *at).collect();
@@ -92,7 +76,7 @@ fn of_table(facts: &Look, number: usize, grid: &Grid, groups: &[Group]) -> Optio
     let low: Vec<_> =
         low.into_iter().filter(|(g, _, column)| !(in_brackets(facts, g) && counts.contains(column))).collect();
     let (first, name, _) = low.first().filter(|_| low.len() >= CELLS)?;
-    let quote = wording::one_line(facts.quote(first.span));
+    let quote = facts.shown(first.span);
     let says = format!(
         "In {} cells of this table the mean is below twice its standard deviation, as {quote} for “{name}”, which cannot \
          be negative.",
