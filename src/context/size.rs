@@ -58,7 +58,7 @@ fn two_unnamed(groups: &mut [Group], arms: &[(String, u64, Span); 2]) {
     };
     if plain(a) && plain(b) && a.mean.is_some() == b.mean.is_some() {
         for (group, (_, n, span)) in [a, b].into_iter().zip(arms) {
-            group.n = Some(Figure { printed: Printed::whole(*n), origin: Origin::Inferred(Inference::ArmSize, *span) });
+            group.n = Some(Figure::inferred(Printed::whole(*n), Inference::ArmSize, *span));
         }
     }
 }
@@ -130,7 +130,7 @@ fn from_tables(manuscript: &Manuscript, sizes: &Sizes, readings: &mut Readings) 
             continue;
         }
         if let Some((n, span)) = sizes.usual(&folded(&group.label)) {
-            group.n = Some(Figure { printed: Printed::whole(n), origin: Origin::Inferred(Inference::ArmSize, span) });
+            group.n = Some(Figure::inferred(Printed::whole(n), Inference::ArmSize, span));
         }
     }
 }

@@ -3,7 +3,7 @@
 
 use super::lexicon::Classes;
 use super::sentence::SentenceView;
-use super::{Figure, IntervalReading, Origin};
+use super::{Figure, IntervalReading};
 use crate::printed::Printed;
 use crate::text::Span;
 
@@ -147,7 +147,7 @@ fn anchor(view: &SentenceView, i: usize) -> Option<Anchor> {
         && is_level(p)
         && (percent || view.word(k - 1).len() == 2)
     {
-        level = Some(Figure { printed: p, origin: Origin::Printed(view.span(k - 1, k - 1)) });
+        level = Some(Figure::at(p, view.span(k - 1, k - 1)));
         first = k - 1;
     }
     // glued: CI95
@@ -157,7 +157,7 @@ fn anchor(view: &SentenceView, i: usize) -> Option<Anchor> {
         && let Some(p) = Printed::parse(&view.word(i)[2..])
         && is_level(p)
     {
-        level = Some(Figure { printed: p, origin: Origin::Printed(view.span(i, i)) });
+        level = Some(Figure::at(p, view.span(i, i)));
     }
     // confidence interval CI
     if last > i && view.is(last + 1, Classes::CI) {
@@ -175,7 +175,7 @@ fn anchor(view: &SentenceView, i: usize) -> Option<Anchor> {
             && is_level(p)
             && (view.sign(at + 1, '%') || view.style(at) != super::Style::Plain)
         {
-            level = Some(Figure { printed: p, origin: Origin::Printed(view.span(at, at)) });
+            level = Some(Figure::at(p, view.span(at, at)));
             last = at + usize::from(view.sign(at + 1, '%'));
             if open == 1 && view.signs(last + 1, &[')', ']']) {
                 last += 1;

@@ -32,6 +32,30 @@ pub struct Figure {
     pub origin: Origin,
 }
 
+impl Figure {
+    /// As it stands in the text.
+    pub fn at(printed: Printed, span: Span) -> Figure {
+        Figure { printed, origin: Origin::Printed(span) }
+    }
+
+    /// Taken from `span`, or computed from the figures there.
+    pub fn inferred(printed: Printed, inference: Inference, span: Span) -> Figure {
+        Figure { printed, origin: Origin::Inferred(inference, span) }
+    }
+
+    pub fn is_inferred(&self, inference: Inference) -> bool {
+        matches!(self.origin, Origin::Inferred(i, _) if i == inference)
+    }
+
+    /// Where it stands or was taken from.
+    pub fn place(&self) -> Option<Span> {
+        match self.origin {
+            Origin::Printed(span) | Origin::Inferred(_, span) => Some(span),
+            Origin::Assumed(_) => None,
+        }
+    }
+}
+
 /// Where a figure comes from.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Origin {

@@ -4,7 +4,7 @@
 use super::lexicon::Classes;
 use super::sentence::SentenceView;
 use super::token::{Style, TokenKind};
-use super::{Figure, Origin, Relation, Statistic, Symbol};
+use super::{Figure, Relation, Statistic, Symbol};
 use crate::printed::Printed;
 use crate::text::Span;
 
@@ -130,7 +130,7 @@ fn statistic(view: &SentenceView, i: usize, taken: &mut [bool], out: &mut Vec<St
     }
     let mut freedom = Freedom::default();
     if let Some(df) = glued {
-        freedom.df1 = Some(Figure { printed: Printed::whole(df), origin: Origin::Printed(view.span(i, i)) });
+        freedom.df1 = Some(Figure::at(Printed::whole(df), view.span(i, i)));
         // F1,38 = 4.35
         if symbol == Symbol::F && view.sign(at, ',') && view.number(at + 1).is_some() {
             freedom.df2 = figure(view, at + 1);
@@ -230,7 +230,7 @@ fn plausible(view: &SentenceView, symbol: Symbol, v: Printed, relation: Relation
 
 /// `F(1,122)`: what a number scanner takes for one number with a comma is two.
 fn figure(view: &SentenceView, at: usize) -> Option<Figure> {
-    view.number(at).map(|printed| Figure { printed, origin: Origin::Printed(view.span(at, at)) })
+    view.number(at).map(|printed| Figure::at(printed, view.span(at, at)))
 }
 
 fn split_pair(view: &SentenceView, at: usize) -> Option<(Figure, Figure)> {
@@ -243,10 +243,7 @@ fn split_pair(view: &SentenceView, at: usize) -> Option<(Figure, Figure)> {
         start: token.start + from as u32,
         end: token.start + to as u32,
     };
-    Some((
-        Figure { printed: first, origin: Origin::Printed(span(0, a.len())) },
-        Figure { printed: second, origin: Origin::Printed(span(a.len() + 1, text.len())) },
-    ))
+    Some((Figure::at(first, span(0, a.len())), Figure::at(second, span(a.len() + 1, text.len()))))
 }
 
 /// Degrees of freedom in brackets or set low: `28`, `1, 38`, `df = 2`, `1, n = 48`.

@@ -1,7 +1,7 @@
 //! Estimates and their intervals from group summaries: differences, ratios, numbers needed to treat; the interval
 //! of a correlation, of one mean, of one proportion.
 
-use super::case::{Case, own, place, size};
+use super::case::{Case, own, size};
 use super::groups::{cell, summaries, ways};
 use super::mean;
 use super::proportion::Cell;
@@ -398,7 +398,7 @@ fn judge_interval(case: &Case, i: &IntervalReading, limits: Vec<Limits>) -> Opti
     };
     let mut inputs: Inputs = case.groups.iter().map(|g| (g.span, "the group's summary")).collect();
     inputs.extend(
-        case.groups.iter().filter_map(|g| size(g)).filter_map(|f| place(&f)).map(|span| (span, "the group size")),
+        case.groups.iter().filter_map(|g| size(g)).filter_map(|f| f.place()).map(|span| (span, "the group size")),
     );
     let line = format!(
         "{} {}: {} to {}",

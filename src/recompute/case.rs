@@ -10,7 +10,6 @@ use crate::reading::{
     Statistic,
 };
 use crate::result::{Feature, ReportedResult};
-use crate::text::Span;
 
 /// A result and its readings.
 pub(crate) struct Case<'a> {
@@ -137,8 +136,7 @@ impl<'a> Case<'a> {
             return Some(reason::CHANGE);
         }
         // Sizes from where the arms were introduced may not be those analysed.
-        let elsewhere =
-            |g: &&Group| size(g).is_some_and(|n| matches!(n.origin, Origin::Inferred(Inference::ArmSize, _)));
+        let elsewhere = |g: &&Group| size(g).is_some_and(|n| n.is_inferred(Inference::ArmSize));
         if self.groups.iter().any(elsewhere) {
             return Some(reason::SIZES_DOUBTFUL);
         }
@@ -277,12 +275,4 @@ pub(crate) fn size(group: &Group) -> Option<Figure> {
 /// Whether the figure stands with the group itself and not in a header or another sentence.
 pub(crate) fn own(figure: &Figure) -> bool {
     matches!(figure.origin, Origin::Printed(_) | Origin::Inferred(Inference::SameSentence, _))
-}
-
-/// Where a figure stands or was taken from.
-pub(crate) fn place(figure: &Figure) -> Option<Span> {
-    match figure.origin {
-        Origin::Printed(span) | Origin::Inferred(_, span) => Some(span),
-        Origin::Assumed(_) => None,
-    }
 }

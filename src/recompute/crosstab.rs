@@ -1,6 +1,6 @@
 //! p of a table of categories by groups: the counts of a block of rows.
 
-use super::case::{Case, place};
+use super::case::Case;
 use super::groups::table_candidates;
 use super::target::{Fit, Target};
 use super::verdict::{Candidate, Inputs, Policy, judge};
@@ -54,7 +54,7 @@ pub(crate) fn p_from_table(case: &Case) -> Result<Option<Recomputation>, &'stati
     let named = case.here().any(|t| matches!(t, Test::ChiSquared | Test::FisherExact | Test::YatesChiSquared));
     let open = (rows.len() > 2 || arms > 2) && !named;
     let inputs: Inputs =
-        case.groups.iter().filter_map(|g| g.events).filter_map(|e| place(&e)).map(|span| (span, "a count")).collect();
+        case.groups.iter().filter_map(|g| g.events).filter_map(|e| e.place()).map(|span| (span, "a count")).collect();
     let policy = Policy {
         of: Quantity::P,
         ground: case.group_ground(),

@@ -1,6 +1,6 @@
 //! p and test statistics from the summaries of groups.
 
-use super::case::{Case, own, place, size};
+use super::case::{Case, own, size};
 use super::mean::{self, Summary, Tested};
 use super::proportion::{self, Cell};
 use super::target::{Fit, Target};
@@ -8,9 +8,9 @@ use super::verdict::{Candidate, Inputs, Line, Policy, judge};
 use super::{Quantity, Recomputation, Slip, method, reason, slip, statistic, tail, working};
 use crate::context::Test;
 use crate::distribution;
-use crate::printed::Range;
+use crate::printed::{Printed, Range};
 use crate::query::Ground;
-use crate::reading::{Assumption, Group, Relation, SpreadKind, Symbol};
+use crate::reading::{Assumption, Figure, Group, Origin, Relation, SpreadKind, Symbol};
 use std::rc::Rc;
 
 /// An objection needs p to be off by at least this much as a normal deviate, where the group sizes are printed with
@@ -84,9 +84,8 @@ fn without_sizes(groups: &[&Group], read: Read) -> Option<Vec<Summary>> {
         return None;
     }
     let large = |g: &&Group| {
-        let printed = crate::printed::Printed::whole(LARGE as u64);
-        let origin = crate::reading::Origin::Assumed(Assumption::PlausibleDf);
-        let sized = Group { n: Some(crate::reading::Figure { printed, origin }), ..(**g).clone() };
+        let origin = Origin::Assumed(Assumption::PlausibleDf);
+        let sized = Group { n: Some(Figure { printed: Printed::whole(LARGE as u64), origin }), ..(**g).clone() };
         summary(&sized, read).ok()
     };
     groups.iter().map(large).collect()
@@ -122,7 +121,7 @@ pub(crate) fn cell(g: &Group) -> Result<(Cell, bool), &'static str> {
 fn size_inputs(groups: &[&Group]) -> (Inputs, bool) {
     let sizes: Vec<_> = groups.iter().filter_map(|g| size(g)).collect();
     let mut inputs: Inputs = groups.iter().map(|g| (g.span, "the group's summary")).collect();
-    inputs.extend(sizes.iter().filter_map(place).map(|span| (span, "the group size")));
+    inputs.extend(sizes.iter().filter_map(Figure::place).map(|span| (span, "the group size")));
     (inputs, sizes.iter().all(own))
 }
 

@@ -2,7 +2,7 @@
 
 use std::collections::HashMap;
 
-use super::case::{own, place};
+use super::case::own;
 use super::target::{Fit, Target};
 use super::verdict::{Candidate, Inputs, Policy, judge};
 use super::{Distance, Quantity, Recomputation, Slip, method, reason, slip, working};
@@ -30,7 +30,7 @@ pub(crate) fn agreement(readings: &Readings) -> HashMap<u32, Agreement> {
     let mut blocks: HashMap<u32, Agreement> = HashMap::new();
     for g in &readings.groups {
         let (Some(events), Some(total), Some(percent)) = (g.events, g.total, g.percent) else { continue };
-        if own(&total) || matches!(total.origin, Origin::Inferred(Inference::FromPercent, _)) {
+        if own(&total) || total.is_inferred(Inference::FromPercent) {
             continue;
         }
         let (Some(e), Some(n)) = (events.printed.count(), total.printed.count()) else { continue };
@@ -48,7 +48,7 @@ pub(crate) fn agreement(readings: &Readings) -> HashMap<u32, Agreement> {
 pub(crate) fn check(g: &Group, agreement: Agreement) -> Vec<Recomputation> {
     let (Some(events), Some(total)) = (g.events, g.total) else { return Vec::new() };
     let (Some(e), Some(n)) = (events.printed.count(), total.printed.count()) else { return Vec::new() };
-    if n == 0 || matches!(total.origin, Origin::Inferred(Inference::FromPercent, _) | Origin::Assumed(_)) {
+    if n == 0 || total.is_inferred(Inference::FromPercent) || matches!(total.origin, Origin::Assumed(_)) {
         return Vec::new();
     }
     let inputs: Inputs = [part(&events, "the count"), part(&total, "the total")].into_iter().flatten().collect();
@@ -66,7 +66,7 @@ pub(crate) fn check(g: &Group, agreement: Agreement) -> Vec<Recomputation> {
     let below_all = target.range.hi < exact;
     let hold = match (g.one_expression, printed_here) {
         _ if g.approximate => Some(reason::ABOUT),
-        _ if matches!(total.origin, Origin::Inferred(Inference::Siblings, _)) => None,
+        _ if total.is_inferred(Inference::Siblings) => None,
         (true, _) | (_, true) => None,
         // None of any number is 0 %.
         _ if e == 0 && percent.value() == 0.0 => None,
@@ -131,7 +131,7 @@ pub(crate) fn parts(g: &Group, all: &[Group]) -> Option<Recomputation> {
 }
 
 fn part(figure: &Figure, name: &'static str) -> Option<(Span, &'static str)> {
-    place(figure).map(|span| (span, name))
+    figure.place().map(|span| (span, name))
 }
 
 fn larger_than_total(g: &Group, events: &Figure, e: u64, n: u64, verdict: Verdict, inputs: Inputs) -> Recomputation {
@@ -150,7 +150,7 @@ fn larger_than_total(g: &Group, events: &Figure, e: u64, n: u64, verdict: Verdic
         slip: slip::digits_swapped_count(e, |x| x <= n)
             .filter(|&x| g.percent.is_some_and(|p| p.rounded().contains(100.0 * x as f64 / n as f64)))
             .map(|x| Slip { kind: "digits-swapped", says: format!("with two digits swapped it reads {x} of {n}") }),
-        figure: place(events).unwrap_or(g.span),
+        figure: events.place().unwrap_or(g.span),
         inputs,
     }
 }

@@ -1,6 +1,6 @@
 //! p from a printed test statistic, and the statistic's degrees of freedom against the groups.
 
-use super::case::{Case, own, place, size};
+use super::case::{Case, own, size};
 use super::target::{Fit, Target};
 use super::verdict::{Candidate, Inputs, Policy, judge};
 use super::{Distance, Method, Quantity, Recomputation, Slip, method, reason, slip, tail, working};
@@ -62,7 +62,7 @@ pub(crate) fn p_from_statistic(case: &Case) -> Result<Option<Recomputation>, &'s
     let Some(target) = Target::p(p, case.alpha) else { return Ok(None) };
     let mut inputs: Inputs = vec![(s.span, "the test statistic")];
     for df in [s.df1, s.df2].iter().flatten() {
-        if let Some(span) = place(df).filter(|x| !s.span.contains(*x)) {
+        if let Some(span) = df.place().filter(|x| !s.span.contains(*x)) {
             inputs.push((span, "the degrees of freedom"));
         }
     }
@@ -166,7 +166,7 @@ fn candidates(
                 // Without any size, all degrees of freedom: |t| < 1 is far from significant with any.
                 let (low, high) = plausible_df(case).unwrap_or((1.0, f64::INFINITY));
                 for g in &case.groups {
-                    inputs.extend(size(g).as_ref().and_then(place).map(|span| (span, "the group size")));
+                    inputs.extend(size(g).and_then(|n| n.place()).map(|span| (span, "the group size")));
                 }
                 if high.is_infinite() || case.groups.iter().any(|g| !size(g).is_some_and(|n| own(&n))) {
                     *hold = hold.or(Some(reason::NO_DF));
@@ -226,7 +226,7 @@ fn candidates(
             let df = match (s.df1, sample(case, s)) {
                 (Some(df), _) => df.printed.value(),
                 (None, Some((n, figure))) => {
-                    inputs.extend(place(&figure).map(|span| (span, "the number of participants")));
+                    inputs.extend(figure.place().map(|span| (span, "the number of participants")));
                     *ground = Ground::IfOneMethod;
                     if !own(&figure) {
                         *hold = hold.or(Some(reason::SIZES_DOUBTFUL));
@@ -321,8 +321,8 @@ pub(crate) fn df_against_groups(case: &Case) -> Option<Recomputation> {
         assumptions: vec![Assumption::Unadjusted],
         distance: Some(Distance { size: printed.lo - most, across_alpha: false }),
         slip: None,
-        figure: place(&df).unwrap_or(s.span),
-        inputs: [n1, n2].iter().filter_map(|n| place(n).map(|span| (span, "the group size"))).collect(),
+        figure: df.place().unwrap_or(s.span),
+        inputs: [n1, n2].iter().filter_map(|n| n.place().map(|span| (span, "the group size"))).collect(),
     })
 }
 

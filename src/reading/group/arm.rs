@@ -1,9 +1,9 @@
 //! Groups of which only the size is told: `the syrup (n = 31) or the water group (n = 29)`, `(28 control; 39 syrup)`,
 //! "26 were randomised to syrup and 27 to water".
 
+use super::super::Figure;
 use super::super::lexicon::Classes;
 use super::super::sentence::SentenceView;
-use super::super::{Figure, Origin};
 use super::count::count_at;
 use super::{Draft, empty};
 use crate::printed::Printed;
@@ -103,7 +103,7 @@ pub(super) fn read(view: &SentenceView, taken: &[bool], drafts: &mut Vec<Draft>,
     for arm in found {
         let span = view.span(arm.at, arm.at);
         let used = drafts[..own].iter().any(|d| {
-            let of = |f: &Option<Figure>| f.is_some_and(|f| origin_span(f.origin).is_some_and(|s| s.overlaps(span)));
+            let of = |f: &Option<Figure>| f.and_then(|f| f.place()).is_some_and(|s| s.overlaps(span));
             of(&d.group.n) || of(&d.group.events) || of(&d.group.total)
         });
         if used || taken[arm.at] || drafts[own..].iter().any(|d| d.first <= arm.last && arm.first <= d.last) {
@@ -111,15 +111,8 @@ pub(super) fn read(view: &SentenceView, taken: &[bool], drafts: &mut Vec<Draft>,
         }
         let mut group = empty(view, arm.first, arm.last);
         group.label = arm.label;
-        group.n = Some(Figure { printed: Printed::whole(arm.n), origin: Origin::Printed(span) });
+        group.n = Some(Figure::at(Printed::whole(arm.n), span));
         drafts.push(Draft { first: arm.first, last: arm.last, group });
-    }
-}
-
-fn origin_span(origin: Origin) -> Option<Span> {
-    match origin {
-        Origin::Printed(span) | Origin::Inferred(_, span) => Some(span),
-        Origin::Assumed(_) => None,
     }
 }
 

@@ -4,7 +4,7 @@
 use super::super::lexicon::{self, Classes};
 use super::super::sentence::SentenceView;
 use super::super::token::Style;
-use super::super::{Figure, Inference, Origin};
+use super::super::{Figure, Inference};
 use super::{Draft, Setting, empty, printed, share};
 use crate::printed::Printed;
 
@@ -398,8 +398,7 @@ fn count_and_percent(view: &SentenceView, i: usize, taken: &[bool]) -> Option<Dr
         group.one_expression = true;
         end = after - 1;
     } else if let Some((total, span)) = of_the(view, i).filter(|&(t, _)| t >= events) {
-        group.total =
-            Some(Figure { printed: Printed::whole(total), origin: Origin::Inferred(Inference::SameSentence, span) });
+        group.total = Some(Figure::inferred(Printed::whole(total), Inference::SameSentence, span));
     }
     group.n = group.total;
     group.span = view.span(i, end);
@@ -448,8 +447,7 @@ fn count_of_told(view: &SentenceView, i: usize) -> Option<Draft> {
     }
     let mut group = empty(view, i, next - 1);
     group.events = Some(whole(view, events, i, next - 1));
-    group.total =
-        Some(Figure { printed: Printed::whole(total), origin: Origin::Inferred(Inference::SameSentence, span) });
+    group.total = Some(Figure::inferred(Printed::whole(total), Inference::SameSentence, span));
     group.n = group.total;
     Some(Draft { first: i, last: next - 1, group })
 }
@@ -601,8 +599,11 @@ pub(super) fn soften(view: &SentenceView, drafts: &mut [Draft]) {
             ) || view.signs(d.first - 1, &['~', '<', '>', '≥', '≤']));
         d.group.approximate = (about || estimated) && d.group.percent.is_some();
         let Some(total) = d.group.total else { continue };
-        let taken_over = matches!(total.origin, Origin::Inferred(Inference::SameSentence, _));
-        if counts > 1 && taken_over && !fits(&d.group) && !confirmed.contains(&total.printed) {
+        if counts > 1
+            && total.is_inferred(Inference::SameSentence)
+            && !fits(&d.group)
+            && !confirmed.contains(&total.printed)
+        {
             (d.group.total, d.group.n) = (None, None);
         }
     }

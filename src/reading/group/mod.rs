@@ -100,7 +100,7 @@ fn with_spread(mut group: Group, kind: SpreadKind, spread: &[Printed]) -> Group 
 }
 
 fn printed(view: &SentenceView, value: Printed, first: usize, last: usize) -> Figure {
-    Figure { printed: value, origin: super::Origin::Printed(view.span(first, last)) }
+    Figure::at(value, view.span(first, last))
 }
 
 #[cfg(test)]

@@ -79,8 +79,7 @@ pub fn assign(view: &SentenceView, groups: &mut [Group], known: &[Known], infere
 
 fn give(group: &mut Group, known: &Known, inference: Inference) {
     if group.n.is_none() && group.events.is_none() {
-        let origin = Origin::Inferred(inference, known.span);
-        group.n = Some(Figure { printed: Printed::whole(known.n), origin });
+        group.n = Some(Figure::inferred(Printed::whole(known.n), inference, known.span));
     }
 }
 
@@ -148,8 +147,8 @@ fn in_one_sentence(view: &SentenceView, groups: &mut [Group]) {
     }
     for (k, g) in figures.iter_mut().enumerate() {
         let Some(n) = sizes[k % arms] else { continue };
-        if let Origin::Printed(span) | Origin::Inferred(_, span) = n.origin {
-            g.n = Some(Figure { printed: n.printed, origin: Origin::Inferred(Inference::SameSentence, span) });
+        if let Some(span) = n.place() {
+            g.n = Some(Figure::inferred(n.printed, Inference::SameSentence, span));
         }
     }
 }
@@ -180,8 +179,8 @@ fn carry<'a>(groups: &mut [Group], view: &impl Fn(u32) -> SentenceView<'a>) {
                 && list.iter().all(|g| g.has_figure() && g.n.is_none() && g.events.is_none())
             {
                 for (g, n) in list.iter_mut().zip(sizes) {
-                    let (Origin::Printed(span) | Origin::Inferred(_, span)) = n.origin else { continue };
-                    g.n = Some(Figure { printed: n.printed, origin: Origin::Inferred(Inference::ArmSize, span) });
+                    let Some(span) = n.place() else { continue };
+                    g.n = Some(Figure::inferred(n.printed, Inference::ArmSize, span));
                 }
                 continue;
             }

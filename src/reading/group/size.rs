@@ -2,7 +2,7 @@
 
 use super::super::lexicon::Classes;
 use super::super::sentence::SentenceView;
-use super::super::{Figure, Inference, Origin};
+use super::super::{Figure, Inference};
 use super::Draft;
 use crate::printed::Printed;
 
@@ -60,10 +60,7 @@ pub(super) fn assign(view: &SentenceView, drafts: &mut [Draft]) {
 }
 
 fn give(view: &SentenceView, draft: &mut Draft, n: u64, at: usize) {
-    draft.group.n = Some(Figure {
-        printed: Printed::whole(n),
-        origin: Origin::Inferred(Inference::SameSentence, view.span(at, at)),
-    });
+    draft.group.n = Some(Figure::inferred(Printed::whole(n), Inference::SameSentence, view.span(at, at)));
 }
 
 /// Whether the bracket of a size holds another one and a p-value, and no summary.

@@ -5,7 +5,7 @@
 
 use super::super::lexicon::Classes;
 use super::super::sentence::SentenceView;
-use super::super::{Figure, Group, Inference, Origin, within};
+use super::super::{Figure, Group, Inference, within};
 use super::count::count_at;
 use crate::printed::Printed;
 use crate::text::Span;
@@ -233,8 +233,7 @@ pub fn fill<'a>(
         if let (Some(events), Some(percent), None) = (group.events, group.percent, group.total)
             && let Some(first) = sizes.only(events.printed.value(), percent, group.span)
         {
-            let origin = Origin::Inferred(Inference::OtherSentence, first.span);
-            group.total = Some(Figure { printed: Printed::whole(first.size), origin });
+            group.total = Some(Figure::inferred(Printed::whole(first.size), Inference::OtherSentence, first.span));
             group.n = group.total;
         }
         if let (Some(events), Some(percent), None) = (group.events, group.percent, group.total) {
@@ -267,8 +266,7 @@ pub fn fill<'a>(
     for group in groups.iter_mut() {
         let single = group.n.is_none() && group.events.is_none() && group.has_figure();
         if single && let Some(m) = bracketed(mentions, group, &view) {
-            let origin = Origin::Inferred(Inference::SameSentence, m.span);
-            group.n = Some(Figure { printed: Printed::whole(m.size), origin });
+            group.n = Some(Figure::inferred(Printed::whole(m.size), Inference::SameSentence, m.span));
             continue;
         }
         if single && !tested(group.sentence) {
@@ -302,14 +300,12 @@ pub fn fill<'a>(
             // Nor do all counts beside it tell of another total.
             let only = only.filter(|m| here > 0 || agreed.is_none_or(|t| t.printed.count() == Some(m.size)));
             if let (None, 0, Some(total), false) = (only, here, agreed, told.arms || told.others)
-                && let Origin::Printed(span) | Origin::Inferred(_, span) = total.origin
+                && let Some(span) = total.place()
             {
-                group.n =
-                    Some(Figure { printed: total.printed, origin: Origin::Inferred(Inference::OtherSentence, span) });
+                group.n = Some(Figure::inferred(total.printed, Inference::OtherSentence, span));
             }
             if let Some(first) = only {
-                let origin = Origin::Inferred(Inference::OtherSentence, first.span);
-                group.n = Some(Figure { printed: Printed::whole(first.size), origin });
+                group.n = Some(Figure::inferred(Printed::whole(first.size), Inference::OtherSentence, first.span));
             }
         }
     }
@@ -465,8 +461,7 @@ fn part_of_counted(group: &mut Group, events: Figure, percent: Printed, before: 
         }
     }
     if let Some((size, span)) = whole {
-        let origin = Origin::Inferred(Inference::OtherSentence, span);
-        group.total = Some(Figure { printed: Printed::whole(size), origin });
+        group.total = Some(Figure::inferred(Printed::whole(size), Inference::OtherSentence, span));
         group.n = group.total;
     }
 }
@@ -482,10 +477,7 @@ fn companions<'a>(groups: &mut [Group], tested: impl Fn(u32) -> bool, view: impl
             && rest.iter().all(|n| n.printed == first.printed)
             && !tested(sentence)
         {
-            let span = match first.origin {
-                Origin::Printed(span) | Origin::Inferred(_, span) => span,
-                Origin::Assumed(_) => groups[from].span,
-            };
+            let span = first.place().unwrap_or(groups[from].span);
             let first = *first;
             let mut whose = Whose::All;
             let sentence = groups[from..to].iter().any(|g| g.n.is_none() && g.events.is_none()).then(|| view(sentence));
@@ -507,7 +499,7 @@ fn companions<'a>(groups: &mut [Group], tested: impl Fn(u32) -> bool, view: impl
                     Whose::Open => None,
                 };
                 if let Some((printed, span)) = size {
-                    group.n = Some(Figure { printed, origin: Origin::Inferred(Inference::SameSentence, span) });
+                    group.n = Some(Figure::inferred(printed, Inference::SameSentence, span));
                 }
             }
         }
@@ -626,8 +618,7 @@ fn category(groups: &mut [Group]) -> bool {
     }
     let span = groups[0].span.to(groups[groups.len() - 1].span);
     for group in groups {
-        let origin = Origin::Inferred(Inference::Categories, span);
-        group.total = Some(Figure { printed: Printed::whole(sum), origin });
+        group.total = Some(Figure::inferred(Printed::whole(sum), Inference::Categories, span));
         group.n = group.total;
     }
     true
@@ -642,17 +633,14 @@ fn siblings(groups: &mut [Group]) {
     if totals.len() < 2 || first.printed.digits < 20 || totals.iter().any(|t| t.printed != first.printed) {
         return;
     }
-    let span = match first.origin {
-        Origin::Printed(span) | Origin::Inferred(_, span) => span,
-        Origin::Assumed(_) => return,
-    };
+    let Some(span) = first.place() else { return };
     let counts = groups.iter().filter(|g| g.percent.is_some() && g.events.is_some()).count();
     if counts != totals.len() + 1 {
         return;
     }
     let odd = groups.iter_mut().find(|g| open(g).is_some_and(|(events, _)| events < first.printed.digits));
     if let Some(group) = odd {
-        group.total = Some(Figure { printed: first.printed, origin: Origin::Inferred(Inference::Siblings, span) });
+        group.total = Some(Figure::inferred(first.printed, Inference::Siblings, span));
         group.n = group.total;
     }
 }

@@ -2,7 +2,7 @@
 
 use super::super::lexicon::Classes;
 use super::super::sentence::SentenceView;
-use super::super::{Estimate, Figure, Inference, IntervalReading, Measure, Origin, Readings, Scale};
+use super::super::{Estimate, Figure, Inference, IntervalReading, Measure, Readings, Scale};
 use super::cell::{self, At, Form};
 use super::{Setting, Table};
 use crate::layout::{ColumnRole, Part, Row};
@@ -291,7 +291,7 @@ pub(super) fn level(head: &SentenceView) -> Option<Figure> {
         let dotted = |k: usize| head.any(k, &["c"]) && head.sign(k + 1, '.') && head.any(k + 2, &["i"]);
         let named = (i + 1..i + 4).any(|k| head.is(k, Classes::CI) || head.is(k, Classes::CONFIDENCE) || dotted(k))
             || i > 0 && head.is(i - 1, Classes::CI);
-        named.then(|| Figure { printed, origin: Origin::Inferred(Inference::Header, head.span(i, i)) })
+        named.then(|| Figure::inferred(printed, Inference::Header, head.span(i, i)))
     })
 }
 

@@ -14,7 +14,7 @@ mod totals;
 
 use super::lexicon::Classes;
 use super::sentence::{Scan, SentenceView};
-use super::{Figure, Origin, PValue, Readings, Role, p};
+use super::{Figure, PValue, Readings, Role, p};
 use crate::layout::{Around, Column, ColumnRole, Layout, Row, RowRole, around};
 use crate::manuscript::{Block, BlockKind, Grid, Manuscript};
 use crate::printed::Printed;
@@ -320,8 +320,7 @@ impl<'a> Table<'a> {
     /// One or two degrees of freedom in a cell.
     fn freedom(&self, cell: usize) -> (Option<Figure>, Option<Figure>) {
         let view = self.view(cell);
-        let mut found = (0..view.len())
-            .filter_map(|i| Some(Figure { printed: view.number(i)?, origin: Origin::Printed(view.span(i, i)) }));
+        let mut found = (0..view.len()).filter_map(|i| Some(Figure::at(view.number(i)?, view.span(i, i))));
         (found.next(), found.next())
     }
 

@@ -1,7 +1,7 @@
 //! The sizes of groups where the header gives none: from the row, from the caption, from counts with their percentages.
 
 use super::super::sentence::SentenceView;
-use super::super::{Figure, Inference, Origin};
+use super::super::{Figure, Inference};
 use super::cell::{self, At, Form};
 use super::summary::Sized;
 use super::{Setting, Table};
@@ -10,8 +10,7 @@ use crate::printed::Printed;
 use crate::text::Span;
 
 fn sized(size: Size, inference: Inference) -> Sized {
-    let origin = Origin::Inferred(inference, size.span);
-    Sized { value: size.value, figure: Figure { printed: Printed::whole(size.value), origin } }
+    Sized { value: size.value, figure: Figure::inferred(Printed::whole(size.value), inference, size.span) }
 }
 
 impl Table<'_> {
@@ -54,7 +53,7 @@ impl Table<'_> {
             return None;
         };
         let n = value.printed.count().filter(|&n| n > 0)?;
-        let figure = Figure { printed: value.printed, origin: Origin::Printed(view.span(value.first, value.last)) };
+        let figure = Figure::at(value.printed, view.span(value.first, value.last));
         Some(Sized { value: n, figure })
     }
 }

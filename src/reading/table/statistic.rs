@@ -1,7 +1,7 @@
 //! Test statistics whose symbol and degrees of freedom stand over their column or before their row.
 
 use super::super::sentence::SentenceView;
-use super::super::{Figure, Inference, Origin, Relation, Statistic, Symbol};
+use super::super::{Figure, Inference, Relation, Statistic, Symbol};
 use super::cell::{self, Form};
 use crate::printed::Printed;
 
@@ -36,16 +36,14 @@ impl Head {
             found = Head { symbol: Some(symbol), ..Head::default() };
             let figure = |at: usize| {
                 let printed = view.number(at)?;
-                Some(Figure { printed, origin: Origin::Inferred(Inference::Header, view.span(at, at)) })
+                Some(Figure::inferred(printed, Inference::Header, view.span(at, at)))
             };
             let open = (i + 1..i + 4).find(|&k| view.signs(k, &['(', '[']));
             // `F(1,146)`: the comma may have been taken for that of thousands.
             let both = open.and_then(|open| {
                 let (a, b) = view.word(open + 1).split_once(',')?;
                 let span = view.span(open + 1, open + 1);
-                let figure = |text: &str| {
-                    Some(Figure { printed: Printed::parse(text)?, origin: Origin::Inferred(Inference::Header, span) })
-                };
+                let figure = |text: &str| Some(Figure::inferred(Printed::parse(text)?, Inference::Header, span));
                 Some((figure(a)?, figure(b)?))
             });
             if let Some((df1, df2)) = both {

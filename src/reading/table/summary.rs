@@ -2,7 +2,7 @@
 
 use super::super::lexicon::Classes;
 use super::super::sentence::SentenceView;
-use super::super::{Figure, Group, Inference, IntervalReading, Origin, Readings, SpreadKind};
+use super::super::{Figure, Group, Inference, IntervalReading, Readings, SpreadKind};
 use super::cell::{self, At, Form, Read};
 use super::meaning::Meaning;
 use super::{Setting, Table};
@@ -175,14 +175,13 @@ fn row_shares(groups: &mut [Group]) {
         return;
     }
     for g in groups {
-        let origin = Origin::Inferred(Inference::Categories, g.span);
-        g.total = Some(Figure { printed: Printed::whole(sum), origin });
+        g.total = Some(Figure::inferred(Printed::whole(sum), Inference::Categories, g.span));
         g.n = g.total;
     }
 }
 
 fn inferred(g: &Group) -> bool {
-    g.total.is_some_and(|t| matches!(t.origin, Origin::Inferred(Inference::FromPercent, _)))
+    g.total.is_some_and(|t| t.is_inferred(Inference::FromPercent))
 }
 
 /// What brackets in a line of their own hold.
@@ -297,8 +296,7 @@ fn total_of(
     }
     // Missing answers shrink the group down a table: only the one size that the percentage allows will do.
     let n = only_size(events, percent, size.value)?;
-    let origin = Origin::Inferred(Inference::FromPercent, place);
-    let total = n.map(|n| Figure { printed: Printed::whole(n), origin });
+    let total = n.map(|n| Figure::inferred(Printed::whole(n), Inference::FromPercent, place));
     Some((total, Some(size.figure)))
 }
 
@@ -459,7 +457,7 @@ fn summary(
             if row.sexes && percent.is_none_or(|p| p.count() == Some(sum)) {
                 let sum = Printed::whole(sum);
                 let place = view.span(read.first, read.last);
-                let total = Some(Figure { printed: sum, origin: Origin::Inferred(Inference::Categories, place) });
+                let total = Some(Figure::inferred(sum, Inference::Categories, place));
                 return Some(Group { events: Some(printed(view, events)), total, n: header.or(total), ..group });
             }
             // Events of persons with their rate per person-time.
@@ -597,7 +595,7 @@ fn inner_count(view: &SentenceView, read: &Read, inner: Printed) -> Option<At> {
 }
 
 fn printed(view: &SentenceView, at: At) -> Figure {
-    Figure { printed: at.printed, origin: Origin::Printed(view.span(at.first, at.last)) }
+    Figure::at(at.printed, view.span(at.first, at.last))
 }
 
 /// `Weight (n = 45)`

@@ -53,7 +53,7 @@ fn part(groups: &[Group], group: usize) -> Option<Part> {
 
 /// Not printed with the count, nor borne out by a header.
 fn open(g: &Group) -> bool {
-    g.total.is_none_or(|t| matches!(t.origin, Origin::Inferred(Inference::FromPercent, _)))
+    g.total.is_none_or(|t| t.is_inferred(Inference::FromPercent))
 }
 
 /// Open, or taken from a head that the percentage does not bear out.
@@ -118,8 +118,7 @@ fn block(groups: &mut [Group], parts: &[Part], titled: bool) {
                 Some(Origin::Printed(span) | Origin::Inferred(Inference::Header, span)) => span,
                 _ => groups[p.group].span,
             };
-            let origin = Origin::Inferred(inference, place);
-            let total = Some(Figure { printed: Printed::whole(total), origin });
+            let total = Some(Figure::inferred(Printed::whole(total), inference, place));
             groups[p.group].total = total;
             groups[p.group].n = groups[p.group].n.or(total);
         }
@@ -181,8 +180,7 @@ fn rows(table: &Table, groups: &mut [Group]) {
         let borne_out = list.iter().any(|p| !open(&groups[p.group]));
         let Some(total) = sum(list).filter(|_| !borne_out && (near - 100.0).abs() <= 1.0 + 1e-9) else { continue };
         for p in list {
-            let origin = Origin::Inferred(Inference::Siblings, groups[p.group].span);
-            let total = Some(Figure { printed: Printed::whole(total), origin });
+            let total = Some(Figure::inferred(Printed::whole(total), Inference::Siblings, groups[p.group].span));
             (groups[p.group].total, groups[p.group].n) = (total, total);
         }
     }

@@ -2,7 +2,7 @@
 
 use super::Table;
 use crate::layout::{ColumnRole, RowRole};
-use crate::reading::{Group, Inference, Origin};
+use crate::reading::{Group, Inference};
 use std::ops::Range;
 
 /// The groups of a block of rows.
@@ -174,10 +174,8 @@ impl Table<'_> {
         }
         let group = |g: usize| &self.readings.groups[g];
         let count = |g: &Group| g.events.and_then(|f| f.printed.count());
-        let total = |g: &Group| {
-            let inferred = |o: Origin| matches!(o, Origin::Inferred(Inference::FromPercent, _));
-            g.total.filter(|t| !inferred(t.origin)).and_then(|f| f.printed.count())
-        };
+        let printed = |g: &Group| g.total.filter(|t| !t.is_inferred(Inference::FromPercent));
+        let total = |g: &Group| printed(g).and_then(|f| f.printed.count());
         (0..arms).all(|a| {
             let column = || groups.iter().skip(a).step_by(arms).map(|&g| group(g));
             let sum = column().map(count).try_fold(0u64, |s, c| s.checked_add(c?));

@@ -8,7 +8,7 @@ use super::{Feature, ReportedResult, StatedTest, feature};
 use crate::context::{Stated, Test};
 use crate::layout::{ColumnRole, Layout, Panel, Row, RowRole, around};
 use crate::manuscript::{BlockKind, Grid, Manuscript};
-use crate::reading::{Figure, Group, Inference, Origin, Readings, Scan, SentenceView, SpreadKind, Symbol};
+use crate::reading::{Figure, Group, Inference, Readings, Scan, SentenceView, SpreadKind, Symbol};
 use crate::text::Span;
 use notes::{Notes, of_label, tests_of};
 use std::ops::Range;
@@ -504,6 +504,6 @@ fn suits(test: Test, groups: &[&Group]) -> bool {
 /// Count, percent and total of one group that stand for themselves: the total printed with them, or the header's where
 /// it fits. One that was inferred from the percent itself proves nothing.
 fn is_arithmetic(group: &Group) -> bool {
-    let inferred = |o: Origin| matches!(o, Origin::Inferred(Inference::FromPercent, _));
-    group.events.is_some() && group.percent.is_some() && group.total.is_some_and(|t| !inferred(t.origin))
+    let stated = group.total.is_some_and(|t| !t.is_inferred(Inference::FromPercent));
+    group.events.is_some() && group.percent.is_some() && stated
 }
