@@ -23,25 +23,23 @@ pub fn fill_sizes(manuscript: &Manuscript, scan: &Scan, readings: &mut Readings,
     }
     let groups = &mut readings.groups;
     let known: Vec<Known> = context.arms.iter().map(|a| Known { label: &a.label, n: a.n, span: a.span }).collect();
-    let mut from = 0;
-    while from < groups.len() {
-        let sentence = groups[from].sentence;
-        let to = from + groups[from..].iter().take_while(|g| g.sentence == sentence).count();
-        let here = &mut groups[from..to];
-        if here.iter().any(|g| g.n.is_none() && g.events.is_none() && g.has_figure()) {
-            let view = scan.view(manuscript, sentence);
-            // Another study's arms may bear the same names.
-            let ours = !total::of_others(&view);
-            if named && ours {
-                named::assign(&view, here, &known, Inference::ArmSize);
-            }
-            if let Some(arms) = alike.as_ref().filter(|_| ours)
-                && !manuscript.block(here[0].span).is_table()
-            {
-                two_unnamed(here, arms);
-            }
+    for here in groups.chunk_by_mut(|a, b| a.sentence == b.sentence) {
+        if !here.iter().any(|g| g.n.is_none() && g.events.is_none() && g.has_figure()) {
+            continue;
         }
-        from = to;
+        let view = scan.view(manuscript, here[0].sentence);
+        // Another study's arms may bear the same names.
+        if total::of_others(&view) {
+            continue;
+        }
+        if named {
+            named::assign(&view, here, &known, Inference::ArmSize);
+        }
+        if let Some(arms) = &alike
+            && !manuscript.block(here[0].span).is_table()
+        {
+            two_unnamed(here, arms);
+        }
     }
 }
 

@@ -3,7 +3,7 @@
 
 use super::super::lexicon::Classes;
 use super::super::sentence::SentenceView;
-use super::super::{Figure, Group, Inference, Origin, within};
+use super::super::{Figure, Group, Inference, Origin};
 use super::arm;
 use crate::printed::Printed;
 use crate::text::Span;
@@ -100,10 +100,8 @@ pub fn fill<'a>(groups: &mut [Group], view: impl Fn(u32) -> SentenceView<'a>) {
         return carry(groups, &view);
     }
     let introduced: Vec<_> = introduced.into_iter().filter(|x| !arm::tells_of_leaving(&view(x.3))).collect();
-    let mut from = 0;
-    while from < groups.len() {
-        let sentence = groups[from].sentence;
-        let to = from + within(&groups[from..], |g| g.sentence, sentence..sentence + 1).len();
+    for here in groups.chunk_by_mut(|a, b| a.sentence == b.sentence) {
+        let sentence = here[0].sentence;
         // Names that one size only has been told of, so far.
         let before = introduced.iter().filter(|x| x.3 <= sentence);
         let mut known: Vec<Known> = Vec::new();
@@ -114,14 +112,13 @@ pub fn fill<'a>(groups: &mut [Group], view: impl Fn(u32) -> SentenceView<'a>) {
             }
         }
         if known.len() >= 2 {
-            let here = known.iter().any(|k| groups[from..to].iter().any(|g| g.span.overlaps(k.span)));
-            if here {
-                in_one_sentence(&view(sentence), &mut groups[from..to]);
+            let introduces = known.iter().any(|k| here.iter().any(|g| g.span.overlaps(k.span)));
+            if introduces {
+                in_one_sentence(&view(sentence), here);
             } else {
-                assign(&view(sentence), &mut groups[from..to], &known, Inference::ArmSize);
+                assign(&view(sentence), here, &known, Inference::ArmSize);
             }
         }
-        from = to;
     }
     carry(groups, &view);
 }
@@ -158,12 +155,8 @@ fn in_one_sentence(view: &SentenceView, groups: &mut [Group]) {
 fn carry<'a>(groups: &mut [Group], view: &impl Fn(u32) -> SentenceView<'a>) {
     // The list told last with its word: the sentence and the sizes.
     let mut told: Option<(u32, Vec<Figure>)> = None;
-    let mut from = 0;
-    while from < groups.len() {
-        let sentence = groups[from].sentence;
-        let to = from + groups[from..].iter().take_while(|g| g.sentence == sentence).count();
-        let here = &mut groups[from..to];
-        from = to;
+    for here in groups.chunk_by_mut(|a, b| a.sentence == b.sentence) {
+        let sentence = here[0].sentence;
         let view = view(sentence);
         let mut start = 0;
         for word in (0..view.len()).filter(|&k| view.is(k, Classes::RESPECTIVELY)) {

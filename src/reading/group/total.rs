@@ -361,8 +361,8 @@ fn bracketed<'a>(mentions: &[Mention], group: &Group, view: impl Fn(u32) -> Sent
         }
         false
     })?;
-    let inside = (open + 1..(open + 60).min(view.len())).take_while(|&k| !view.signs(k, &[')', ']']) || k < at);
-    if inside.into_iter().any(|k| view.is(k, Classes::VERSUS)) {
+    let mut inside = (open + 1..(open + 60).min(view.len())).take_while(|&k| !view.signs(k, &[')', ']']) || k < at);
+    if inside.any(|k| view.is(k, Classes::VERSUS)) {
         return None;
     }
     // The mention whose words lead up to the bracket.
@@ -468,42 +468,33 @@ fn part_of_counted(group: &mut Group, events: Figure, percent: Printed, before: 
 
 /// A summary without size beside counts that all have one total: "68.1% (111/163) were female, the mean age was 57 years".
 fn companions<'a>(groups: &mut [Group], tested: impl Fn(u32) -> bool, view: impl Fn(u32) -> SentenceView<'a>) {
-    let mut from = 0;
-    while from < groups.len() {
-        let sentence = groups[from].sentence;
-        let to = from + groups[from..].iter().take_while(|g| g.sentence == sentence).count();
-        let sizes: Vec<Figure> = groups[from..to].iter().filter_map(|g| g.total).collect();
-        if let [first, rest @ ..] = &sizes[..]
-            && rest.iter().all(|n| n.printed == first.printed)
-            && !tested(sentence)
-        {
-            let span = first.place().unwrap_or(groups[from].span);
-            let first = *first;
-            let mut whose = Whose::All;
-            let sentence = groups[from..to].iter().any(|g| g.n.is_none() && g.events.is_none()).then(|| view(sentence));
-            for at in from..to {
-                let (before, group) = groups.split_at_mut(at);
-                let group = &mut group[0];
-                if group.n.is_some() || group.events.is_some() {
-                    whose = Whose::All;
-                    continue;
-                }
-                if let (Some(view), Some(last)) = (&sentence, before[from..].last()) {
-                    whose = whose_between(view, last, group.span, whose);
-                }
-                let size = match whose {
-                    Whose::All => Some((first.printed, span)),
-                    Whose::Counted => {
-                        before[from..].iter().rev().take(8).find_map(|g| g.events.map(|e| (e.printed, g.span)))
-                    }
-                    Whose::Open => None,
-                };
-                if let Some((printed, span)) = size {
-                    group.n = Some(Figure::inferred(printed, Inference::SameSentence, span));
-                }
-            }
+    for here in groups.chunk_by_mut(|a, b| a.sentence == b.sentence) {
+        let sentence = here[0].sentence;
+        let sizes: Vec<Figure> = here.iter().filter_map(|g| g.total).collect();
+        let [first, rest @ ..] = &sizes[..] else { continue };
+        if rest.iter().any(|n| n.printed != first.printed) || tested(sentence) {
+            continue;
         }
-        from = to;
+        let span = first.place().unwrap_or(here[0].span);
+        let mut whose = Whose::All;
+        let sentence = here.iter().any(|g| g.n.is_none() && g.events.is_none()).then(|| view(sentence));
+        for at in 0..here.len() {
+            let (before, group) = here.split_at_mut(at);
+            let group = &mut group[0];
+            if group.n.is_some() || group.events.is_some() {
+                whose = Whose::All;
+                continue;
+            }
+            if let (Some(view), Some(last)) = (&sentence, before.last()) {
+                whose = whose_between(view, last, group.span, whose);
+            }
+            let size = match whose {
+                Whose::All => Some((first.printed, span)),
+                Whose::Counted => before.iter().rev().take(8).find_map(|g| g.events.map(|e| (e.printed, g.span))),
+                Whose::Open => None,
+            };
+            group.n = size.map(|(printed, span)| Figure::inferred(printed, Inference::SameSentence, span));
+        }
     }
 }
 
@@ -587,24 +578,21 @@ fn fits(events: u64, total: u64, percent: Printed) -> bool {
 
 /// `38 male (63.3%) and 22 female (36.7%)`: the categories of one sentence, where all percentages fit their sum.
 fn categories(groups: &mut [Group]) {
-    let mut from = 0;
-    while from < groups.len() {
-        let sentence = groups[from].sentence;
-        let to = from + groups[from..].iter().take_while(|g| g.sentence == sentence).count();
+    for here in groups.chunk_by_mut(|a, b| a.sentence == b.sentence) {
         // All counts of the sentence, else runs of them whose percentages make 100.
-        if !category(&mut groups[from..to]) {
-            let mut start = from;
-            while start < to {
-                let (mut sum, mut end) = (0.0, start);
-                while end < to && sum < 99.0 && open(&groups[end]).is_some() {
-                    sum += groups[end].percent.map_or(0.0, Printed::value);
-                    end += 1;
-                }
-                let found = (99.0..101.0).contains(&sum) && end - start >= 2 && category(&mut groups[start..end]);
-                start = if found { end } else { start + 1 };
-            }
+        if category(here) {
+            continue;
         }
-        from = to;
+        let mut start = 0;
+        while start < here.len() {
+            let (mut sum, mut end) = (0.0, start);
+            while end < here.len() && sum < 99.0 && open(&here[end]).is_some() {
+                sum += here[end].percent.map_or(0.0, Printed::value);
+                end += 1;
+            }
+            let found = (99.0..101.0).contains(&sum) && end - start >= 2 && category(&mut here[start..end]);
+            start = if found { end } else { start + 1 };
+        }
     }
 }
 
