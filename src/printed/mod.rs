@@ -1,8 +1,10 @@
 //! A number as printed, and the interval of values that it stands for.
 
 mod range;
+mod share;
 
 pub use range::Range;
+pub use share::{is_share, totals_that_fit};
 
 /// A number exactly as printed: sign, digits and decimal places. `2.20` keeps its last zero.
 ///
@@ -83,6 +85,11 @@ impl Printed {
         if self.negative { Range::new(value - unit, value) } else { Range::new(value, value + unit) }
     }
 
+    /// What it stands for when it is not known which.
+    pub fn rounded_or_cut(self) -> Range {
+        self.rounded().hull(self.cut())
+    }
+
     /// The value itself: for counts.
     pub fn exact(self) -> Range {
         Range::point(self.value())
@@ -91,6 +98,11 @@ impl Printed {
     /// The number when it is a whole, non-negative one printed without decimals.
     pub fn count(self) -> Option<u64> {
         (self.places == 0 && !self.negative && self.exponent == 0).then_some(self.digits)
+    }
+
+    /// How many digits it has, zeros in front not counted.
+    pub fn significant_digits(self) -> u32 {
+        self.digits.checked_ilog10().map_or(0, |d| d + 1)
     }
 
     /// Multiplied by a power of ten, digits kept: 3.6 % is the proportion 0.036.

@@ -6,7 +6,7 @@ use super::case::own;
 use super::target::{Fit, Target};
 use super::verdict::{Candidate, Inputs, Policy, judge};
 use super::{Distance, Quantity, Recomputation, Slip, method, reason, slip, working};
-use crate::printed::{Printed, Range};
+use crate::printed::{Printed, Range, totals_that_fit};
 use crate::query::{Ground, Verdict};
 use crate::reading::{Figure, Group, Inference, Origin, Readings};
 use crate::text::Span;
@@ -86,7 +86,7 @@ pub(crate) fn check(g: &Group, agreement: Agreement) -> Vec<Recomputation> {
     let mut out = judge(&target, vec![candidate], &policy, inputs, slips);
     if let Some(r) = &mut out
         && r.reason.as_deref() == Some(reason::DENOMINATOR)
-        && let Some((least, most)) = totals_that_fit(e, target.range)
+        && let Some((least, most)) = totals_that_fit(e, target.range).filter(|_| target.range.lo > 0.0)
     {
         let fits = if least == most { least.to_string() } else { format!("{least} to {most}") };
         r.working.push_str(&format!("; {percent} % would fit a total of {fits}"));
@@ -153,17 +153,6 @@ fn larger_than_total(g: &Group, events: &Figure, e: u64, n: u64, verdict: Verdic
         figure: events.place().unwrap_or(g.span),
         inputs,
     }
-}
-
-/// The totals for which `events` is the printed percent.
-pub(crate) fn totals_that_fit(events: u64, percent: Range) -> Option<(u64, u64)> {
-    if events == 0 || percent.lo <= 0.0 {
-        return None;
-    }
-    let e = 100.0 * events as f64;
-    let least = (e / percent.hi - 1e-9).ceil().max(events as f64) as u64;
-    let most = (e / percent.lo + 1e-9).floor() as u64;
-    (least <= most).then_some((least, most))
 }
 
 fn percent_slip(g: &Group, e: u64, n: u64) -> Option<Slip> {

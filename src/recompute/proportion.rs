@@ -1,9 +1,8 @@
 //! Tests of proportions from counts: the arithmetic, over the sets of counts that the printed figures allow.
 
-use super::percent::totals_that_fit;
 use super::tail;
 use crate::distribution;
-use crate::printed::Range;
+use crate::printed::{Range, totals_that_fit};
 
 /// Events and total of one group, each as all whole numbers from the first to the second.
 #[derive(Clone, Copy, Debug, PartialEq)]

@@ -18,7 +18,7 @@ const SUMMARIES: u32 = 10;
 const MOST: usize = 12;
 
 /// The figure in which two places disagree.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
 pub enum Part {
     P,
     Estimate,
@@ -43,12 +43,6 @@ pub struct Disagreement {
 struct Key {
     part: Part,
     shared: Vec<Printed>,
-}
-
-impl std::hash::Hash for Part {
-    fn hash<H: std::hash::Hasher>(&self, state: &mut H) {
-        (*self as u8).hash(state);
-    }
 }
 
 /// One place at which a key was met, with the figure that the key leaves out.
@@ -109,7 +103,7 @@ fn keys(readings: &Readings, result: &ReportedResult) -> Vec<(Key, Span, u32, Ra
     let interval = result.interval.map(|i| &readings.intervals[i]);
     let mut keys = Vec::new();
     let mut add = |part, shared: Vec<Printed>, least, figure: Span, sentence, range| {
-        if shared.iter().map(|s| significant(*s)).sum::<u32>() >= least {
+        if shared.iter().map(|s| s.significant_digits()).sum::<u32>() >= least {
             keys.push((Key { part, shared }, figure, sentence, range));
         }
     };
@@ -147,11 +141,6 @@ fn summary(group: &Group) -> Option<Vec<Printed>> {
         _ => return None,
     }
     Some(figures)
-}
-
-/// Digits without leading zeros.
-fn significant(p: Printed) -> u32 {
-    if p.digits == 0 { 0 } else { p.digits.ilog10() + 1 }
 }
 
 /// What a printed p stands for.

@@ -7,7 +7,7 @@ use super::super::lexicon::Classes;
 use super::super::sentence::SentenceView;
 use super::super::{Figure, Group, Inference, within};
 use super::count::count_at;
-use crate::printed::Printed;
+use crate::printed::{Printed, is_share};
 use crate::text::Span;
 use std::collections::BTreeMap;
 
@@ -573,7 +573,7 @@ fn open(group: &Group) -> Option<(u64, Printed)> {
 }
 
 fn fits(events: u64, total: u64, percent: Printed) -> bool {
-    total > 0 && percent.rounded().widened(1e-12).contains(100.0 * events as f64 / total as f64)
+    is_share(events, total, percent.rounded())
 }
 
 /// `38 male (63.3%) and 22 female (36.7%)`: the categories of one sentence, where all percentages fit their sum.

@@ -6,7 +6,7 @@ use super::cell::{self, At, Form};
 use super::summary::Sized;
 use super::{Setting, Table};
 use crate::layout::{ColumnRole, Part, Row, RowRole, Size};
-use crate::printed::Printed;
+use crate::printed::{Printed, totals_that_fit};
 use crate::text::Span;
 
 fn sized(size: Size, inference: Inference) -> Sized {
@@ -145,10 +145,7 @@ pub(super) fn shown(table: &Table) -> Vec<Option<Sized>> {
             if percent.negative || share.lo <= 0.0 || share.hi > 100.1 {
                 continue;
             }
-            let e = 100.0 * count as f64;
-            let least = (e / share.hi - 1e-9).ceil().max(count as f64) as u64;
-            let most = (e / share.lo + 1e-9).floor() as u64;
-            if least <= most {
+            if let Some((least, most)) = totals_that_fit(count, share) {
                 ranges[column].push((least, most, view.span(events.first, events.last)));
             }
         }

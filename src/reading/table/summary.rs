@@ -7,7 +7,7 @@ use super::cell::{self, At, Form, Read};
 use super::meaning::Meaning;
 use super::{Setting, Table};
 use crate::layout::{ColumnRole, Part, Row};
-use crate::printed::{Printed, Range};
+use crate::printed::{Printed, is_share, totals_that_fit};
 use crate::text::Span;
 
 /// What `12 (30)` and `12 (8–15)` are in a row.
@@ -391,14 +391,8 @@ impl Evidence {
 
 /// Whether a count and a percentage are those of a group of `n`: rounded, or cut.
 fn fits(events: Printed, percent: Printed, n: u64) -> bool {
-    let Some(events) = events.count().filter(|&e| e <= n) else { return false };
-    let share = 100.0 * events as f64 / n as f64;
-    !percent.negative && share_of(percent).contains(share)
-}
-
-/// What a percentage may stand for, whether it was rounded or cut.
-fn share_of(percent: Printed) -> Range {
-    percent.rounded().hull(percent.cut()).widened(1e-12)
+    let events = events.count().filter(|&e| e <= n);
+    !percent.negative && events.is_some_and(|e| is_share(e, n, percent.rounded_or_cut()))
 }
 
 fn summary(
@@ -564,10 +558,8 @@ fn only_size(events: u64, percent: Printed, header: u64) -> Option<Option<u64>> 
     if events == 0 || share.hi <= 0.0 {
         return (events == 0).then_some(None);
     }
-    let least = (100.0 * events as f64 / share.hi * (1.0 - 1e-12)).ceil().max(events as f64);
-    let most = if share.lo > 0.0 { (100.0 * events as f64 / share.lo * (1.0 + 1e-12)).floor() } else { f64::INFINITY };
-    let within = least <= header as f64 && least >= header as f64 / 2.0;
-    Some((least == most && within).then_some(least as u64))
+    let only = totals_that_fit(events, share).filter(|(least, most)| least == most).map(|t| t.0);
+    Some(only.filter(|&n| n <= header && n as f64 >= header as f64 / 2.0))
 }
 
 /// Whether no size from the count up to the header's gives the percentage, near as it is to that of the header's.
@@ -576,15 +568,12 @@ fn only_above(events: u64, percent: Printed, header: u64) -> bool {
     if events == 0 || share.hi <= 0.0 || events > header {
         return false;
     }
-    let e = 100.0 * events as f64;
     // Far off it is a share of something else, or no share at all.
     const NEAR: f64 = 10.0;
-    if (e / header as f64 - percent.value()).abs() > NEAR {
+    if (100.0 * events as f64 / header as f64 - percent.value()).abs() > NEAR {
         return false;
     }
-    let least = (e / share.hi * (1.0 - 1e-12)).ceil().max(events as f64);
-    let most = if share.lo > 0.0 { (e / share.lo * (1.0 + 1e-12)).floor() } else { f64::INFINITY };
-    least > header as f64 || least > most
+    totals_that_fit(events, share).is_none_or(|(least, _)| least > header)
 }
 
 /// The count in the brackets of `30 (12)`, with its token.

@@ -6,7 +6,7 @@
 use super::super::{Figure, Group, Inference, Origin};
 use super::Table;
 use crate::layout::{ColumnRole, RowRole};
-use crate::printed::{Printed, Range};
+use crate::printed::{Printed, is_share, totals_that_fit};
 use std::collections::HashMap;
 
 /// A count with its percentage.
@@ -20,24 +20,13 @@ struct Part {
 
 impl Part {
     fn fits(&self, total: u64) -> bool {
-        let share = 100.0 * self.count as f64 / total as f64;
-        total > 0 && self.share().widened(1e-12).contains(share)
+        is_share(self.count, total, self.percent.rounded_or_cut())
     }
 
-    /// Rounded or cut.
-    fn share(&self) -> Range {
-        self.percent.rounded().hull(self.percent.cut())
-    }
-
-    /// The totals that the percentage allows, least and most.
-    fn totals(&self) -> Option<(u64, u64)> {
-        let share = self.percent.rounded();
-        if self.count == 0 || share.lo <= 0.0 || self.count > 1_000_000 {
-            return None;
-        }
-        let e = 100.0 * self.count as f64;
-        let (least, most) = ((e / share.hi - 1e-9).ceil() as u64, (e / share.lo + 1e-9).floor() as u64);
-        (least <= most).then_some((least, most))
+    /// The one total that the percentage allows.
+    fn only_total(&self) -> Option<u64> {
+        let totals = totals_that_fit(self.count, self.percent.rounded()).filter(|_| self.count <= 1_000_000);
+        totals.filter(|(least, most)| least == most).map(|t| t.0)
     }
 }
 
@@ -134,7 +123,7 @@ fn block(groups: &mut [Group], parts: &[Part], titled: bool) {
     // Percentages that make 100 are of one total, whatever it is; chance makes 100 of two figures without decimals.
     let exhaust = hundred && titled && parts.iter().all(|p| p.percent.places > 0);
     let pinned = || {
-        let mut ranges = filled().filter_map(Part::totals).filter(|r| r.0 == r.1).map(|r| r.0);
+        let mut ranges = filled().filter_map(Part::only_total);
         let first = ranges.next()?;
         (fit(first) >= 2 && fit(first) + 1 == filled().count()).then_some(first)
     };

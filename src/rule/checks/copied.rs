@@ -47,7 +47,7 @@ pub fn same_estimate(facts: &Look) -> Vec<Finding> {
         let (Some(e), Some(i)) = (result.estimate, result.interval) else { continue };
         let (e, i) = (&readings.estimates[e], &readings.intervals[i]);
         let key = [e.value, i.lower, i.upper];
-        let digits: u32 = key.iter().map(|p| p.digits.checked_ilog10().map_or(0, |d| d + 1)).sum();
+        let digits: u32 = key.iter().map(|p| p.significant_digits()).sum();
         if digits < DIGITS || !facts.in_table(i.span) {
             continue;
         }

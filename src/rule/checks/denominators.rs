@@ -2,6 +2,7 @@
 
 use crate::layout::around;
 use crate::manuscript::Grid;
+use crate::printed::totals_that_fit;
 use crate::query::Ground;
 use crate::reading::{Figure, Group, Inference, Origin};
 use crate::rule::finding::Finding;
@@ -70,16 +71,11 @@ fn headed(group: &Group) -> Option<(u64, Span)> {
 /// The totals of which a count is the printed percentage, whether rounded or cut.
 fn totals(group: &Group) -> Option<(u64, u64)> {
     let (events, percent) = (group.events?.printed.count()?, group.percent?);
-    if group.one_expression || group.approximate || events == 0 || percent.value() >= 100.0 {
+    if group.one_expression || group.approximate || percent.value() >= 100.0 {
         return None;
     }
-    let range = percent.rounded().hull(percent.cut());
-    if range.lo <= 0.0 {
-        return None;
-    }
-    let e = 100.0 * events as f64;
-    let (least, most) = ((e / range.hi - 1e-9).ceil() as u64, (e / range.lo + 1e-9).floor() as u64);
-    (least <= most).then_some((least.max(events), most))
+    let range = percent.rounded_or_cut();
+    totals_that_fit(events, range).filter(|_| range.lo > 0.0)
 }
 
 /// The rows of one column that do not fit its head's size and all fit one other.
