@@ -1,7 +1,7 @@
 //! Arms with their sizes, and how many took part in all.
 
 use super::{Arm, Context, Stated};
-use crate::reading::group::arm::NO_ARM;
+use crate::reading::group::arm::{EACH, NO_ARM, SizedArm};
 use crate::reading::lexicon::{self, Classes};
 use crate::reading::{Readings, SentenceView, within};
 
@@ -11,7 +11,8 @@ const MOST: usize = 100;
 /// Appends the arms that a sentence introduces (`the placebo group (n = 24)`), and the number randomised.
 pub(super) fn arms(view: &SentenceView, readings: &Readings, context: &mut Context) {
     // Who left a study makes no arm of it.
-    for arm in within(&readings.arms, |a| a.sentence, view.id..view.id + 1).iter().filter(|a| !a.leaving) {
+    let named = |a: &&SizedArm| !a.leaving && a.label != EACH;
+    for arm in within(&readings.arms, |a| a.sentence, view.id..view.id + 1).iter().filter(named) {
         let known = context.arms.iter().any(|a| a.label.eq_ignore_ascii_case(&arm.label));
         if !known && context.arms.len() < MOST {
             context.arms.push(Arm { label: arm.label.clone(), n: arm.n, span: arm.span });

@@ -11,17 +11,17 @@ use crate::text::Span;
 
 /// A group with its size and the tokens that tell of both.
 #[derive(Clone, Debug)]
-pub struct Named {
-    pub label: String,
-    pub n: u64,
+struct Named {
+    label: String,
+    n: u64,
     /// The token of the size.
-    pub at: usize,
+    at: usize,
     first: usize,
     last: usize,
 }
 
 impl Named {
-    pub fn span(&self, view: &SentenceView) -> Span {
+    fn span(&self, view: &SentenceView) -> Span {
         view.span(self.first, self.last)
     }
 }
@@ -80,6 +80,7 @@ const SAYS_GROUP: &[&str] =
 /// A group that a sentence names with its size, whether or not a summary took the size over.
 #[derive(Clone, Debug, PartialEq)]
 pub struct SizedArm {
+    /// Its name, or [`EACH`].
     pub label: String,
     pub n: u64,
     pub span: Span,
@@ -93,7 +94,7 @@ pub(super) fn read(view: &SentenceView, taken: &[bool], drafts: &mut Vec<Draft>,
     let own = drafts.len();
     let found = find(view);
     let leaving = !found.is_empty() && tells_of_leaving(view);
-    arms.extend(found.iter().filter(|a| a.label != EACH).map(|a| SizedArm {
+    arms.extend(found.iter().map(|a| SizedArm {
         label: a.label.clone(),
         n: a.n,
         span: a.span(view),
@@ -117,7 +118,7 @@ pub(super) fn read(view: &SentenceView, taken: &[bool], drafts: &mut Vec<Draft>,
 }
 
 /// The groups that a sentence names with their sizes, in order.
-pub fn find(view: &SentenceView) -> Vec<Named> {
+fn find(view: &SentenceView) -> Vec<Named> {
     // Sizes come in twos, or with their sign.
     let (mut counts, mut signed) = (0, false);
     for (k, token) in view.tokens.iter().enumerate() {

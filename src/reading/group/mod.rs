@@ -41,8 +41,7 @@ struct Draft {
 }
 
 /// Appends the groups of a sentence, in order; passes over tokens that other readings took. `intervals` and `estimates`
-/// are those of the sentence. Groups
-/// that are named with their sizes go to `arms` as well.
+/// are those of the sentence. Groups that are named with their sizes go to `arms` as well.
 pub fn read(
     view: &SentenceView,
     setting: &mut Setting,

@@ -1,10 +1,10 @@
 //! Arms that do not add up to the number randomised.
 
 use crate::context::{Stated, randomised_in};
-use crate::manuscript::{BlockKind, SectionKind};
+use crate::manuscript::SectionKind;
 use crate::query::Ground;
 use crate::reading::SentenceView;
-use crate::reading::group::arm;
+use crate::reading::group::arm::{self, SizedArm};
 use crate::reading::lexicon::{self, Classes};
 use crate::rule::finding::Finding;
 use crate::rule::level::{Off, Weight};
@@ -40,35 +40,23 @@ const OTHERS: [&str; 18] = [
 
 /// Sentences that state the whole randomised with all its arms, which together are more or fewer.
 pub fn arms_against_whole(facts: &Look) -> Vec<Finding> {
-    let mut findings = Vec::new();
-    for (number, block) in facts.manuscript.blocks.iter().enumerate() {
-        let section = &facts.manuscript.sections[block.section as usize];
-        let own = matches!(
-            section.kind,
-            SectionKind::Methods | SectionKind::Results | SectionKind::Abstract | SectionKind::Unknown
-        );
-        if !own || matches!(block.kind, BlockKind::Table(_) | BlockKind::Heading) {
-            continue;
-        }
-        for id in facts.scan.of_block(number) {
-            findings.extend(of_sentence(&facts.scan.view(facts.manuscript, id)));
-        }
-    }
-    findings
+    use SectionKind::*;
+    let own =
+        |arm: &SizedArm| matches!(facts.manuscript.section(arm.span).kind, Methods | Results | Abstract | Unknown);
+    let sentences = facts.readings.arms.chunk_by(|a, b| a.sentence == b.sentence).filter(|arms| own(&arms[0]));
+    sentences.filter_map(|arms| of_sentence(&facts.scan.view(facts.manuscript, arms[0].sentence), arms)).collect()
 }
 
-fn of_sentence(view: &SentenceView) -> Option<Finding> {
-    // Most sentences hold none of the words.
+fn of_sentence(view: &SentenceView, arms: &[SizedArm]) -> Option<Finding> {
     if !(0..view.len()).any(|i| view.is(i, Classes::RARE) && view.word(i).to_lowercase().starts_with("random")) {
         return None;
     }
     let whole = randomised_in(view).or_else(|| of_all(view))?;
-    let arms: Vec<arm::Named> = arm::find(view);
     let sum: u64 = arms.iter().map(|a| a.n).sum();
     let each = arms.iter().any(|a| a.label == arm::EACH || a.n >= whole.value);
     // Of many that are missing, the sentence says by itself that not all were randomised.
     let few = sum > whole.value || FEW * (whole.value - sum) <= whole.value;
-    if arms.len() < 2 || each || !few || sum == whole.value || arm::tells_of_leaving(view) {
+    if arms.len() < 2 || each || !few || sum == whole.value || arms[0].leaving {
         return None;
     }
     let tells = |i: usize| {
@@ -98,8 +86,8 @@ fn of_sentence(view: &SentenceView) -> Option<Finding> {
     let mut f = Finding::at(whole.span, weight, says);
     f.working = Some(format!("{} = {sum}, not {}", counts.join(" + "), whole.value));
     f.fills = vec![("printed", whole.value.to_string()), ("computed", sum.to_string())];
-    f.related = arms.iter().map(|a| (a.span(view), "a group".to_owned())).collect();
-    f.figures.extend(arms.iter().map(|a| a.span(view)));
+    f.related = arms.iter().map(|a| (a.span, "a group".to_owned())).collect();
+    f.figures.extend(arms.iter().map(|a| a.span));
     Some(f)
 }
 
