@@ -1,7 +1,7 @@
 //! Published worked examples, recomputed through the public interface from readings made by hand.
 //!
 //! The number in a test's comment is that of the project's list of worked examples; each names its source as
-//! given there. "Seen only in a transcription" marks values not seen in the source's own text or output.
+//! given there. "At second hand" marks values seen where others quote them, and not in the source's own text or output.
 
 mod recompute_paper;
 
@@ -34,8 +34,8 @@ fn by<'a>(checked: &'a Checked, name: &str) -> &'a Recomputation {
 
 const EQ: Relation = Relation::Equal;
 
-/// 3: Altman & Bland, BMJ 2011;343:d2304 (seen only in a transcription): 0.81 (0.70 to 0.94), P = 0.005.
-/// 4: the same source's other transcription has P = 0.123 for 1.9 (−0.6 to 4.3), where the method gives 0.1285.
+/// 3: Altman & Bland, BMJ 2011;343:d2304 (at second hand): 0.81 (0.70 to 0.94), P = 0.005.
+/// 4: elsewhere the same source is quoted with P = 0.123 for 1.9 (−0.6 to 4.3), where the method gives 0.1285.
 #[test]
 fn p_from_an_interval() {
     let c = Paper::default()
@@ -221,10 +221,10 @@ fn counts() {
     holds(found(&c, Quantity::Statistic), "92.205280", 1e-6);
 }
 
-/// 18 to 21: Fagerland (7/34 v 1/34); the odds ratio's limits also in presize's tests (seen only in a transcription).
+/// 18 to 21: Fagerland (7/34 v 1/34); the odds ratio's limits also at second hand, in the tests of the R package presize.
 /// 26: scipy relative_risk documentation, data of Sahai & Khurshid: 2.4495 (1.5837 to 3.7887).
-/// 27: Bland & Altman, BMJ 2000;320:1468 (seen only in a transcription): odds ratio 4.89 (4.00 to 5.99).
-/// 28: Rothman 2008 (seen only in a transcription): 30/204 v 21/205, risk ratio 1.4356 (0.851 to 2.4216).
+/// 27: Bland & Altman, BMJ 2000;320:1468 (at second hand): odds ratio 4.89 (4.00 to 5.99).
+/// 28: Rothman 2008 (at second hand): 30/204 v 21/205, risk ratio 1.4356 (0.851 to 2.4216).
 /// numerics.md: 56/70 v 48/80, Newcombe 0.052431 to 0.333873.
 #[test]
 fn ratios_and_differences() {
@@ -253,7 +253,7 @@ fn ratios_and_differences() {
     assert_eq!(wrong.verdict, Verdict::Differs, "{wrong:#?}");
 }
 
-/// 24, 25: Altman 2000 (seen only in a transcription) and Fagerland: 13/16, Wilson 0.5699 to 0.9341,
+/// 24, 25: Altman 2000 (at second hand) and Fagerland: 13/16, Wilson 0.5699 to 0.9341,
 /// Clopper–Pearson 0.5435 to 0.9595; 81/263, Wilson 0.255 to 0.366.
 #[test]
 fn one_proportion() {
