@@ -151,31 +151,10 @@ fn denied(manuscript: &Manuscript, span: Span) -> bool {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::manuscript::{Block, Section, Source};
-    use crate::text::{LineIndex, PieceTable};
-
-    /// A manuscript of headed paragraphs.
-    pub(super) fn manuscript(parts: &[(&str, &str)]) -> Manuscript {
-        let (mut sections, mut blocks) = (Vec::new(), Vec::new());
-        for (number, (title, text)) in parts.iter().enumerate() {
-            let kind = SectionKind::of_title(title).unwrap_or(SectionKind::Unknown);
-            let level = u8::from(!title.is_empty());
-            let in_abstract = kind == SectionKind::Abstract;
-            sections.push(Section { title: title.to_string(), level, parent: None, kind, in_abstract });
-            blocks.push(Block {
-                kind: BlockKind::Paragraph,
-                section: number as u32,
-                text: text.to_string(),
-                pieces: PieceTable::default(),
-                marks: Vec::new(),
-            });
-        }
-        let decoded = crate::text::decode(b"");
-        Manuscript::new(sections, blocks, Source { format: "text", decoded, lines: LineIndex::new("") })
-    }
+    use crate::manuscript::testing::paragraphs;
 
     fn context(parts: &[(&str, &str)]) -> Context {
-        let manuscript = manuscript(parts);
+        let manuscript = paragraphs(parts);
         let scan = crate::reading::scan(&manuscript);
         let readings = crate::reading::read(&manuscript, &scan);
         gather(&manuscript, &scan, &readings)

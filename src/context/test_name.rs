@@ -497,11 +497,11 @@ fn qualified(view: &SentenceView, first: usize, last: usize, test: Test) -> Test
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::context::tests::manuscript;
+    use crate::manuscript::testing::paragraphs;
     use crate::reading::scan;
 
     fn names(text: &str) -> Vec<Test> {
-        let manuscript = manuscript(&[("", text)]);
+        let manuscript = paragraphs(&[("", text)]);
         let scan = scan(&manuscript);
         let blocks = 0..manuscript.blocks.len();
         let ids: Vec<u32> = blocks.flat_map(|b| scan.of_block(b)).collect();

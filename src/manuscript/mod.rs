@@ -1,6 +1,8 @@
 //! The manuscript as plain data: sections, blocks, table grids. Knows no file format.
 
 mod section;
+#[cfg(test)]
+pub(crate) mod testing;
 
 pub use section::SectionKind;
 

@@ -1,24 +1,17 @@
 //! The engine on facts built by hand, so that it does not lean on what the recognisers can read.
 
 use super::*;
-use crate::manuscript::{Block, BlockKind, Section, SectionKind, Source};
+use crate::manuscript::testing::paragraphs;
 use crate::printed::{Printed, Range};
 use crate::query::{Ground, Level, Verdict};
 use crate::reading::{PValue, Relation, Role};
 use crate::recompute::{Distance, Method, Quantity, Recomputation};
-use crate::text::{LineIndex, PieceTable, Span, decode};
+use crate::text::Span;
 
 static METHOD: Method = Method { name: "p from an interval", source: "Altman & Bland 2011" };
 
 fn manuscript(text: &str) -> Manuscript {
-    let mut pieces = PieceTable::default();
-    pieces.push(0, text.len(), 0, text.len(), true);
-    let section =
-        Section { title: "Results".to_owned(), level: 1, parent: None, kind: SectionKind::Results, in_abstract: false };
-    let kind = BlockKind::Paragraph;
-    let block = Block { kind, section: 0, text: text.to_owned(), pieces, marks: Vec::new() };
-    let source = Source { format: "text", decoded: decode(text.as_bytes()), lines: LineIndex::new(text) };
-    Manuscript::new(vec![section], vec![block], source)
+    paragraphs(&[("Results", text)])
 }
 
 fn span(text: &str, part: &str) -> Span {

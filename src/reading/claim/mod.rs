@@ -263,24 +263,12 @@ fn found_difference(flat: &Flat, range: &std::ops::Range<usize>) -> bool {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::manuscript::{Block, BlockKind, Manuscript, Section, SectionKind, Source};
+    use crate::manuscript::testing::paragraphs;
     use crate::reading::{Direction, p, scan};
-    use crate::text::{LineIndex, PieceTable};
 
     /// The claims of one paragraph: kind and quote.
     fn claims(text: &str) -> Vec<(ClaimKind, String, Claim)> {
-        let block = Block {
-            kind: BlockKind::Paragraph,
-            section: 0,
-            text: text.to_string(),
-            pieces: PieceTable::default(),
-            marks: Vec::new(),
-        };
-        let section =
-            Section { title: String::new(), level: 0, parent: None, kind: SectionKind::Unknown, in_abstract: false };
-        let decoded = crate::text::decode(b"");
-        let source = Source { format: "text", decoded, lines: LineIndex::new("") };
-        let manuscript = Manuscript::new(vec![section], vec![block], source);
+        let manuscript = paragraphs(&[("", text)]);
         let scan = scan(&manuscript);
         let mut out = Vec::new();
         for id in scan.of_block(0) {

@@ -1,28 +1,12 @@
 //! Sentences of an invented trial with beehives.
 
 use super::*;
-use crate::manuscript::{Block, BlockKind, Manuscript, Section, Source};
+use crate::manuscript::testing::paragraphs;
 use crate::reading::{Origin, read as read_all, scan};
-use crate::text::{LineIndex, PieceTable};
 
 /// The groups of one paragraph of results.
 fn groups(text: &str) -> Vec<Group> {
-    let section = Section {
-        title: "Results".to_string(),
-        level: 1,
-        parent: None,
-        kind: SectionKind::Results,
-        in_abstract: false,
-    };
-    let block = Block {
-        kind: BlockKind::Paragraph,
-        section: 0,
-        text: text.to_string(),
-        pieces: PieceTable::default(),
-        marks: Vec::new(),
-    };
-    let source = Source { format: "text", decoded: crate::text::decode(b""), lines: LineIndex::new("") };
-    let manuscript = Manuscript::new(vec![section], vec![block], source);
+    let manuscript = paragraphs(&[("Results", text)]);
     read_all(&manuscript, &scan(&manuscript)).groups
 }
 

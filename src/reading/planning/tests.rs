@@ -1,24 +1,12 @@
 use super::*;
-use crate::manuscript::{Block, BlockKind, Manuscript, Section, SectionKind, Source};
+use crate::manuscript::testing::paragraphs;
 use crate::reading::{p, scan};
-use crate::text::{LineIndex, PieceTable};
 
 type Statement = (PlanningKind, String, Option<f64>);
 
 /// The planning statements of one paragraph as kind, quote and value, and which p's define.
 fn planning(text: &str) -> (Vec<Statement>, Vec<bool>) {
-    let block = Block {
-        kind: BlockKind::Paragraph,
-        section: 0,
-        text: text.to_string(),
-        pieces: PieceTable::default(),
-        marks: Vec::new(),
-    };
-    let section =
-        Section { title: String::new(), level: 0, parent: None, kind: SectionKind::Unknown, in_abstract: false };
-    let decoded = crate::text::decode(b"");
-    let source = Source { format: "text", decoded, lines: LineIndex::new("") };
-    let manuscript = Manuscript::new(vec![section], vec![block], source);
+    let manuscript = paragraphs(&[("", text)]);
     let scan = scan(&manuscript);
     let (mut out, mut all) = (Vec::new(), Vec::new());
     for id in scan.of_block(0) {
