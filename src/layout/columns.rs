@@ -93,13 +93,13 @@ pub(super) fn columns(text: &Text, grid: &Grid, runs: &[Range<usize>], header_ro
             column.header = Some(index);
         }
     }
-    let looks = looks(text, grid, &grid.cells[body..], count);
+    let looks = looks(text, &grid.cells[body..], count);
     let stubs = stub_columns(text, grid, &columns, &looks);
     for (k, column) in columns.iter_mut().enumerate() {
         column.role = if k < stubs { ColumnRole::Stub } else { head_role(text, grid, column) };
     }
     settle(text, grid, &mut columns, &looks);
-    inherit_sizes(text, grid, &mut columns, &looks);
+    inherit_sizes(text, grid, &mut columns);
     columns
 }
 
@@ -124,7 +124,7 @@ impl Looks {
     }
 }
 
-fn looks(text: &Text, _: &Grid, body: &[Cell], count: usize) -> Vec<Looks> {
+fn looks(text: &Text, body: &[Cell], count: usize) -> Vec<Looks> {
     let mut looks = vec![Looks::default(); count];
     for cell in body.iter().filter(|c| c.column_span <= 1) {
         let Some(of) = looks.get_mut(cell.column as usize) else { continue };
@@ -416,7 +416,7 @@ fn group_columns(text: &Text, grid: &Grid, columns: &mut [Column], looks: &[Look
 
 /// A size that stands over the first of several columns only, as in a header whose spans were lost: the columns after
 /// it that are other times of the same group have it as well.
-fn inherit_sizes(text: &Text, grid: &Grid, columns: &mut [Column], _: &[Looks]) {
+fn inherit_sizes(text: &Text, grid: &Grid, columns: &mut [Column]) {
     let mut last: Option<(super::Size, bool)> = None;
     for column in columns.iter_mut() {
         let Some(head) = column.header.map(|h| text.folded(&grid.cells[h])) else {

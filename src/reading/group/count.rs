@@ -75,13 +75,16 @@ pub(super) fn whole(view: &SentenceView, value: u64, first: usize, last: usize) 
 /// A percentage with its sign at `at`; gives the token after the sign.
 pub(super) fn percent_at(view: &SentenceView, at: usize) -> Option<(Printed, usize)> {
     let p = view.number(at)?;
-    if view.sign(at + 1, '%') {
-        Some((p, at + 2))
-    } else if view.any(at + 1, &["percent"]) || (view.eq(at + 1, "per") && view.eq(at + 2, "cent")) {
-        Some((p, at + 2 + usize::from(view.eq(at + 1, "per"))))
-    } else {
-        None
+    let next = if view.sign(at + 1, '%') { at + 2 } else { percent_word(view, at + 1)? };
+    Some((p, next))
+}
+
+/// "percent", "per cent"; gives the token after it.
+fn percent_word(view: &SentenceView, at: usize) -> Option<usize> {
+    if view.any(at, &["percent"]) {
+        return Some(at + 1);
     }
+    (view.eq(at, "per") && view.eq(at + 1, "cent")).then_some(at + 2)
 }
 
 /// "Thirty-four percent"; gives the token after it.
@@ -90,13 +93,7 @@ fn percent_in_words(view: &SentenceView, i: usize) -> Option<(Printed, usize)> {
         return None;
     }
     let (value, next) = count_at(view, i)?;
-    let after = if view.any(next, &["percent"]) {
-        next + 1
-    } else if view.eq(next, "per") && view.eq(next + 1, "cent") {
-        next + 2
-    } else {
-        return None;
-    };
+    let after = percent_word(view, next)?;
     (value <= 100).then(|| (Printed::whole(value), after))
 }
 

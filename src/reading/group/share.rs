@@ -73,10 +73,7 @@ const NOT_SHARE_AFTER: &[&str] = &[
     "limits",
     "credible",
     "interval",
-    "solution",
-    "chlorhexidine",
     "alcohol",
-    "ethanol",
     "formalin",
     "concentration",
     "w",
@@ -92,9 +89,6 @@ const NOT_SHARE_AFTER: &[&str] = &[
     "decline",
     "loss",
     "gain",
-    "cream",
-    "gel",
-    "ointment",
     "sensitivity",
     "specificity",
     "accuracy",
@@ -104,25 +98,8 @@ const NOT_SHARE_AFTER: &[&str] = &[
     "goal",
     "target",
     "oxygen",
-    "saline",
-    "dextrose",
-    "glucose",
     "nacl",
-    "naocl",
-    "hypochlorite",
-    "lidocaine",
-    "lignocaine",
-    "bupivacaine",
-    "levobupivacaine",
-    "ropivacaine",
-    "mepivacaine",
-    "articaine",
     "procaine",
-    "sevoflurane",
-    "isoflurane",
-    "desflurane",
-    "povidone",
-    "iodine",
     "peroxide",
     "fluoride",
     "sucrose",
@@ -147,12 +124,9 @@ const NOT_SHARE_AFTER: &[&str] = &[
     "agarose",
     "bovine",
     "fetal",
-    "tropicamide",
-    "atropine",
-    "timolol",
 ];
 
-/// What a percentage right behind is the strength of.
+/// What a percentage right before or behind is the strength of.
 #[rustfmt::skip]
 const STRENGTH_OF: &[&str] = &[
     "lidocaine", "lignocaine", "bupivacaine", "levobupivacaine", "ropivacaine", "chlorhexidine", "hypochlorite", "naocl",
@@ -230,18 +204,21 @@ pub(super) fn told(view: &SentenceView, i: usize, next: usize, setting: &Setting
             Some(TokenKind::Sign('-' | '+' | '±' | '<' | '>' | '≤' | '≥' | '~' | '/' | '×'))
         );
         let no_share = view.any(b, NOT_SHARE_BEFORE) && !(view.any(b, &["of"]) && share_of(view, b));
+        let figure_before = b > 0 && view.number(b - 1).is_some();
         // The end of a range: "(61.4 to 72.9%)".
-        let range = view.eq(b, "to") && b > 0 && view.number(b - 1).is_some() && !view.eq(b.wrapping_sub(2), "from");
+        let range = view.eq(b, "to") && figure_before && !view.eq(b.wrapping_sub(2), "from");
         // The last of a list that is none of shares: "by 31 and 36%".
-        let range = range || view.is(b, Classes::AND) && b > 0 && view.number(b - 1).is_some();
+        let listed = view.is(b, Classes::AND) && figure_before;
         // "between 21% and 26%"
+        let between = b > 2 && view.is(b, Classes::AND) && view.sign(b - 1, '%') && view.eq(b - 3, "between");
         // "lidocaine 0.2%": the name of what it is the strength of, and no share is so small and told so.
         let strength = view.any(b, STRENGTH_OF);
-        let range = range || strength;
-        let range = range || b > 2 && view.is(b, Classes::AND) && view.sign(b - 1, '%') && view.eq(b - 3, "between");
         if sign
             || no_share
             || range
+            || listed
+            || between
+            || strength
             || view.sign(b, '=') && !named_value(view, b)
             || taken[b] && view.signs(b, &['(', '['])
             || view.signs(b, &['(', '[']) && of_measured(view, b)
@@ -254,8 +231,7 @@ pub(super) fn told(view: &SentenceView, i: usize, next: usize, setting: &Setting
         .any(|k| view.is(k, Classes::CONFIDENCE) || view.is(k, Classes::CI));
     let other = level
         || view.signs(next, &['-', '/', '±', '×'])
-        || view.any(next, NOT_SHARE_AFTER)
-        || view.any(next + 1, NOT_SHARE_AFTER);
+        || (next..next + 2).any(|k| view.any(k, NOT_SHARE_AFTER) || view.any(k, STRENGTH_OF));
     let of = view.eq(next, "of") && {
         let at = next + 1 + usize::from(view.any(next + 1, &["the", "their", "its"]));
         view.any(at, NO_GROUP)
