@@ -84,7 +84,7 @@ impl Reader<'_, '_> {
                 .iter()
                 .rev()
                 .take_while(|x| x.sentence == self.view.id)
-                .any(|x| x.what == what && x.span.start < span.end && span.start < x.span.end);
+                .any(|x| x.what == what && x.span.overlaps(span));
         if twice {
             return;
         }

@@ -64,7 +64,7 @@ impl Scope<'_> {
             let verb = self.finite.is_some() || self.clause.lead == Lead::With;
             let claimed = if flat.any(k, &["likely"]) {
                 (k.saturating_sub(2)..k).any(|j| flat.any(j, &["more", "less", "as"]))
-                    && (compared || flat.find(k..end, Classes(0)).is_some() || flat.any(k + 1, &["as", "to"]))
+                    && (compared || flat.any(k + 1, &["as", "to"]))
                     && self.finite.is_some()
             } else if flat.is(k, EXTREME) {
                 flat.any(k.wrapping_sub(1), &["the"])

@@ -68,8 +68,7 @@ impl Scope<'_> {
             let reach = if flat.any(k, &["none"]) { 14 } else { 9 };
             let until = (k + 1..(k + reach).min(self.clause.end))
                 .find(|&j| {
-                    flat.signs(j, &[',', ';']) && !flat.any(k, &["none", "neither"])
-                        || flat.any(j, &["who", "which", "to"]) && !flat.any(j, &["to"])
+                    flat.signs(j, &[',', ';']) && !flat.any(k, &["none", "neither"]) || flat.any(j, &["who", "which"])
                 })
                 .unwrap_or((k + reach).min(self.clause.end));
             let Some(t) = flat.find(k + 1..until, targets) else { continue };

@@ -8,12 +8,22 @@ use crate::printed::Printed;
 impl Reader<'_, '_> {
     /// A probability: `0.05`, `.05`, `5 %`; the token after it.
     pub(super) fn share(&self, i: usize) -> Option<(Printed, usize)> {
-        let v = self.view;
-        let x = v.number(i)?;
-        if v.sign(i + 1, '%') || v.is(i + 1, Classes::PERCENT) || v.any(i + 1, &["per"]) {
-            return Some((x.shifted(-2), i + if v.any(i + 1, &["per"]) { 3 } else { 2 }));
+        let x = self.view.number(i)?;
+        let (end, percent) = self.percent_after(i);
+        if percent {
+            return Some((x.shifted(-2), end));
         }
-        (x.value() < 1.0 && x.places > 0).then_some((x, i + 1))
+        (x.value() < 1.0 && x.places > 0).then_some((x, end))
+    }
+
+    /// The token after a number and the sign or words for percent, and whether there are any.
+    fn percent_after(&self, i: usize) -> (usize, bool) {
+        let v = self.view;
+        if v.any(i + 1, &["per"]) {
+            return (i + 3, true);
+        }
+        let percent = v.sign(i + 1, '%') || v.is(i + 1, Classes::PERCENT);
+        (i + 1 + usize::from(percent), percent)
     }
 
     /// Over "level", "was", "set", "at", "of", "=" … to a probability.
@@ -49,7 +59,7 @@ impl Reader<'_, '_> {
         let v = self.view;
         let mut i = 0;
         while i < v.len() {
-            let named = v.any(i, &["alpha", "α"]) && !v.sign(i.wrapping_sub(1), '(') || v.any(i, &["alpha", "α"]);
+            let named = v.any(i, &["alpha", "α"]);
             let one = i + 1 + usize::from(v.sign(i + 1, '-'));
             let error = one + 1 + usize::from(v.sign(one + 1, '-'));
             let type_one = v.any(i, &["type"])
@@ -94,7 +104,7 @@ impl Reader<'_, '_> {
                 let linked = (end..i).all(|h| {
                     v.sign(h, '-')
                         || v.is(h, Classes::SIDED.or(Classes::NUMBER_WORD))
-                        || v.any(h, &["level", "statistical", "alpha", "of", "two", "one", "a", "probability", "of"])
+                        || v.any(h, &["level", "statistical", "alpha", "of", "two", "one", "a", "probability"])
                 });
                 // "the 95 % significance level" means 5 %.
                 let x = if x.value() >= 0.9 && x.value() < 1.0 && !named { complement(x)? } else { x };
@@ -154,14 +164,7 @@ impl Reader<'_, '_> {
             if power {
                 let behind = (i.saturating_sub(4)..i).rev().find_map(|j| {
                     let x = v.number(j)?;
-                    let percent = v.sign(j + 1, '%') || v.is(j + 1, Classes::PERCENT) || v.any(j + 1, &["per"]);
-                    let end = if v.any(j + 1, &["per"]) {
-                        j + 3
-                    } else if percent {
-                        j + 2
-                    } else {
-                        j + 1
-                    };
+                    let (end, percent) = self.percent_after(j);
                     let linked =
                         (end..i).all(|h| v.any(h, &["statistical", "study", "a", "of", "statistic"]) || v.sign(h, '-'));
                     (linked && plausible_power(x, percent)).then_some((x, j))
@@ -175,20 +178,13 @@ impl Reader<'_, '_> {
                 let mut j = i + 1;
                 while j < (i + 12).min(v.len()) {
                     if let Some(x) = v.number(j) {
-                        let percent = v.sign(j + 1, '%') || v.is(j + 1, Classes::PERCENT) || v.any(j + 1, &["per"]);
+                        let (end, percent) = self.percent_after(j);
                         if plausible_power(x, percent)
                             && !(v.tokens.get(j + 1).is_some_and(|t| t.is_word())
                                 && v.any(j + 1, &["w", "kw", "watts"]))
                         {
-                            let last = if v.any(j + 1, &["per"]) {
-                                j + 2
-                            } else if percent {
-                                j + 1
-                            } else {
-                                j
-                            };
-                            self.add(PlanningKind::Power, i, last, Some(x), None);
-                            i = last;
+                            self.add(PlanningKind::Power, i, end - 1, Some(x), None);
+                            i = end - 1;
                             break;
                         }
                         if x.count() != Some(1) {

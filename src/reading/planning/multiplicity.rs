@@ -40,20 +40,17 @@ impl Reader<'_, '_> {
                 last = i + 1;
             } else if v.any(i, &["hierarchical", "closed", "sequential", "fixed"]) {
                 // An order of tests, not a model or a bottle.
-                let from = i + 1 + usize::from(v.sign(i + 1, '-'));
-                let test =
-                    (from..from + 1).find(|&j| v.any(j, &["testing", "test", "tests", "gatekeeping", "sequence"]));
-                let Some(test) = test.filter(|&t| {
-                    v.any(
-                        t + 1,
-                        &["procedure", "strategy", "sequence", "approach", "procedures", "principle", "scheme"],
-                    ) || v.any(t, &["testing", "gatekeeping"])
-                }) else {
+                let test = i + 1 + usize::from(v.sign(i + 1, '-'));
+                let procedure = v.any(
+                    test + 1,
+                    &["procedure", "strategy", "sequence", "approach", "procedures", "principle", "scheme"],
+                );
+                let named = v.any(test, &["testing", "gatekeeping"]);
+                if !(named || procedure && v.any(test, &["test", "tests", "sequence"])) {
                     i += 1;
                     continue;
-                };
-                let procedure = &["procedure", "strategy", "sequence", "approach", "procedures", "principle", "scheme"];
-                last = if v.any(test + 1, procedure) { test + 1 } else { test };
+                }
+                last = test + usize::from(procedure);
             } else if v.any(i, &["lsd"])
                 && capitals(i)
                 && (0..v.len()).any(|j| v.any(j, &["anova", "post", "means", "comparisons", "difference"]))
