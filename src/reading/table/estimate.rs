@@ -39,20 +39,26 @@ pub(super) fn read(
         let heads: Vec<SentenceView> = table.heads(column).collect();
         match role {
             ColumnRole::Estimate => {
-                let labels: Vec<SentenceView> = row.labels.iter().chain(&row.section).map(|&l| table.view(l)).collect();
+                let beside = Beside {
+                    labels: row.labels.iter().chain(&row.section).map(|&l| table.view(l)).collect(),
+                    counts,
+                    ci: setting.around.ci || setting.columns.ci,
+                    error: table.error_beside(index),
+                    heads,
+                };
                 let mut reads = cell::read(&view);
                 if reads.is_empty() {
                     reads.extend(cell::read_first(&view));
                 }
                 if reads.is_empty() {
                     // An interval in a column headed for both, as in the second line of a cell.
-                    if let (Some(pair), true) = (cell::limits(&view), says_ci(&heads)) {
-                        push_interval(&view, pair, &heads, None, readings);
+                    if let (Some(pair), true) = (cell::limits(&view), says_ci(&beside.heads)) {
+                        push_interval(&view, pair, &beside.heads, None, readings);
                     }
                     continue;
                 }
                 for read in &reads {
-                    if let Some(e) = estimate(table, index, &view, read, &heads, &labels, counts, setting, readings) {
+                    if let Some(e) = estimate(&view, read, &beside, readings) {
                         last = Some((column, e));
                     }
                 }
@@ -133,18 +139,30 @@ fn only_number(view: &SentenceView) -> Option<At> {
     }
 }
 
-#[allow(clippy::too_many_arguments)]
-fn estimate(
-    table: &Table,
-    index: usize,
-    view: &SentenceView,
-    read: &cell::Read,
-    heads: &[SentenceView],
-    labels: &[SentenceView],
+/// What the texts and cells beside an estimate say of it.
+struct Beside<'a> {
+    heads: Vec<SentenceView<'a>>,
+    labels: Vec<SentenceView<'a>>,
+    /// The row's groups are counts.
     counts: bool,
-    setting: &Setting,
-    readings: &mut Readings,
-) -> Option<Estimate> {
+    /// The table as a whole tells of confidence intervals.
+    ci: bool,
+    /// The next cell holds the standard error, where it can be read.
+    error: Option<Option<Printed>>,
+}
+
+impl Table<'_> {
+    /// What the next cell of the row holds, where it is one of standard errors.
+    fn error_beside(&self, index: usize) -> Option<Option<Printed>> {
+        let next = self.grid.cells.get(index + 1).filter(|c| c.row == self.grid.cells[index].row)?;
+        let is_error = *self.layout.role(next) == ColumnRole::Part(Part::Se);
+        is_error.then(|| only_number(&self.view(index + 1)).map(|n| n.printed))
+    }
+}
+
+fn estimate(view: &SentenceView, read: &cell::Read, beside: &Beside, readings: &mut Readings) -> Option<Estimate> {
+    let Beside { heads, labels, counts, .. } = beside;
+    let counts = *counts;
     let percent_sign = (0..view.len()).any(|i| view.sign(i, '%'));
     let says_se = heads.iter().any(|h| (0..h.len()).any(|i| h.is(i, Classes::SE)));
     let (value, limits, se) = match read.form {
@@ -172,24 +190,14 @@ fn estimate(
     let adjusted =
         (says(&["adjusted", "adj", "ancova", "multivariate", "multivariable"]) || short) && !says(&["unadjusted"]);
     let mut span = view.span(value.first, value.last);
-    let mut se = se;
-    // A standard error in the next cell.
-    if let Some(next) = table.grid.cells.get(index + 1).filter(|c| c.row == table.grid.cells[index].row)
-        && *table.layout.role(next) == ColumnRole::Part(Part::Se)
-        && limits.is_none()
-    {
-        se = only_number(&table.view(index + 1)).map(|n| n.printed);
-    }
-    if se.is_some_and(|s| s.negative) {
-        se = None;
-    }
+    let se = beside.error.filter(|_| limits.is_none()).unwrap_or(se).filter(|s| !s.negative);
     if matches!(read.form, Form::PlusMinus { .. } | Form::Bracket { .. }) && se.is_some() {
         span = view.span(read.first, read.last);
     }
     let estimate = Estimate { span, sentence: view.id, measure, scale, value: value.printed, se, percent, adjusted };
     readings.estimates.push(estimate.clone());
     if let Some((a, b)) = limits
-        && (says_ci(heads) || says_ci(labels) || setting.around.ci || setting.columns.ci)
+        && (says_ci(heads) || says_ci(labels) || beside.ci)
     {
         let all: Vec<SentenceView> = heads.iter().chain(labels).copied().collect();
         add_interval(view, view.span(read.first, read.last), (a, b), &all, Some(&estimate), readings);

@@ -90,7 +90,7 @@ pub(super) fn read(table: &Table, number: usize, setting: &Setting, readings: &m
         let column = table.grid.cells[held.index].column as usize;
         let at = setting.heads.get(column).copied().unwrap_or_default();
         let said = [&own, &section, &at, &setting.columns, &setting.around];
-        let bracket = evidence.bracket(&said, held.size);
+        let bracket = evidence.bracket(&said);
         let levels = own.change || own.shift || section.change || section.shift || at.change || at.shift;
         let change = levels || setting.around.change;
         let label = table.layout.columns[column].role.label().unwrap_or("");
@@ -133,17 +133,11 @@ pub(super) fn read(table: &Table, number: usize, setting: &Setting, readings: &m
             }
         }
     }
-    let mut from = start;
-    while from < out.len() {
-        let panel = |g: &Group| {
-            let cell = table.grid.cells.get((g.sentence - table.first) as usize);
-            cell.and_then(|c| table.layout.columns.get(c.column as usize)).and_then(|c| c.panel)
-        };
-        let first = panel(&out[from]);
-        let to = from + out[from..].iter().take_while(|g| panel(g) == first).count();
-        row_shares(&mut out[from..to]);
-        from = to;
-    }
+    let panel = |g: &Group| {
+        let cell = table.grid.cells.get((g.sentence - table.first) as usize);
+        cell.and_then(|c| table.layout.columns.get(c.column as usize)).and_then(|c| c.panel)
+    };
+    out[start..].chunk_by_mut(|a, b| panel(a) == panel(b)).for_each(row_shares);
     for g in out[start..].iter().filter(|g| g.spread_kind == Some(SpreadKind::Ci)) {
         if let ([lower, upper], Some(centre)) = (&g.spread[..], g.mean.or(g.median)) {
             readings.intervals.push(IntervalReading {
@@ -340,7 +334,7 @@ impl Evidence {
     }
 
     /// What brackets hold in this row, from the nearest text that says it.
-    fn bracket(&self, said: &[&Meaning; 5], _: Option<Sized>) -> Option<Bracket> {
+    fn bracket(&self, said: &[&Meaning; 5]) -> Option<Bracket> {
         let [own, _, _, _, around] = said;
         let shares = |m: &Meaning| m.bracket_percent && !self.decimals;
         let Some(nearest) = said.iter().find(|m| m.tells_brackets() || shares(m)) else {

@@ -40,7 +40,7 @@ impl Table<'_> {
         let mut groups = own.to_vec();
         let mut whole = title || !own.is_empty();
         let mut complete = None;
-        for (k, below) in rows.clone().enumerate() {
+        for below in rows.clone() {
             let mut lists = self.compared(&self.layout.rows[below], panel);
             // "Missing" has a count and no percentage.
             let share = |g: &usize| self.readings.groups[*g].percent.is_some();
@@ -66,7 +66,7 @@ impl Table<'_> {
             }
             groups.extend(list);
             if complete.is_none() && self.exhausts(&groups, arms) {
-                complete = Some((groups.len(), k + 1));
+                complete = Some(groups.len());
             }
         }
         let counts = |g: &usize| self.readings.groups[*g].events.is_some();
@@ -86,7 +86,7 @@ impl Table<'_> {
         // One column of labels, no title: only counts that share out the whole of each group show that they belong
         // together; else it is open what the P compares.
         match complete {
-            Some((count, _)) if table => Some(Block { groups: groups[..count].to_vec(), arms, doubtful: false }),
+            Some(count) if table => Some(Block { groups: groups[..count].to_vec(), arms, doubtful: false }),
             _ => Some(Block { groups: own.to_vec(), arms: 0, doubtful: true }),
         }
     }
